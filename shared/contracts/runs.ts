@@ -6,6 +6,13 @@ import { reviewStates, runStates, verdicts } from '../domain/states';
 import { configurationSchema } from './solvers';
 import { targetSchema } from './simulations';
 
+/*
+ * Routes: GET /runs, GET /runs/:id, /runs/:id/trials, /runs/:id/images, /runs/:id/replay, /runs/:id/sensitivity,
+ * /runs/:id/comments (GET, POST), POST /runs/:id/verdicts (answers with the run), POST /runs/:id/review (take it: in
+ * review by me) and DELETE /runs/:id/review (give it back), both answering with the run; POST /runs/:id/cancel and
+ * /runs/:id/requeue; POST and GET /runs/:id/recomputations; GET /runs/:id/events (server-sent `progress` events with
+ * `progressSchema`); downloads /runs/:id/table.csv and /runs/:id/trials.csv; GET /review, GET /review/count.
+ */
 export const runParamsSchema = z.strictObject({ id: idSchema });
 export const runListQuerySchema = z.strictObject({
   state: z.enum(runStates).optional(), review: z.enum(reviewStates).optional(), bench: slugSchema.optional(), solver: slugSchema.optional(), phantom: slugSchema.optional(), group: slugSchema.optional(),
