@@ -1,0 +1,76 @@
+import { defineEntity, p, type InferEntity } from '@mikro-orm/core';
+import { familyKeys } from '../../shared/domain/families';
+import { benchStates } from '../../shared/domain/states';
+import { baseProperties, timestamps } from './base.ts';
+import { GroupEntity } from './group.ts';
+import { PhantomVersionEntity } from './phantom.ts';
+import { SolverVersionEntity } from './solver.ts';
+import { UserEntity } from './user.ts';
+
+/** A fixed question: phantom versions, ladder, draws and seed do not change once it is open. */
+export const BenchEntity = defineEntity({
+  name: 'Bench',
+  tableName: 'bench',
+  properties: {
+    /** 'BN-003'. */
+    id: p.string().primary(),
+    ...timestamps,
+    slug: p.string(),
+    title: p.string(),
+    question: p.string(),
+    description: p.text(),
+    family: p.enum([...familyKeys]),
+    group: () => p.manyToOne(GroupEntity).ref().index('bench_group_index'),
+    createdBy: () => p.manyToOne(UserEntity).ref(),
+    /** Relative noise levels, ascending fractions. */
+    ladder: p.json().$type<number[]>(),
+    draws: p.integer(),
+    /** 0 to 4 294 967 295. */
+    seed: p.integer(),
+    rankingMetric: p.string(),
+    state: p.enum([...benchStates]).index('bench_state_index'),
+    /** Grows with every entry, so that a cached ranking can tell that it is stale. */
+    revision: p.integer().default(1),
+    contentHash: p.string(),
+    openedAt: p.datetime().nullable(),
+    closedAt: p.datetime().nullable(),
+    phantoms: () => p.oneToMany(BenchPhantomEntity).mappedBy('bench').orderBy({ position: 'asc' }),
+    entries: () => p.oneToMany(EntryEntity).mappedBy('bench').orderBy({ glyph: 'asc' }),
+  },
+  uniques: [{ name: 'bench_slug_unique', properties: ['slug'] }],
+});
+export type Bench = InferEntity<typeof BenchEntity>;
+
+export const BenchPhantomEntity = defineEntity({
+  name: 'BenchPhantom',
+  tableName: 'bench_phantom',
+  properties: {
+    ...baseProperties,
+    bench: () => p.manyToOne(BenchEntity).ref(),
+    phantomVersion: () => p.manyToOne(PhantomVersionEntity).ref().index('bench_phantom_version_index'),
+    position: p.integer(),
+  },
+  uniques: [
+    { name: 'bench_phantom_unique', properties: ['bench', 'phantomVersion'] },
+    { name: 'bench_phantom_position_unique', properties: ['bench', 'position'] },
+  ],
+});
+export type BenchPhantom = InferEntity<typeof BenchPhantomEntity>;
+
+export const EntryEntity = defineEntity({
+  name: 'Entry',
+  tableName: 'entry',
+  properties: {
+    ...baseProperties,
+    bench: () => p.manyToOne(BenchEntity).ref(),
+    solverVersion: () => p.manyToOne(SolverVersionEntity).ref().index('entry_solver_version_index'),
+    /** Stable index in the bench: colour and marker follow it. */
+    glyph: p.integer(),
+    createdBy: () => p.manyToOne(UserEntity).ref(),
+  },
+  uniques: [
+    { name: 'entry_bench_solver_unique', properties: ['bench', 'solverVersion'] },
+    { name: 'entry_bench_glyph_unique', properties: ['bench', 'glyph'] },
+  ],
+});
+export type Entry = InferEntity<typeof EntryEntity>;
