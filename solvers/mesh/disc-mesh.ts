@@ -1,0 +1,193 @@
+import Constrainautor from '@kninnug/constrainautor';
+import Delaunator from 'delaunator';
+import { atan2, cos, sin } from '../core/math';
+import { boundaryAngles } from './boundary-points';
+import { interfaceFeatures } from './feature-sizes';
+import { fillDisc } from './front-points';
+import { circleCrossing, InterfaceGraph, type MeshInterface } from './interface-graph';
+import { PointBuckets } from './point-buckets';
+import { repair } from './repair';
+import { SizeField } from './size-field';
+import { qualityOf } from './quality';
+import { relax } from './smoothing';
+
+/** Lengths in radii of the disc. */
+export interface DiscMeshSpec {
+  /** Angles (rad) that must be boundary nodes and grading centres: the ends of the electrodes. May be empty. */
+  readonly ends: readonly number[];
+  /** Edge length over the distance to the nearest end. */
+  readonly grading: number;
+  readonly hMin: number;
+  readonly hMax: number;
+  /** Curves that edges of the mesh follow. */
+  readonly interfaces?: readonly MeshInterface[];
+  /** Largest edge on an interface; `hMax` when left out. */
+  readonly interfaceSize?: number;
+  /** Edge length over the radius of curvature of a smooth interface. */
+  readonly curvatureShare?: number;
+  /** Edge length over the distance to a corner of an interface, and its lower bound. */
+  readonly cornerGrading?: number;
+  readonly cornerMinimum?: number;
+  /** Growth of the edge length away from interfaces. */
+  readonly growth?: number;
+  /** Counter seed of the small turns of the front; two meshes with other seeds share no interior vertex. */
+  readonly seed?: number;
+  /** Steps of force smoothing. */
+  readonly smoothing?: number;
+  /** Refuses a mesh of more vertices. */
+  readonly maxVertices?: number;
+}
+
+/** A conforming triangulation of the unit disc. */
+export interface TriangleMesh {
+  /** x, y per vertex; the first `boundaryCount` run counter-clockwise along the circle. */
+  readonly vertices: Float64Array;
+  readonly boundaryCount: number;
+  /** Vertex triples, counter-clockwise. */
+  readonly triangles: Int32Array;
+  /** Edges on interfaces: vertex, vertex, index of the interface. */
+  readonly interfaceEdges: Int32Array;
+  /** Smallest value of 4 sqrt(3) area / (sum of squared edges). */
+  readonly quality: number;
+}
+
+const twoPi = 2 * Math.PI;
+
+/**
+ * Graded triangulation of the unit disc with the electrode ends as nodes and edges along the interfaces.
+ *
+ * Boundary and interfaces are split by the size function, the inside is filled by an advancing front, smoothed by bar forces
+ * (Persson and Strang 2004) and triangulated with constraints (Delaunay; Sloan 1993). Deterministic: plain arithmetic and
+ * exact predicates only.
+ * @throws RangeError when the sizes make no sense or the mesh would be too large
+ */
+export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
+  const { hMin, hMax, grading } = spec;
+  if (!(hMin >= 1e-7 && hMin <= hMax && hMax <= 1)) throw new RangeError(`Sizes must satisfy 1e-7 <= hMin <= hMax <= 1, not hMin = ${hMin}, hMax = ${hMax}.`);
+  if (!(grading > 0 && grading <= 1)) throw new RangeError(`The grading must lie in (0, 1], not ${grading}.`);
+  const ends = sortedAngles(spec.ends);
+  const interfaces = spec.interfaces ?? [];
+  const centres = new Float64Array(2 * ends.length);
+  ends.forEach((angle, i) => {
+    centres[2 * i] = cos(angle);
+    centres[2 * i + 1] = sin(angle);
+  });
+  const interfaceSize = Math.min(hMax, spec.interfaceSize ?? hMax);
+  const floor = Math.max(hMin, Math.min(0.004, 0.25 * interfaceSize));
+  const features =
+    interfaces.length > 0
+      ? interfaceFeatures(interfaces, { interfaceSize, curvatureShare: spec.curvatureShare ?? 0.35, gapShare: 0.5, floor })
+      : { sources: [], corners: new Float64Array(0) };
+  const field = new SizeField({
+    centres,
+    grading,
+    minimum: hMin,
+    maximum: hMax,
+    sources: features.sources,
+    sourceSlope: spec.growth ?? 0.3,
+    corners: features.corners,
+    cornerGrading: spec.cornerGrading ?? grading,
+    cornerMinimum: Math.max(hMin, spec.cornerMinimum ?? 0.002),
+  });
+  // A little less than the size asked for, since the curves give spacings of at most what they are asked.
+  const polylines = interfaces.map((curve) => curve.points((x, y) => field.at(x, y)));
+  const fixed = withCrossings(ends, polylines, field);
+  const angles = boundaryAngles(fixed, field);
+  if (angles.length < 6) throw new RangeError(`The sizes leave only ${angles.length} boundary nodes: choose a smaller hMax.`);
+  const graph = new InterfaceGraph(angles.map(cos), angles.map(sin), field);
+  polylines.forEach((polyline, k) => graph.add(polyline, k));
+
+  const points = new PointBuckets();
+  const directions: number[] = [];
+  for (let i = 0; i < graph.x.length; i++) {
+    points.add(graph.x[i], graph.y[i], graph.size[i]);
+    directions.push(atan2(graph.tangentY[i], graph.tangentX[i]));
+  }
+  const fixedCount = points.count;
+  const limit = spec.maxVertices ?? 60_000;
+  if (fixedCount > limit) throw new RangeError(`The mesh would need more than ${limit} points: choose larger elements.`);
+  fillDisc(points, directions, field, spec.seed ?? 1, limit);
+
+  let coords = new Float64Array(2 * points.count);
+  for (let i = 0; i < points.count; i++) {
+    coords[2 * i] = points.x[i];
+    coords[2 * i + 1] = points.y[i];
+  }
+  const delaunay = new Delaunator(coords);
+  relax(delaunay, fixedCount, field, spec.smoothing ?? 8);
+  let result = constrain(delaunay, graph);
+  // Vertices of flat triangles are moved or removed; a few rounds reach the wanted shape.
+  for (let round = 0; round < 4; round++) {
+    const repaired = repair(coords, result.triangles, fixedCount, field);
+    if (!repaired) break;
+    coords = repaired as Float64Array<ArrayBuffer>;
+    result = constrain(new Delaunator(coords), graph);
+  }
+  return { vertices: coords, boundaryCount: graph.boundaryCount, ...result };
+}
+
+function sortedAngles(angles: readonly number[]): number[] {
+  if (angles.length === 0) return [0];
+  const sorted = angles.map((a) => a - twoPi * Math.floor(a / twoPi)).sort((a, b) => a - b);
+  for (let i = 0; i < sorted.length; i++) {
+    if (!Number.isFinite(sorted[i])) throw new RangeError('Angles must be finite.');
+    const gap = (i + 1 < sorted.length ? sorted[i + 1] : sorted[0] + twoPi) - sorted[i];
+    if (gap < 1e-5) throw new RangeError(`Two electrode ends lie ${gap} rad apart.`);
+  }
+  return sorted;
+}
+
+/** Adds the places where interfaces leave the disc to the fixed angles, unless another fixed node is near. */
+function withCrossings(ends: readonly number[], polylines: readonly Float64Array[], field: SizeField): number[] {
+  const fixed = [...ends];
+  for (const p of polylines) {
+    const n = p.length / 2;
+    for (let i = 0; i < n; i++) {
+      const j = (i + 1) % n;
+      const insideI = p[2 * i] * p[2 * i] + p[2 * i + 1] * p[2 * i + 1] < 1;
+      const insideJ = p[2 * j] * p[2 * j] + p[2 * j + 1] * p[2 * j + 1] < 1;
+      if (insideI === insideJ) continue;
+      const [x, y] = circleCrossing(p[2 * i], p[2 * i + 1], p[2 * j], p[2 * j + 1]);
+      const near = 0.5 * field.at(x, y);
+      const angle = atan2(y, x);
+      const clear = fixed.every((a) => {
+        const dx = cos(a) - x;
+        const dy = sin(a) - y;
+        return dx * dx + dy * dy > near * near;
+      });
+      if (clear) fixed.push(angle < 0 ? angle + twoPi : angle);
+    }
+  }
+  return fixed.sort((a, b) => a - b);
+}
+
+function constrain(delaunay: Delaunator<Float64Array>, graph: InterfaceGraph): Pick<TriangleMesh, 'triangles' | 'interfaceEdges' | 'quality'> {
+  const edges: number[] = [];
+  if (graph.from.length > 0) {
+    const constraints = new Constrainautor(delaunay);
+    for (let s = 0; s < graph.from.length; s++) {
+      try {
+        constraints.constrainOne(graph.from[s], graph.to[s]);
+        edges.push(graph.from[s], graph.to[s], graph.owner[s]);
+      } catch {
+        // A segment through a vertex or across another one: left out, the elements there integrate the jump.
+      }
+    }
+  }
+  const { triangles, coords } = delaunay;
+  const kept = new Int32Array(triangles.length);
+  let count = 0;
+  let quality = 1;
+  for (let t = 0; t < triangles.length; t += 3) {
+    const a = triangles[t];
+    // Delaunator's triangles run clockwise in a frame with y upwards.
+    const b = triangles[t + 2];
+    const c = triangles[t + 1];
+    const q = qualityOf(coords, a, b, c);
+    if (q < quality) quality = q;
+    kept[count++] = a;
+    kept[count++] = b;
+    kept[count++] = c;
+  }
+  return { triangles: kept.subarray(0, count), interfaceEdges: Int32Array.from(edges), quality };
+}

@@ -1,0 +1,84 @@
+import { analyse, factorise, type CholeskyAnalysis } from '../../linear-algebra/sparse-cholesky';
+import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
+import { solveDense } from './dense-solve';
+import { assembleStiffness, entryPosition, meshPattern, type MeshPattern } from './assembly';
+import type { ElectrodeIntegrals } from './electrode-integrals';
+
+/**
+ * Complete electrode model (Somersalo, Cheney, Isaacson 1992, SIAM J. Appl. Math. 52, 1023-1040) on quadratic elements of the
+ * unit disc. With zeta = z / R the potential solves
+ *   (K + sum_l M_l / zeta) u = sum_l m_l U_l / zeta,   |e_l| U_l / zeta - m_l . u / zeta = I_l,   sum_l U_l = 0,
+ * K the stiffness, M_l and m_l the mass matrix and moments of electrode l. The potential is eliminated: T U = I with the
+ * L x L Schur complement T = D - B^T S^-1 B, whose null space are the constants.
+ */
+export interface ElectrodeModel {
+  readonly mesh: QuadraticMesh;
+  readonly pattern: MeshPattern;
+  readonly analysis: CholeskyAnalysis;
+  readonly electrodes: readonly ElectrodeIntegrals[];
+}
+
+export function electrodeModel(mesh: QuadraticMesh, electrodes: readonly ElectrodeIntegrals[]): ElectrodeModel {
+  const pattern = meshPattern(mesh);
+  return { mesh, pattern, analysis: analyse(pattern), electrodes };
+}
+
+/** Values of S = K + sum_l M_l / zeta in the order of the pattern. */
+export function systemValues(model: ElectrodeModel, sigma: number | Float64Array, zeta: number): Float64Array {
+  const { pattern, electrodes, mesh } = model;
+  const values = new Float64Array(pattern.rows.length);
+  assembleStiffness(mesh, pattern, sigma, values);
+  for (const electrode of electrodes) {
+    for (let e = 0; e < electrode.edges.length / 3; e++) {
+      for (let i = 0; i < 3; i++) {
+        for (let j = 0; j <= i; j++) {
+          const position = entryPosition(pattern, electrode.edges[3 * e + i], electrode.edges[3 * e + j]);
+          values[position] += electrode.masses[9 * e + 3 * i + j] / zeta;
+        }
+      }
+    }
+  }
+  return values;
+}
+
+export interface ElectrodeSolution {
+  /** Electrode voltages, patterns x L, row-major; every row sums to zero. */
+  readonly voltages: Float64Array;
+  /** S^-1 m_l / zeta, node potentials for unit voltage on electrode l, L columns of n. */
+  readonly unitPotentials: Float64Array;
+}
+
+/**
+ * Electrode voltages for the current patterns `currents` (rows of length L, each summing to zero).
+ * Cost: one sparse factorisation and L solves, whatever the number of patterns.
+ */
+export function solveElectrodes(model: ElectrodeModel, sigma: number | Float64Array, zeta: number, currents: Float64Array): ElectrodeSolution {
+  const { electrodes, analysis, pattern } = model;
+  const n = pattern.n;
+  const L = electrodes.length;
+  const factor = factorise(analysis, systemValues(model, sigma, zeta));
+  const columns = new Float64Array(n * L);
+  for (let l = 0; l < L; l++) {
+    const { nodes, moments } = electrodes[l];
+    for (let i = 0; i < nodes.length; i++) columns[l * n + nodes[i]] = moments[i] / zeta;
+  }
+  factor.solveMany(columns, L);
+  const schur = new Float64Array(L * L);
+  let trace = 0;
+  for (let k = 0; k < L; k++) {
+    const { nodes, moments, length } = electrodes[k];
+    for (let l = 0; l < L; l++) {
+      let sum = 0;
+      // Summed as moments times (1 - u) on the diagonal: the differences stay accurate where zeta is small and u near 1.
+      if (k === l) for (let i = 0; i < nodes.length; i++) sum += moments[i] * (1 - columns[l * n + nodes[i]]);
+      else for (let i = 0; i < nodes.length; i++) sum -= moments[i] * columns[l * n + nodes[i]];
+      schur[k * L + l] = sum / zeta;
+    }
+    trace += length > 0 ? schur[k * L + k] : 0;
+  }
+  // Adding a multiple of 1 1^T grounds the mean: the solution for currents of zero sum has zero mean.
+  const ground = trace / (L * L);
+  for (let i = 0; i < L * L; i++) schur[i] += ground;
+  const voltages = solveDense(schur, L, currents);
+  return { voltages, unitPotentials: columns };
+}
