@@ -1,0 +1,8 @@
+import 'react';
+
+declare module 'react' {
+  /** Custom properties in `style`. */
+  interface CSSProperties {
+    [name: `--${string}`]: string | number | undefined;
+  }
+}

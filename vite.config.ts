@@ -1,0 +1,20 @@
+import tailwindcss from '@tailwindcss/vite';
+import react from '@vitejs/plugin-react';
+import { defineConfig } from 'vite';
+
+/** The API of `npm run dev` listens here; the page comes from Vite and asks it through the proxy. */
+const api = `http://127.0.0.1:${process.env.API_PORT ?? '4310'}`;
+
+export default defineConfig({
+  root: '.',
+  plugins: [react(), tailwindcss()],
+  build: { outDir: 'dist/client', emptyOutDir: true, sourcemap: true, target: 'es2022' },
+  worker: { format: 'es' },
+  server: {
+    proxy: {
+      '/api/v1': { target: api, changeOrigin: false },
+      '/auth': { target: api, changeOrigin: false },
+      '/local-github': { target: api, changeOrigin: false },
+    },
+  },
+});
