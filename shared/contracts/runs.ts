@@ -116,7 +116,14 @@ export const verdictCreateSchema = z.strictObject({
 
 /** GET /review: runs and phantom versions that wait, oldest first. */
 export const reviewQueueSchema = z.object({
-  runs: z.array(runSummarySchema.extend({ waitingDays: z.number(), mayReview: z.boolean(), reviewer: accountRefSchema.nullable(), waitsFor: z.enum(['reviewer', 'developer']), lastNote: z.object({ by: accountRefSchema, at: dateTimeSchema, text: z.string() }).nullable(), flags: z.array(z.string()) })),
+  runs: z.array(runSummarySchema.extend({
+    checks: z.array(checkResultSchema), modelErrorFloor: z.number(),
+    /** The ranking metric over the draws of each ladder level, its trivial value, and how many draws lie beyond 3 sd at each level. */
+    metric: z.string(), levels: z.array(z.object({ level: z.number(), median: z.number().nullable(), p05: z.number().nullable(), p95: z.number().nullable(), outliers: z.int() })), trivial: z.number().nullable(),
+    /** Best median of the same bench and phantom at each level, for 'to best on bench'. */
+    best: z.array(z.number().nullable()),
+    waitingDays: z.number(), mayReview: z.boolean(), reviewer: accountRefSchema.nullable(), waitsFor: z.enum(['reviewer', 'developer']), lastNote: z.object({ by: accountRefSchema, at: dateTimeSchema, text: z.string() }).nullable(), flags: z.array(z.string()),
+  })),
   phantoms: z.array(z.object({ slug: slugSchema, id: idSchema, name: z.string(), version: z.int(), group: groupRefSchema, submittedAt: dateTimeSchema, submittedBy: accountRefSchema, waitingDays: z.number(), mayReview: z.boolean(), checks: z.array(checkResultSchema) })),
 });
 export type ReviewQueue = z.infer<typeof reviewQueueSchema>;
