@@ -1,0 +1,40 @@
+import { limits } from '../../shared/domain/phantom-definition';
+import { atan2 } from '../core/math';
+import { compileExpression } from '../core/expression';
+import type { TruthField } from './truth-field';
+
+const names = ['x', 'y', 'r', 'theta'] as const;
+
+/** Two figures more than a place in a body needs. */
+const place = (metres: number): string => String(Number(metres.toPrecision(6)));
+
+/**
+ * Ground truth by an expression in x, y (m), r (distance from the origin, m) and theta (rad, -pi to pi); its value is the
+ * conductivity in S/m. It has no declared interfaces or targets: where it jumps, simulations integrate the jump by quadrature.
+ * @throws RangeError when the expression uses more than the safe subset
+ */
+export function expressionField(expression: string, background: number): TruthField {
+  const evaluate = compileExpression(expression, names);
+  const variables = new Float64Array(names.length);
+  const polar = /\b(r|theta)\b/.test(expression);
+  return {
+    background,
+    interfaces: [],
+    piecewiseConstant: false,
+    targets: [],
+    valueAt(x, y) {
+      variables[0] = x;
+      variables[1] = y;
+      if (polar) {
+        variables[2] = Math.sqrt(x * x + y * y);
+        variables[3] = atan2(y, x);
+      }
+      const value = evaluate(variables);
+      if (!(value >= limits.conductivityMin && value <= limits.conductivityMax))
+        throw new RangeError(
+          `The expression gives ${value} S/m at x = ${place(x)} m, y = ${place(y)} m: a conductivity must lie between ${limits.conductivityMin} and ${limits.conductivityMax} S/m.`,
+        );
+      return value;
+    },
+  };
+}

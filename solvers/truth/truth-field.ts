@@ -1,0 +1,101 @@
+import type { Shape, TruthDefinition } from '../../shared/domain/phantom-definition';
+import type { Target } from '../core/types';
+import { annulusField } from './annulus';
+import { arrayField } from './array';
+import { bumpField } from './bump';
+import { ellipseField } from './ellipse';
+import { expressionField } from './expression';
+import { polygonField } from './polygon';
+
+/** A closed curve across which the conductivity jumps. Lengths in metres. */
+export interface TruthInterface {
+  readonly closed: true;
+  /** True for polygons: straight between corners, which `points` always holds. */
+  readonly corners: boolean;
+  /** Points in order, counter-clockwise, x, y pairs, neighbours (the last and the first too) at most `maxSpacing` apart. */
+  points(maxSpacing: (x: number, y: number) => number): Float64Array;
+  /** Nearest point of the exact curve. */
+  project(x: number, y: number): [number, number];
+  inside(x: number, y: number): boolean;
+}
+
+/** A ground truth: conductivity in S/m over the plane, metres. */
+export interface TruthField {
+  readonly background: number;
+  /** @throws RangeError naming the place where an expression has no admissible value */
+  valueAt(x: number, y: number): number;
+  readonly interfaces: readonly TruthInterface[];
+  /** Constant between interfaces. */
+  readonly piecewiseConstant: boolean;
+  readonly targets: readonly Target[];
+}
+
+/** One shape of a truth: `weightAt` is 1 where its value holds, 0 where it does not, between for a smooth shape. */
+export interface ShapeField {
+  weightAt(x: number, y: number): number;
+  readonly interfaces: readonly TruthInterface[];
+  readonly piecewiseConstant: boolean;
+  /** Centroid in metres and area in m^2. */
+  readonly x: number;
+  readonly y: number;
+  readonly area: number;
+}
+
+function shapeField(shape: Shape): ShapeField {
+  switch (shape.kind) {
+    case 'ellipse':
+      return ellipseField(shape);
+    case 'polygon':
+      return polygonField(shape.vertices);
+    case 'annulus':
+      return annulusField(shape);
+    case 'bump':
+      return bumpField(shape);
+  }
+}
+
+/**
+ * The ground truth of a definition.
+ *
+ * Shapes lie one on another in their order. Where a smooth bump lies on another shape it blends what lies below with its own
+ * value. A target is the shape as declared: what covers it, or lies outside the body, is not taken off its area.
+ * @param arrayValues the stored array (rows x cols, row-major) where the truth is an array
+ * @throws RangeError that names the field and its limit
+ */
+export function createTruthField(definition: TruthDefinition, arrayValues?: Float64Array): TruthField {
+  switch (definition.kind) {
+    case 'expression':
+      return expressionField(definition.expression, definition.background);
+    case 'array':
+      if (!arrayValues) throw new RangeError(`The values of the array ${definition.sha256} are needed for this ground truth.`);
+      return arrayField(definition, arrayValues);
+    case 'shapes': {
+      const { background } = definition;
+      const fields = definition.shapes.map((shape, i) => {
+        try {
+          return shapeField(shape);
+        } catch (cause) {
+          throw new RangeError(`Shape ${i + 1} (${shape.label}): ${cause instanceof Error ? cause.message : String(cause)}`, { cause });
+        }
+      });
+      const values = definition.shapes.map((shape) => shape.value);
+      return {
+        background,
+        interfaces: fields.flatMap((field) => field.interfaces),
+        piecewiseConstant: fields.every((field) => field.piecewiseConstant),
+        targets: definition.shapes.flatMap((shape, i) =>
+          shape.target ? [{ label: shape.label, x: fields[i].x, y: fields[i].y, area: fields[i].area, contrast: shape.value - background }] : [],
+        ),
+        valueAt(x, y) {
+          let value = background;
+          for (let i = 0; i < fields.length; i++) {
+            const weight = fields[i].weightAt(x, y);
+            if (weight === 1) value = values[i];
+            else if (weight > 0) value += weight * (values[i] - value);
+          }
+          return value;
+        },
+      };
+    }
+  }
+}
