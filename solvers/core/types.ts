@@ -111,6 +111,11 @@ export interface Reconstruction {
   readonly iterations: number;
   readonly forwardSolves: number;
   readonly stop: StopReason;
+  /**
+   * Euclidean norm of (data - model(x)): the linearised model for linear methods (computed in coefficients), the full model
+   * for nonlinear ones.
+   */
+  readonly residualNorm: number;
 }
 
 export interface ReconstructContext {
@@ -194,6 +199,8 @@ export interface Method<P = Record<string, number | string>> {
   readonly fields: readonly ParameterField[];
   readonly capabilities: MethodCapabilities;
   readonly defaultRule: RuleSetting | null;
+  /** What the value of the rule 'fixed' means for this method (alpha over sigma_1, an index, a count); null without rules. */
+  readonly fixedValue: ParameterField | null;
   /** Pays once for factorisations. Throws `RangeError` naming both shapes, or what does not fit. */
   prepare(problem: ForwardProblem, parameters: P, rule: RuleSetting | null): Reconstructor;
 }
@@ -238,7 +245,7 @@ export interface Metric {
   readonly short: string;
   /** Printed unit; '' for a pure number. */
   readonly unit: string;
-  readonly better: 'lower' | 'higher' | 'one';
+  readonly better: 'lower' | 'higher' | 'one' | 'zero';
   /** LaTeX. */
   readonly formula: string;
   readonly summary: string;

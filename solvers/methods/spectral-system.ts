@@ -1,0 +1,115 @@
+/**
+ * A linearised problem in standard form, J = derivative of the model at the background:
+ * min ||J h - y||^2 + alpha^2 ||L h||^2 with L^T L (+ a small mass) = R^T R becomes min ||A z - y||^2 + alpha^2 ||z||^2 with
+ * A = J R^{-1} = U S V^T, h = R^{-1} z (Elden 1977). Every method works on the coefficients u_i^T y; one product with the basis
+ * R^{-1} V gives the unknowns.
+ */
+import type { ForwardProblem, PenaltyKey } from '../core/types';
+import { requireVector } from '../core/vector';
+import { thinSvd } from '../linear-algebra/thin-svd';
+import type { SpectralData } from '../parameter-choice/spectral-data';
+import { addExpansion } from './data-term';
+import { factorPenalty } from './penalty';
+
+/** 'none' leaves the unknowns as they are (R = I, no weights). */
+export type StandardForm = PenaltyKey | 'none';
+
+export interface SpectralSystem {
+  readonly dataSize: number;
+  readonly unknowns: number;
+  /** Numerical rank r: singular values above max(m, n) 2^-52 sigma_1. */
+  readonly rank: number;
+  /** Descending, length r. */
+  readonly singularValues: Float64Array;
+  /** U, dataSize x leftColumns, row-major. */
+  readonly left: Float64Array;
+  readonly leftColumns: number;
+  /** Row k is R^{-1} v_k, rank x unknowns, row-major. */
+  readonly basis: Float64Array;
+  readonly background: Float64Array;
+  /** Model of the background in the data kind; zero for difference data. */
+  readonly offset: Float64Array;
+}
+
+const cache = new WeakMap<ForwardProblem, Map<StandardForm, SpectralSystem>>();
+
+/**
+ * The system of a problem, computed once a problem object and form.
+ * Cost: one derivative, one sparse factorisation, m half solves, one SVD of m x n; memory (m + r) n doubles.
+ * @throws RangeError where the derivative is zero or not finite, or shapes do not fit
+ */
+export function spectralSystem(problem: ForwardProblem, form: StandardForm): SpectralSystem {
+  let forms = cache.get(problem);
+  if (!forms) cache.set(problem, (forms = new Map()));
+  let system = forms.get(form);
+  if (!system) forms.set(form, (system = computeSystem(problem, form)));
+  return system;
+}
+
+function computeSystem(problem: ForwardProblem, form: StandardForm): SpectralSystem {
+  const { dataSize, unknowns } = problem;
+  const background = problem.background();
+  requireVector(background, unknowns, 'The background');
+  const jacobian = problem.linearise(background);
+  if (jacobian.rows !== dataSize || jacobian.cols !== unknowns)
+    throw new RangeError(`The derivative is ${jacobian.rows} x ${jacobian.cols}, the problem ${dataSize} x ${unknowns}.`);
+  const matrix = Float64Array.from(jacobian.values);
+  requireVector(matrix, dataSize * unknowns, 'The derivative');
+  const factor = form === 'none' ? null : factorPenalty(problem, form);
+  // The rows of J are the right-hand sides of R^{-T}.
+  factor?.halfSolveMany(matrix, dataSize, 'forward');
+  const { u, s, v } = thinSvd(matrix, dataSize, unknowns);
+  const leftColumns = s.length;
+  const floor = Math.max(dataSize, unknowns) * 2.220446049250313e-16 * s[0];
+  let rank = 0;
+  while (rank < leftColumns && s[rank] > floor) rank++;
+  if (rank === 0) throw new RangeError('The derivative at the background is zero: these data do not depend on the unknowns.');
+  const basis = new Float64Array(rank * unknowns);
+  for (let k = 0; k < rank; k++) for (let j = 0; j < unknowns; j++) basis[k * unknowns + j] = v[j * leftColumns + k];
+  factor?.halfSolveMany(basis, rank, 'backward');
+  const offset = problem.dataKind === 'difference' ? new Float64Array(dataSize) : problem.evaluate(background);
+  return { dataSize, unknowns, rank, singularValues: s.slice(0, rank), left: u, leftColumns, basis, background, offset };
+}
+
+/**
+ * Coefficients of one frame: u_i^T (data - offset) and the squared norm outside the first r of them.
+ * @throws RangeError for a wrong length or a value that is not finite
+ */
+export function frameSpectrum(system: SpectralSystem, data: Float64Array): SpectralData {
+  const { dataSize, left, leftColumns, offset, rank } = system;
+  requireVector(data, dataSize, 'The data frame');
+  const c = new Float64Array(leftColumns);
+  for (let i = 0; i < dataSize; i++) {
+    const y = data[i] - offset[i];
+    const row = i * leftColumns;
+    for (let k = 0; k < leftColumns; k++) c[k] += left[row + k] * y;
+  }
+  let outside = 0;
+  for (let k = rank; k < leftColumns; k++) outside += c[k] * c[k];
+  if (leftColumns < dataSize) {
+    // More data than unknowns: what U does not span is found entry by entry, without cancellation of two large norms.
+    for (let i = 0; i < dataSize; i++) {
+      let r = data[i] - offset[i];
+      const row = i * leftColumns;
+      for (let k = 0; k < leftColumns; k++) r -= left[row + k] * c[k];
+      outside += r * r;
+    }
+  }
+  return { singularValues: system.singularValues, coefficients: c, outside, dataSize };
+}
+
+/** True where the frame equals the background's: there is nothing to reconstruct. */
+export function isZeroFrame(frame: SpectralData): boolean {
+  if (frame.outside !== 0) return false;
+  for (let k = 0; k < frame.singularValues.length; k++) if (frame.coefficients[k] !== 0) return false;
+  return true;
+}
+
+/** background + sum over k < count of d_k R^{-1} v_k; each entry is summed in ascending k. Cost: count * n multiply-adds. */
+export function expandCoefficients(system: SpectralSystem, d: Float64Array, count: number): Float64Array {
+  const { unknowns: n, basis, background } = system;
+  const x = new Float64Array(n);
+  addExpansion(basis, n, d, count, x);
+  for (let j = 0; j < n; j++) x[j] += background[j];
+  return x;
+}

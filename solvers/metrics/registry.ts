@@ -1,0 +1,31 @@
+import { findByKey } from '../core/registry';
+import type { MetricInput, MetricValue } from '../core/types';
+import { amplitudeResponse } from './amplitude-response';
+import { dataResidualRatio } from './data-residual-ratio';
+import { summarise, type MetricDefinition } from './metric-definition';
+import { positionError } from './position-error';
+import { radialPositionDifference } from './radial-position-difference';
+import { relativeL1Error } from './relative-l1-error';
+import { relativeL2Error } from './relative-l2-error';
+import { relativeSupError } from './relative-sup-error';
+import { resolution } from './resolution';
+import { supError } from './sup-error';
+
+export const metrics: readonly MetricDefinition[] = [
+  relativeL2Error, supError, relativeSupError, relativeL1Error, positionError, radialPositionDifference, resolution, amplitudeResponse, dataResidualRatio,
+];
+
+/** @throws RangeError for an unknown key. */
+export const getMetric = (key: string): MetricDefinition => findByKey(metrics, key, 'metric');
+
+/**
+ * Every registered metric of one image, by key.
+ * Cost: one pass over the pixels, and one or two more where targets are declared.
+ * @throws RangeError where the images have different lengths or are not finite
+ */
+export function evaluateMetrics(input: MetricInput): Record<string, MetricValue> {
+  const summary = summarise(input);
+  const values: Record<string, MetricValue> = {};
+  for (const metric of metrics) values[metric.key] = metric.fromSummary(summary);
+  return values;
+}
