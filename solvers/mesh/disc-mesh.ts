@@ -19,6 +19,8 @@ export interface DiscMeshSpec {
   readonly grading: number;
   readonly hMin: number;
   readonly hMax: number;
+  /** Grading right at the ends; between them and half the smallest gap of two ends it falls to `grading`. */
+  readonly tipGrading?: number;
   /** Curves that edges of the mesh follow. */
   readonly interfaces?: readonly MeshInterface[];
   /** Largest edge on an interface; `hMax` when left out. */
@@ -83,6 +85,8 @@ export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
     grading,
     minimum: hMin,
     maximum: hMax,
+    relief: halfGap(ends),
+    tipGrading: Math.max(grading, spec.tipGrading ?? grading),
     sources: features.sources,
     sourceSlope: spec.growth ?? 0.3,
     corners: features.corners,
@@ -135,6 +139,13 @@ function sortedAngles(angles: readonly number[]): number[] {
     if (gap < 1e-5) throw new RangeError(`Two electrode ends lie ${gap} rad apart.`);
   }
   return sorted;
+}
+
+/** Half the smallest angle between two neighbouring ends. */
+function halfGap(ends: readonly number[]): number {
+  let smallest = twoPi;
+  for (let i = 0; i < ends.length; i++) smallest = Math.min(smallest, (i + 1 < ends.length ? ends[i + 1] : ends[0] + twoPi) - ends[i]);
+  return 0.5 * smallest;
 }
 
 /** Adds the places where interfaces leave the disc to the fixed angles, unless another fixed node is near. */

@@ -11,6 +11,14 @@ export interface SizeFieldSpec {
   readonly grading: number;
   readonly minimum: number;
   readonly maximum: number;
+  /**
+   * Nearer than `relief` to a centre the grading grows as (relief / distance)^(1/4), up to `tipGrading`: the energy of a
+   * square-root singularity in a ring falls with its radius, so that small rings need fewer elements for their share of the
+   * error. Balancing (energy x h^4) against the number of elements gives the exponent 1/6; 1/4 costs fewer elements at the
+   * same error (measured on the reference voltages).
+   */
+  readonly relief?: number;
+  readonly tipGrading?: number;
   /** Further places that ask for small elements; the size grows with slope `sourceSlope` away from them. */
   readonly sources?: readonly SizeSource[];
   readonly sourceSlope?: number;
@@ -35,12 +43,15 @@ export class SizeField {
   private readonly corners: Float64Array;
   private readonly grid: Float64Array | null;
   private readonly cell = 2.2 / (gridSide - 1);
-  /** Corner indices by cell of a coarse bucket grid would not pay below a few thousand corners. */
+  private readonly relief: number;
+  private readonly tipGrading: number;
   private readonly cornerGrading: number;
   private readonly cornerMinimum: number;
 
   constructor(private readonly spec: SizeFieldSpec) {
     this.centres = spec.centres;
+    this.relief = spec.relief ?? 0;
+    this.tipGrading = spec.tipGrading ?? spec.grading;
     this.corners = spec.corners ?? new Float64Array(0);
     this.cornerGrading = spec.cornerGrading ?? spec.grading;
     this.cornerMinimum = spec.cornerMinimum ?? spec.minimum;
@@ -64,7 +75,10 @@ export class SizeField {
       const d = dx * dx + dy * dy;
       if (d < nearest) nearest = d;
     }
-    let size = Math.min(spec.maximum, Math.max(spec.minimum, spec.grading * Math.sqrt(nearest)));
+    const d = Math.sqrt(nearest);
+    let share = spec.grading;
+    if (this.relief > d && d > 0) share = Math.min(this.tipGrading, share * Math.sqrt(Math.sqrt(this.relief / d)));
+    let size = Math.min(spec.maximum, Math.max(spec.minimum, share * d));
     if (corners.length > 0) {
       let corner = Infinity;
       for (let i = 0; i < corners.length; i += 2) {

@@ -1,4 +1,3 @@
-import type { EitGeometry } from '../../../shared/domain/phantom-definition';
 import { meshDisc, type TriangleMesh } from '../../mesh/disc-mesh';
 import type { MeshInterface } from '../../mesh/interface-graph';
 import { quadraticMesh, type QuadraticMesh } from '../../mesh/quadratic-mesh';
@@ -9,6 +8,8 @@ import type { ElectrodeFrame } from './electrodes';
 export interface SimulationDetail {
   /** Edge over the distance to the nearest electrode end, and its lower bound. */
   readonly grading: number;
+  /** The same right at the ends. */
+  readonly tipGrading: number;
   readonly hMin: number;
   readonly hMax: number;
   readonly interfaceSize: number;
@@ -28,13 +29,14 @@ export type DetailLevel = 'coarse' | 'normal' | 'fine';
  */
 export function simulationDetail(contact: number, level: DetailLevel = 'normal'): SimulationDetail {
   const factor = level === 'coarse' ? 1.6 : level === 'fine' ? 0.6 : 1;
-  const hMin = Math.min(1e-3, Math.max(1e-5, 0.25 * contact));
+  const hMin = Math.min(5e-4, Math.max(1e-5, 0.15 * contact));
   return {
-    grading: 0.5 * factor,
+    grading: 0.18 * factor,
+    tipGrading: 0.5,
     hMin: hMin * factor,
-    hMax: 0.15 * factor,
-    interfaceSize: 0.08 * factor,
-    curvatureShare: 0.3 * factor,
+    hMax: 0.12 * factor,
+    interfaceSize: 0.035 * factor,
+    curvatureShare: 0.25 * factor,
     cornerGrading: 0.5 * factor,
     cornerMinimum: 2e-3 * factor,
     growth: 0.3,
