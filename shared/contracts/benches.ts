@@ -19,12 +19,17 @@ export const benchCreateSchema = z.strictObject({
   seed: z.int().min(0).max(4_294_967_295), rankingMetric: metricKeySchema.default('relative-l2-error'),
 });
 export type BenchCreate = z.input<typeof benchCreateSchema>;
+/** PUT /benches/:slug, while it is a draft. */
+export const benchUpdateSchema = benchCreateSchema.omit({ group: true });
+export type BenchUpdate = z.input<typeof benchUpdateSchema>;
 export const benchParamsSchema = z.strictObject({ slug: slugSchema });
 export const benchListQuerySchema = z.strictObject({
   q: z.string().max(100).optional(), state: benchStateSchema.optional(), family: familyKeySchema.optional(), group: slugSchema.optional(),
   cursor: z.string().max(200).optional(), limit: z.coerce.number<string>().int().min(1).max(100).default(50),
 });
+/** POST /benches/:slug/entries answers with the bench. */
 export const entryCreateSchema = z.strictObject({ solver: slugSchema, version: z.int().min(1) });
+export const costQuerySchema = z.strictObject({ method: z.string().max(60) });
 /** GET /benches/:slug/cost?method=...: what an entry will take, from runs of the same method here and elsewhere. */
 export const costEstimateSchema = z.object({
   reconstructions: z.int(), processorSeconds: z.number().nullable(), queuePosition: z.int(), readyAt: dateTimeSchema.nullable(), basis: z.string(),
@@ -99,3 +104,7 @@ export const seriesSchema = z.object({
   })),
 });
 export type Series = z.infer<typeof seriesSchema>;
+
+/** GET /benches/:slug/citation: how to cite the bench as it stands. */
+export const citationSchema = z.object({ bibtex: z.string(), plain: z.string(), contentHash: hashSchema, revision: z.int(), caution: z.array(z.string()) });
+export type Citation = z.infer<typeof citationSchema>;

@@ -32,6 +32,8 @@ export const methodSchema = z.object({
     families: z.array(familyKeySchema), dataKinds: z.array(z.enum(dataKinds)), rules: z.array(z.string()),
   }),
   defaultRule: z.record(z.string(), z.union([z.string(), z.number()])).nullable(),
+  /** What the value of the rule 'fixed' means for this method. */
+  fixedValue: parameterFieldSchema.nullable(),
 });
 export type MethodWire = z.infer<typeof methodSchema>;
 
@@ -46,6 +48,8 @@ export const ruleSchema = z.object({
   /** The rule is told the norm of the noise. */
   usesNoiseLevel: z.boolean(),
   fields: z.array(parameterFieldSchema),
+  /** How this code settles what sources leave open. */
+  conventions: z.array(z.string()),
   /** Keys of the methods that accept it. */
   methods: z.array(z.string()),
 });

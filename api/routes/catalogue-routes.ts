@@ -1,0 +1,28 @@
+import { checkListSchema, methodListSchema, metricListSchema, noiseModelListSchema, ruleListSchema } from '../../shared/contracts/catalogue.ts';
+import { defineRoute, type Route } from '../http/define-route.ts';
+import { listChecks, listMethods, listMetrics, listNoiseModels, listRules } from '../services/catalogue/catalogue.ts';
+
+const tag = 'catalogue';
+
+const readMethods = defineRoute({
+  method: 'get', path: '/methods', tag, summary: 'Every method: formula, sources, parameters as fields and as JSON Schema',
+  permission: 'public', response: methodListSchema, handle: () => ({ items: listMethods() }),
+});
+const readMetrics = defineRoute({
+  method: 'get', path: '/metrics', tag, summary: 'Every metric: formula, unit, which direction is better, traps, sources',
+  permission: 'public', response: metricListSchema, handle: () => ({ items: listMetrics() }),
+});
+const readRules = defineRoute({
+  method: 'get', path: '/rules', tag, summary: 'Every parameter-choice rule, and the methods that accept it',
+  permission: 'public', response: ruleListSchema, handle: () => ({ items: listRules() }),
+});
+const readNoiseModels = defineRoute({
+  method: 'get', path: '/noise-models', tag, summary: 'Every noise model',
+  permission: 'public', response: noiseModelListSchema, handle: () => ({ items: listNoiseModels() }),
+});
+const readChecks = defineRoute({
+  method: 'get', path: '/checks', tag, summary: 'Every check: what it measures, its bound, its source',
+  permission: 'public', response: checkListSchema, handle: () => ({ items: listChecks() }),
+});
+
+export const catalogueRoutes: readonly Route[] = [readMethods, readMetrics, readRules, readNoiseModels, readChecks];

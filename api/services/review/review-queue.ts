@@ -1,0 +1,103 @@
+import type { EntityManager } from '@mikro-orm/sqlite';
+import type { z } from 'zod';
+import type { reviewQueueSchema } from '../../../shared/contracts/runs';
+import { can, type Actor } from '../../../shared/domain/permissions.ts';
+import { MembershipEntity } from '../../entities/group.ts';
+import { PhantomVersionEntity } from '../../entities/phantom.ts';
+import { CommentEntity, RunEntity } from '../../entities/run.ts';
+import { SimulationEntity } from '../../entities/simulation.ts';
+import { loadRunFigures } from '../figures/load-run-figures.ts';
+import { runGroup, runParts, runSubject, type LoadedRun } from '../runs/find-run.ts';
+import { toRunSummary } from '../runs/run-summary.ts';
+
+type Queue = z.input<typeof reviewQueueSchema>;
+const dayMs = 86_400_000;
+
+/** Finished runs without a verdict and submitted phantom versions, the longest wait first. */
+export async function readReviewQueue(em: EntityManager, input: { readonly actor: Actor; readonly now: Date }): Promise<Queue> {
+  const { actor, now } = input;
+  const runs = await waitingRuns(em);
+  const comments = await em.find(CommentEntity, { run: { $in: runs.map((run) => run.id) } }, { populate: ['by'], orderBy: { createdAt: 'asc', id: 'asc' } });
+  const members = new Map<string, Set<string>>();
+  for (const membership of await em.find(MembershipEntity, { group: { $in: [...new Set(runs.map((run) => runGroup(run).id))] } })) {
+    members.set(membership.group.id, (members.get(membership.group.id) ?? new Set()).add(membership.user.id));
+  }
+  const rows: Queue['runs'] = [];
+  for (const run of runs) {
+    const notes = comments.filter((comment) => comment.run.id === run.id);
+    const own = members.get(runGroup(run).id) ?? new Set();
+    const last = notes.at(-1);
+    rows.push({
+      ...toRunSummary(run, now),
+      waitingDays: waitingDays(run.finishedAt ?? run.createdAt, now),
+      mayReview: can(actor, 'run.review', runSubject(run)),
+      reviewer: run.reviewer ? { handle: run.reviewer.$.handle } : null,
+      // A reviewer's question that nobody answered puts the run on the developer's side.
+      waitsFor: notes.some((note) => note.question && !note.answered && !own.has(note.by.id)) ? 'developer' : 'reviewer',
+      lastNote: last ? { by: { handle: last.by.$.handle }, at: last.createdAt.toISOString(), text: last.text } : null,
+      flags: await flagsOf(em, run),
+    });
+  }
+  return { runs: rows, phantoms: await waitingPhantoms(em, actor, now) };
+}
+
+/** What the actor can review now: runs that nobody else took up, and phantom versions. */
+export async function countWaiting(em: EntityManager, actor: Actor): Promise<number> {
+  const runs = await waitingRuns(em);
+  const mine = runs.filter((run) => can(actor, 'run.review', runSubject(run)) && (run.reviewer === null || run.reviewer === undefined || run.reviewer.id === actor.id));
+  const phantoms = await em.find(PhantomVersionEntity, { state: 'submitted' }, { populate: ['phantom'] });
+  return mine.length + phantoms.filter((version) => can(actor, 'phantom.review', { groupId: version.phantom.$.group.id })).length;
+}
+
+const waitingRuns = (em: EntityManager): Promise<LoadedRun[]> =>
+  em.find(RunEntity, { state: 'finished', review: { $in: ['unreviewed', 'in-review'] } }, { populate: runParts, orderBy: { finishedAt: 'asc', id: 'asc' }, strategy: 'select-in' });
+
+const waitingDays = (since: Date, now: Date): number => Math.max(0, (now.getTime() - since.getTime()) / dayMs);
+
+async function waitingPhantoms(em: EntityManager, actor: Actor, now: Date): Promise<Queue['phantoms']> {
+  const versions = await em.find(PhantomVersionEntity, { state: 'submitted' }, { populate: ['phantom.group', 'submittedBy', 'createdBy'], orderBy: { submittedAt: 'asc', id: 'asc' } });
+  const simulations = await em.find(SimulationEntity, { contentHash: { $in: versions.map((version) => version.definitionHash) } });
+  return versions.map((version) => {
+    const phantom = version.phantom.$;
+    const since = version.submittedAt ?? version.createdAt;
+    return {
+      slug: phantom.slug,
+      id: phantom.id,
+      name: version.name,
+      version: version.n,
+      group: { slug: phantom.group.$.slug, name: phantom.group.$.name },
+      submittedAt: since.toISOString(),
+      submittedBy: { handle: (version.submittedBy ?? version.createdBy).$.handle },
+      waitingDays: waitingDays(since, now),
+      mayReview: can(actor, 'phantom.review', { groupId: phantom.group.id }),
+      checks: simulations.find((simulation) => simulation.contentHash === version.definitionHash)?.checks ?? [],
+    };
+  });
+}
+
+/** What a reviewer looks at first, in words. */
+async function flagsOf(em: EntityManager, run: LoadedRun): Promise<string[]> {
+  const flags = (run.checks ?? []).filter(({ state }) => state === 'fail' || state === 'warning').map(({ name, state }) => `${name}: ${state}`);
+  const metric = run.entry.$.bench.$.rankingMetric;
+  const figures = await loadRunFigures(em, run);
+  const column = figures.values.get(metric);
+  const outliers = column ? countOutliers(column, figures.levels, figures.draws) : 0;
+  if (outliers > 0) flags.push(`${outliers} ${outliers === 1 ? 'draw' : 'draws'} beyond 3 sd`);
+  const trivial = run.trivial?.[metric];
+  const lowest = run.levelMedians[0];
+  if (typeof trivial === 'number' && typeof lowest === 'number' && lowest >= trivial) flags.push('no better than the trivial reconstruction at the lowest noise');
+  return flags;
+}
+
+/** Draws further than three standard deviations above the mean of their level. */
+export function countOutliers(column: Float64Array, levels: number, draws: number): number {
+  let outliers = 0;
+  for (let level = 0; level < levels; level++) {
+    const values = [...column.subarray(level * draws, (level + 1) * draws)].filter((value) => !Number.isNaN(value));
+    if (values.length < 3) continue;
+    const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
+    const sd = Math.sqrt(values.reduce((sum, value) => sum + (value - mean) * (value - mean), 0) / (values.length - 1));
+    outliers += values.filter((value) => value - mean > 3 * sd && sd > 0).length;
+  }
+  return outliers;
+}
