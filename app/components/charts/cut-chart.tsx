@@ -1,0 +1,57 @@
+import { formatNumber } from '../../lib/format';
+import { bandPath, linePath, Plot } from './plot';
+
+export interface CutPoint {
+  /** Place along the cut from A (negative) to B, m. */
+  position: number;
+  value: number | null;
+}
+export interface CutBand {
+  position: number;
+  low: number;
+  high: number;
+}
+
+interface CutChartProps {
+  label?: string;
+  unit: string;
+  truth: readonly CutPoint[] | null;
+  /** The image shown. */
+  image: readonly CutPoint[];
+  /** 5 to 95 % over draws, where known. */
+  band?: readonly CutBand[];
+  /** Colour of the solver's line, CSS. */
+  colour: string;
+  height?: number;
+}
+
+/** Values along the cut from A to B: truth dashed, the image solid, the draws' range as a band. */
+export function CutChart({ label = 'Values along the cut from A to B', unit, truth, image, band = [], colour, height = 292 }: CutChartProps) {
+  const values = [...(truth ?? []), ...image].flatMap((p) => (p.value === null ? [] : [p.value])).concat(band.flatMap((b) => [b.low, b.high]));
+  const least = values.length ? Math.min(...values) : 0;
+  const most = values.length ? Math.max(...values) : 1;
+  const pad = (most - least || Math.abs(most) || 1) * 0.12;
+  const low = least >= 0 ? Math.max(0, least - pad) : least - pad;
+  const r = Math.max(...image.map((p) => Math.abs(p.position)), 1e-9);
+  const ticks: [number, string][] = [[-r, 'A'], [-r / 2, '¼'], [0, 'centre'], [r / 2, '¾'], [r, 'B']];
+  const every = Math.max(1, Math.floor(image.length / 12));
+  return (
+    <Plot
+      label={label} height={height} margin={{ left: 40, right: 8, top: 8, bottom: 30 }}
+      x={{ low: -r, high: r, ticks }} y={{ low, high: most + pad, label: unit }}
+      tableHidden
+      table={{
+        caption: label, columns: ['Place, mm', 'Truth', 'Image'],
+        rows: image.filter((_, i) => i % every === 0).map((p, i) => [formatNumber(p.position * 1000), formatNumber(truth?.[i * every]?.value ?? null), formatNumber(p.value)]),
+      }}
+    >
+      {(a) => (
+        <g clipPath={a.clip}>
+          {band.length ? <path d={bandPath(band.map((b) => [a.x(b.position), a.y(b.high)]), band.map((b) => [a.x(b.position), a.y(b.low)]))} fill={colour} opacity=".22" /> : null}
+          {truth ? <path d={linePath(truth.map((p) => (p.value === null ? null : [a.x(p.position), a.y(p.value)])))} fill="none" stroke="var(--ink)" strokeWidth="1.8" strokeDasharray="6 3" /> : null}
+          <path d={linePath(image.map((p) => (p.value === null ? null : [a.x(p.position), a.y(p.value)])))} fill="none" stroke={colour} strokeWidth="2.4" />
+        </g>
+      )}
+    </Plot>
+  );
+}
