@@ -1,8 +1,8 @@
+import { domainEntities } from './all-domain-entities.ts';
 import { ApiTokenEntity } from './api-token.ts';
 import { AuditEntryEntity } from './audit-entry.ts';
 import { GroupEntity, InvitationEntity, MembershipEntity } from './group.ts';
 import { OutboxMessageEntity } from './outbox-message.ts';
-import { domainEntities } from './all-domain-entities.ts';
 import { SessionEntity } from './session.ts';
 import { UserEntity } from './user.ts';
 

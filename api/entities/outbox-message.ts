@@ -1,8 +1,6 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core';
+import { outboxStates } from '../../shared/contracts/outbox.ts';
 import { baseProperties } from './base.ts';
-
-export const outboxStates = ['waiting', 'kept', 'sent', 'failed'] as const;
-export type OutboxState = (typeof outboxStates)[number];
 
 /** A message is written in the transaction of the change that causes it, and delivered afterwards. */
 export const OutboxMessageEntity = defineEntity({

@@ -1,12 +1,13 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import type { RequestHandler } from 'express';
-import type { GroupRole, SiteRole } from '../../shared/domain/permissions.ts';
+import type { GroupRole } from '../../shared/domain/permissions.ts';
 import type { TokenScope } from '../../shared/domain/token-scopes.ts';
 import { AppError } from '../../shared/errors.ts';
 import type { Dependencies } from '../dependencies.ts';
 import { ApiTokenEntity } from '../entities/api-token.ts';
 import { MembershipEntity } from '../entities/group.ts';
 import { UserEntity, type User } from '../entities/user.ts';
+import { siteRolesOf } from '../services/accounts/site-roles.ts';
 import { secretHash } from '../services/secret-hash.ts';
 import type { RequestActor } from './actor.ts';
 
@@ -55,6 +56,3 @@ export async function actorOfUser(
   return { id: user.id, handle: user.handle, siteRoles: siteRolesOf(user), groups, via, scopes };
 }
 
-export function siteRolesOf(user: Pick<User, 'siteRoles'>): SiteRole[] {
-  return ['member', ...user.siteRoles.filter((role) => role !== 'member')];
-}

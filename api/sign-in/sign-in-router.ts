@@ -3,6 +3,7 @@ import passport from 'passport';
 import type { SignInFailure } from '../../shared/contracts/session.ts';
 import type { Dependencies } from '../dependencies.ts';
 import { renewSession, saveSession } from '../http/session.ts';
+import { appointFirstAdministrator } from '../services/accounts/site-roles.ts';
 import { signInAccount, type ProviderProfile } from '../services/accounts/sign-in-account.ts';
 import { localPath } from './local-path.ts';
 import { makeStrategy, type SignInProvider } from './github-strategy.ts';
@@ -43,7 +44,9 @@ export function signInRouter(deps: Dependencies, providerFor: (req: Request) => 
   async function finish(req: Request, profile: ProviderProfile): Promise<void> {
     // Roles come with a demonstration account only where the stand-in vouches for it.
     const standIn = deps.env.github ? undefined : deps.standInAccounts.find((account) => account.githubId === profile.githubId);
-    const user = await signInAccount(deps.orm.em.fork(), profile, deps.clock(), standIn?.siteRoles ?? []);
+    const em = deps.orm.em.fork();
+    const user = await signInAccount(em, profile, deps.clock(), standIn?.siteRoles ?? []);
+    if (deps.env.administrators.includes(profile.handle)) await appointFirstAdministrator(em, user, deps.clock());
     await renewSession(req);
     req.session.userId = user.id;
     await saveSession(req);
