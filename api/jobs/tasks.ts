@@ -1,0 +1,94 @@
+/** What the server asks of a worker thread, and what comes back: plain data that can be cloned or transferred. */
+import type { CheckResultWire } from '../../shared/contracts/common';
+import type { Configuration } from '../../shared/contracts/solvers';
+import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
+import type { SimulationSummary } from '../entities/simulation.ts';
+
+/** A phantom as a worker needs it. */
+export interface PhantomInput {
+  readonly definition: PhantomDefinition;
+  /** Values of the uploaded array, where the ground truth is one. */
+  readonly arrayValues: Float64Array | null;
+}
+
+/** A fault of the content, for the reader to correct. Faults of the server are thrown. */
+export interface Refusal {
+  readonly ok: false;
+  readonly message: string;
+  readonly path: readonly (string | number)[];
+}
+export type Answer<T> = ({ readonly ok: true } & T) | Refusal;
+
+export interface SimulateTask extends PhantomInput {
+  readonly checks: boolean;
+}
+export interface SimulationOutput {
+  readonly summary: SimulationSummary;
+  readonly frame: Float64Array;
+  readonly reference: Float64Array;
+  readonly clean: Float64Array;
+  readonly truthImage: Float64Array;
+  readonly checks: CheckResultWire[] | null;
+  readonly codeVersion: string;
+  readonly seconds: number;
+}
+
+/** Everything that decides the result of a run. */
+export interface RunInput extends PhantomInput {
+  /** Names the preparation in a worker's cache. */
+  readonly key: string;
+  readonly phantomHash: string;
+  readonly configuration: Configuration;
+  readonly ladder: readonly number[];
+  readonly draws: number;
+  readonly seed: number;
+  readonly noiseScale: number;
+  readonly clean: Float64Array;
+  readonly truthImage: Float64Array;
+}
+
+export interface SliceTask {
+  readonly run: RunInput;
+  readonly level: number;
+  readonly draws: readonly number[];
+}
+export interface TrialOutput {
+  readonly level: number;
+  readonly draw: number;
+  readonly metrics: Record<string, number | null>;
+  readonly reasons: Record<string, string> | null;
+  readonly supAt: [number, number] | null;
+  readonly parameter: number | null;
+  readonly iterations: number;
+  readonly forwardSolves: number;
+  readonly stop: string;
+  readonly noiseNorm: number;
+  readonly imageHash: string;
+  readonly image: Float64Array;
+}
+export interface SliceOutput {
+  readonly trials: readonly TrialOutput[];
+  /** Seconds of work in this slice, preparation left out. */
+  readonly seconds: number;
+  readonly prepareSeconds: number;
+}
+
+export interface RunChecksTask {
+  readonly run: RunInput;
+  /** Median of the relative L2 error at the lowest level, for the comparison with the trivial reconstruction. */
+  readonly lowestMedian: number | null;
+  /** Hashes of stored trials to recompute. */
+  readonly stored: readonly { readonly level: number; readonly draw: number; readonly imageHash: string }[];
+}
+export interface RunChecksOutput {
+  readonly checks: CheckResultWire[];
+  readonly trivial: Record<string, number | null>;
+  readonly secondsPerReconstruction: number;
+  readonly timeRatio: number | null;
+}
+
+export interface SensitivityTask {
+  readonly run: RunInput;
+  readonly level: number;
+  readonly draw: number;
+}
