@@ -1,0 +1,25 @@
+import type { CheckResultWire } from '../../../../shared/contracts/common';
+import { formatNumber, formatPercent } from '../../../lib/format';
+
+/** The reading of a check: its figure with its unit. */
+export function checkReading(check: Pick<CheckResultWire, 'figure' | 'unit' | 'state'>): string {
+  if (check.figure === null) return check.state === 'pass' ? 'yes' : '';
+  if (check.unit === '%') return formatPercent(check.figure / 100);
+  return check.unit ? `${formatNumber(check.figure, 2)} ${check.unit}` : formatNumber(check.figure, 2);
+}
+
+/** The bound in words, for the line under the name. */
+export function checkBound(check: Pick<CheckResultWire, 'bound' | 'comparison'>): string {
+  if (check.bound === null || check.comparison === null) return '';
+  const words = { 'at-most': 'at most', 'at-least': 'at least', equal: 'equal to' } as const;
+  return `${words[check.comparison]} ${formatNumber(check.bound, 2)}`;
+}
+
+/** Checks of a phantom in the order in which they settle, for the rows shown while they are waited for. */
+export const phantomCheckNames: readonly { name: string; how: string }[] = [
+  { name: 'Data finite and of the right shape', how: 'every value of both frames' },
+  { name: 'Reciprocity', how: 'swap drive and measurement' },
+  { name: 'Mesh convergence', how: 'a finer mesh of the same truth' },
+  { name: 'Discretisations differ', how: 'simulation against inversion' },
+  { name: 'Closed form', how: 'where the truth has one' },
+];

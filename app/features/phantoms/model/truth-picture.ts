@@ -1,0 +1,55 @@
+import type { Picture, PixelGrid } from '../../../components/images/pixels';
+import { rasterFunction } from './raster';
+
+/** Pixels a side of the pictures in the form. */
+export const pictureSide = 144;
+
+export function bodyGrid(radius: number, side = pictureSide): PixelGrid {
+  return { nx: side, ny: side, xMin: -radius, xMax: radius, yMin: -radius, yMax: radius, bodyRadius: radius };
+}
+
+/** Ends of the colour scale: the range of the truth and its background with a tenth to each side, never a flat scale. */
+export function colourRange(range: readonly [number, number] | null, background: number): [number, number] {
+  const low = Math.min(range?.[0] ?? background, background);
+  const high = Math.max(range?.[1] ?? background, background);
+  if (!(high - low > 1e-9 * Math.abs(high))) return [background * 0.5, background * 1.5];
+  const pad = (high - low) * 0.1;
+  return [low - pad > 0 ? low - pad : low * 0.9, high + pad];
+}
+
+/** Steepest change between neighbouring pixels, per body radius. */
+export function steepestSlope(picture: Picture): number {
+  const { grid, values } = picture;
+  const step = (grid.xMax - grid.xMin) / grid.nx;
+  let steepest = 0;
+  for (let j = 0; j < grid.ny - 1; j++) {
+    for (let i = 0; i < grid.nx - 1; i++) {
+      const at = values[j * grid.nx + i]!;
+      const right = values[j * grid.nx + i + 1]!;
+      const above = values[(j + 1) * grid.nx + i]!;
+      const slope = Math.hypot(right - at, above - at);
+      if (slope > steepest) steepest = slope;
+    }
+  }
+  return (steepest / step) * grid.bodyRadius;
+}
+
+interface Extent {
+  readonly xMin: number;
+  readonly xMax: number;
+  readonly yMin: number;
+  readonly yMax: number;
+}
+
+/** An uploaded array in its place on the body; rows run from the largest y down, outside its extent is the background. */
+export function arrayPicture(values: Float64Array, rows: number, cols: number, extent: Extent, radius: number, background: number, scale: number, offset: number): Picture {
+  const grid = bodyGrid(radius);
+  const at = (x: number, y: number): number => {
+    const col = Math.floor(((x - extent.xMin) / (extent.xMax - extent.xMin)) * cols);
+    const row = Math.floor(((extent.yMax - y) / (extent.yMax - extent.yMin)) * rows);
+    if (col < 0 || row < 0 || col >= cols || row >= rows) return background;
+    return offset + scale * values[row * cols + col]!;
+  };
+  return { grid, values: rasterFunction(at, radius, grid.nx) };
+}
+
