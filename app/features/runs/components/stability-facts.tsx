@@ -1,0 +1,52 @@
+import type { StabilitySheetWire } from '../../../../shared/contracts/common';
+import type { RunDetail } from '../../../../shared/contracts/runs';
+import { metrics } from '../../../../solvers/metrics/registry';
+import { formatError, formatPercent, formatSeconds } from '../../../lib/format';
+
+const interval = (v: { low: number; high: number } | null, print: (x: number) => string): string => (v ? `${print(v.low)} to ${print(v.high)}` : '');
+
+function breakdownWords(sheet: StabilitySheetWire): string {
+  if (sheet.breakdown) return formatPercent(sheet.breakdown.value);
+  if (sheet.breakdownNote === 'beyond') return 'beyond the ladder';
+  return sheet.breakdownNote === 'throughout' ? 'worse throughout' : '–';
+}
+
+/** Exponent, floor and breakdown of every metric where smaller is better. */
+export function StabilityFacts({ run }: { run: RunDetail }) {
+  const rows = metrics.flatMap((metric) => {
+    const sheet = run.sheets[metric.key];
+    return sheet ? [{ metric, sheet }] : [];
+  });
+  return (
+    <div className="sheet" style={{ overflowX: 'auto' }} tabIndex={0} role="region" aria-label="Stability sheet, scrolls sideways">
+      <table>
+        <thead>
+          <tr>
+            <th scope="col" style={{ paddingLeft: 16 }}>Metric</th>
+            <th scope="col">Model</th>
+            <th scope="col" className="num">Exponent ν<span>90 % interval</span></th>
+            <th scope="col" className="num">Floor b<span>90 % interval</span></th>
+            <th scope="col" className="num">Breakdown noise<span>90 % interval</span></th>
+            <th scope="col" style={{ paddingRight: 16 }}>Note</th>
+          </tr>
+        </thead>
+        <tbody>
+          {rows.map(({ metric, sheet }) => (
+            <tr key={metric.key}>
+              <th scope="row" className="row-name">{metric.short}{metric.unit ? `, ${metric.unit}` : ''}</th>
+              <td>{sheet.model === 'power' ? 'b + C δ^ν' : sheet.model === 'logarithmic' ? 'C |ln δ|^−κ' : '–'}</td>
+              <td className="num">{formatError(sheet.exponent?.value)}<span className="iv">{interval(sheet.exponent, formatError)}</span></td>
+              <td className="num">{formatError(sheet.floor?.value)}<span className="iv">{interval(sheet.floor, formatError)}</span></td>
+              <td className="num">{breakdownWords(sheet)}<span className="iv">{interval(sheet.breakdown, formatPercent)}</span></td>
+              <td className="sm" style={{ paddingRight: 16 }}>{sheet.reason ?? ''}</td>
+            </tr>
+          ))}
+          <tr>
+            <th scope="row" className="row-name">Time per reconstruction</th>
+            <td colSpan={5}>{formatSeconds(run.secondsPerReconstruction)}{run.timeRatio === null ? '' : `, ${run.timeRatio.toFixed(1)} × truncated SVD timed in the same worker`}</td>
+          </tr>
+        </tbody>
+      </table>
+    </div>
+  );
+}

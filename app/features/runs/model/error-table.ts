@@ -1,0 +1,56 @@
+import type { LevelStatistics } from '../../../../shared/contracts/common';
+import type { RunDetail } from '../../../../shared/contracts/runs';
+import { metrics } from '../../../../solvers/metrics/registry';
+
+/** Figures shown for a metric in the error table. */
+export interface TableGroup {
+  key: string;
+  name: string;
+  unit: string;
+  /** Factor from the stored value to the printed one (shares are printed in per cent). */
+  scale: number;
+  columns: readonly ('mean' | 'sd' | 'p05' | 'p95' | 'worst')[];
+  /** The dot strip of all draws follows. */
+  draws: boolean;
+  digits: 'error' | 'one';
+}
+
+const standing: Record<string, Partial<TableGroup>> = {
+  'relative-l2-error': { columns: ['mean', 'sd', 'p05', 'p95', 'worst'], draws: true },
+  'sup-error': { columns: ['mean', 'sd', 'worst'] },
+  'position-error': { columns: ['mean', 'worst'], unit: '% of radius', scale: 100, digits: 'one' },
+  resolution: { unit: '% of radius', scale: 100, digits: 'one' },
+};
+/** Groups shown before the reader chooses; relative L2 is always first and always there. */
+export const fixedGroup = 'relative-l2-error';
+export const standardGroups: ReadonlySet<string> = new Set(['sup-error', 'position-error']);
+
+/** Every metric that the run has a table for, in registry order. */
+export function tableGroups(run: Pick<RunDetail, 'table'>): TableGroup[] {
+  return metrics
+    .filter((metric) => run.table[metric.key])
+    .map((metric) => ({
+      key: metric.key, name: metric.short, unit: metric.unit, scale: 1, columns: ['mean', 'worst'] as const, draws: false, digits: 'error' as const, ...standing[metric.key],
+    }));
+}
+
+/** How many standard deviations the worst draw lies beyond the mean; null when it does not pass three. */
+export function outlier(row: LevelStatistics): { draw: number; deviations: number } | null {
+  if (row.worst === null || row.mean === null || !row.sd || row.worstDraw === null) return null;
+  const deviations = Math.abs(row.worst - row.mean) / row.sd;
+  return deviations > 3 ? { draw: row.worstDraw, deviations } : null;
+}
+
+/** Shade of an error cell, 0 to 0.38, by the logarithm of the error between a twentieth of and the trivial reconstruction. */
+export function shade(value: number | null, trivial: number | null): number {
+  if (value === null || value <= 0 || !trivial) return 0;
+  return Math.min(0.38, Math.max(0, (Math.log(value / (trivial * 0.05)) / Math.log(20)) * 0.38));
+}
+
+/** Index of the ladder level nearest to a noise, in the logarithm. */
+export function nearestLevel(ladder: readonly number[], noise: number): number {
+  let best = 0;
+  for (let i = 1; i < ladder.length; i++)
+    if (Math.abs(Math.log(ladder[i]! / noise)) < Math.abs(Math.log(ladder[best]! / noise))) best = i;
+  return best;
+}

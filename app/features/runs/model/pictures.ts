@@ -1,0 +1,46 @@
+import { difference, differenceLimit, insidePixels, largest, rangeOf, toPicture, type Picture, type PixelGrid } from '../../../components/images/pixels';
+
+export interface RunPictures {
+  image: Picture;
+  truth: Picture | null;
+  difference: Picture | null;
+  /** Shared scale of truth and reconstruction. */
+  low: number;
+  high: number;
+  /** Limit of the symmetric difference scale. */
+  limit: number;
+  /** Largest error and its place; null while the truth is sealed. */
+  spot: { value: number; x: number; y: number } | null;
+}
+
+/**
+ * The three pictures on their scales. Truth sets the common scale, so that it stays put while the noise moves; without a truth
+ * the image does. `lockedLimit` keeps the difference scale across noise levels.
+ */
+export function runPictures(imageValues: ArrayLike<number>, truthValues: ArrayLike<number> | null, grid: PixelGrid, background: number, lockedLimit: number | null): RunPictures {
+  const inside = insidePixels(grid);
+  const image = toPicture(imageValues, grid, inside);
+  const truth = truthValues ? toPicture(truthValues, grid, inside) : null;
+  const [least, greatest] = rangeOf([truth ?? image]);
+  // Room for overshoot on both sides, and for a truth that is nearly all background.
+  const margin = Math.max(0.1 * (greatest - least), 0.05 * Math.abs(background));
+  const delta = truth ? difference(image, truth) : null;
+  const spot = delta ? largest(delta) : null;
+  return {
+    image, truth, difference: delta, low: Math.min(least, background) - margin, high: Math.max(greatest, background) + margin,
+    limit: lockedLimit ?? differenceLimit(spot?.value ?? 1), spot,
+  };
+}
+
+/** Relative L2 against the contrast: ||image - truth|| / ||truth - background||; null for a truth that is all background. */
+export function relativeL2(image: Picture, truth: Picture, background: number): number | null {
+  let error = 0;
+  let contrast = 0;
+  image.values.forEach((value, i) => {
+    const t = truth.values[i] ?? NaN;
+    if (Number.isNaN(value) || Number.isNaN(t)) return;
+    error += (value - t) * (value - t);
+    contrast += (t - background) * (t - background);
+  });
+  return contrast > 0 ? Math.sqrt(error / contrast) : null;
+}
