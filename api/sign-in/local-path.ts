@@ -2,6 +2,7 @@
 export function localPath(value: unknown): string {
   if (typeof value !== 'string' || value.length > 500 || !/^\/(?![/\\])[^\\\p{Cc}]*$/u.test(value)) return '/';
   const url = new URL(value, 'http://local.invalid');
-  if (url.host !== 'local.invalid' || /^\/(auth|local-github|api)(\/|$)/.test(url.pathname)) return '/';
+  // Resolving dots can bring a double slash to the front: '/a/..//elsewhere' would leave the site.
+  if (url.host !== 'local.invalid' || url.pathname.startsWith('//') || /^\/(auth|local-github|api)(\/|$)/.test(url.pathname)) return '/';
   return `${url.pathname}${url.search}${url.hash}`;
 }

@@ -1,0 +1,5 @@
+import { foundationRouteCases } from './foundation-route-cases.ts';
+import type { RouteCases } from './route-case.ts';
+
+/** One case at least for every route in `allRoutes`. */
+export const routeCases: RouteCases = { ...foundationRouteCases };
