@@ -1,5 +1,5 @@
-import { sha256 } from '@noble/hashes/sha2.js';
 import { bytesToHex, utf8ToBytes } from '@noble/hashes/utils.js';
+import { sha256 } from './sha256';
 
 const littleEndianHost = new Uint8Array(new Uint32Array([1]).buffer)[0] === 1;
 

@@ -25,6 +25,6 @@ export const amplitudeResponse = defineMetric({
       absolute += Math.abs(area * contrast);
     }
     if (!(Math.abs(whole) > 1e-9 * absolute)) return undefinedMetric('The contrasts of the targets cancel.');
-    return { value: (s.quarter().sum * gridGeometry(s.input.grid).pixelArea) / whole };
+    return { value: (s.changeSum * gridGeometry(s.input.grid).pixelArea) / whole };
   },
 });

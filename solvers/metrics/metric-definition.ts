@@ -15,6 +15,10 @@ export interface ImageSummary {
   readonly signalSum: number;
   readonly signalSquares: number;
   readonly signalLargest: number;
+  /** Sum, largest and smallest value of estimate - background (0 counts). */
+  readonly changeSum: number;
+  readonly changeHighest: number;
+  readonly changeLowest: number;
   /** Computed when first asked for. */
   quarter(): QuarterAmplitude;
 }
@@ -36,10 +40,19 @@ export function summarise(input: MetricInput): ImageSummary {
   let signalSum = 0;
   let signalSquares = 0;
   let signalLargest = 0;
+  let changeSum = 0;
+  let changeHighest = 0;
+  let changeLowest = 0;
   for (let k = 0; k < count; k++) {
     const t = truth[k];
-    const error = Math.abs(estimate[k] - t);
-    const signal = Math.abs(t - background[k]);
+    const value = estimate[k];
+    const base = background[k];
+    const error = Math.abs(value - t);
+    const signal = Math.abs(t - base);
+    const change = value - base;
+    changeSum += change;
+    if (change > changeHighest) changeHighest = change;
+    if (change < changeLowest) changeLowest = change;
     errorSum += error;
     errorSquares += error * error;
     if (error > errorLargest) {
@@ -54,7 +67,7 @@ export function summarise(input: MetricInput): ImageSummary {
   let quarter: QuarterAmplitude | undefined;
   return {
     input, errorSum, errorSquares, errorLargest: Math.max(0, errorLargest), errorPlace, signalSum, signalSquares, signalLargest,
-    quarter: () => (quarter ??= quarterAmplitude(input)),
+    changeSum, changeHighest, changeLowest, quarter: () => (quarter ??= quarterAmplitude(input, changeHighest, changeLowest)),
   };
 }
 

@@ -24,8 +24,6 @@ export interface QuarterAmplitude {
   readonly reason?: string;
   /** Pixels in the set (of both signs together). */
   readonly count: number;
-  /** Sum over the body of (estimate - background), in the unit of the unknown. */
-  readonly sum: number;
   /** Spots that belong to no target. */
   readonly falseSpots: number;
 }
@@ -36,18 +34,10 @@ interface Spot {
   count: number;
 }
 
-export function quarterAmplitude(input: MetricInput): QuarterAmplitude {
-  const { estimate, background, targets } = input;
+/** @param highest, lowest of (estimate - background) over the body, 0 included */
+export function quarterAmplitude(input: MetricInput, highest: number, lowest: number): QuarterAmplitude {
+  const { targets } = input;
   const geometry = gridGeometry(input.grid);
-  let sum = 0;
-  let highest = 0;
-  let lowest = 0;
-  for (let k = 0; k < estimate.length; k++) {
-    const value = estimate[k] - background[k];
-    sum += value;
-    if (value > highest) highest = value;
-    if (value < lowest) lowest = value;
-  }
   const findings: TargetFinding[] = [];
   let count = 0;
   let falseSpots = 0;
@@ -56,16 +46,16 @@ export function quarterAmplitude(input: MetricInput): QuarterAmplitude {
     if (wanted.length === 0) continue;
     const peak = sign > 0 ? highest : -lowest;
     if (!(peak > 0))
-      return { findings: null, reason: `The image has no ${sign > 0 ? 'rise above' : 'fall below'} the background, as the target has.`, count: 0, sum, falseSpots: 0 };
+      return { findings: null, reason: `The image has no ${sign > 0 ? 'rise above' : 'fall below'} the background, as the target has.`, count: 0, falseSpots: 0 };
     const whole = wanted.length === 1 ? wholeSet(input, geometry, sign, 0.25 * peak) : null;
     const spots = whole ? [whole] : connectedSpots(input, geometry, sign, 0.25 * peak);
     for (const spot of spots) count += spot.count;
     findings.push(...match(wanted, spots));
     falseSpots += Math.max(0, largeSpots(spots).length - wanted.length);
   }
-  if (findings.length === 0) return { findings: null, reason: 'The declared targets have no contrast to the background.', count: 0, sum, falseSpots: 0 };
+  if (findings.length === 0) return { findings: null, reason: 'The declared targets have no contrast to the background.', count: 0, falseSpots: 0 };
   findings.sort((a, b) => targets.indexOf(a.target) - targets.indexOf(b.target));
-  return { findings, count, sum, falseSpots };
+  return { findings, count, falseSpots };
 }
 
 /** Centroid of the whole set, as for the single target of Adler et al. 2009. */

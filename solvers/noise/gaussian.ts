@@ -2,7 +2,7 @@ import { RandomStream, type DrawKey } from '../core/random';
 import { norm2 } from '../core/vector';
 import { requireNoiseInput, type NoiseModel, type NoisyData } from './noise-model';
 
-const boxMuller = { short: 'Box and Muller 1958', full: 'G. E. P. Box, M. E. Muller: A note on the generation of random normal deviates. Annals of Mathematical Statistics 29 (1958) 610-611.', fromMemory: true };
+const quantile = { short: 'Wichura 1988', full: 'M. J. Wichura: Algorithm AS 241: the percentage points of the normal distribution. Applied Statistics 37 (1988) 477-484 (normal values by the quantile of a uniform).', fromMemory: true };
 const philox = { short: 'Salmon et al. 2011', full: 'J. K. Salmon, M. A. Moraes, R. O. Dror, D. E. Shaw: Parallel random numbers: as easy as 1, 2, 3. SC11, 2011.', fromMemory: true };
 
 function drawGaussian(exact: boolean, clean: Float64Array, level: number, noiseScale: number, key: DrawKey): NoisyData {
@@ -23,7 +23,7 @@ export const gaussianNoise: NoiseModel = {
   name: 'Gaussian, exact level',
   summary: 'Independent normal values of equal variance, rescaled in every draw so that the norm of the noise is exactly the level times the reference norm.',
   formula: 'y^\\delta = y + \\delta\\,\\|y_{\\mathrm{ref}}\\|\\,\\frac{g}{\\|g\\|}, \\quad g \\sim \\mathcal{N}(0, I)',
-  sources: [boxMuller, philox],
+  sources: [philox, quantile],
   exact: true,
   draw: (clean, level, noiseScale, key) => drawGaussian(true, clean, level, noiseScale, key),
 };
@@ -34,7 +34,7 @@ export const gaussianExpectedNoise: NoiseModel = {
   name: 'Gaussian, level in expectation',
   summary: 'Independent normal values of equal variance; the mean square norm of the noise is the square of the level times the reference norm, and single draws scatter around it.',
   formula: 'y^\\delta = y + \\delta\\,\\frac{\\|y_{\\mathrm{ref}}\\|}{\\sqrt{m}}\\,g, \\quad g \\sim \\mathcal{N}(0, I)',
-  sources: [boxMuller, philox],
+  sources: [philox, quantile],
   exact: false,
   draw: (clean, level, noiseScale, key) => drawGaussian(false, clean, level, noiseScale, key),
 };

@@ -1,0 +1,15 @@
+/** The library's entry points: the registries, and what a worker or a browser calls. */
+export * from './core/types';
+export { canonicalJson, contentHash, sha256Hex } from './core/hash';
+export { deriveDrawKey, deriveKey, RandomStream, type DrawKey } from './core/random';
+
+export { methods, getMethod } from './methods/registry';
+export { readParameters, readRule } from './methods/parameters';
+export { parameterRules, getParameterRule } from './parameter-choice/registry';
+export { noiseModels, getNoiseModel } from './noise/registry';
+export { metrics, getMetric, evaluateMetrics } from './metrics/registry';
+
+export { prepareRun, runLevel, recomputeDraw, scoreImage, trivialMetrics, type PreparedRun, type RunConfiguration, type RunLevelOptions } from './campaign/run';
+export { runHash, type SimulatedPhantom, type LevelSeed, type Trial } from './campaign/trial';
+export { secondsPerReconstruction, timeBaseline } from './campaign/timing';
+export { errorAgainstParameter, picardData, type Sensitivity, type PicardData, type DrawOfLevel } from './campaign/sensitivity';
