@@ -2,8 +2,10 @@ import type { Route } from '../http/define-route.ts';
 import { accountRoutes } from './account-routes.ts';
 import { adminRoutes } from './admin-routes.ts';
 import { groupRoutes } from './group-routes.ts';
+import { overviewRoutes } from './overview-routes.ts';
 import { sessionRoutes } from './session-routes.ts';
 import { siteRoutes } from './site-routes.ts';
+import { solverRoutes } from './solver-routes.ts';
 
 /** Every route of the API. One that is not listed here does not exist. */
-export const allRoutes: readonly Route[] = [...siteRoutes, ...sessionRoutes, ...accountRoutes, ...groupRoutes, ...adminRoutes];
+export const allRoutes: readonly Route[] = [...siteRoutes, ...sessionRoutes, ...accountRoutes, ...groupRoutes, ...adminRoutes, ...solverRoutes, ...overviewRoutes];

@@ -38,7 +38,7 @@ export const methodSchema = z.object({
 export type MethodWire = z.infer<typeof methodSchema>;
 
 export const metricSchema = z.object({
-  key: z.string(), name: z.string(), short: z.string(), unit: z.string(), better: z.enum(['lower', 'higher', 'one']), formula: z.string(),
+  key: z.string(), name: z.string(), short: z.string(), unit: z.string(), better: z.enum(['lower', 'higher', 'one', 'zero']), formula: z.string(),
   summary: z.string(), sources: z.array(sourceSchema), traps: z.array(z.string()),
 });
 export type MetricWire = z.infer<typeof metricSchema>;

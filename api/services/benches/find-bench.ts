@@ -4,11 +4,14 @@ import { AppError } from '../../../shared/errors.ts';
 import { contentHash } from '../../../solvers/core/hash';
 import { BenchEntity, type Bench } from '../../entities/bench.ts';
 
-const populate = ['group', 'phantoms.phantomVersion.phantom', 'entries.solverVersion.solver.group'] as const;
-export type LoadedBench = Loaded<Bench, (typeof populate)[number]>;
+const parts = [
+  'group', 'phantoms', 'phantoms.phantomVersion', 'phantoms.phantomVersion.phantom',
+  'entries', 'entries.solverVersion', 'entries.solverVersion.solver', 'entries.solverVersion.solver.group',
+] as const;
+export type LoadedBench = Loaded<Bench, (typeof parts)[number]>;
 
 export async function findBench(em: EntityManager, slug: string): Promise<LoadedBench> {
-  const bench = await em.findOne(BenchEntity, { slug }, { populate, strategy: 'select-in' });
+  const bench = await em.findOne(BenchEntity, { slug }, { populate: parts, strategy: 'select-in' });
   if (!bench) throw new AppError('not-found', `No bench has the address '${slug}'.`);
   return bench;
 }

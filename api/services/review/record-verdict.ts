@@ -1,4 +1,4 @@
-import type { EntityManager } from '@mikro-orm/sqlite';
+import { ref, type EntityManager } from '@mikro-orm/sqlite';
 import type { z } from 'zod';
 import type { verdictCreateSchema } from '../../../shared/contracts/runs';
 import { mayMove, type Verdict } from '../../../shared/domain/states';
@@ -32,7 +32,7 @@ export async function recordVerdict(
   const group = runGroup(run);
   const before = run.review;
   run.review = given.verdict;
-  run.reviewer = em.getReference(UserEntity, actor.id, { wrapped: true });
+  run.reviewer = ref(await em.findOneOrFail(UserEntity, actor.id));
   run.reservation = given.verdict === 'signed-off-with-reservation' ? given.reason : null;
   em.create(VerdictEntity, {
     run: em.getReference(RunEntity, run.id),

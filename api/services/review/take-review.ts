@@ -1,4 +1,4 @@
-import type { EntityManager } from '@mikro-orm/sqlite';
+import { ref, type EntityManager } from '@mikro-orm/sqlite';
 import { AppError } from '../../../shared/errors.ts';
 import { UserEntity } from '../../entities/user.ts';
 import type { Acting } from '../acting.ts';
@@ -16,7 +16,7 @@ export async function takeReview(em: EntityManager, input: Acting & { readonly r
   }
   if (run.review !== 'unreviewed') throw new AppError('conflict', 'The run has its verdict already.');
   run.review = 'in-review';
-  run.reviewer = em.getReference(UserEntity, actor.id, { wrapped: true });
+  run.reviewer = ref(await em.findOneOrFail(UserEntity, actor.id));
   recordAudit(em, {
     actor, at: now, action: 'run.review-taken', subject: { type: 'run', id: run.id }, groupId: runGroup(run).id,
     before: { review: 'unreviewed' }, after: { review: 'in-review' }, requestId: input.requestId,

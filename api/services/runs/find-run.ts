@@ -3,7 +3,10 @@ import type { Subject } from '../../../shared/domain/permissions.ts';
 import { AppError } from '../../../shared/errors.ts';
 import { RunEntity, type Run } from '../../entities/run.ts';
 
-export const runParts = ['entry.bench', 'entry.solverVersion.solver.group', 'phantomVersion.phantom', 'submittedBy', 'reviewer'] as const;
+export const runParts = [
+  'entry', 'entry.bench', 'entry.solverVersion', 'entry.solverVersion.solver', 'entry.solverVersion.solver.group',
+  'phantomVersion', 'phantomVersion.phantom', 'submittedBy', 'reviewer',
+] as const;
 export type LoadedRun = Loaded<Run, (typeof runParts)[number]>;
 
 export async function findRun(em: EntityManager, id: string): Promise<LoadedRun> {
