@@ -33,6 +33,3 @@ export function cutPage<T extends { readonly createdAt: Date; readonly id: strin
   const more = rows.length > limit && last !== undefined;
   return { rows: page, nextCursor: more ? Buffer.from(JSON.stringify([last.createdAt.toISOString(), last.id])).toString('base64url') : null };
 }
-
-/** A LIKE pattern for text typed by a reader, with its wildcards taken literally; to be used with `escape '\\'`. */
-export const likePattern = (text: string): string => `%${text.replaceAll(/[\\%_]/g, (sign) => `\\${sign}`)}%`;
