@@ -126,32 +126,33 @@ export function bisectUntil(mesh: TriangleMesh, wanted: (x: number, y: number) =
       bisect(t);
     }
   }
-  return { mesh: numbered(xs, ys, corners, sides), parent: Int32Array.from(parent) };
+  return { mesh: numbered(xs, ys, corners), parent: Int32Array.from(parent) };
 }
 
-/** Puts the boundary vertices first, counter-clockwise from vertex 0. */
-function numbered(xs: readonly number[], ys: readonly number[], corners: readonly number[], sides: ReadonlyMap<number, readonly [number, number]>): TriangleMesh {
-  const following = new Map<number, number>();
-  const boundary = new Set<number>();
-  for (const pair of sides.values()) if (pair[1] < 0 || pair[0] < 0) boundary.add(Math.max(pair[0], pair[1]));
-  const stride = cornerStride(sides, corners);
-  for (const t of boundary)
-    for (let k = 0; k < 3; k++) {
-      const a = corners[3 * t + k];
-      const b = corners[3 * t + ((k + 1) % 3)];
-      const pair = sides.get(a < b ? a * stride + b : b * stride + a) as readonly [number, number];
-      if (pair[0] < 0 || pair[1] < 0) following.set(a, b);
-    }
-  const place = new Int32Array(xs.length).fill(-1);
+/** Puts the boundary vertices first, counter-clockwise from vertex 0 (a boundary vertex of the given mesh). */
+function numbered(xs: readonly number[], ys: readonly number[], corners: readonly number[]): TriangleMesh {
+  const total = xs.length;
+  // An edge lies on the boundary when no triangle runs along it the other way.
+  const directed = new Set<number>();
+  for (let k = 0; k < corners.length; k++) directed.add(corners[k] * total + corners[k % 3 === 2 ? k - 2 : k + 1]);
+  const following = new Int32Array(total).fill(-1);
+  for (let k = 0; k < corners.length; k++) {
+    const a = corners[k];
+    const b = corners[k % 3 === 2 ? k - 2 : k + 1];
+    if (!directed.has(b * total + a)) following[a] = b;
+  }
+  const place = new Int32Array(total).fill(-1);
   let count = 0;
-  for (let v = 0; place[v] < 0; v = following.get(v) as number) place[v] = count++;
+  for (let v = 0; v >= 0 && place[v] < 0; v = following[v]) place[v] = count++;
   const boundaryCount = count;
-  for (let v = 0; v < xs.length; v++) if (place[v] < 0) place[v] = count++;
-  const vertices = new Float64Array(2 * xs.length);
-  for (let v = 0; v < xs.length; v++) {
+  for (let v = 0; v < total; v++) if (place[v] < 0) place[v] = count++;
+  const vertices = new Float64Array(2 * total);
+  for (let v = 0; v < total; v++) {
     vertices[2 * place[v]] = xs[v];
     vertices[2 * place[v] + 1] = ys[v];
   }
   const triangles = Int32Array.from(corners, (v) => place[v]);
-  return { vertices, boundaryCount, triangles, interfaceEdges: new Int32Array(0), quality: qualityOf(vertices, triangles) };
+  let quality = 1;
+  for (let t = 0; t < triangles.length; t += 3) quality = Math.min(quality, qualityOf(vertices, triangles[t], triangles[t + 1], triangles[t + 2]));
+  return { vertices, boundaryCount, triangles, interfaceEdges: new Int32Array(0), quality };
 }
