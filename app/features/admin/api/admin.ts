@@ -6,8 +6,10 @@ import { queueSchema } from '../../../../shared/contracts/site';
 import type { SiteRole } from '../../../../shared/domain/permissions';
 import { api } from '../../../lib/api-client';
 
+export type GivableRole = Exclude<SiteRole, 'member'>;
 export const adminKeys = { all: ['admin'] as const };
-const first: string | undefined = undefined;
+/** The first page has no cursor. */
+const first = undefined as string | undefined;
 
 export const useUsers = (q: string) =>
   useInfiniteQuery({
@@ -18,7 +20,7 @@ export const useUsers = (q: string) =>
 export function useSetSiteRoles() {
   const client = useQueryClient();
   return useMutation({
-    mutationFn: ({ handle, siteRoles }: { handle: string; siteRoles: SiteRole[] }) => api.put(`/admin/users/${encodeURIComponent(handle)}/site-roles`, userSchema, { json: { siteRoles } }),
+    mutationFn: ({ handle, siteRoles }: { handle: string; siteRoles: GivableRole[] }) => api.put(`/admin/users/${encodeURIComponent(handle)}/site-roles`, userSchema, { json: { siteRoles } }),
     onSuccess: () => client.invalidateQueries({ queryKey: adminKeys.all }),
   });
 }

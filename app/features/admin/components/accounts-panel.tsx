@@ -1,6 +1,5 @@
 import { useState } from 'react';
 import type { UserWire } from '../../../../shared/contracts/account';
-import type { SiteRole } from '../../../../shared/domain/permissions';
 import { DataTable } from '../../../components/table/data-table';
 import { Button } from '../../../components/ui/button';
 import { Field } from '../../../components/ui/field';
@@ -8,9 +7,9 @@ import { Tag } from '../../../components/ui/layout';
 import { Empty, ErrorPanel, Loading } from '../../../components/ui/notices';
 import { useToast } from '../../../components/ui/toast';
 import { formatDate } from '../../../lib/format';
-import { useSetSiteRoles, useUsers } from '../api/admin';
+import { useSetSiteRoles, useUsers, type GivableRole } from '../api/admin';
 
-const givable = ['reviewer', 'administrator'] as const;
+const givable: readonly GivableRole[] = ['reviewer', 'administrator'];
 
 export function AccountsPanel() {
   const [q, setQ] = useState('');
@@ -18,8 +17,8 @@ export function AccountsPanel() {
   const setRoles = useSetSiteRoles();
   const toast = useToast();
   const rows = users.data?.pages.flatMap((page) => page.items) ?? [];
-  const change = (user: UserWire, role: SiteRole) => {
-    const held = user.siteRoles.filter((r) => r !== 'member');
+  const change = (user: UserWire, role: GivableRole) => {
+    const held = user.siteRoles.filter((r): r is GivableRole => r !== 'member');
     const siteRoles = held.includes(role) ? held.filter((r) => r !== role) : [...held, role];
     setRoles.mutate({ handle: user.handle, siteRoles }, { onSuccess: () => toast(`Site roles of ${user.handle}: ${siteRoles.join(', ') || 'member'}.`) });
   };
