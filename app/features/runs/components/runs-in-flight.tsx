@@ -1,3 +1,4 @@
+import '../../../styles/pages/runs-in-flight.css';
 import { Link } from 'react-router-dom';
 import type { RunSummary } from '../../../../shared/contracts/runs';
 import { defaultLadder } from '../../../../shared/domain/ladder';
