@@ -37,12 +37,14 @@ export function requestLog(logger: Logger): RequestHandler {
       res.setHeader('X-Request-Id', id);
       return id;
     },
+    // The wrapped ones would describe an error before describeError sees it.
+    wrapSerializers: false,
     serializers: {
       err: describeError,
-      req: (req: { id: unknown; method: string; url: string }) => ({
+      req: (req: { id: unknown; method: string; originalUrl: string }) => ({
         id: req.id,
         method: req.method,
-        url: req.url.replace(secretQuery, '$1hidden'),
+        url: req.originalUrl.replace(secretQuery, '$1hidden'),
       }),
       res: (res: { statusCode: number }) => ({ status: res.statusCode }),
     },

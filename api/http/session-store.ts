@@ -59,8 +59,7 @@ export class SqliteSessionStore extends Store {
   }
 
   #expiry(session: SessionData): Date {
-    const { expires, originalMaxAge } = session.cookie;
-    return expires ? new Date(expires) : new Date(this.#clock().getTime() + (originalMaxAge ?? touchEveryMs));
+    return new Date(this.#clock().getTime() + (session.cookie.originalMaxAge ?? touchEveryMs));
   }
 
   #run<T>(work: () => Promise<T>, callback?: (error: unknown, value?: T) => void): void {

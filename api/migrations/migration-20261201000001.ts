@@ -9,6 +9,10 @@ export class Migration20261201000001 extends Migration {
     this.addSql(
       "create trigger `audit_entry_no_delete` before delete on `audit_entry` begin select raise(abort, 'the audit trail is append-only'); end;",
     );
+    // `insert or replace` would delete the old row without firing the delete trigger.
+    this.addSql(
+      "create trigger `audit_entry_no_replace` before insert on `audit_entry` when exists (select 1 from `audit_entry` where `id` = new.`id`) begin select raise(abort, 'the audit trail is append-only'); end;",
+    );
   }
 
   override down(): void {

@@ -1,4 +1,4 @@
-import type { EntityManager } from '@mikro-orm/sqlite';
+import { raw, type EntityManager } from '@mikro-orm/sqlite';
 import type { UserWire } from '../../../shared/contracts/account.ts';
 import { defaultPageSize, type PageQuery } from '../../../shared/contracts/pagination.ts';
 import type { SiteRole } from '../../../shared/domain/permissions.ts';
@@ -20,11 +20,11 @@ export async function listUsers(
 ): Promise<{ items: UserWire[]; nextCursor: string | null }> {
   const limit = query.limit ?? defaultPageSize;
   const named = query.q === undefined || query.q === '' ? {} : { handle: { $like: `%${query.q.replaceAll(/[%_]/g, '')}%` } };
-  // Roles are a JSON list of fixed words, so the quoted word finds them.
-  const withRole = query.role === undefined || query.role === 'member' ? {} : { siteRoles: { $like: `%"${query.role}"%` } };
+  // Roles are a JSON list of fixed words, so the quoted word finds them; as a property the pattern would be made JSON too.
+  const withRole = query.role === undefined || query.role === 'member' ? {} : { [raw('site_roles')]: { $like: `%"${query.role}"%` } };
   const found = await em.find(
     UserEntity,
-    { $and: [named, withRole as object, afterPlace(readCursor(query.cursor))] },
+    { $and: [named, withRole, afterPlace(readCursor(query.cursor))] },
     { orderBy: newestFirst, limit: limit + 1 },
   );
   const { rows, nextCursor } = cutPage(found, limit);
