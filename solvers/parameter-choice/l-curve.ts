@@ -6,8 +6,9 @@ import { searchRange, truncationResiduals, type SpectralData } from './spectral-
 const gridPoints = 160;
 
 /**
- * Curvature of (ln ||A z - y||, ln ||z||) at alpha, in closed form (Hansen 1992): with rho = ||A z - y||^2, eta = ||z||^2 and
- * eta' = d eta / d alpha, kappa = 2 (eta rho / eta') (alpha^2 eta' rho + 2 alpha eta rho + alpha^4 eta eta') / (alpha^2 eta^2 + rho^2)^(3/2).
+ * Curvature of (ln ||A z - y||, ln ||z||) at alpha in closed form, positive at the corner. With rho = ||A z - y||^2, eta = ||z||^2 and
+ * d rho = -alpha^2 d eta it is
+ * kappa = -2 (eta rho / eta') (alpha^2 eta' rho + 2 alpha eta rho + alpha^4 eta eta') / (alpha^4 eta^2 + rho^2)^(3/2).
  */
 export function lCurveCurvature(data: SpectralData, alpha: number): number {
   const { singularValues: s, coefficients: c } = data;
@@ -26,8 +27,8 @@ export function lCurveCurvature(data: SpectralData, alpha: number): number {
   }
   if (eta === 0 || rho === 0 || slope === 0) return 0;
   slope *= -4 / alpha;
-  const base = a * eta * eta + rho * rho;
-  return (2 * ((eta * rho) / slope) * (a * slope * rho + 2 * alpha * eta * rho + a * a * eta * slope)) / (base * Math.sqrt(base));
+  const base = a * a * eta * eta + rho * rho;
+  return (-2 * ((eta * rho) / slope) * (a * slope * rho + 2 * alpha * eta * rho + a * a * eta * slope)) / (base * Math.sqrt(base));
 }
 
 /** Second derivatives at the knots 0, 1, 2, ... of the natural cubic spline through `y`. */
@@ -112,7 +113,7 @@ export const lCurveRule: ParameterRule = {
       const dy = splineSlope(y, y2, i);
       const speed = dx * dx + dy * dy;
       if (speed === 0) continue;
-      // Walking with growing k the corner turns from 'down' to 'right' reversed: x falls, y rises, so the sign is taken as x' y'' - x'' y' < 0.
+      // With growing k the residual falls, so the curve is walked from right to left: convex (a corner) is x'' y' - x' y'' > 0.
       const value = (x2[i] * dy - dx * y2[i]) / (speed * Math.sqrt(speed));
       if (value > bestValue) {
         bestValue = value;
