@@ -1,0 +1,68 @@
+import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire } from '../../../../shared/contracts/catalogue';
+
+export const kinds = ['metrics', 'methods', 'rules', 'noise', 'checks'] as const;
+export type Kind = (typeof kinds)[number];
+export const kindNames: Record<Kind, { many: string; line: string }> = {
+  metrics: { many: 'Metrics', line: 'figures of one reconstruction' },
+  methods: { many: 'Methods', line: 'algorithms that a configuration can use' },
+  rules: { many: 'Parameter-choice rules', line: 'how the regularisation parameter is found' },
+  noise: { many: 'Noise models', line: 'how a draw is made from clean data' },
+  checks: { many: 'Checks', line: 'validations of a problem, a phantom or a run' },
+};
+
+export interface Catalogue {
+  metrics: MetricWire[];
+  methods: MethodWire[];
+  rules: RuleWire[];
+  noise: NoiseModelWire[];
+  checks: CheckDescription[];
+}
+
+/** One entry of any registry in the shape that the definition page shows. */
+export interface Definition {
+  kind: Kind;
+  key: string;
+  name: string;
+  summary: string;
+  formula: string | null;
+  facts: (readonly [string, string])[];
+  fields: readonly ParameterFieldWire[];
+  notes: { title: string; items: readonly string[] };
+  sources: readonly SourceWire[];
+}
+
+const better = { lower: 'lower', higher: 'higher', one: 'near 1' } as const;
+const none = { title: '', items: [] };
+const capabilityWords = (method: MethodWire): string => (['linear', 'nonlinear', 'direct', 'statistical'] as const).filter((word) => method.capabilities[word]).join(', ');
+
+export function definitionsOf(kind: Kind, catalogue: Catalogue): Definition[] {
+  switch (kind) {
+    case 'metrics':
+      return catalogue.metrics.map((m) => ({
+        kind, key: m.key, name: m.name, summary: m.summary, formula: m.formula, fields: [], sources: m.sources, notes: { title: 'Traps', items: m.traps },
+        facts: [['Unit', m.unit || 'none'], ['Better', better[m.better]], ['Evaluated on', 'grid pixels inside the body'], ['Short name', m.short], ['Key', m.key]],
+      }));
+    case 'methods':
+      return catalogue.methods.map((m) => ({
+        kind, key: m.key, name: m.name, summary: m.summary, formula: m.formula, fields: m.fixedValue ? [...m.fields, m.fixedValue] : m.fields, sources: m.sources, notes: none,
+        facts: [['Class', m.class], ['Capabilities', capabilityWords(m)], ['Families', m.capabilities.families.join(', ')], ['Data', m.capabilities.dataKinds.join(', ')], ['Rules', m.capabilities.rules.join(', ') || 'none: no regularisation parameter'], ['Key', m.key]],
+      }));
+    case 'rules':
+      return catalogue.rules.map((r) => ({
+        kind, key: r.key, name: r.name, summary: r.summary, formula: r.formula, fields: r.fields, sources: r.sources, notes: { title: 'Conventions', items: r.conventions },
+        facts: [['Noise level', r.usesNoiseLevel ? 'told to the rule' : 'not used'], ['Accepted by', r.methods.join(', ')], ['Key', r.key]],
+      }));
+    case 'noise':
+      return catalogue.noise.map((n) => ({
+        kind, key: n.key, name: n.name, summary: n.summary, formula: n.formula, fields: [], sources: n.sources, notes: none,
+        facts: [['Level', n.exact ? 'exact in every draw' : 'in expectation'], ['Key', n.key]],
+      }));
+    case 'checks':
+      return catalogue.checks.map((c) => ({
+        kind, key: c.key, name: c.name, summary: c.summary, formula: null, fields: [], sources: c.sources, notes: none,
+        facts: [['Applies to', c.appliesTo.join(', ')], ['Bound', c.bound], ['Unit', c.unit || 'none'], ['Key', c.key]],
+      }));
+  }
+}
+
+export const asKind = (text: string | undefined): Kind | null => kinds.find((kind) => kind === text) ?? null;
