@@ -31,7 +31,7 @@ export interface Definition {
   sources: readonly SourceWire[];
 }
 
-const better = { lower: 'lower', higher: 'higher', one: 'near 1' } as const;
+const better = { lower: 'lower', higher: 'higher', one: 'near 1', zero: 'near 0' } as const;
 const none = { title: '', items: [] };
 const capabilityWords = (method: MethodWire): string => (['linear', 'nonlinear', 'direct', 'statistical'] as const).filter((word) => method.capabilities[word]).join(', ');
 
