@@ -2,12 +2,12 @@ import Constrainautor from '@kninnug/constrainautor';
 import Delaunator from 'delaunator';
 import { atan2, cos, sin } from '../core/math';
 import { boundaryAngles } from './boundary-points';
-import { interfaceFeatures } from './feature-sizes';
+import { interfaceFeatures, type InterfaceFeatures } from './feature-sizes';
 import { fillDisc } from './front-points';
 import { circleCrossing, InterfaceGraph, type MeshInterface } from './interface-graph';
 import { PointBuckets } from './point-buckets';
 import { repair } from './repair';
-import { SizeField } from './size-field';
+import { SizeField, type SizeSource } from './size-field';
 import { qualityOf } from './quality';
 import { relax } from './smoothing';
 
@@ -30,7 +30,9 @@ export interface DiscMeshSpec {
   /** Edge length over the distance to a corner of an interface, and its lower bound. */
   readonly cornerGrading?: number;
   readonly cornerMinimum?: number;
-  /** Growth of the edge length away from interfaces. */
+  /** Further places that ask for small edges. */
+  readonly sources?: readonly SizeSource[];
+  /** Growth of the edge length away from interfaces and sources. */
   readonly growth?: number;
   /** Counter seed of the small turns of the front; two meshes with other seeds share no interior vertex. */
   readonly seed?: number;
@@ -54,6 +56,7 @@ export interface TriangleMesh {
 }
 
 const twoPi = 2 * Math.PI;
+const fullyGradedCorners = 24;
 
 /**
  * Graded triangulation of the unit disc with the electrode ends as nodes and edges along the interfaces.
@@ -76,10 +79,12 @@ export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
   });
   const interfaceSize = Math.min(hMax, spec.interfaceSize ?? hMax);
   const floor = Math.max(hMin, Math.min(0.004, 0.25 * interfaceSize));
-  const features =
+  const features: InterfaceFeatures =
     interfaces.length > 0
       ? interfaceFeatures(interfaces, { interfaceSize, curvatureShare: spec.curvatureShare ?? 0.35, gapShare: 0.5, floor })
       : { sources: [], corners: new Float64Array(0) };
+  // Hundreds of corners share the elements that a few would get.
+  const crowd = Math.max(1, features.corners.length / (2 * fullyGradedCorners));
   const field = new SizeField({
     centres,
     grading,
@@ -87,11 +92,11 @@ export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
     maximum: hMax,
     relief: halfGap(ends),
     tipGrading: Math.max(grading, spec.tipGrading ?? grading),
-    sources: features.sources,
+    sources: [...features.sources, ...(spec.sources ?? [])],
     sourceSlope: spec.growth ?? 0.3,
     corners: features.corners,
-    cornerGrading: spec.cornerGrading ?? grading,
-    cornerMinimum: Math.max(hMin, spec.cornerMinimum ?? 0.002),
+    cornerGrading: Math.min(0.7, (spec.cornerGrading ?? grading) * Math.sqrt(crowd)),
+    cornerMinimum: (spec.cornerMinimum ?? 0.002) * crowd,
   });
   // A little less than the size asked for, since the curves give spacings of at most what they are asked.
   const polylines = interfaces.map((curve) => curve.points((x, y) => field.at(x, y)));

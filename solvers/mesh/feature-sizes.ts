@@ -1,4 +1,4 @@
-import type { MeshInterface } from './interface-graph';
+import { circleCrossing, type MeshInterface } from './interface-graph';
 import type { SizeSource } from './size-field';
 
 export interface FeatureSpec {
@@ -14,7 +14,10 @@ export interface FeatureSpec {
 
 export interface InterfaceFeatures {
   readonly sources: SizeSource[];
-  /** Corners of polygons inside the disc (x, y pairs). */
+  /**
+   * Where the potential is singular (x, y pairs): corners of polygons, crossings of two interfaces and of an interface with
+   * the boundary.
+   */
   readonly corners: Float64Array;
 }
 
@@ -33,6 +36,9 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
   const ny: number[] = [];
   const size: number[] = [];
   const owner: number[] = [];
+  /** Next sample along the same curve, to find crossings; -1 where it lies outside. */
+  const nextX: number[] = [];
+  const nextY: number[] = [];
   interfaces.forEach((curve, k) => {
     if (curve.corners) {
       const vertices = curve.points(() => 1e9);
@@ -46,9 +52,11 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
     for (let i = 0; i < n; i++) {
       const px = samples[2 * i];
       const py = samples[2 * i + 1];
-      if (px * px + py * py >= 1) continue;
       const a = (i + n - 1) % n;
       const b = (i + 1) % n;
+      const inside = px * px + py * py < 1;
+      if (inside !== samples[2 * b] * samples[2 * b] + samples[2 * b + 1] * samples[2 * b + 1] < 1) corners.push(...leaving(curve, px, py, samples[2 * b], samples[2 * b + 1]));
+      if (!inside) continue;
       const tx = samples[2 * b] - samples[2 * a];
       const ty = samples[2 * b + 1] - samples[2 * a + 1];
       const t = Math.sqrt(tx * tx + ty * ty);
@@ -70,6 +78,8 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
       ny.push(tx / t);
       size.push(h);
       owner.push(k);
+      nextX.push(samples[2 * b]);
+      nextY.push(samples[2 * b + 1]);
     }
   });
   const reach = spec.interfaceSize / spec.gapShare;
@@ -82,6 +92,10 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
       const d = Math.sqrt(dx * dx + dy * dy);
       // Neighbours along the same curve lie across its normal; an opposite side lies along it.
       if (owner[i] === owner[j] && (Math.abs(dx * nx[i] + dy * ny[i]) < 0.8 * d || Math.abs(dx * nx[j] + dy * ny[j]) < 0.8 * d)) continue;
+      if (owner[i] !== owner[j] && d < 0.1) {
+        const t = crossing(x[i], y[i], nextX[i], nextY[i], x[j], y[j], nextX[j], nextY[j]);
+        if (t >= 0) corners.push(x[i] + t * (nextX[i] - x[i]), y[i] + t * (nextY[i] - y[i]));
+      }
       const h = spec.gapShare * d;
       if (h < size[i]) size[i] = h;
       if (h < size[j]) size[j] = h;
@@ -90,6 +104,32 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
   const sources: SizeSource[] = [];
   for (let i = 0; i < x.length; i++) sources.push({ x: x[i], y: y[i], size: Math.max(spec.floor, size[i]) });
   return { sources, corners: Float64Array.from(corners) };
+}
+
+/** Where a curve meets the unit circle between two samples on either side of it. */
+function leaving(curve: MeshInterface, ax: number, ay: number, bx: number, by: number): [number, number] {
+  let [x, y] = circleCrossing(ax, ay, bx, by);
+  for (let i = 0; i < 3; i++) {
+    const [px, py] = curve.project(x, y);
+    const r = Math.sqrt(px * px + py * py);
+    if (!(r > 0.5)) break;
+    x = px / r;
+    y = py / r;
+  }
+  return [x, y];
+}
+
+/** Parameter along (a, b) of its crossing with (c, d), or -1. */
+function crossing(ax: number, ay: number, bx: number, by: number, cx: number, cy: number, dx: number, dy: number): number {
+  const ux = bx - ax;
+  const uy = by - ay;
+  const vx = dx - cx;
+  const vy = dy - cy;
+  const determinant = ux * vy - uy * vx;
+  if (determinant === 0) return -1;
+  const t = ((cx - ax) * vy - (cy - ay) * vx) / determinant;
+  const s = ((cx - ax) * uy - (cy - ay) * ux) / determinant;
+  return t >= 0 && t < 1 && s >= 0 && s < 1 ? t : -1;
 }
 
 function collectCorners(vertices: Float64Array, corners: number[]): void {

@@ -1,5 +1,6 @@
 import { meshDisc, type TriangleMesh } from '../../mesh/disc-mesh';
 import type { MeshInterface } from '../../mesh/interface-graph';
+import type { SizeSource } from '../../mesh/size-field';
 import { quadraticMesh, type QuadraticMesh } from '../../mesh/quadratic-mesh';
 import type { TruthField, TruthInterface } from '../../truth/truth-field';
 import type { ElectrodeFrame } from './electrodes';
@@ -17,7 +18,11 @@ export interface SimulationDetail {
   readonly cornerGrading: number;
   readonly cornerMinimum: number;
   readonly growth: number;
+  /** Largest relative change of a truth that varies between interfaces over one edge, and the smallest edge it may ask for. */
+  readonly variation: number;
+  readonly variationFloor: number;
   readonly seed: number;
+  readonly maxVertices: number;
 }
 
 export type DetailLevel = 'coarse' | 'normal' | 'fine';
@@ -37,10 +42,13 @@ export function simulationDetail(contact: number, level: DetailLevel = 'normal')
     hMax: 0.12 * factor,
     interfaceSize: 0.035 * factor,
     curvatureShare: 0.25 * factor,
-    cornerGrading: 0.5 * factor,
-    cornerMinimum: 2e-3 * factor,
+    cornerGrading: 0.35 * factor,
+    cornerMinimum: 3e-4 * factor,
     growth: 0.3,
+    variation: 0.25 * factor,
+    variationFloor: 0.005 * factor,
     seed: level === 'coarse' ? 3 : level === 'fine' ? 5 : 1,
+    maxVertices: level === 'fine' ? 90_000 : 30_000,
   };
 }
 
@@ -49,11 +57,76 @@ export interface SimulationMesh {
   readonly quadratic: QuadraticMesh;
 }
 
-/** Mesh of the unit disc in the electrode frame, conforming to the interfaces of the truth. */
-export function simulationMesh(truth: TruthField | null, frame: ElectrodeFrame, detail: SimulationDetail): SimulationMesh {
-  const interfaces = truth ? truth.interfaces.map((curve) => inFrame(curve, frame)) : [];
-  const triangles = meshDisc({ ends: frame.ends, interfaces, ...detail });
-  return { triangles, quadratic: quadraticMesh(triangles, interfaces) };
+/**
+ * Mesh of the unit disc in the electrode frame, conforming to the interfaces of the truth. A truth that would need more
+ * vertices than `maxVertices` gets larger elements, step by step.
+ */
+export function simulationMesh(truth: TruthField, frame: ElectrodeFrame, detail: SimulationDetail): SimulationMesh {
+  const interfaces = truth.interfaces.map((curve) => inFrame(curve, frame));
+  for (let attempt = 0; ; attempt++) {
+    // Coarser away from the electrode ends first: the grading towards them costs a fixed number of elements.
+    const f = [1, 1.4, 2, 3][attempt];
+    const sized = {
+      ...detail,
+      interfaceSize: detail.interfaceSize * f,
+      curvatureShare: detail.curvatureShare * f,
+      cornerGrading: Math.min(0.7, detail.cornerGrading * f),
+      cornerMinimum: detail.cornerMinimum * f * f,
+      grading: Math.min(0.7, detail.grading * Math.sqrt(f)),
+    };
+    const sources = truth.piecewiseConstant ? [] : variationSources(truth, frame, detail.variation * f, detail.variationFloor * f, detail.hMax);
+    try {
+      const triangles = meshDisc({ ends: frame.ends, interfaces, sources, ...sized });
+      return { triangles, quadratic: quadraticMesh(triangles, interfaces) };
+    } catch (error) {
+      if (attempt === 3 || !(error instanceof RangeError)) throw error;
+    }
+  }
+}
+
+const samplesPerSide = 128;
+
+/** Where the truth varies between interfaces: edges over which it would change by more than `variation` times its value. */
+function variationSources(truth: TruthField, frame: ElectrodeFrame, variation: number, floor: number, hMax: number): SizeSource[] {
+  const n = samplesPerSide;
+  const step = 2 / n;
+  const values = new Float64Array(n * n).fill(NaN);
+  for (let j = 0; j < n; j++) {
+    for (let i = 0; i < n; i++) {
+      const x = -1 + (i + 0.5) * step;
+      const y = -1 + (j + 0.5) * step;
+      if (x * x + y * y < 1) values[j * n + i] = truth.valueAt(...frame.toBody(x, y));
+    }
+  }
+  const sources: { x: number; y: number; size: number }[] = [];
+  for (let j = 1; j < n; j++) {
+    for (let i = 1; i < n; i++) {
+      const v = values[j * n + i];
+      const change = Math.max(relativeChange(v, values[j * n + i - 1]), relativeChange(v, values[(j - 1) * n + i]));
+      const size = (variation * step) / change;
+      if (size < hMax) sources.push({ x: -1 + i * step, y: -1 + j * step, size });
+    }
+  }
+  // The smallest edge rises until the places that ask for it need no more elements than a simulation can spare.
+  let smallest = floor;
+  while (elementsFor(sources, smallest, step) > elementsToSpare && smallest < hMax) smallest *= 1.2;
+  for (const source of sources) source.size = Math.max(smallest, source.size);
+  return sources;
+}
+
+const elementsToSpare = 12_000;
+
+function elementsFor(sources: readonly SizeSource[], smallest: number, step: number): number {
+  let count = 0;
+  for (const { size } of sources) {
+    const h = Math.max(smallest, size);
+    count += (step * step) / (0.433 * h * h);
+  }
+  return count;
+}
+
+function relativeChange(a: number, b: number): number {
+  return a > 0 && b > 0 ? Math.abs(a - b) / Math.min(a, b) : 0;
 }
 
 /** An interface given in metres, seen in the electrode frame. */
