@@ -1,5 +1,6 @@
 import { limits } from '../../shared/domain/phantom-definition';
 import { polygonInterface } from './polygon';
+import { TruthError } from './truth-error';
 import type { TruthField } from './truth-field';
 
 export interface ArrayTruth {
@@ -16,7 +17,7 @@ export interface ArrayTruth {
  * conductivity is bilinear, in the outer half pixel it is that of the rim, and outside the extent it is the background.
  * Where a rim value differs from the background the outline of the extent is an interface.
  * @param values rows x cols, row-major
- * @throws RangeError naming the row and column of a value that gives no admissible conductivity
+ * @throws TruthError naming the row and column of a value that gives no admissible conductivity
  */
 export function arrayField(truth: ArrayTruth, values: Float64Array): TruthField {
   const { rows, cols, extent, scale, offset, background } = truth;
@@ -27,8 +28,9 @@ export function arrayField(truth: ArrayTruth, values: Float64Array): TruthField 
     for (let j = 0; j < cols; j++) {
       const value = offset + scale * values[i * cols + j];
       if (!(value >= limits.conductivityMin && value <= limits.conductivityMax))
-        throw new RangeError(
+        throw new TruthError(
           `Row ${i + 1}, column ${j + 1} of the array gives ${value} S/m (offset + scale x ${values[i * cols + j]}): a conductivity must lie between ${limits.conductivityMin} and ${limits.conductivityMax} S/m.`,
+          ['truth', 'scale'],
         );
       sigma[i * cols + j] = value;
       if ((i === 0 || j === 0 || i === rows - 1 || j === cols - 1) && value !== background) jumps = true;

@@ -1,6 +1,7 @@
 import { limits } from '../../shared/domain/phantom-definition';
 import { atan2 } from '../core/math';
-import { compileExpression } from '../core/expression';
+import { compileExpression, type CompiledExpression } from '../core/expression';
+import { TruthError } from './truth-error';
 import type { TruthField } from './truth-field';
 
 const names = ['x', 'y', 'r', 'theta'] as const;
@@ -8,13 +9,23 @@ const names = ['x', 'y', 'r', 'theta'] as const;
 /** Two figures more than a place in a body needs. */
 const place = (metres: number): string => String(Number(metres.toPrecision(6)));
 
+const path = ['truth', 'expression'] as const;
+
+function compiled(expression: string): CompiledExpression {
+  try {
+    return compileExpression(expression, names);
+  } catch (cause) {
+    throw new TruthError(cause instanceof Error ? cause.message : String(cause), path, { cause });
+  }
+}
+
 /**
  * Ground truth by an expression in x, y (m), r (distance from the origin, m) and theta (rad, -pi to pi); its value is the
  * conductivity in S/m. It has no declared interfaces or targets: where it jumps, simulations integrate the jump by quadrature.
- * @throws RangeError when the expression uses more than the safe subset
+ * @throws TruthError when the expression uses more than the safe subset
  */
 export function expressionField(expression: string, background: number): TruthField {
-  const evaluate = compileExpression(expression, names);
+  const evaluate = compiled(expression);
   const variables = new Float64Array(names.length);
   const polar = /\b(r|theta)\b/.test(expression);
   return {
@@ -31,8 +42,9 @@ export function expressionField(expression: string, background: number): TruthFi
       }
       const value = evaluate(variables);
       if (!(value >= limits.conductivityMin && value <= limits.conductivityMax))
-        throw new RangeError(
+        throw new TruthError(
           `The expression gives ${value} S/m at x = ${place(x)} m, y = ${place(y)} m: a conductivity must lie between ${limits.conductivityMin} and ${limits.conductivityMax} S/m.`,
+          path,
         );
       return value;
     },

@@ -6,6 +6,7 @@ import { bumpField } from './bump';
 import { ellipseField } from './ellipse';
 import { expressionField } from './expression';
 import { polygonField } from './polygon';
+import { TruthError } from './truth-error';
 
 /** A closed curve across which the conductivity jumps. Lengths in metres. */
 export interface TruthInterface {
@@ -60,7 +61,7 @@ function shapeField(shape: Shape): ShapeField {
  * Shapes lie one on another in their order. Where a smooth bump lies on another shape it blends what lies below with its own
  * value. A target is the shape as declared: what covers it, or lies outside the body, is not taken off its area.
  * @param arrayValues the stored array (rows x cols, row-major) where the truth is an array
- * @throws RangeError that names the field and its limit
+ * @throws TruthError (a RangeError with the path of the field) that names the field and its limit
  */
 export function createTruthField(definition: TruthDefinition, arrayValues?: Float64Array): TruthField {
   switch (definition.kind) {
@@ -75,7 +76,7 @@ export function createTruthField(definition: TruthDefinition, arrayValues?: Floa
         try {
           return shapeField(shape);
         } catch (cause) {
-          throw new RangeError(`Shape ${i + 1} (${shape.label}): ${cause instanceof Error ? cause.message : String(cause)}`, { cause });
+          throw new TruthError(`Shape ${i + 1} (${shape.label}): ${cause instanceof Error ? cause.message : String(cause)}`, ['truth', 'shapes', i], { cause });
         }
       });
       const values = definition.shapes.map((shape) => shape.value);
