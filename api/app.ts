@@ -53,7 +53,8 @@ export function createApp(deps: Dependencies): Express {
   mountRoutes(api, allRoutes, deps, limits);
   api.use(unknownAddress);
   app.use('/api/v1', api);
-  app.use(['/api', '/auth', '/local-github'], unknownAddress);
+  // '/api' itself is a page of the client.
+  app.use(['/api/*rest', '/auth/*rest', '/local-github/*rest'], unknownAddress);
 
   app.use(clientFiles(deps.clientDir));
   app.use(problemHandler);

@@ -47,6 +47,7 @@ export function toAppError(error: unknown): AppError {
   }
   const status = statusOf(error);
   if (status === 413) return new AppError('too-large', 'The body is larger than this address takes.');
+  if (status === 404) return new AppError('not-found', 'There is no such file.');
   if (status !== undefined && status >= 400 && status < 500) {
     return new AppError('bad-request', 'The body or the address cannot be read. Send valid JSON in UTF-8.', undefined, { cause: error });
   }
