@@ -60,7 +60,7 @@ export function DataFrameChart({ label, values, noiseBand = 0, draw, valuesPerPa
           <YAxis {...axisLook} width={46} type="number" domain={domain} ticks={linearTicks(domain[0], domain[1], 4)} tickFormatter={tickText} label={{ value: unit, position: 'insideTopLeft', offset: 12, dx: 44, dy: -12, fontSize: 11, fill: 'var(--ink-2)' }} />
           {noiseBand > 0 ? <Area {...lineLook} dataKey="band" stroke="none" fill="var(--petrol)" fillOpacity={0.2} /> : null}
           <Line {...lineLook} dataKey="clean" stroke="var(--petrol)" strokeWidth={1.4} />
-          {draw ? <Scatter isAnimationActive={false} dataKey="dot" shape={({ cx, cy }: { cx?: number; cy?: number }) => (cx === undefined || cy === undefined || Number.isNaN(cy) ? <g /> : <circle cx={cx} cy={cy} r={1.9} fill="var(--ink)" />)} /> : null}
+          {draw ? <Scatter isAnimationActive={false} dataKey="dot" shape={({ cx, cy, payload }: { cx?: number; cy?: number; payload?: { dot: number | null } }) => (cx === undefined || cy === undefined || Number.isNaN(cy) || payload?.dot === null ? <g /> : <circle cx={cx} cy={cy} r={1.9} fill="var(--ink)" />)} /> : null}
         </ComposedChart>
       </div>
       <ChartTable

@@ -29,6 +29,8 @@ interface DataTableProps<Row> {
   /** Keys of hidden columns. */
   hidden?: ReadonlySet<string>;
   initialSort?: { key: string; descending?: boolean };
+  /** Told of every change of the sort, for pages that keep it in the address. */
+  onSort?: (sort: { key: string; descending: boolean } | null) => void;
   className?: string;
   rowClass?: (row: Row) => string | undefined;
   /** Shown instead of rows when there are none. */
@@ -36,7 +38,7 @@ interface DataTableProps<Row> {
 }
 
 /** A sortable table. Sorting is by the head's button; the state is spoken by aria-sort. */
-export function DataTable<Row extends RowData>({ caption, columns, rows, rowKey, hidden, initialSort, className, rowClass, empty }: DataTableProps<Row>) {
+export function DataTable<Row extends RowData>({ caption, columns, rows, rowKey, hidden, initialSort, onSort, className, rowClass, empty }: DataTableProps<Row>) {
   const [sorting, setSorting] = useState(() => (initialSort ? [{ id: initialSort.key, desc: initialSort.descending ?? false }] : []));
   const definitions = useMemo<ColumnDef<typeof features, Row>[]>(
     () =>
@@ -51,7 +53,12 @@ export function DataTable<Row extends RowData>({ caption, columns, rows, rowKey,
   const columnVisibility = useMemo(() => Object.fromEntries([...(hidden ?? [])].map((key) => [key, false])), [hidden]);
   const data = useMemo(() => [...rows], [rows]);
   const table = useTable({
-    features, columns: definitions, data, getRowId: (row: Row) => rowKey(row), state: { sorting, columnVisibility }, onSortingChange: setSorting,
+    features, columns: definitions, data, getRowId: (row: Row) => rowKey(row), state: { sorting, columnVisibility },
+    onSortingChange: (update) => {
+      const next = typeof update === 'function' ? update(sorting) : update;
+      setSorting(next);
+      onSort?.(next[0] ? { key: next[0].id, descending: next[0].desc } : null);
+    },
   });
   const byKey = new Map(columns.map((c) => [c.key, c]));
   const shown = columns.filter((c) => !hidden?.has(c.key));

@@ -1,14 +1,14 @@
-import { useEffect, useState } from 'react';
+import { useEffect, useMemo, useState } from 'react';
+import { DataFrameChart } from '../../../components/charts/data-frame-chart';
 import { CheckRow } from '../../../components/ui/checks';
 import { FactList } from '../../../components/ui/layout';
 import { ErrorPanel } from '../../../components/ui/notices';
 import { formatNumber, formatPercent, formatQuantity } from '../../../lib/format';
 import type { Simulation } from '../../../../shared/contracts/simulations';
-import { usePhone } from '../../../lib/use-media';
 import { checkBound, checkReading, phantomCheckNames } from '../model/check-rows';
 import { signalOverNoise } from '../model/noise-band';
+import { scaledFrame } from '../model/noisy-data';
 import { ChangeMatrix } from './change-matrix';
-import { DataChart } from './data-chart';
 
 export interface LiveState {
   /** The newest data, of the form as it was if `stale`. */
@@ -39,7 +39,6 @@ export function useSettled(checks: Simulation['checks'] | null): number {
 
 export function LivePanel({ live, noise, settled }: { live: LiveState; noise: number; settled: number }) {
   const { simulation } = live;
-  const phone = usePhone();
   const shown = Math.min(4, simulation?.patterns ?? 4);
   const status = live.blocked ?? (live.stale ? 'simulating' : simulation ? `simulated in ${formatNumber(simulation.seconds, 2)} s` : 'simulating');
   return (
@@ -49,7 +48,7 @@ export function LivePanel({ live, noise, settled }: { live: LiveState; noise: nu
       {simulation ? (
         <div className={live.stale ? 'stale' : undefined}>
           <div style={{ padding: '6px 14px 0 4px' }}>
-            <DataChart simulation={simulation} view="voltages" noise={noise} first={0} count={phone ? Math.min(4, shown) : shown} height={158} label={`Simulated voltages of the first ${shown} patterns at ${formatPercent(noise)} noise`} xLabel={`drive, first ${shown} of ${simulation.patterns}`} />
+            <LiveChart simulation={simulation} noise={noise} shown={shown} />
           </div>
           <div className="key">
             <span><svg width="20" height="8" aria-hidden="true"><line x2="20" y1="4" y2="4" stroke="var(--petrol)" strokeWidth="2" /></svg> without noise</span>
@@ -77,6 +76,18 @@ export function LivePanel({ live, noise, settled }: { live: LiveState; noise: nu
             ))}
       </div>
     </>
+  );
+}
+
+function LiveChart({ simulation, noise, shown }: { simulation: Simulation; noise: number; shown: number }) {
+  const drawn = useMemo(() => scaledFrame(simulation, 'voltages', noise), [simulation, noise]);
+  const count = shown * simulation.valuesPerPattern;
+  return (
+    <DataFrameChart
+      label={`Simulated voltages of the first ${shown} of ${simulation.patterns} patterns at ${formatPercent(noise)} noise`} height={176}
+      values={drawn.values.slice(0, count)} draw={drawn.draw.slice(0, count)} unit={drawn.unit}
+      valuesPerPattern={simulation.valuesPerPattern} patternNames={simulation.patternNames.slice(0, shown)} channelNames={simulation.channelNames}
+    />
   );
 }
 

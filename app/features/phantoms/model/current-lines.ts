@@ -12,8 +12,8 @@ export interface Arc {
   readonly centre: readonly [number, number];
 }
 
-/** `count` - 1 lines that cut the current of the pair at angles `first` and `second` (radians) into `count` equal parts. */
-export function pairCurrentLines(first: number, second: number, bodyRadius: number, count: number): Arc[] {
+/** Lines of the pair at angles `first` and `second` (radians); beyond each, seen from the pair, runs the given share of the current. */
+export function pairCurrentLines(first: number, second: number, bodyRadius: number, shares: readonly number[]): Arc[] {
   const p: [number, number] = [bodyRadius * Math.cos(first), bodyRadius * Math.sin(first)];
   const q: [number, number] = [bodyRadius * Math.cos(second), bodyRadius * Math.sin(second)];
   const middle: [number, number] = [(p[0] + q[0]) / 2, (p[1] + q[1]) / 2];
@@ -23,8 +23,8 @@ export function pairCurrentLines(first: number, second: number, bodyRadius: numb
   const inward: [number, number] = depth > 1e-12 * bodyRadius ? [-middle[0] / depth, -middle[1] / depth] : [-(q[1] - p[1]) / (2 * halfChord), (q[0] - p[0]) / (2 * halfChord)];
   const half = Math.asin(Math.min(1, halfChord / bodyRadius));
   const arcs: Arc[] = [];
-  for (let k = 1; k < count; k++) {
-    const angle = half + (Math.PI * k) / count;
+  for (const share of shares) {
+    const angle = half + Math.PI * share;
     const sine = Math.sin(angle);
     if (Math.abs(sine) < 1e-9) continue;
     const offset = halfChord / Math.tan(angle);

@@ -42,3 +42,12 @@ export function voltUnit(largest: number): { factor: number; unit: string } {
   const [factor, unit] = prefixes.find(([f]) => largest >= f) ?? prefixes[prefixes.length - 1]!;
   return { factor, unit };
 }
+
+/** The same in the unit that reads well, for charts. */
+export function scaledFrame(simulation: Simulation, view: DataView, level: number): { values: number[]; draw: number[]; band: number; unit: string } {
+  const { clean, noisy, half } = noisyFrame(simulation, view, level);
+  let largest = 0;
+  for (let i = 0; i < clean.length; i++) largest = Math.max(largest, Math.abs(clean[i]!));
+  const { factor, unit } = voltUnit(largest);
+  return { values: Array.from(clean, (v) => v / factor), draw: Array.from(noisy, (v) => v / factor), band: half / factor, unit };
+}

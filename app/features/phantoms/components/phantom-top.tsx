@@ -1,0 +1,81 @@
+import { useMemo, useState } from 'react';
+import { Link } from 'react-router-dom';
+import { ColourBar } from '../../../components/images/colour-bar';
+import { DiscImage } from '../../../components/images/disc-image';
+import { toPicture } from '../../../components/images/pixels';
+import { FactList } from '../../../components/ui/layout';
+import { SealedDisc } from '../../../components/ui/notices';
+import { Seal } from '../../../components/ui/seal';
+import { Segmented } from '../../../components/ui/segmented';
+import { StateMark } from '../../../components/ui/state-mark';
+import { formatDate, formatHash, formatNumber } from '../../../lib/format';
+import { paths } from '../../../lib/paths';
+import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
+import type { Simulation } from '../../../../shared/contracts/simulations';
+import { decodeArray } from '../../../../shared/domain/array-encoding';
+import { phantomFacts } from '../model/phantom-facts';
+import { colourRange } from '../model/truth-picture';
+import { GeometryFigure } from './geometry-figure';
+
+const figures = [{ value: 'truth', label: 'Ground truth' }, { value: 'geometry', label: 'Geometry' }] as const;
+
+/** Geometry, truth and facts; on phones one figure at a time. */
+export function PhantomTop({ detail, simulation }: { detail: PhantomDetail; simulation: Simulation | undefined }) {
+  const [figure, setFigure] = useState<'truth' | 'geometry'>('truth');
+  const { version } = detail;
+  const { geometry, truth } = version.definition;
+  const picture = useMemo(() => (simulation?.truth ? toPicture(decodeArray(simulation.truth), simulation.grid) : null), [simulation]);
+  const background = truth?.background ?? simulation?.background ?? 1;
+  const [low, high] = colourRange(simulation?.truthRange ?? null, background);
+  const sealed = version.sealed && !truth;
+  return (
+    <>
+      <div className="only-m" style={{ marginBottom: 10 }}><Segmented label="Which figure" value={figure} choices={figures} onChange={setFigure} /></div>
+      <section className="sheet ph-top" data-figure={figure}>
+        <div>
+          <h2>Geometry <span>{geometry.electrodes} electrodes, {geometry.pattern === 'adjacent' ? 'drive pair 1–2 shown' : 'first pattern shown'}</span></h2>
+          <GeometryFigure geometry={geometry} truth={truth} />
+          <p className="sm centre">{geometry.pattern === 'adjacent' ? 'Current lines are schematic: uniform disc, point electrodes. Beyond the outermost runs 1 % of the current, half beyond the seventh.' : 'Current lines are schematic: uniform disc, current cos θ along the edge, equal shares between them.'}</p>
+        </div>
+        <div>
+          <h2>Ground truth <span>conductivity, S/m</span></h2>
+          {sealed ? (
+            <div className="sealedbox"><SealedDisc size="62%" /><p className="sm">Withheld until {version.sealedUntil ? formatDate(`${version.sealedUntil}T12:00:00Z`) : 'it opens'}. Curators of its group and reviewers can see it.</p></div>
+          ) : (
+            <>
+              <DiscImage label={`Ground truth of ${version.name}, from ${formatNumber(simulation?.truthRange?.[0], 3)} to ${formatNumber(simulation?.truthRange?.[1], 3)} S/m`} picture={picture} low={low} high={high} numbered={geometry.electrodes <= 16} electrodes={{ count: geometry.electrodes, coverage: geometry.electrodeCoverage, firstDeg: geometry.firstElectrodeDeg, clockwise: geometry.numbering === 'clockwise' }} />
+              <div style={{ marginTop: 8 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, `${formatNumber(high, 2)} S/m`]} /></div>
+            </>
+          )}
+        </div>
+        <div>
+          <div className="ph-state">
+            <Seal hash={version.contentHash} size={84} lines={6} />
+            <div>
+              <SealState detail={detail} />
+              <p className="mono hash" title={version.contentHash}>{formatHash(version.contentHash)}</p>
+            </div>
+          </div>
+          <FactList
+            facts={[
+              ...phantomFacts(detail, simulation),
+              ['Used in', version.usedIn.length ? version.usedIn.map((bench, i) => <span key={bench.id}>{i ? ', ' : ''}<Link to={paths.bench(bench.slug)} title={bench.title}>{bench.id}</Link></span>) : 'no bench yet'],
+            ]}
+          />
+        </div>
+      </section>
+    </>
+  );
+}
+
+function SealState({ detail: { version } }: { detail: PhantomDetail }) {
+  const opened = version.publishedAt ? formatDate(version.publishedAt) : null;
+  if (version.state !== 'published') {
+    return <><StateMark state={version.state} /><p className="big">Version {version.n}</p><p className="sm">{version.state === 'draft' ? 'Only the group sees a draft.' : version.state === 'submitted' ? 'Waits for a reviewer outside the group.' : version.state === 'withdrawn' ? 'Kept, marked, and out of new benches.' : 'The reviewer asks for changes.'}</p></>;
+  }
+  if (version.sealed) {
+    return <><StateMark state="sealed" /><p className="big">Opens {version.sealedUntil ? formatDate(`${version.sealedUntil}T12:00:00Z`) : 'later'}</p><p className="sm">The hash was published on the day it was sealed.</p></>;
+  }
+  const until = version.sealedUntil;
+  return <><StateMark state="pass" word={until ? 'Unsealed' : 'Published'} /><p className="big">Open since {until ? formatDate(`${until}T12:00:00Z`) : opened}</p><p className="sm">The truth is public.{until ? ' Results before that date stay marked as blind.' : ''}</p></>;
+}

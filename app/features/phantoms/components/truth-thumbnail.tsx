@@ -1,0 +1,19 @@
+import { useMemo } from 'react';
+import { DiscImage } from '../../../components/images/disc-image';
+import { toPicture } from '../../../components/images/pixels';
+import { SealedDisc } from '../../../components/ui/notices';
+import { decodeArray } from '../../../../shared/domain/array-encoding';
+import { usePhantomSimulation } from '../api/get-phantom';
+
+/** Small picture of a truth; a lock while it is sealed. */
+export function TruthThumbnail({ slug, version, sealed, size = 44, label }: { slug: string; version: number; sealed: boolean; size?: number; label: string }) {
+  if (sealed) return <SealedDisc size={size} />;
+  return <OpenTruth slug={slug} version={version} size={size} label={label} />;
+}
+
+function OpenTruth({ slug, version, size, label }: { slug: string; version: number; size: number; label: string }) {
+  const { data } = usePhantomSimulation(slug, version);
+  const picture = useMemo(() => (data?.truth ? toPicture(decodeArray(data.truth), data.grid) : null), [data]);
+  const [low, high] = data?.truthRange ?? [0, 1];
+  return <span className="thumb" style={{ width: size, display: 'block' }}><DiscImage label={label} picture={picture} low={low - (high - low) * 0.1} high={high + (high - low) * 0.1} /></span>;
+}
