@@ -21,7 +21,7 @@ export function PairedTable({ items, wins, caption = 'Paired draws won, per cent
         <tbody>
           {items.map((row, i) => (
             <tr key={row.id}>
-              <th className="r" scope="row"><span className="nm">{row.name}</span> <SolverGlyph index={row.glyph} size={13} /></th>
+              <th className="r" scope="row">{row.name} <SolverGlyph index={row.glyph} size={13} /></th>
               {items.map((column, j) => {
                 const share = wins[i]?.[j];
                 if (i === j || share === null || share === undefined) return <td key={column.id} style={{ color: 'var(--ink-3)' }}>{'\u2013'}</td>;

@@ -1,0 +1,31 @@
+import type { Citation } from '../../../../shared/contracts/benches';
+import { Button, ButtonAnchor, ButtonLink } from '../../../components/ui/button';
+import { useToast } from '../../../components/ui/toast';
+import { apiUrl } from '../../../lib/api-client';
+import { formatHash, formatPercent } from '../../../lib/format';
+
+/** How to cite the reading, and the ways to take it along. */
+export function CiteBench({ slug, noise, metric, citation, comparePath, compareLabel }: { slug: string; noise: number; metric: string; citation: Citation | undefined; comparePath: string | null; compareLabel: string }) {
+  const toast = useToast();
+  const copy = (text: string, what: string) => {
+    navigator.clipboard.writeText(text).then(
+      () => toast(`${what} copied.`),
+      () => toast('The browser did not allow copying. Select the text instead.'),
+    );
+  };
+  const words = citation ? `${citation.plain} Read at ${formatPercent(noise)}.` : '';
+  return (
+    <div>
+      <h3>Cite this bench</h3>
+      {citation ? <p className="mono" style={{ fontSize: 12, overflowWrap: 'anywhere' }}>{words} Content hash {formatHash(citation.contentHash)}</p> : null}
+      <div className="flex gap-x2 flex-wrap" style={{ marginTop: 8 }}>
+        {comparePath ? <ButtonLink to={comparePath}>{compareLabel}</ButtonLink> : null}
+        {citation ? <Button onClick={() => copy(words, 'Citation')}>Copy citation</Button> : null}
+        {citation ? <Button onClick={() => copy(citation.bibtex, 'BibTeX')}>BibTeX</Button> : null}
+        <ButtonAnchor href={apiUrl(`/benches/${encodeURIComponent(slug)}/ranking.csv`, { noise, metric })} download>Ranking as CSV</ButtonAnchor>
+        <ButtonAnchor href={apiUrl(`/benches/${encodeURIComponent(slug)}/table.csv`)} download>Full table as CSV</ButtonAnchor>
+        <Button onClick={() => window.print()}>Print sheet</Button>
+      </div>
+    </div>
+  );
+}

@@ -1,0 +1,43 @@
+import { DiscImage, type ElectrodeLayout } from '../../../components/images/disc-image';
+import { ColourBar } from '../../../components/images/colour-bar';
+import type { Picture } from '../../../components/images/pixels';
+import { SolverGlyph } from '../../../components/ui/solver-glyph';
+import { formatNumber } from '../../../lib/format';
+
+export interface GalleryItem {
+  key: string;
+  glyph: number | null;
+  name: string;
+  reading: string;
+  /** Null while it loads or where there is none. */
+  picture: Picture | null;
+  note?: string;
+}
+
+/** Truth and the reconstructions of the same draw level on one scale. */
+export function Gallery({ items, low, high, background, unit, electrodes }: { items: readonly GalleryItem[]; low: number; high: number; background: number; unit: string; electrodes?: ElectrodeLayout | null }) {
+  return (
+    <div className="sheet pad">
+      <div className="gal">
+        {items.map((item) => (
+          <figure key={item.key}>
+            <DiscImage label={item.picture ? `${item.name}, ${item.reading}` : `${item.name}: no image`} picture={item.picture} low={low} high={high} electrodes={electrodes} />
+            <figcaption>
+              <b>{item.glyph === null ? null : <SolverGlyph index={item.glyph} size={13} />}{item.name}</b>
+              <span>{item.note ?? item.reading}</span>
+            </figcaption>
+          </figure>
+        ))}
+      </div>
+      <div style={{ marginTop: 14 }}>
+        <ColourBar width={300} labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, `${formatNumber(high, 2)} ${unit}`]} label={`Colour scale from ${formatNumber(low, 2)} to ${formatNumber(high, 2)} ${unit}`} />
+      </div>
+    </div>
+  );
+}
+
+/** Common limits of truth and reconstructions: the truth's range and a tenth of it to each side, not below zero. */
+export function imageLimits([low, high]: readonly [number, number]): [number, number] {
+  const span = high - low || Math.abs(high) || 1;
+  return [Math.max(0, low - 0.1 * span), high + 0.1 * span];
+}

@@ -1,0 +1,48 @@
+import { useState } from 'react';
+import type { BenchDetail, Ranking } from '../../../../shared/contracts/benches';
+import { barAxis } from '../../../components/charts/interval-bar';
+import { InlineSelect } from '../../../components/ui/chooser';
+import { ColumnChooser } from '../../../components/ui/column-chooser';
+import { formatPercent, plural } from '../../../lib/format';
+import { metricViews } from '../model/metric-view';
+import { RankingCards, rankingColumns, RankingTable, standardColumns, type RankingProps } from './ranking-table';
+
+interface PanelProps extends Pick<RankingProps, 'focus' | 'onFocus' | 'rowPath'> {
+  bench: BenchDetail;
+  ranking: Ranking;
+  /** Noise at the cursor; the ranking follows it. */
+  noise: number;
+  stale: boolean;
+  onMetric: (metric: string) => void;
+}
+
+export function RankingPanel({ bench, ranking, noise, stale, onMetric, ...rest }: PanelProps) {
+  const [shown, setShown] = useState<ReadonlySet<string>>(standardColumns);
+  const ladderEnd = bench.ladder[bench.ladder.length - 1] ?? 0.3;
+  const columns = rankingColumns(ranking.metric, ladderEnd, ranking);
+  const axis = barAxis(ranking.rows.flatMap((r) => [r.p05, r.p95]), ranking.trivial);
+  const common = { ranking, axis, ladderEnd, ...rest };
+  return (
+    <section className="sheet tbl" aria-labelledby="ranking-title" aria-busy={stale}>
+      <div className="cap">
+        <h2 id="ranking-title">Ranking at {formatPercent(noise)} noise</h2>
+        <div className="flex gap-x4 items-baseline flex-wrap">
+          <p>
+            Rank by{' '}
+            <InlineSelect label="Rank by" value={ranking.metric} onChange={onMetric}>
+              {metricViews.filter((m) => m.ranked).map((m) => <option key={m.key} value={m.key}>{m.words}</option>)}
+            </InlineSelect>
+          </p>
+          <ColumnChooser columns={columns.map((c) => ({ key: c.key, name: c.name }))} shown={shown} onChange={setShown} />
+        </div>
+      </div>
+      <RankingTable {...common} columns={columns.filter((c) => shown.has(c.key))} />
+      <RankingCards {...common} />
+      <p className="sm note">
+        {ranking.belowFloor
+          ? `${formatPercent(ranking.noise)} is below the model-error floor${bench.floorPhantom ? ` of ${bench.floorPhantom}` : ''}: the gap between the two meshes is larger than this noise, so no ranks are given.`
+          : `Median of ${plural(ranking.test.phantoms, 'phantom')} × ${plural(bench.draws, 'draw')}${ranking.interpolated ? `, interpolated; ties are tested at ${formatPercent(ranking.level)}` : ''}. Brackets mark statistical ties. Select a row to follow it in the charts.`}
+      </p>
+    </section>
+  );
+}
