@@ -49,7 +49,8 @@ export function createApp(deps: Dependencies): Express {
       res.set('Cache-Control', 'no-cache').json(document);
     };
   })());
-  api.use(sameOrigin(env), withSession, resolveActor(deps), limits.general, express.json({ limit: jsonLimit }));
+  // The limit comes before the look-up of tokens and sessions, so that guessing is limited too.
+  api.use(limits.general, sameOrigin(env), withSession, resolveActor(deps), express.json({ limit: jsonLimit }));
   mountRoutes(api, allRoutes, deps, limits);
   api.use(unknownAddress);
   app.use('/api/v1', api);

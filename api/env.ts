@@ -17,7 +17,8 @@ const wholeNumber = (minimum: number, maximum: number) =>
     );
 const httpUrl = z
   .url({ protocol: /^https?$/, message: 'must be an http or https address, as in https://registry.example' })
-  .transform((text) => text.replace(/\/+$/, ''));
+  .refine((text) => !URL.canParse(text) || new URL(text).pathname === '/', 'must end after the host, without a path')
+  .transform((text) => new URL(text).origin);
 
 const schema = z.object({
   NODE_ENV: z.enum(['development', 'test', 'production'], 'must be development, test or production').default('development'),
@@ -44,7 +45,7 @@ const schema = z.object({
     .transform((text) => (text === 'off' ? 0 : Number(text)))
     .default(1),
   SEED_DEMO: z.enum(['0', '1'], 'must be 0 or 1').optional(),
-  TRUST_PROXY: wholeNumber(0, 10).default(0),
+  TRUST_PROXY: wholeNumber(0, 10).optional(),
 });
 
 export interface Env {
@@ -66,6 +67,7 @@ export interface Env {
   readonly rateLimit: number;
   /** Whether an empty database is filled with the demonstration data. */
   readonly seedDemo: boolean;
+  /** Proxies in front of the server whose forwarding headers count. */
   readonly trustProxy: number;
 }
 
@@ -98,6 +100,7 @@ export function readEnv(source: Record<string, string | undefined>): Env {
     ] as const) {
       if (given[name] === undefined) lines.push(`${name}: required when NODE_ENV is production (${why})`);
     }
+    if (given['PUBLIC_URL']?.startsWith('http:')) lines.push('PUBLIC_URL: must be an https address when NODE_ENV is production');
   } else if ((given['GITHUB_CLIENT_ID'] === undefined) !== (given['GITHUB_CLIENT_SECRET'] === undefined)) {
     lines.push('GITHUB_CLIENT_ID and GITHUB_CLIENT_SECRET: set both or neither');
   }
@@ -123,7 +126,8 @@ export function readEnv(source: Record<string, string | undefined>): Env {
     logLevel: e.LOG_LEVEL,
     rateLimit: e.RATE_LIMIT,
     seedDemo: e.SEED_DEMO === undefined ? !production : e.SEED_DEMO === '1',
-    trustProxy: e.TRUST_PROXY,
+    // The server speaks plain HTTP, so in production something in front of it ends TLS.
+    trustProxy: e.TRUST_PROXY ?? (production ? 1 : 0),
   };
 }
 

@@ -5,9 +5,9 @@ import type { Env } from '../env.ts';
 import type { LimitName } from './define-route.ts';
 
 const minuteMs = 60_000;
-/** Requests a minute from one account, or from one address when nobody is signed in. */
+/** Requests a minute: 'general' and 'sign-in' from one address, the others from one account or else one address. */
 const perMinute: Record<LimitName | 'general', number> = {
-  general: 1200,
+  general: 2400,
   'sign-in': 30,
   upload: 60,
   simulate: 120,

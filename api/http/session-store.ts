@@ -3,11 +3,12 @@ import { Store, type SessionData } from 'express-session';
 import { SessionEntity } from '../entities/session.ts';
 import { secretHash } from '../services/secret-hash.ts';
 
-/** A touch within this time of the last one is not written: reads should not write. */
-const touchEveryMs = 60 * 60 * 1000;
+/** For a cookie without an end of its own; the site's has one. */
+const fallbackLifeMs = 60 * 60 * 1000;
 
 type Done = (error?: unknown) => void;
 
+/** Sessions in SQLite. There is no `touch`: a session ends a fixed time after sign-in, and reading writes nothing. */
 export class SqliteSessionStore extends Store {
   readonly #orm: MikroORM;
   readonly #clock: () => Date;
@@ -43,23 +44,13 @@ export class SqliteSessionStore extends Store {
     }, callback);
   }
 
-  override touch(sid: string, session: SessionData, callback?: Done): void {
-    this.#run(async () => {
-      const expiresAt = this.#expiry(session);
-      const staleBefore = new Date(expiresAt.getTime() - touchEveryMs);
-      await this.#orm.em
-        .fork()
-        .nativeUpdate(SessionEntity, { id: secretHash(sid), expiresAt: { $lt: staleBefore } }, { expiresAt, data: JSON.stringify(session) });
-    }, callback);
-  }
-
   /** Deletes what has run out. Called at start and now and then. */
   async sweep(): Promise<void> {
     await this.#orm.em.fork().nativeDelete(SessionEntity, { expiresAt: { $lte: this.#clock() } });
   }
 
   #expiry(session: SessionData): Date {
-    return new Date(this.#clock().getTime() + (session.cookie.originalMaxAge ?? touchEveryMs));
+    return new Date(this.#clock().getTime() + (session.cookie.originalMaxAge ?? fallbackLifeMs));
   }
 
   #run<T>(work: () => Promise<T>, callback?: (error: unknown, value?: T) => void): void {

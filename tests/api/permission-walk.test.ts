@@ -121,8 +121,8 @@ describe('every route with a token that lacks its scope', () => {
     const scope = scopeOfPermission[route.permission];
     const [key, routeCase] = first;
     it(`${key} refuses`, async () => {
-      const walker = allowedFor(route, routeCase).find((candidate) => candidate !== 'visitor');
-      if (walker === undefined || walker === 'visitor') throw new Error('nobody may use this route');
+      const walker = allowedFor(route, routeCase).find((candidate): candidate is Exclude<Walker, 'visitor'> => candidate !== 'visitor');
+      if (walker === undefined) throw new Error('nobody may use this route');
       const client = await world.app.tokenFor(world.handleOf(walker), tokenScopes.filter((candidate) => candidate !== scope));
       const { status, text } = await send(route, routeCase, client, walker);
       expect(status, text).toBe(403);

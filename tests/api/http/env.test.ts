@@ -47,6 +47,13 @@ describe('the environment', () => {
     expect(linesOf({ NODE_ENV: 'production', DATA_DIR: folder, PORT: 'x' }).length).toBe(5);
   });
 
+  it('takes an address of a host, without a path, and of a secure one in production', () => {
+    expect(readEnv({ DATA_DIR: folder, PUBLIC_URL: 'https://Registry.example/' }).publicUrl).toBe('https://registry.example');
+    expect(linesOf({ DATA_DIR: folder, PUBLIC_URL: 'https://registry.example/hadamark' })).toEqual(['PUBLIC_URL: must end after the host, without a path']);
+    const secret = { SESSION_SECRET: 'x'.repeat(40), GITHUB_CLIENT_ID: 'a', GITHUB_CLIENT_SECRET: 'b' };
+    expect(linesOf({ NODE_ENV: 'production', DATA_DIR: folder, PUBLIC_URL: 'http://registry.example', ...secret })).toEqual(['PUBLIC_URL: must be an https address when NODE_ENV is production']);
+  });
+
   it('refuses half a GitHub client and a data folder that is a file', () => {
     expect(linesOf({ DATA_DIR: folder, GITHUB_CLIENT_ID: 'x' })).toEqual(['GITHUB_CLIENT_ID and GITHUB_CLIENT_SECRET: set both or neither']);
     const file = path.join(folder, 'a-file');

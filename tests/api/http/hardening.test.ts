@@ -46,9 +46,9 @@ describe('requests forged by another site', () => {
 
 describe('rate limits', () => {
   it('answer 429 with problem details and when to come back', async () => {
-    const limited = await startTestApp({ env: { RATE_LIMIT: '0.01' } });
+    const limited = await startTestApp({ env: { RATE_LIMIT: '0.005' } });
     try {
-      // 1200 a minute times 0.01.
+      // 2400 a minute times 0.005.
       const statuses: number[] = [];
       for (let i = 0; i < 13; i += 1) statuses.push((await limited.visitor.get('/api/v1/health')).status);
       expect(statuses.slice(0, 12)).toEqual(Array(12).fill(200));
@@ -56,6 +56,17 @@ describe('rate limits', () => {
       expect(over.status).toBe(429);
       expect(over.body).toMatchObject({ code: 'too-many-requests' });
       expect(over.headers.get('retry-after')).toBe('60');
+    } finally {
+      await limited.stop();
+    }
+  });
+
+  it('count guessed tokens', async () => {
+    const limited = await startTestApp({ env: { RATE_LIMIT: '0.001' } });
+    try {
+      const guess = new HttpClient(limited.url, 'hmk_a-guess-that-is-long-enough');
+      expect([(await guess.get('/api/v1/account')).status, (await guess.get('/api/v1/account')).status]).toEqual([401, 401]);
+      expect((await guess.get('/api/v1/account')).status).toBe(429);
     } finally {
       await limited.stop();
     }

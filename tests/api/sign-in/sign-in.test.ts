@@ -159,7 +159,7 @@ describe('the stand-in in production', () => {
   });
 
   it('asks for secure cookies', async () => {
-    const secure = await startTestApp({ env: { ...production, TRUST_PROXY: '1' } });
+    const secure = await startTestApp({ env: production });
     try {
       const answer = await secure.visitor.get('/auth/github', { headers: { 'x-forwarded-proto': 'https' } });
       expect(answer.headers.get('set-cookie')).toMatch(/HttpOnly; Secure; SameSite=Lax/);
