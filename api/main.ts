@@ -6,6 +6,7 @@ import { EnvError, readEnv, type Env } from './env.ts';
 import { makeLogger } from './http/request-log.ts';
 import { closeEventStreams } from './http/server-sent-events.ts';
 import { SqliteSessionStore } from './http/session-store.ts';
+import { makeJobs } from './jobs/jobs.ts';
 import { makeMailer } from './mail/mailer.ts';
 import { databaseFile, openDatabase } from './orm.ts';
 import { demoAccounts } from './sign-in/demo-accounts.ts';
@@ -18,7 +19,8 @@ const logger = makeLogger(env.logLevel);
 const clock = (): Date => new Date();
 const orm = await openDatabase(databaseFile(env.dataDir));
 const mailer = makeMailer({ orm, env, clock, logger });
-const app = createApp({ orm, env, clock, rng: randomBytes, mailer, logger, standInAccounts: demoAccounts, clientDir: clientDir() });
+const jobs = makeJobs({ orm, clock, logger, mailer, workers: env.workers, origin: env.publicUrl ?? `http://localhost:${env.port}` });
+const app = createApp({ orm, env, clock, rng: randomBytes, mailer, jobs, logger, standInAccounts: demoAccounts, clientDir: clientDir() });
 
 const server = app.listen(env.port, env.host, (error?: Error) => {
   if (error) {
@@ -31,6 +33,7 @@ const server = app.listen(env.port, env.host, (error?: Error) => {
   process.stdout.write(`Hadamark is at ${env.publicUrl ?? `http://localhost:${port}`}\n`);
 });
 mailer.start();
+await jobs.start();
 const sessions = new SqliteSessionStore(orm, clock);
 const sweeper = setInterval(sweepSessions, sweepEveryMs);
 sweeper.unref();
@@ -60,6 +63,7 @@ async function stop(): Promise<void> {
   server.closeIdleConnections();
   setTimeout(() => server.closeAllConnections(), 1_000).unref();
   await closed;
+  await jobs.stop();
   await mailer.stop();
   await orm.close(true);
 }

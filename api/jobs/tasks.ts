@@ -1,7 +1,9 @@
 /** What the server asks of a worker thread, and what comes back: plain data that can be cloned or transferred. */
 import type { CheckResultWire } from '../../shared/contracts/common';
+import type { Sensitivity } from '../../shared/contracts/runs';
 import type { Configuration } from '../../shared/contracts/solvers';
 import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
+import type { Target } from '../../solvers/core/types';
 import type { SimulationSummary } from '../entities/simulation.ts';
 
 /** A phantom as a worker needs it. */
@@ -29,14 +31,14 @@ export interface SimulationOutput {
   readonly clean: Float64Array;
   readonly truthImage: Float64Array;
   readonly checks: CheckResultWire[] | null;
-  readonly codeVersion: string;
   readonly seconds: number;
 }
 
-/** Everything that decides the result of a run. */
-export interface RunInput extends PhantomInput {
+/** Everything that decides the result of a run. The ground truth enters as an image only: the inversion does not know it. */
+export interface RunInput {
   /** Names the preparation in a worker's cache. */
   readonly key: string;
+  readonly definition: PhantomDefinition;
   readonly phantomHash: string;
   readonly configuration: Configuration;
   readonly ladder: readonly number[];
@@ -45,6 +47,8 @@ export interface RunInput extends PhantomInput {
   readonly noiseScale: number;
   readonly clean: Float64Array;
   readonly truthImage: Float64Array;
+  readonly targets: readonly Target[];
+  readonly modelErrorFloor: number;
 }
 
 export interface SliceTask {
@@ -77,13 +81,15 @@ export interface RunChecksTask {
   readonly run: RunInput;
   /** Median of the relative L2 error at the lowest level, for the comparison with the trivial reconstruction. */
   readonly lowestMedian: number | null;
-  /** Hashes of stored trials to recompute. */
+  /** Hashes of stored trials, to recompute. */
   readonly stored: readonly { readonly level: number; readonly draw: number; readonly imageHash: string }[];
 }
 export interface RunChecksOutput {
   readonly checks: CheckResultWire[];
+  /** Figures of the background alone, by metric key. */
   readonly trivial: Record<string, number | null>;
-  readonly secondsPerReconstruction: number;
+  readonly secondsPerReconstruction: number | null;
+  /** Over truncated SVD timed in the same worker. */
   readonly timeRatio: number | null;
 }
 
@@ -91,4 +97,12 @@ export interface SensitivityTask {
   readonly run: RunInput;
   readonly level: number;
   readonly draw: number;
+}
+/** Error against the regularisation parameter at one draw. */
+export interface SensitivityOutput {
+  readonly parameterName: string;
+  readonly parameters: number[];
+  readonly errors: number[];
+  readonly oracle: Sensitivity['oracle'];
+  readonly picard: Sensitivity['picard'];
 }

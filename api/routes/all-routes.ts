@@ -6,6 +6,9 @@ import { overviewRoutes } from './overview-routes.ts';
 import { sessionRoutes } from './session-routes.ts';
 import { siteRoutes } from './site-routes.ts';
 import { solverRoutes } from './solver-routes.ts';
+import { phantomRoutes } from './phantom-routes.ts';
+import { simulationRoutes } from './simulation-routes.ts';
+import { uploadRoutes } from './upload-routes.ts';
 
 /** Every route of the API. One that is not listed here does not exist. */
-export const allRoutes: readonly Route[] = [...siteRoutes, ...sessionRoutes, ...accountRoutes, ...groupRoutes, ...adminRoutes, ...solverRoutes, ...overviewRoutes];
+export const allRoutes: readonly Route[] = [...siteRoutes, ...sessionRoutes, ...accountRoutes, ...groupRoutes, ...adminRoutes, ...solverRoutes, ...overviewRoutes, ...uploadRoutes, ...simulationRoutes, ...phantomRoutes];

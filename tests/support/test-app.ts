@@ -10,6 +10,7 @@ import { readEnv } from '../../api/env.ts';
 import type { User } from '../../api/entities/user.ts';
 import { makeLogger } from '../../api/http/request-log.ts';
 import { closeEventStreams } from '../../api/http/server-sent-events.ts';
+import { makeJobs, type JobsOptions } from '../../api/jobs/jobs.ts';
 import { makeMailer } from '../../api/mail/mailer.ts';
 import { databaseFile, openDatabase } from '../../api/orm.ts';
 import { siteActor } from '../../api/services/audit/record-audit.ts';
@@ -25,6 +26,8 @@ interface Options {
   readonly env?: Readonly<Record<string, string>>;
   /** Replaces parts of what the app gets, e.g. a queue. */
   readonly dependencies?: Partial<Dependencies>;
+  /** Other limits or another worker entry for the queue. It is not started: `app.deps.jobs.start()`. */
+  readonly jobs?: Partial<JobsOptions>;
 }
 
 export interface TestApp {
@@ -58,12 +61,14 @@ export async function startTestApp(options: Options = {}): Promise<TestApp> {
   let offset = 0;
   const clock = (): Date => new Date(Date.now() + offset);
   const accounts: StandInAccount[] = [...demoAccounts];
+  const mailer = makeMailer({ orm, env, clock, logger });
   const deps: Dependencies = {
     orm,
     env,
     clock,
     rng: randomBytes,
-    mailer: makeMailer({ orm, env, clock, logger }),
+    mailer,
+    jobs: makeJobs({ orm, clock, logger, mailer, workers: env.workers, origin: 'http://site.example', ...options.jobs }),
     logger,
     standInAccounts: accounts,
     clientDir: path.join(dataDir, 'no-client'),
@@ -131,6 +136,7 @@ export async function startTestApp(options: Options = {}): Promise<TestApp> {
       closeEventStreams();
       server.closeAllConnections();
       await new Promise<void>((resolve) => server.close(() => resolve()));
+      await deps.jobs.stop();
       await deps.mailer.stop();
       await orm.close(true);
       rmSync(dataDir, { recursive: true, force: true });

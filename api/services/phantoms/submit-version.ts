@@ -19,7 +19,7 @@ import type { PhantomAt } from './find-phantom.ts';
 export async function submitVersion(em: EntityManager, jobs: Jobs, input: Acting & PhantomAt & { readonly origin: string }): Promise<void> {
   const { actor, now, phantom, version, origin } = input;
   requireSubmittable(version.state, version.n);
-  await checkUploads(em, { actor, now, content: version });
+  await checkUploads(em, { actor, now, content: { definition: version.definition, frames: version.frames ?? null } });
   const { contentHash } = version;
   // Outside any transaction: the one connection must not wait for a computation.
   const simulation = await simulate(em, jobs, { definition: version.definition, checks: true });

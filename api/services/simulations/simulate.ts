@@ -39,7 +39,7 @@ async function mayKeep(em: EntityManager, stored: Simulation): Promise<boolean> 
 async function store(em: EntityManager, hash: string, output: SimulationOutput): Promise<Simulation> {
   const { summary, checks, seconds } = output;
   const row = {
-    codeVersion: output.codeVersion,
+    codeVersion,
     summary,
     modelErrorFloor: summary.modelErrorFloor,
     noiseScale: summary.noiseScale,
@@ -53,7 +53,7 @@ async function store(em: EntityManager, hash: string, output: SimulationOutput):
     // Somebody else may have stored the same meanwhile.
     const existing = await inner.findOne(SimulationEntity, { contentHash: hash }, { populate: ['frame', 'reference', 'clean', 'truthImage'] });
     if (!existing) return inner.create(SimulationEntity, { contentHash: hash, checks, ...row });
-    if (existing.codeVersion !== output.codeVersion && !(await mayKeep(inner, existing))) {
+    if (existing.codeVersion !== codeVersion && !(await mayKeep(inner, existing))) {
       const { frame, reference, clean, truthImage, ...scalars } = row;
       Object.assign(existing, scalars, { checks });
       existing.frame.set(frame);

@@ -1,0 +1,35 @@
+import type { CheckResultWire } from '../../shared/contracts/common';
+import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
+import { runLevel, trivialMetrics } from '../../solvers/campaign/run';
+import { secondsPerReconstruction, timeBaseline } from '../../solvers/campaign/timing';
+import type { EitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
+import type { SimulatedImpedance } from '../../solvers/problems/electrical-impedance/simulated-phantom';
+import type { RunChecksOutput, RunChecksTask } from './tasks.ts';
+import { preparedOf, problemOf, seedOf, simulatedOf } from './worker-tasks.ts';
+
+export function phantomChecks(_input: { definition: PhantomDefinition; arrayValues: Float64Array | null; problem: EitInversion; simulated: SimulatedImpedance }): CheckResultWire[] {
+  return [];
+}
+
+/** A slow method is timed on few draws. */
+const timedSeconds = 0.5;
+
+export function checkFinishedRun(task: RunChecksTask, now: () => number): RunChecksOutput {
+  const { run } = task;
+  const problem = problemOf(run.definition);
+  const prepared = preparedOf(run);
+  const simulated = simulatedOf(run);
+  // The middle of the ladder: neither the noise that no rule fights nor the noise that stops it at once.
+  const options = { ...seedOf(run, run.ladder.length >> 1), draws: Array.from({ length: run.draws }, (_, draw) => draw), now };
+  const first = runLevel(prepared, simulated, { ...options, draws: [0] });
+  const one = first[0]?.seconds ?? 0;
+  const count = Math.min(run.draws, Math.max(1, Math.floor(timedSeconds / Math.max(one, 1e-6))));
+  const seconds = secondsPerReconstruction(runLevel(prepared, simulated, { ...options, draws: options.draws.slice(0, count) }));
+  const baseline = timeBaseline(problem, simulated, options);
+  return {
+    checks: [],
+    trivial: Object.fromEntries(Object.entries(trivialMetrics(problem, simulated)).map(([key, { value }]) => [key, value !== null && Number.isFinite(value) ? value : null])),
+    secondsPerReconstruction: seconds,
+    timeRatio: seconds !== null && baseline !== null && baseline > 0 ? seconds / baseline : null,
+  };
+}

@@ -1,0 +1,156 @@
+import { prepareRun, runLevel, type PreparedRun } from '../../solvers/campaign/run';
+import { errorAgainstParameter, picardData } from '../../solvers/campaign/sensitivity';
+import type { SimulatedPhantom, Trial } from '../../solvers/campaign/trial';
+import { canonicalJson } from '../../solvers/core/hash';
+import type { PenaltyKey } from '../../solvers/core/types';
+import type { EitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
+import { channelNames, channels, patternCount } from '../../solvers/problems/electrical-impedance/patterns';
+import { createProblem, describeProblem, simulate } from '../../solvers/problems/registry';
+import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
+import type { SimulationSummary } from '../entities/simulation.ts';
+import { phantomChecks } from './worker-checks.ts';
+import type { RunInput, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask, TrialOutput } from './tasks.ts';
+
+type Clock = () => number;
+
+/** The values used last, up to a number. */
+class Recent<T> {
+  private readonly entries = new Map<string, T>();
+  constructor(private readonly size: number) {}
+  get(key: string, make: () => T): T {
+    const value = this.entries.get(key) ?? make();
+    this.entries.delete(key);
+    this.entries.set(key, value);
+    const oldest = this.entries.keys().next();
+    if (this.entries.size > this.size && !oldest.done) this.entries.delete(oldest.value);
+    return value;
+  }
+}
+
+// A problem takes about 20 MB; a prepared run shares the problem and its decompositions.
+const problems = new Recent<EitInversion>(3);
+const preparedRuns = new Recent<PreparedRun>(4);
+
+export function problemOf(definition: PhantomDefinition): EitInversion {
+  const descriptor = describeProblem(definition);
+  return problems.get(canonicalJson(descriptor), () => createProblem(descriptor));
+}
+
+export function preparedOf(run: RunInput): PreparedRun {
+  return preparedRuns.get(canonicalJson([run.key, run.configuration, describeProblem(run.definition)]), () => prepareRun({ problem: problemOf(run.definition), ...run.configuration }));
+}
+
+export const simulatedOf = (run: RunInput): SimulatedPhantom => ({
+  clean: run.clean,
+  noiseScale: run.noiseScale,
+  truthImage: run.truthImage,
+  backgroundImage: new Float64Array(run.truthImage.length).fill(run.definition.truth.background),
+  targets: run.targets,
+});
+
+export const seedOf = (run: RunInput, level: number) => {
+  const delta = run.ladder[level];
+  if (delta === undefined) throw new RangeError(`The ladder has no level ${level}.`);
+  return { benchSeed: run.seed, phantomHash: run.phantomHash, levelIndex: level, level: delta };
+};
+
+export function simulatePhantom({ definition, arrayValues, checks }: SimulateTask, now: Clock): SimulationOutput {
+  const begin = now();
+  const problem = problemOf(definition);
+  const simulated = simulate(definition, arrayValues ?? undefined, problem);
+  const { frame, reference, clean, truthImage } = simulated;
+  return {
+    summary: summarise(definition, problem, simulated),
+    frame,
+    reference,
+    clean,
+    truthImage,
+    checks: checks ? phantomChecks({ definition, arrayValues, problem, simulated }) : null,
+    seconds: now() - begin,
+  };
+}
+
+function summarise(definition: PhantomDefinition, problem: EitInversion, simulated: ReturnType<typeof simulate>): SimulationSummary {
+  const { geometry, dataKind, noiseReference } = definition;
+  const { frame, reference, truthImage, grid } = simulated;
+  const names = channelNames(geometry);
+  const patterns = patternCount(geometry);
+  const patternNames: string[] = Array.from({ length: patterns }, () => '');
+  const byPattern: string[][] = Array.from({ length: patterns }, () => []);
+  channels(geometry).forEach(({ pattern }, i) => {
+    patternNames[pattern] = names[i]!.drive;
+    byPattern[pattern]!.push(names[i]!.measure);
+  });
+  let largestChange = 0;
+  for (let i = 0; i < frame.length; i++) largestChange = Math.max(largestChange, Math.abs(frame[i]! - reference[i]!));
+  let low = Infinity;
+  let high = -Infinity;
+  for (const value of truthImage) {
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  }
+  const { nx, ny, xMin, xMax, yMin, yMax, bodyRadius } = grid;
+  return {
+    dataKind,
+    noiseReference,
+    dataUnit: 'V',
+    patterns,
+    valuesPerPattern: frame.length / patterns,
+    patternNames,
+    channelNames: byPattern,
+    noiseScale: simulated.noiseScale,
+    largestChange,
+    grid: { nx, ny, xMin, xMax, yMin, yMax, bodyRadius },
+    truthRange: [low, high],
+    background: definition.truth.background,
+    unit: problem.unit,
+    targets: simulated.targets.map(({ label, x, y, area, contrast }) => ({ label, x, y, area, contrast })),
+    modelErrorFloor: simulated.modelErrorFloor,
+    simulation: { unknowns: simulated.unknowns, elements: simulated.elements, kind: simulated.kind },
+    inversion: { cells: simulated.cells, nodes: simulated.nodes },
+  };
+}
+
+export function runSliceIn({ run, level, draws }: SliceTask, now: Clock): SliceOutput {
+  const begin = now();
+  const prepared = preparedOf(run);
+  const ready = now();
+  const trials = runLevel(prepared, simulatedOf(run), { ...seedOf(run, level), draws, now });
+  return { trials: trials.map(toOutput), seconds: now() - ready, prepareSeconds: ready - begin };
+}
+
+function toOutput(trial: Trial): TrialOutput {
+  const metrics: Record<string, number | null> = {};
+  const reasons: Record<string, string> = {};
+  for (const [key, { value, reason }] of Object.entries(trial.metrics)) {
+    // A value that is not finite cannot be stored: SQLite refuses it and JSON would turn it into null without a reason.
+    metrics[key] = value !== null && Number.isFinite(value) ? value : null;
+    if (metrics[key] === null) reasons[key] = reason ?? 'The value is not finite.';
+  }
+  const at = trial.metrics['relative-sup-error']?.at ?? trial.metrics['sup-error']?.at;
+  const { levelIndex: level, drawIndex: draw, iterations, forwardSolves, stop, noiseNorm, imageHash, image, parameter } = trial;
+  return {
+    level, draw, iterations, forwardSolves, stop, noiseNorm, imageHash, image, metrics,
+    parameter: parameter !== null && Number.isFinite(parameter) ? parameter : null,
+    reasons: Object.keys(reasons).length > 0 ? reasons : null,
+    supAt: at ? [at[0], at[1]] : null,
+  };
+}
+
+export function sensitivityOf({ run, level, draw }: SensitivityTask): SensitivityOutput {
+  const problem = problemOf(run.definition);
+  const simulated = simulatedOf(run);
+  const at = { ...seedOf(run, level), drawIndex: draw };
+  const found = errorAgainstParameter(problem, run.configuration, simulated, at);
+  if (!found) throw new RangeError('This method has no parameter to vary, or is nonlinear: a grid of nonlinear solves takes too long to show.');
+  const penalty = run.configuration.parameters['penalty'];
+  const penalties: readonly PenaltyKey[] = ['identity', 'gradient', 'laplacian'];
+  const picard = picardData(problem, penalties.find((key) => key === penalty) ?? 'identity', simulated, at);
+  return {
+    parameterName: found.parameterName,
+    parameters: [...found.parameters],
+    errors: [...found.errors],
+    oracle: found.oracle,
+    picard: { ...picard, singularValues: [...picard.singularValues], coefficients: [...picard.coefficients] },
+  };
+}
