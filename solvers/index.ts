@@ -13,3 +13,10 @@ export { prepareRun, runLevel, recomputeDraw, scoreImage, trivialMetrics, type P
 export { runHash, type SimulatedPhantom, type LevelSeed, type Trial } from './campaign/trial';
 export { secondsPerReconstruction, timeBaseline } from './campaign/timing';
 export { errorAgainstParameter, picardData, type Sensitivity, type PicardData, type DrawOfLevel } from './campaign/sensitivity';
+
+export { errorTable, levelStatistics, type LevelStatistics } from './statistics/error-table';
+export { stabilitySheet, type StabilitySheet, type StabilityInput } from './statistics/stability-sheet';
+export { rankAtNoise, placeOnLadder, interpolateLevels, type Ranking, type RankingRow, type RankedEntry, type RankingInput } from './statistics/ranking';
+export { comparePairs, type PairComparison } from './statistics/pairs';
+export { lossOf, type Better } from './statistics/loss';
+export { quantileOfSorted, median } from './statistics/quantiles';

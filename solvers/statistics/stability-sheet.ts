@@ -1,0 +1,226 @@
+/**
+ * How an error grows with the noise: E = b + C delta^nu against E = C |ln delta|^(-kappa), by AICc, with the breakdown noise and
+ * bootstrap intervals over draws.
+ */
+import { exp, ln, pow } from '../core/math';
+import { deriveKey, RandomStream } from '../core/random';
+import type { Interval } from './bootstrap';
+import { quantileOfSorted } from './quantiles';
+
+export interface StabilitySheet {
+  readonly model: 'power' | 'logarithmic' | 'none';
+  /** nu of the power law, or kappa of the logarithmic one; 90 % interval. */
+  readonly exponent: Interval | null;
+  /** Error left without noise, b >= 0; the logarithmic law has none. */
+  readonly floor: Interval | null;
+  readonly constant: number | null;
+  /** Noise at which the median first reaches the trivial reconstruction, log-interpolated; interval cut at the ends of the ladder. */
+  readonly breakdown: Interval | null;
+  readonly breakdownNote: 'beyond' | 'throughout' | null;
+  /** AICc of the power law less that of the logarithmic law; negative speaks for the power law. */
+  readonly aiccDifference: number | null;
+  readonly reason: string | null;
+}
+
+export interface StabilityInput {
+  /** Ascending noise levels, fractions below 1. */
+  readonly ladder: readonly number[];
+  /** By level: the values of the draws, null where undefined. */
+  readonly draws: readonly (readonly (number | null)[])[];
+  /** The trivial reconstruction's value, null where it has none. */
+  readonly trivial: number | null;
+  /** Names the bootstrap's stream, e.g. run and metric. */
+  readonly seed: string;
+  readonly resamples?: number;
+}
+
+const exponentGrid = Float64Array.from({ length: 61 }, (_, i) => exp(ln(0.03) + ((ln(4) - ln(0.03)) * i) / 60));
+const kappaGrid = Float64Array.from({ length: 61 }, (_, i) => exp(ln(0.05) + ((ln(12) - ln(0.05)) * i) / 60));
+/** Levels needed to fit three constants and have a residual left to judge them by. */
+const fewestLevels = 6;
+
+interface Fit {
+  readonly exponent: number;
+  readonly floor: number;
+  readonly constant: number;
+  readonly residual: number;
+}
+
+/**
+ * Least squares of relative residuals ((b + C p_i - E_i) / E_i) with b, C >= 0 for given powers p_i.
+ */
+function linearFit(powers: ArrayLike<number>, from: number, errors: Float64Array, withFloor: boolean): { floor: number; constant: number; residual: number } {
+  const n = errors.length;
+  let s11 = 0;
+  let s12 = 0;
+  let s22 = 0;
+  let r1 = 0;
+  let r2 = 0;
+  for (let i = 0; i < n; i++) {
+    const one = 1 / errors[i];
+    const p = powers[from + i] * one;
+    s11 += one * one;
+    s12 += one * p;
+    s22 += p * p;
+    r1 += one;
+    r2 += p;
+  }
+  let floor = 0;
+  let constant = s22 > 0 ? r2 / s22 : 0;
+  const determinant = s11 * s22 - s12 * s12;
+  if (withFloor && determinant > 1e-13 * s11 * s22) {
+    const b = (s22 * r1 - s12 * r2) / determinant;
+    const c = (s11 * r2 - s12 * r1) / determinant;
+    if (c < 0) {
+      floor = r1 / s11;
+      constant = 0;
+    } else if (b > 0) {
+      floor = b;
+      constant = c;
+    }
+  }
+  let residual = 0;
+  for (let i = 0; i < n; i++) {
+    const r = (floor + constant * powers[from + i]) / errors[i] - 1;
+    residual += r * r;
+  }
+  return { floor, constant, residual };
+}
+
+/** Searches the exponent on a log grid whose powers are tabled, then refines by the parabola through the three best. */
+function fitLaw(base: Float64Array, errors: Float64Array, grid: Float64Array, table: Float64Array, sign: number, withFloor: boolean): Fit {
+  const n = errors.length;
+  let best = 0;
+  const residuals = new Float64Array(grid.length);
+  for (let g = 0; g < grid.length; g++) {
+    residuals[g] = linearFit(table, g * n, errors, withFloor).residual;
+    if (residuals[g] < residuals[best]) best = g;
+  }
+  let exponent = grid[best];
+  let fit = linearFit(table, best * n, errors, withFloor);
+  if (best > 0 && best < grid.length - 1) {
+    const left = residuals[best - 1];
+    const right = residuals[best + 1];
+    const bend = left - 2 * residuals[best] + right;
+    if (bend > 0) {
+      const step = ln(grid[1] / grid[0]);
+      const refined = exponent * exp((0.5 * step * (left - right)) / bend);
+      const powers = base.map((x) => pow(x, sign * refined));
+      const again = linearFit(powers, 0, errors, withFloor);
+      if (again.residual <= fit.residual) {
+        exponent = refined;
+        fit = again;
+      }
+    }
+  }
+  return { exponent, ...fit };
+}
+
+function powerTable(base: Float64Array, grid: Float64Array, sign: number): Float64Array {
+  const table = new Float64Array(grid.length * base.length);
+  for (let i = 0; i < base.length; i++) {
+    const log = ln(base[i]);
+    for (let g = 0; g < grid.length; g++) table[g * base.length + i] = exp(sign * grid[g] * log);
+  }
+  return table;
+}
+
+/** Akaike's criterion with the small-sample correction (Hurvich and Tsai 1989); `constants` counts the variance too. */
+function aicc(residual: number, n: number, constants: number): number {
+  return n * ln(Math.max(residual, 1e-300) / n) + 2 * constants + (2 * constants * (constants + 1)) / (n - constants - 1);
+}
+
+type Crossing = { readonly at: number } | { readonly note: 'beyond' | 'throughout' };
+
+/** First noise at which the medians reach `trivial`, interpolated in log-log between ladder levels. */
+export function breakdownNoise(levels: ArrayLike<number>, medians: ArrayLike<number>, trivial: number): Crossing {
+  if (medians[0] >= trivial) return { note: 'throughout' };
+  for (let i = 1; i < medians.length; i++)
+    if (medians[i] >= trivial) {
+      const below = ln(Math.max(medians[i - 1], 1e-300));
+      const share = (ln(trivial) - below) / (ln(medians[i]) - below);
+      return { at: exp(ln(levels[i - 1]) + share * (ln(levels[i]) - ln(levels[i - 1]))) };
+    }
+  return { note: 'beyond' };
+}
+
+function medianOf(scratch: Float64Array): number {
+  return quantileOfSorted(scratch.sort(), 0.5);
+}
+
+const none = (reason: string, rest: Partial<StabilitySheet> = {}): StabilitySheet => ({
+  model: 'none', exponent: null, floor: null, constant: null, breakdown: null, breakdownNote: null, aiccDifference: null, reason, ...rest,
+});
+
+/**
+ * The sheet of one metric of one run, for metrics where smaller is better. Cost: about 1 ms at 10 levels, 24 draws, 200 resamples.
+ * @throws RangeError where the ladder does not ascend in (0, 1) or does not match the draws
+ */
+export function stabilitySheet(input: StabilityInput): StabilitySheet {
+  const { ladder, draws, trivial, resamples = 200 } = input;
+  if (ladder.length !== draws.length) throw new RangeError(`The ladder has ${ladder.length} levels, the draws ${draws.length}.`);
+  ladder.forEach((level, i) => {
+    if (!(level > 0 && level < 1) || (i > 0 && level <= ladder[i - 1])) throw new RangeError(`The ladder must ascend between 0 and 1; level ${i} is ${level}.`);
+  });
+  const kept: { level: number; values: Float64Array }[] = [];
+  draws.forEach((values, i) => {
+    const defined = values.filter((value): value is number => value !== null && Number.isFinite(value));
+    if (defined.length > 0 && 2 * defined.length >= values.length) kept.push({ level: ladder[i], values: Float64Array.from(defined) });
+  });
+  if (kept.length === 0) return none('No level has a defined value in half of its draws.');
+  const levels = Float64Array.from(kept, (item) => item.level);
+  const errors = Float64Array.from(kept, (item) => medianOf(Float64Array.from(item.values)));
+  const first = trivial === null || !(trivial > 0) ? null : breakdownNoise(levels, errors, trivial);
+  const n = errors.length;
+  const spread = Math.max(...errors) - Math.min(...errors);
+  const fits = n >= fewestLevels && errors.every((error) => error > 0) && spread > 1e-9 * Math.max(...errors);
+
+  const powers = powerTable(levels, exponentGrid, 1);
+  const logs = levels.map((level) => -ln(level));
+  const logPowers = powerTable(logs, kappaGrid, -1);
+  const fitPower = (e: Float64Array): Fit => fitLaw(levels, e, exponentGrid, powers, 1, true);
+  const fitLog = (e: Float64Array): Fit => fitLaw(logs, e, kappaGrid, logPowers, -1, false);
+  const power = fits ? fitPower(errors) : null;
+  const log = fits ? fitLog(errors) : null;
+  const difference = power && log ? aicc(power.residual, n, 4) - aicc(log.residual, n, 3) : null;
+  const model = difference === null ? 'none' : difference <= 0 ? 'power' : 'logarithmic';
+  const chosen = model === 'power' ? power : model === 'logarithmic' ? log : null;
+
+  // The bootstrap keeps the law chosen and resamples the draws of each level.
+  const stream = new RandomStream(deriveKey('hadamark stability 1', input.seed));
+  const exponents = new Float64Array(resamples);
+  const floors = new Float64Array(resamples);
+  const crossings = new Float64Array(resamples);
+  const resampled = new Float64Array(n);
+  const scratch = kept.map((item) => new Float64Array(item.values.length));
+  for (let r = 0; r < resamples; r++) {
+    for (let i = 0; i < n; i++) {
+      const { values } = kept[i];
+      for (let k = 0; k < values.length; k++) scratch[i][k] = values[stream.nextIndex(values.length)];
+      resampled[i] = medianOf(scratch[i]);
+    }
+    if (chosen) {
+      const fit = model === 'power' ? fitPower(resampled) : fitLog(resampled);
+      exponents[r] = fit.exponent;
+      floors[r] = fit.floor;
+    }
+    if (first && trivial !== null) {
+      const crossing = breakdownNoise(levels, resampled, trivial);
+      crossings[r] = 'at' in crossing ? crossing.at : crossing.note === 'beyond' ? levels[n - 1] : levels[0];
+    }
+  }
+  const interval = (value: number, sample: Float64Array): Interval => {
+    sample.sort();
+    return { value, low: Math.min(value, quantileOfSorted(sample, 0.05)), high: Math.max(value, quantileOfSorted(sample, 0.95)) };
+  };
+  const breakdown = first && 'at' in first ? interval(first.at, crossings) : null;
+  const breakdownNote = first && 'note' in first ? first.note : null;
+  if (!chosen) {
+    const reason = n < fewestLevels ? `Fewer than ${fewestLevels} levels have a defined value.` : spread <= 1e-9 * Math.max(...errors) ? 'The error does not change with the noise.' : 'An error of zero has no logarithm.';
+    return none(reason, { breakdown, breakdownNote });
+  }
+  return {
+    model, exponent: interval(chosen.exponent, exponents), floor: model === 'power' ? interval(chosen.floor, floors) : null, constant: chosen.constant,
+    breakdown, breakdownNote, aiccDifference: difference, reason: null,
+  };
+}

@@ -1,0 +1,140 @@
+import { describe, expect, it } from 'vitest';
+import { defaultLadder } from '../../../shared/domain/ladder';
+import { deriveKey, RandomStream } from '../../../solvers/core/random';
+import { errorTable, levelStatistics } from '../../../solvers/statistics/error-table';
+import { comparePairs } from '../../../solvers/statistics/pairs';
+import { placeOnLadder, rankAtNoise, type RankedEntry } from '../../../solvers/statistics/ranking';
+import { breakdownNoise, stabilitySheet } from '../../../solvers/statistics/stability-sheet';
+
+/** 24 draws about a law, log-normal scatter. */
+function scattered(law: (level: number) => number, scatter: number, name: string, draws = 24): number[][] {
+  const stream = new RandomStream(deriveKey('test', name));
+  return defaultLadder.map((level) => Array.from({ length: draws }, () => law(level) * Math.exp(scatter * stream.nextNormal())));
+}
+
+describe('stability sheet', () => {
+  it('finds the exponent and the floor it was made with, without scatter', () => {
+    for (const [b, c, nu] of [[0.2, 2, 0.5], [0.05, 10, 1], [0, 1, 0.25]] as const) {
+      const sheet = stabilitySheet({ ladder: defaultLadder, draws: scattered((d) => b + c * d ** nu, 0, 'exact'), trivial: 1, seed: 's' });
+      expect(sheet.model).toBe('power');
+      // The exponent is refined by one parabola on a grid of ratio 1.085: 1 %, and floor and constant with it.
+      expect(Math.abs(sheet.exponent!.value / nu - 1)).toBeLessThan(0.01);
+      expect(Math.abs(sheet.floor!.value - b)).toBeLessThan(0.01);
+      expect(Math.abs(sheet.constant! / c - 1)).toBeLessThan(0.04);
+    }
+  });
+  it('has intervals that hold the truth and do not depend on when they are computed', () => {
+    const input = { ladder: defaultLadder, draws: scattered((d) => 0.2 + 4 * d ** 0.8, 0.1, 'scatter'), trivial: 1, seed: 'run 1' };
+    const sheet = stabilitySheet(input);
+    expect(sheet).toEqual(stabilitySheet(input));
+    expect(sheet.exponent!.low).toBeLessThan(0.8);
+    expect(sheet.exponent!.high).toBeGreaterThan(0.8);
+    expect(sheet.floor!.low).toBeLessThan(0.2);
+    expect(sheet.floor!.high).toBeGreaterThan(0.19);
+    // 0.2 + 4 d^0.8 = 1 at d = 0.2^(1/0.8).
+    const exact = 0.2 ** (1 / 0.8);
+    expect(sheet.breakdown!.low).toBeLessThan(exact);
+    expect(Math.abs(sheet.breakdown!.value / exact - 1)).toBeLessThan(0.15);
+    expect(sheet.breakdown!.high).toBeGreaterThan(sheet.breakdown!.value);
+  });
+  it('prefers the logarithmic law for logarithmic data', () => {
+    const sheet = stabilitySheet({ ladder: defaultLadder, draws: scattered((d) => 2 * Math.abs(Math.log(d)) ** -1.5, 0.002, 'log'), trivial: 1, seed: 's' });
+    expect(sheet.model).toBe('logarithmic');
+    expect(Math.abs(sheet.exponent!.value / 1.5 - 1)).toBeLessThan(0.02);
+    expect(sheet.floor).toBeNull();
+  });
+  it('says why there is none', () => {
+    const constant = stabilitySheet({ ladder: defaultLadder, draws: scattered(() => 1, 0, 'one'), trivial: 1, seed: 's' });
+    expect(constant).toMatchObject({ model: 'none', breakdownNote: 'throughout', reason: 'The error does not change with the noise.' });
+    expect(stabilitySheet({ ladder: [0.1, 0.2], draws: [[0.1], [0.2]], trivial: null, seed: 's' })).toMatchObject({ model: 'none', breakdown: null, breakdownNote: null });
+    expect(stabilitySheet({ ladder: [0.1], draws: [[null]], trivial: 1, seed: 's' }).reason).toMatch(/No level/);
+    expect(stabilitySheet({ ladder: defaultLadder, draws: scattered((d) => d, 0, 'low'), trivial: 1, seed: 's' }).breakdownNote).toBe('beyond');
+    expect(() => stabilitySheet({ ladder: [0.2, 0.1], draws: [[1], [1]], trivial: 1, seed: 's' })).toThrow(RangeError);
+  });
+  it('interpolates the breakdown in log-log', () => {
+    // Medians 0.5 and 2 at 0.01 and 0.04: 1 lies half-way in the logarithm.
+    expect(breakdownNoise([0.01, 0.04], [0.5, 2], 1)).toEqual({ at: expect.closeTo(0.02, 14) });
+  });
+});
+
+describe('error table', () => {
+  it('summarises draws, names the median and the worst, and keeps gaps', () => {
+    const row = levelStatistics(0.01, [4, null, 1, 2, 3], 'lower', 'not defined');
+    expect(row).toMatchObject({ count: 4, median: 2.5, mean: 2.5, worst: 4, worstDraw: 0, medianDraw: 3, reason: 'not defined', draws: [4, null, 1, 2, 3] });
+    expect(row.sd).toBeCloseTo(Math.sqrt(5 / 3), 14);
+    expect(levelStatistics(0.01, [0.2, 1.1, 3], 'one').worstDraw).toBe(2);
+    expect(levelStatistics(0.01, [-5, 1, 2], 'zero').worst).toBe(-5);
+    expect(levelStatistics(0.01, [5, 1, 2], 'higher').worst).toBe(1);
+    expect(levelStatistics(0.01, [null, null], 'lower', 'why')).toMatchObject({ count: 0, median: null, worstDraw: null, reason: 'why' });
+  });
+  it('places trials by their index, also out of order and unfinished', () => {
+    const trial = (levelIndex: number, drawIndex: number, value: number | null) => ({ levelIndex, drawIndex, metrics: { m: { value, reason: 'r' } } });
+    const table = errorTable([trial(0, 2, 3), trial(0, 0, 1), trial(1, 0, null)], [0.01, 0.1], { key: 'm', better: 'lower' });
+    expect(table[0]).toMatchObject({ draws: [1, null, 3], count: 2, median: 2 });
+    expect(table[1]).toMatchObject({ count: 0, reason: 'r' });
+  });
+});
+
+describe('ranking', () => {
+  const entry = (id: string, law: (level: number) => number, scatter: number, phantoms: number): RankedEntry => ({
+    id, values: Array.from({ length: phantoms }, (_, p) => scattered(law, scatter, `${id} ${p}`)),
+  });
+  const good = entry('good', (d) => 0.1 + d, 0.05, 4);
+  const twin = { ...entry('twin', (d) => 0.1 + d, 0.05, 4) };
+  const bad = entry('bad', (d) => 0.3 + d, 0.05, 4);
+  it('separates what differs, ties what does not, from one ordering', () => {
+    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [bad, twin, good] });
+    expect(ranking.rows.map((row) => row.rank)).toEqual([1, 1, 3]);
+    expect(ranking.rows.map((row) => row.tieGroup)).toEqual([0, 0, 1]);
+    expect(ranking.rows[2].id).toBe('bad');
+    const meanRanks = ranking.rows.map((row) => row.meanRank!);
+    expect([...meanRanks].sort((a, b) => a - b)).toEqual(meanRanks);
+    expect(ranking.test).toMatchObject({ separable: true, blocks: 96, phantoms: 4 });
+    expect(ranking.wins[0][2]).toBe(1);
+    expect(ranking.wins[2][0]).toBe(0);
+    expect(ranking.wins[1][0]! + ranking.wins[0][1]!).toBeCloseTo(1, 14);
+    expect(ranking.wins[1][1]).toBeNull();
+  });
+  it('interpolates between levels and says so', () => {
+    const exact = [entry('a', (d) => 2 * d ** 0.5, 0, 1), entry('b', (d) => 3 * d ** 0.5, 0, 1)];
+    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.015, better: 'lower', entries: exact });
+    expect(ranking.interpolated).toBe(true);
+    // A power law is a straight line in log-log: exact up to rounding.
+    expect(ranking.rows[0].median).toBeCloseTo(2 * 0.015 ** 0.5, 12);
+    expect(rankAtNoise({ ladder: defaultLadder, noise: 0.02, better: 'lower', entries: exact }).interpolated).toBe(false);
+    expect(placeOnLadder(defaultLadder, 1e-6)).toMatchObject({ nearest: 0, interpolated: true });
+    expect(placeOnLadder(defaultLadder, 0.9)).toMatchObject({ nearest: 9, interpolated: true });
+  });
+  it('gives no winner where it cannot: few draws, or missing runs', () => {
+    const few = [good, bad].map((item) => ({ ...item, values: [item.values[0]!.map((draws) => draws.slice(0, 3))] }));
+    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: few });
+    expect(ranking.test).toMatchObject({ separable: false, statistic: null });
+    expect(ranking.test.words).toMatch(/^Not enough phantoms/);
+    expect(ranking.rows.map((row) => row.rank)).toEqual([1, 1]);
+    const missing = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [{ ...good, values: [null, ...good.values.slice(1)] }, bad, twin] });
+    expect(missing.rows[2]).toMatchObject({ id: 'good', rank: null, complete: false });
+    expect(missing.rows[0]).toMatchObject({ id: 'twin', rank: 1 });
+  });
+  it('counts an undefined value as the worst', () => {
+    const undefinedEntry: RankedEntry = { id: 'none', values: good.values.map((levels) => levels!.map((draws) => draws.map(() => null))) };
+    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [undefinedEntry, good] });
+    expect(ranking.rows[1]).toMatchObject({ id: 'none', median: null });
+    expect(ranking.wins[0][1]).toBe(1);
+  });
+  it('compares pairs with Holm', () => {
+    const losses = (item: RankedEntry) => Float64Array.from(item.values.flatMap((levels) => levels![5] as number[]));
+    const pairs = comparePairs([good, twin, bad].map((item) => ({ id: item.id, losses: losses(item) })));
+    expect(pairs.map((pair) => pair.separable)).toEqual([false, true, true]);
+    expect(pairs[1].medianRatio).toBeLessThan(0.5);
+  });
+  it('is fast enough for a page: 8 solvers, 4 phantoms, 24 draws', () => {
+    const entries = Array.from({ length: 8 }, (_, i) => entry(`s${i}`, (d) => 0.1 + 0.05 * i + d, 0.2, 4));
+    const run = (): number => {
+      const begin = process.cpuUsage().user;
+      rankAtNoise({ ladder: defaultLadder, noise: 0.015, better: 'lower', entries });
+      return (process.cpuUsage().user - begin) / 1000;
+    };
+    // Aim 50 ms of processor time; the best of five, so that compiling and neighbours on the machine do not count.
+    expect(Math.min(run(), run(), run(), run(), run())).toBeLessThan(50);
+  });
+});
