@@ -118,7 +118,9 @@ function splitByDirection(
   let bestScore = Infinity;
   let bestDirection = 0;
   let bestMedian = 0;
-  for (let d = 0; d < directions.length; d += 2) {
+  // Diagonal cuts save fill near the root; below, they only cost time.
+  const tried = high - low > 2000 ? directions.length : 4;
+  for (let d = 0; d < tried; d += 2) {
     const cx = directions[d];
     const cy = directions[d + 1];
     for (let k = low; k < high; k++) {

@@ -6,18 +6,17 @@ import { applySparse } from '../../core/sparse';
 import type { ForwardProblem } from '../../core/types';
 import { requireVector } from '../../core/vector';
 import { matmul, matmulTransposed, transpose } from '../../linear-algebra/matrix-product';
-import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
 import type { TruthField } from '../../truth/truth-field';
 import { projectOnCells } from './cell-projection';
 import { cellJumps, cellPenalty, conductivityCells, pixelShares } from './conductivity-cells';
 import { electrodeIntegrals } from './electrode-integrals';
 import { electrodeModel, solveElectrodes } from './electrode-model';
 import { electrodeFrame } from './electrodes';
-import { degreeFourShapes, elementStiffness, entriesPerElement, straightStiffness } from './elements';
+import { degreeFourShapes } from './elements';
 import { inversionDetail, inversionMesh, type InversionDetail } from './inversion-mesh';
 import { frameJacobian, pairWeights } from './jacobian';
 import { frameSize, measure, patternCount } from './patterns';
-import { pairSensitivities } from './sensitivity';
+import { pairSensitivities, unitStiffness } from './sensitivity';
 import { smallestContact } from './simulation';
 
 /** The inversion model of electrical impedance, with what the floor and the checks need beyond the common contract. */
@@ -127,22 +126,4 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
 function sameValues(a: Float64Array, b: Float64Array): boolean {
   for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
   return true;
-}
-
-/** Element matrices for unit conductivity, lower triangle row by row, as the assembly integrates them. */
-function unitStiffness(mesh: QuadraticMesh): Float64Array {
-  const count = mesh.elements.length / 6;
-  const out = new Float64Array(entriesPerElement * count);
-  const local = new Float64Array(entriesPerElement * degreeFourShapes.points);
-  for (let t = 0; t < count; t++) {
-    const base = entriesPerElement * t;
-    if (mesh.curved[t] === 0) {
-      straightStiffness(mesh, t, local);
-      for (let k = 0; k < entriesPerElement; k++) out[base + k] = local[k];
-      continue;
-    }
-    elementStiffness(mesh, t, degreeFourShapes, local);
-    for (let p = 0; p < degreeFourShapes.points; p++) for (let k = 0; k < entriesPerElement; k++) out[base + k] += local[entriesPerElement * p + k];
-  }
-  return out;
 }

@@ -1,5 +1,5 @@
 import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
-import { entriesPerElement } from './elements';
+import { degreeFourShapes, elementStiffness, entriesPerElement, straightStiffness } from './elements';
 
 /**
  * Sensitivities of pairs of fields, per cell: `out[(cell * L + j) * L + k]` = integral over the cell of grad f_j . grad f_k.
@@ -36,6 +36,24 @@ export function pairSensitivities(mesh: QuadraticMesh, stiffness: Float64Array, 
   for (let c = 0; c < cells; c++) {
     const base = c * L * L;
     for (let j = 0; j < L; j++) for (let k = 0; k < j; k++) out[base + j * L + k] = out[base + k * L + j];
+  }
+  return out;
+}
+
+/** Element matrices for unit conductivity, lower triangle row by row, as the assembly integrates them. */
+export function unitStiffness(mesh: QuadraticMesh): Float64Array {
+  const count = mesh.elements.length / 6;
+  const out = new Float64Array(entriesPerElement * count);
+  const local = new Float64Array(entriesPerElement * degreeFourShapes.points);
+  for (let t = 0; t < count; t++) {
+    const base = entriesPerElement * t;
+    if (mesh.curved[t] === 0) {
+      straightStiffness(mesh, t, local);
+      for (let k = 0; k < entriesPerElement; k++) out[base + k] = local[k];
+      continue;
+    }
+    elementStiffness(mesh, t, degreeFourShapes, local);
+    for (let p = 0; p < degreeFourShapes.points; p++) for (let k = 0; k < entriesPerElement; k++) out[base + k] += local[entriesPerElement * p + k];
   }
   return out;
 }
