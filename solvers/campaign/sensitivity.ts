@@ -41,6 +41,8 @@ export function parameterGrid(field: ParameterField, points: number): number[] {
   const values: number[] = [];
   for (let i = 0; i < points; i++) {
     let value = exp(ln(low) + ((ln(high) - ln(low)) * i) / (points - 1));
+    // Rounding must not carry the ends past the range that the method takes.
+    value = Math.min(high, Math.max(low, value));
     if (field.kind === 'integer') value = Math.round(value);
     if (values.length === 0 || value > values[values.length - 1]) values.push(value);
   }
