@@ -84,6 +84,7 @@ const addEntry = defineRoute({
   bodySubject: async (body, { em }) => ({ groupId: (await findSolver(em, body.solver)).group.id }),
   handle: async ({ em, actor, deps, requestId, loaded, body }) => {
     await createEntry(em, { actor, now: deps.clock(), requestId, bench: loaded, solver: await findSolver(em, body.solver), version: body.version });
+    deps.jobs.kick();
     em.clear();
     return showBench(em, { bench: await findBench(em, loaded.slug), actor, now: deps.clock() });
   },

@@ -25,4 +25,5 @@ export const demoAccounts: readonly StandInAccount[] = [
   account(9005, 'owner-demo'),
   account(9006, 'observer-demo'),
   account(9007, 'admin-demo', ['administrator']),
+  account(9008, 'second-reviewer-demo', ['reviewer']),
 ];

@@ -61,7 +61,10 @@ export const noiseModelSchema = z.object({
 export type NoiseModelWire = z.infer<typeof noiseModelSchema>;
 
 export const checkDescriptionSchema = z.object({
-  key: z.string(), name: z.string(), appliesTo: z.array(z.string()), summary: z.string(), bound: z.string(), unit: z.string(), sources: z.array(sourceSchema),
+  key: z.string(), name: z.string(),
+  /** What it looks at: a simulated phantom, the model that inverts, a prepared method. */
+  appliesTo: z.enum(['phantom', 'problem', 'method']),
+  unit: z.string(), bound: z.number(), comparison: z.enum(['at-most', 'at-least', 'equal']), formula: z.string(), summary: z.string(), sources: z.array(sourceSchema),
 });
 export type CheckDescription = z.infer<typeof checkDescriptionSchema>;
 

@@ -1,5 +1,7 @@
 import { z } from 'zod';
-import type { MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire } from '../../../shared/contracts/catalogue';
+import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire } from '../../../shared/contracts/catalogue';
+import { methodChecks, phantomChecks, problemChecks } from '../../../solvers/checks/registry';
+import type { Check } from '../../../solvers/checks/check';
 import type { Method, Metric, ParameterField, Source } from '../../../solvers/core/types';
 import { methods } from '../../../solvers/methods/registry';
 import { metrics } from '../../../solvers/metrics/registry';
@@ -23,6 +25,16 @@ export const listRules = (): RuleWire[] =>
     conventions: [...rule.conventions],
     methods: methods.filter((method) => method.capabilities.rules.includes(rule.key)).map((method) => method.key),
   }));
+
+export const listChecks = (): CheckDescription[] => [
+  ...phantomChecks.map((check) => toCheck(check, 'phantom')),
+  ...problemChecks.map((check) => toCheck(check, 'problem')),
+  ...methodChecks.map((check) => toCheck(check, 'method')),
+];
+
+const toCheck = ({ key, name, unit, bound, comparison, formula, summary, source }: Check<never>, appliesTo: CheckDescription['appliesTo']): CheckDescription => ({
+  key, name, appliesTo, unit, bound, comparison, formula, summary, sources: [toSource(source)],
+});
 
 export const toSource = ({ short, full, fromMemory }: Source): SourceWire => ({ short, full, fromMemory: fromMemory ?? false });
 

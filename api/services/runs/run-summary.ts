@@ -4,8 +4,8 @@ import { methodName } from '../solvers/check-configuration.ts';
 import type { Run } from '../../entities/run.ts';
 import type { LoadedRun } from './find-run.ts';
 
-/** How far a run is, from its own row. */
-export function progressOf(run: Pick<Run, 'state' | 'done' | 'total' | 'draws' | 'ladder' | 'levelMedians' | 'startedAt' | 'failure'>, now: Date): Progress {
+/** How far a run is, from its own row; `secondsLeft` where the workers know it. */
+export function progressOf(run: Pick<Run, 'state' | 'done' | 'total' | 'draws' | 'ladder' | 'levelMedians' | 'startedAt' | 'failure'>, now: Date, secondsLeft?: number | null): Progress {
   const levelsDone = run.draws > 0 ? Math.min(run.ladder.length, Math.floor(run.done / run.draws)) : 0;
   const running = run.state === 'running';
   const elapsed = running && run.startedAt ? (now.getTime() - run.startedAt.getTime()) / 1000 : null;
@@ -15,13 +15,13 @@ export function progressOf(run: Pick<Run, 'state' | 'done' | 'total' | 'draws' |
     total: run.total,
     levelsDone,
     currentLevel: running && levelsDone < run.ladder.length ? levelsDone : null,
-    secondsLeft: elapsed !== null && run.done > 0 ? Math.max(0, (elapsed / run.done) * (run.total - run.done)) : null,
+    secondsLeft: secondsLeft ?? (elapsed !== null && run.done > 0 ? Math.max(0, (elapsed / run.done) * (run.total - run.done)) : null),
     failure: run.failure ?? null,
     medians: run.ladder.map((_, level) => run.levelMedians[level] ?? null),
   };
 }
 
-export function toRunSummary(run: LoadedRun, now: Date): RunSummary {
+export function toRunSummary(run: LoadedRun, now: Date, secondsLeft?: number | null): RunSummary {
   const entry = run.entry.$;
   const version = entry.solverVersion.$;
   const solver = version.solver.$;
@@ -42,7 +42,7 @@ export function toRunSummary(run: LoadedRun, now: Date): RunSummary {
     createdAt: run.createdAt.toISOString(),
     finishedAt: run.finishedAt?.toISOString() ?? null,
     submittedBy: { handle: run.submittedBy.$.handle },
-    progress: progressOf(run, now),
+    progress: progressOf(run, now, secondsLeft),
     resultHash: run.resultHash ?? null,
   };
 }

@@ -1,0 +1,72 @@
+import type { EntityManager } from '@mikro-orm/sqlite';
+import { AppError } from '../../../shared/errors.ts';
+import { metrics } from '../../../solvers/metrics/registry';
+import { median } from '../../../solvers/statistics/quantiles';
+import { RunEntity, type Run } from '../../entities/run.ts';
+import { loadRunFigures, type RunFigures } from '../figures/load-run-figures.ts';
+import type { LoadedBench } from './find-bench.ts';
+import { floorsOf } from './show-bench.ts';
+
+export interface EntryResults {
+  readonly entry: ReturnType<LoadedBench['entries']['getItems']>[number];
+  /** By phantom in the order of the bench; null where there is no run. */
+  readonly runs: readonly (Run | null)[];
+  /** Of the runs that count: finished and not declined. */
+  readonly counted: readonly (Run | null)[];
+}
+
+export interface BenchResults {
+  /** Names all that a figure depends on: entries, results and reviewers' words. */
+  readonly key: string;
+  readonly entries: readonly EntryResults[];
+  /** Largest model-error floor of the phantoms, and whose it is. */
+  readonly floor: number;
+  readonly floorPhantom: string | null;
+}
+
+/** The runs of a bench, without their figures. A declined run leaves the ranking. */
+export async function loadBenchResults(em: EntityManager, bench: LoadedBench): Promise<BenchResults> {
+  const versions = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
+  const runs = await em.find(RunEntity, { entry: { bench: bench.id } }, { orderBy: { id: 'asc' } });
+  const floors = await floorsOf(em, versions.map((version) => version.definitionHash));
+  const byPlace = new Map(runs.map((run) => [`${run.entry.id}/${run.phantomVersion.id}`, run]));
+  const entries = bench.entries.getItems().map((entry): EntryResults => {
+    const own = versions.map((version) => byPlace.get(`${entry.id}/${version.id}`) ?? null);
+    return { entry, runs: own, counted: own.map((run) => (run && run.state === 'finished' && run.review !== 'declined' ? run : null)) };
+  });
+  let floor = 0;
+  let floorPhantom: string | null = null;
+  for (const version of versions) {
+    const own = floors.get(version.definitionHash) ?? 0;
+    if (own > floor) [floor, floorPhantom] = [own, version.name];
+  }
+  const key = [bench.id, bench.revision, floor, ...runs.map((run) => `${run.id}:${run.state}:${run.resultHash ?? ''}:${run.review}:${run.reservation ?? ''}`)].join('|');
+  return { key, entries, floor, floorPhantom };
+}
+
+/** Figures of an entry by phantom; null where the run does not count. */
+export async function loadEntryFigures(em: EntityManager, results: EntryResults): Promise<(RunFigures | null)[]> {
+  const figures: (RunFigures | null)[] = [];
+  for (const run of results.counted) figures.push(run ? await loadRunFigures(em, run) : null);
+  return figures;
+}
+
+/** The trivial reconstruction's figure: the median over the phantoms that have one. Every run of a phantom has the same. */
+export function trivialOf(results: readonly EntryResults[], metric: string, phantomIndex?: number): number | null {
+  const values = new Map<number, number>();
+  for (const { counted } of results) {
+    counted.forEach((run, phantom) => {
+      const value = run?.trivial?.[metric];
+      if (typeof value === 'number' && (phantomIndex === undefined || phantomIndex === phantom)) values.set(phantom, value);
+    });
+  }
+  return values.size === 0 ? null : median([...values.values()]);
+}
+
+/** @throws AppError 'validation-failed' */
+export function requireMetric(key: string): (typeof metrics)[number] {
+  const metric = metrics.find((candidate) => candidate.key === key);
+  if (metric) return metric;
+  const known = metrics.map((candidate) => candidate.key).join(', ');
+  throw new AppError('validation-failed', `No metric is called '${key}'.`, [{ path: ['metric'], message: `There are: ${known}.` }]);
+}

@@ -1,0 +1,88 @@
+import type { EntityManager } from '@mikro-orm/sqlite';
+import type { RunDetail } from '../../../shared/contracts/runs';
+import { can, type Actor } from '../../../shared/domain/permissions.ts';
+import { mayMove, verdicts } from '../../../shared/domain/states';
+import { VerdictEntity } from '../../entities/run.ts';
+import { SimulationEntity, type Simulation } from '../../entities/simulation.ts';
+import { levelTable, runSheets } from '../figures/run-tables.ts';
+import { loadRunFigures } from '../figures/load-run-figures.ts';
+import { countOpenQuestions } from '../review/comments.ts';
+import { metrics } from '../../../solvers/metrics/registry';
+import { runSubject, type LoadedRun } from './find-run.ts';
+import { toRunSummary } from './run-summary.ts';
+
+/** A run with every table of figures. One that is under way shows the trials it has. */
+export async function showRun(em: EntityManager, input: { readonly run: LoadedRun; readonly actor: Actor | null; readonly now: Date; readonly secondsLeft?: number | null }): Promise<RunDetail> {
+  const { run, actor, now } = input;
+  const version = run.phantomVersion.$;
+  const { geometry } = version.definition;
+  const [simulation, figures, given, questions] = await Promise.all([
+    em.findOneOrFail(SimulationEntity, { contentHash: version.definitionHash }),
+    loadRunFigures(em, run),
+    em.find(VerdictEntity, { run: run.id }, { populate: ['by'], orderBy: { createdAt: 'desc' } }),
+    countOpenQuestions(em, [run.id]),
+  ]);
+  const trivial = run.trivial ?? {};
+  return {
+    ...toRunSummary(run, now, input.secondsLeft),
+    ladder: run.ladder,
+    draws: run.draws,
+    seed: run.seed,
+    rankingMetric: run.entry.$.bench.$.rankingMetric,
+    noiseReference: version.definition.noiseReference,
+    dataKind: version.definition.dataKind,
+    unit: simulation.summary.unit,
+    background: simulation.summary.background,
+    modelErrorFloor: simulation.modelErrorFloor,
+    grid: simulation.summary.grid,
+    electrodes: { count: geometry.electrodes, coverage: geometry.electrodeCoverage, firstDeg: geometry.firstElectrodeDeg, clockwise: geometry.numbering === 'clockwise' },
+    table: Object.fromEntries(metrics.map(({ key }) => [key, levelTable(figures, run.ladder, key)])),
+    trivial: Object.fromEntries(metrics.map(({ key }) => [key, trivial[key] ?? null])),
+    sheets: runSheets(run, figures),
+    checks: run.checks ?? [],
+    secondsPerReconstruction: run.secondsPerReconstruction ?? null,
+    timeRatio: run.timeRatio ?? null,
+    configuration: run.configuration,
+    provenance: provenanceOf(run, simulation),
+    verdicts: given.map((row) => ({ verdict: row.verdict, reason: row.reason, by: { handle: row.by.$.handle }, at: row.createdAt.toISOString(), inspected: row.inspected })),
+    reviewer: run.reviewer ? { handle: run.reviewer.$.handle } : null,
+    openQuestions: questions.get(run.id) ?? 0,
+    may: mayDo(run, actor),
+  };
+}
+
+function mayDo(run: LoadedRun, actor: Actor | null): RunDetail['may'] {
+  const subject = runSubject(run);
+  const owns = can(actor, 'run.cancel', subject);
+  const free = run.review !== 'in-review' || !run.reviewer || run.reviewer.id === actor?.id;
+  return {
+    cancel: owns && mayMove.run(run.state, 'cancelled'),
+    requeue: owns && (run.state === 'failed' || run.state === 'cancelled'),
+    recompute: can(actor, 'run.recompute', subject) && run.state === 'finished',
+    review: can(actor, 'run.review', subject) && run.state === 'finished' && free && verdicts.some((verdict) => mayMove.review(run.review, verdict)),
+    comment: can(actor, 'run.comment', subject),
+  };
+}
+
+/** Everything needed to repeat the run. */
+function provenanceOf(run: LoadedRun, simulation: Simulation): RunDetail['provenance'] {
+  const entry = run.entry.$;
+  const bench = entry.bench.$;
+  const solver = entry.solverVersion.$;
+  const phantom = run.phantomVersion.$;
+  const { summary } = simulation;
+  return [
+    { what: 'Phantom', detail: `${phantom.phantom.id}, ${phantom.name}, version ${phantom.n}`, hash: phantom.contentHash },
+    {
+      what: 'Simulation',
+      detail: `${summary.simulation.kind}, ${summary.simulation.unknowns} unknowns, by this registry, code ${simulation.codeVersion}; it never inverts`,
+      hash: simulation.contentHash,
+    },
+    { what: 'Inversion model', detail: `${summary.inversion.cells} cells, ${summary.inversion.nodes} nodes, another mesh than the simulation`, hash: null },
+    { what: 'Solver', detail: `${solver.solver.$.id}, ${solver.solver.$.name}, version ${solver.n}`, hash: solver.contentHash },
+    { what: 'Bench', detail: `${bench.id}, ${bench.title}, revision ${bench.revision}`, hash: bench.contentHash },
+    { what: 'Noise', detail: `Gaussian, exact level, relative to the ${phantom.definition.noiseReference}; ${run.ladder.length} levels, ${run.draws} draws each, seed ${run.seed}`, hash: null },
+    { what: 'Code', detail: run.codeVersion ? `Version ${run.codeVersion}` : 'Not started', hash: null },
+    { what: 'Result', detail: run.finishedAt ? `Over the images of ${run.total} draws, finished ${run.finishedAt.toISOString()}` : 'Not finished', hash: run.resultHash ?? null },
+  ];
+}
