@@ -1,12 +1,12 @@
-import { useMemo } from 'react';
-import { Button, TextButton } from '../../../components/ui/button';
+import { Button } from '../../../components/ui/button';
 import { useToast } from '../../../components/ui/toast';
-import { formatBytes } from '../../../lib/format';
+import { apiUrl } from '../../../lib/api-client';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import type { Simulation } from '../../../../shared/contracts/simulations';
+import { defaultDraws, defaultLadder } from '../../../../shared/domain/ladder';
+import { versionPath } from '../api/get-phantom';
 import { licenceNames } from '../model/licences';
 import { citation } from '../model/phantom-facts';
-import { caution, phantomFiles } from '../model/phantom-files';
 
 export function Citation({ detail }: { detail: PhantomDetail }) {
   const toast = useToast();
@@ -26,18 +26,35 @@ export function Citation({ detail }: { detail: PhantomDetail }) {
   );
 }
 
+interface VersionFile {
+  readonly file: string;
+  readonly name: string;
+  readonly line: string;
+}
+
+/** What the server makes of a version; the truth only where the reader may see it. */
+function versionFiles(detail: PhantomDetail, simulation: Simulation | undefined): VersionFile[] {
+  const rows = simulation ? `${simulation.frame.length} rows` : 'one row a value';
+  return [
+    ...(detail.version.definition.truth ? [{ file: 'truth.npy', name: simulation ? `Ground truth on a ${simulation.grid.nx} grid` : 'Ground truth', line: 'array file, double' }] : []),
+    { file: 'definition.json', name: 'Definition with electrodes', line: 'text, lengths in m, conductivity in S/m' },
+    { file: 'voltages.csv', name: 'Noise-free voltages', line: `table, ${rows}` },
+    { file: 'noisy-frames.npy', name: `All ${defaultLadder.length * defaultDraws} noisy frames`, line: 'array file, double; level, draw, value' },
+    ...(detail.version.frames ? [{ file: 'frames.csv', name: 'Measured frames', line: `table, ${detail.version.frames.frames} rows` }] : []),
+    { file: 'README.txt', name: 'Read me', line: 'how to read the files, licence, caution' },
+  ];
+}
+
 export function Downloads({ detail, simulation }: { detail: PhantomDetail; simulation: Simulation | undefined }) {
-  const files = useMemo(() => (simulation ? phantomFiles(detail, simulation) : []), [detail, simulation]);
   return (
     <>
       <div className="sh gap-top" id="download"><h2>Download</h2><p>version {detail.version.n}</p></div>
       <div className="sheet">
-        {files.map((file) => (
-          <div className="dlrow" key={file.name}><span>{file.name}<em>{file.line}</em></span><span className="tn mu">{formatBytes(file.bytes)}</span><TextButton aria-label={`Download ${file.name}`} onClick={file.save}>Download</TextButton></div>
+        {versionFiles(detail, simulation).map(({ file, name, line }) => (
+          <div className="dlrow" key={file}><span>{name}<em>{line}</em></span><span className="mono mu">{file}</span><a href={apiUrl(`${versionPath(detail.slug, detail.version.n)}/files/${file}`)} download={`${detail.slug}-v${detail.version.n}-${file}`} aria-label={`Download ${name}`}>Download</a></div>
         ))}
-        {files.length === 0 ? <p className="sm pad">The files appear with the simulated data.</p> : null}
       </div>
-      <p className="sm" style={{ marginTop: 8 }}>{caution}</p>
+      <p className="sm" style={{ marginTop: 8 }}>Results are about methods, not about patients or plant: not for diagnosis, not a safety case.</p>
     </>
   );
 }
