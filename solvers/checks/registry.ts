@@ -1,12 +1,38 @@
 /** Checks by what they look at. One line a check. */
 import type { ForwardProblem } from '../core/types';
 import { adjointCheck } from './adjoint';
+import { batchEqualsSingleCheck } from './batch-equals-single';
+import { beatsTrivialCheck } from './beats-trivial';
 import type { Check } from './check';
+import { closedFormCheck } from './closed-form';
+import { dataShapeCheck } from './data-shape';
+import { discretisationsDifferCheck } from './discretisations-differ';
 import { homogeneityCheck, type HomogeneityInput } from './homogeneity';
+import { meshConvergenceCheck } from './mesh-convergence';
+import { noiseCalibrationCheck } from './noise-calibration';
+import { noiseNormalityCheck } from './noise-normality';
+import type { PhantomCheckContext } from './phantom-check';
+import { recomputationCheck } from './recomputation';
+import { reciprocityCheck } from './reciprocity';
+import type { RunCheckContext } from './run-check';
+import { shapesInBodyCheck } from './shapes-in-body';
 import { taylorCheck } from './taylor';
+
+/** Of a simulated phantom. */
+export const phantomChecks: readonly Check<PhantomCheckContext>[] = [
+  dataShapeCheck,
+  reciprocityCheck,
+  meshConvergenceCheck,
+  closedFormCheck,
+  discretisationsDifferCheck,
+  shapesInBodyCheck,
+];
 
 /** Of the model that inverts. */
 export const problemChecks: readonly Check<ForwardProblem>[] = [adjointCheck, taylorCheck];
 
 /** Of a prepared method. */
 export const methodChecks: readonly Check<HomogeneityInput>[] = [homogeneityCheck];
+
+/** Of a finished run. */
+export const runChecks: readonly Check<RunCheckContext>[] = [noiseCalibrationCheck, noiseNormalityCheck, batchEqualsSingleCheck, recomputationCheck, beatsTrivialCheck];

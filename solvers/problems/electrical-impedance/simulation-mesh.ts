@@ -27,13 +27,16 @@ export interface SimulationDetail {
 
 export type DetailLevel = 'coarse' | 'normal' | 'fine';
 
+/** Edges of the coarse level over those of the normal one. */
+export const coarseFactor = 1.6;
+
 /**
  * Detail of a simulation. Where the contact impedance is small the potential behaves like the square root of the distance to an
  * electrode end down to distances of about z sigma / R, so the smallest edge follows that figure.
  * @param contact z sigma / R, a pure number
  */
 export function simulationDetail(contact: number, level: DetailLevel = 'normal'): SimulationDetail {
-  const factor = level === 'coarse' ? 1.6 : level === 'fine' ? 0.6 : 1;
+  const factor = level === 'coarse' ? coarseFactor : level === 'fine' ? 0.6 : 1;
   const hMin = Math.min(5e-4, Math.max(1e-5, 0.15 * contact));
   return {
     grading: 0.18 * factor,

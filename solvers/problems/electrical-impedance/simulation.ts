@@ -15,6 +15,11 @@ import { simulationDetail, simulationMesh, type DetailLevel, type SimulationDeta
  */
 export const smallestContact = 1e-8;
 
+/** z sigma / R of the background, a pure number: the distance in radii below which an electrode end is smeared out. */
+export function contactNumber(geometry: EitGeometry, background: number): number {
+  return Math.max(smallestContact, (geometry.contactImpedance * background) / geometry.body.radius);
+}
+
 export interface SimulationOptions {
   readonly level?: DetailLevel;
   /** Overrides single sizes of the level. */
@@ -48,7 +53,7 @@ export interface Simulation {
  */
 export function simulateElectricalImpedance(truth: TruthField, geometry: EitGeometry, options: SimulationOptions = {}): Simulation {
   const frame = electrodeFrame(geometry);
-  const contact = Math.max(smallestContact, (geometry.contactImpedance * truth.background) / geometry.body.radius);
+  const contact = contactNumber(geometry, truth.background);
   const detail = { ...simulationDetail(contact, options.level), ...options.detail };
   const { triangles, quadratic } = simulationMesh(truth, frame, detail);
   const electrodes = electrodeIntegrals(quadratic, frame.centres.map(cos), frame.centres.map(sin), cos(frame.halfWidth));

@@ -1,0 +1,48 @@
+import { concentricEigenvalue, neumannToDirichlet, type Harmonic } from '../problems/electrical-impedance/continuum';
+import { electrodeFrame } from '../problems/electrical-impedance/electrodes';
+import { contactNumber, sampleConductivity } from '../problems/electrical-impedance/simulation';
+import { simulationDetail, simulationMesh } from '../problems/electrical-impedance/simulation-mesh';
+import { createTruthField } from '../truth/truth-field';
+import { judge, type Check } from './check';
+import type { PhantomCheckContext } from './phantom-check';
+
+const orders = [1, 2, 3, 5, 8];
+
+/**
+ * The elements of the simulation, on a mesh with this geometry's electrode ends, against the disc with a concentric inclusion.
+ * A phantom that is itself one concentric disc is checked as it is; every other one through a disc of half the radius and
+ * five times the background.
+ */
+export const closedFormCheck: Check<PhantomCheckContext> = {
+  key: 'closed-form',
+  name: 'Closed form of the concentric disc',
+  unit: '',
+  bound: 1e-5,
+  comparison: 'at-most',
+  formula: '\\max_n |\\lambda_n^h - \\lambda_n| / \\lambda_n, \\quad \\lambda_n = \\frac{1}{n} \\frac{1 - \\mu \\rho^{2n}}{1 + \\mu \\rho^{2n}}, \\quad \\mu = \\frac{s - 1}{s + 1}',
+  summary: 'Eigenvalues n = 1, 2, 3, 5, 8 of the Neumann-to-Dirichlet map with the elements and electrode ends of the simulation.',
+  source: { short: 'Isaacson 1986', full: 'D. Isaacson, Distinguishability of conductivities by electric current computed tomography, IEEE Trans. Med. Imaging MI-5 (1986) 91-95.' },
+  evaluate({ definition }) {
+    const { geometry, truth } = definition;
+    const radius = geometry.body.radius;
+    const own = truth.kind === 'shapes' && truth.shapes.length === 1 ? truth.shapes[0] : null;
+    const concentric = own?.kind === 'ellipse' && own.x === 0 && own.y === 0 && own.semiAxisA === own.semiAxisB && own.semiAxisA < 0.95 * radius ? own : null;
+    const rho = concentric ? concentric.semiAxisA / radius : 0.5;
+    const ratio = concentric ? concentric.value / truth.background : 5;
+    const disc = createTruthField({
+      kind: 'shapes',
+      background: 1,
+      shapes: [{ kind: 'ellipse', label: 'disc', target: true, value: ratio, x: 0, y: 0, semiAxisA: rho * radius, semiAxisB: rho * radius, angleDeg: 0 }],
+    });
+    const frame = electrodeFrame(geometry);
+    const { quadratic } = simulationMesh(disc, frame, simulationDetail(contactNumber(geometry, truth.background)));
+    const harmonics: Harmonic[] = orders.map((n) => ({ n, kind: 'cos' }));
+    const map = neumannToDirichlet(quadratic, sampleConductivity(disc, quadratic, frame), harmonics);
+    let figure = 0;
+    orders.forEach((n, i) => {
+      const exact = concentricEigenvalue(rho, ratio, 1, n);
+      figure = Math.max(figure, Math.abs(map[i * orders.length + i] - exact) / exact);
+    });
+    return judge(this, figure, `Largest relative error of the eigenvalues for a disc of ${Number(rho.toPrecision(3))} of the radius and ${Number(ratio.toPrecision(3))} times the background.`);
+  },
+};
