@@ -11,7 +11,7 @@ import { citeBench } from '../services/benches/cite-bench.ts';
 import { createBench, editBench } from '../services/benches/create-bench.ts';
 import { createEntry } from '../services/benches/create-entry.ts';
 import { estimateCost } from '../services/benches/estimate-cost.ts';
-import { benchSubject, findBench } from '../services/benches/find-bench.ts';
+import { benchSubject, findBench, findBenchRow } from '../services/benches/find-bench.ts';
 import { listBenches } from '../services/benches/list-benches.ts';
 import { showBench } from '../services/benches/show-bench.ts';
 import { findGroup } from '../services/groups/find-group.ts';
@@ -101,7 +101,7 @@ const readCost = defineRoute({
 const readRanking = defineRoute({
   method: 'get', path: '/benches/:slug/ranking', tag, summary: 'The ranking at a noise level, with tie groups and the test behind them',
   permission: 'content.read', params: benchParamsSchema, query: rankingQuerySchema, response: rankingSchema,
-  load: ({ em, params }) => findBench(em, params.slug),
+  load: ({ em, params }) => findBenchRow(em, params.slug),
   subject: benchSubject,
   handle: ({ em, loaded, query }) => rankBench(em, { bench: loaded, noise: query.noise, metric: query.metric ?? loaded.rankingMetric }),
 });
@@ -109,7 +109,7 @@ const readRanking = defineRoute({
 const readSeries = defineRoute({
   method: 'get', path: '/benches/:slug/series', tag, summary: 'Error against noise for every entry, with the stability sheets',
   permission: 'content.read', params: benchParamsSchema, query: seriesQuerySchema, response: seriesSchema,
-  load: ({ em, params }) => findBench(em, params.slug),
+  load: ({ em, params }) => findBenchRow(em, params.slug),
   subject: benchSubject,
   handle: ({ em, loaded, query }) => benchSeries(em, { bench: loaded, metric: query.metric ?? loaded.rankingMetric, phantom: query.phantom }),
 });

@@ -7,7 +7,7 @@ import { commentLines } from '../files/comment-lines.ts';
 import { percent, rankBench } from './bench-ranking.ts';
 import { loadBenchResults, requireMetric } from './bench-results.ts';
 import { caution } from './caution.ts';
-import type { LoadedBench } from './find-bench.ts';
+import { phantomsOf, type LoadedBench } from './find-bench.ts';
 import { noiseWords } from './noise-words.ts';
 
 /** The ranking as it stands at a noise, one row a solver. */
@@ -39,20 +39,18 @@ export async function rankingCsv(em: EntityManager, input: { readonly bench: Loa
 export async function tableCsv(em: EntityManager, input: { readonly bench: LoadedBench; readonly now: Date }): Promise<string> {
   const { bench } = input;
   const results = await loadBenchResults(em, bench);
-  const phantoms = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
+  const phantoms = phantomsOf(bench);
   const header = ['solver', 'solver_id', 'version', 'phantom', 'phantom_id', 'phantom_version', 'run', 'review', 'reservation', 'metric', 'unit', 'noise', 'draws', 'median', 'p05', 'p95', 'mean', 'sd', 'worst', 'trivial', 'result_sha256'];
   const rows: CsvCell[][] = [];
-  for (const { entry, runs } of results.entries) {
-    const version = entry.solverVersion.$;
-    const solver = version.solver.$;
+  for (const { version, solver, runs } of results.entries) {
     for (const [index, run] of runs.entries()) {
-      const phantom = phantoms[index];
-      if (!run || !phantom || run.state !== 'finished') continue;
+      const on = phantoms[index];
+      if (!run || !on || run.state !== 'finished') continue;
       const figures = await loadRunFigures(em, run);
       for (const { key, unit } of metrics) {
         for (const level of levelTable(figures, bench.ladder, key)) {
           rows.push([
-            solver.name, solver.id, version.n, phantom.name, phantom.phantom.id, phantom.n, run.id, run.review, run.reservation ?? null, key, unit, level.level, level.count, level.median, level.p05, level.p95, level.mean,
+            solver.name, solver.id, version.n, on.version.name, on.phantom.id, on.version.n, run.id, run.review, run.reservation ?? null, key, unit, level.level, level.count, level.median, level.p05, level.p95, level.mean,
             level.sd, level.worst, run.trivial?.[key] ?? null, run.resultHash ?? null,
           ]);
         }
@@ -63,8 +61,7 @@ export async function tableCsv(em: EntityManager, input: { readonly bench: Loade
 }
 
 function preamble(bench: LoadedBench, now: Date): string {
-  const phantoms = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
-  const reference = phantoms[0]?.definition.noiseReference;
+  const reference = phantomsOf(bench)[0]?.version.definition.noiseReference;
   return commentLines([
     `Hadamark bench ${bench.id}, revision ${bench.revision}: ${bench.title}`,
     bench.question,

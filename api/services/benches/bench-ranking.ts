@@ -3,12 +3,13 @@ import type { Ranking } from '../../../shared/contracts/benches';
 import type { ReviewState } from '../../../shared/domain/states';
 import { metrics } from '../../../solvers/metrics/registry';
 import { interpolateLevels, placeOnLadder, rankAtNoise, type RankedEntry } from '../../../solvers/statistics/ranking';
+import type { Bench } from '../../entities/bench.ts';
 import type { Run } from '../../entities/run.ts';
 import { BoundedCache } from '../figures/bounded-cache.ts';
 import { drawsAt } from '../figures/run-tables.ts';
-import { loadBenchResults, loadEntryFigures, requireMetric, trivialOf, type BenchResults, type EntryResults } from './bench-results.ts';
+import { loadBenchResults, loadEntryFigures, requireMetric, resultsKey, trivialOf, type BenchResults, type EntryResults } from './bench-results.ts';
 import { entryRefs, entrySeries, pooledTable } from './bench-series.ts';
-import type { LoadedBench } from './find-bench.ts';
+import { findBench, phantomsOf, type LoadedBench } from './find-bench.ts';
 
 const cache = new BoundedCache<Ranking>(500);
 const medianCache = new BoundedCache<ReadonlyMap<string, readonly (readonly (number | null)[])[]>>(50);
@@ -17,11 +18,13 @@ const medianCache = new BoundedCache<ReadonlyMap<string, readonly (readonly (num
  * The ranking at a noise level. It depends on results and reviewers' words alone, which its key in the cache names, so it
  * is computed once for each noise and metric.
  */
-export async function rankBench(em: EntityManager, input: { readonly bench: LoadedBench; readonly noise: number; readonly metric: string }): Promise<Ranking> {
-  const { bench, noise, metric } = input;
+export async function rankBench(em: EntityManager, input: { readonly bench: Pick<Bench, 'id' | 'slug' | 'revision'>; readonly noise: number; readonly metric: string }): Promise<Ranking> {
+  const { noise, metric } = input;
+  const kept = cache.get(`${await resultsKey(em, input.bench)}|${metric}|${noise}`);
+  if (kept) return kept;
+  const bench = await findBench(em, input.bench.slug);
   const results = await loadBenchResults(em, bench);
-  const key = `${results.key}|${metric}|${noise}`;
-  return cache.get(key) ?? cache.set(key, await compute(em, { bench, noise, metric, results }));
+  return cache.set(`${results.key}|${metric}|${noise}`, await compute(em, { bench, noise, metric, results }));
 }
 
 async function compute(em: EntityManager, input: { readonly bench: LoadedBench; readonly noise: number; readonly metric: string; readonly results: BenchResults }): Promise<Ranking> {
@@ -51,7 +54,7 @@ async function compute(em: EntityManager, input: { readonly bench: LoadedBench; 
       const counted = entry.counted.filter((run): run is Run => run !== null);
       const tables = medians.get(row.id) ?? [];
       return {
-        ...entryRefs(entry.entry),
+        ...entryRefs(entry),
         rank: belowFloor ? null : row.rank,
         tieGroup: belowFloor ? null : row.tieGroup,
         meanRank: belowFloor ? null : row.meanRank,
@@ -91,10 +94,10 @@ async function medianTables(em: EntityManager, bench: LoadedBench, results: Benc
 }
 
 function runRefs(bench: LoadedBench, entry: EntryResults): Ranking['rows'][number]['runs'] {
-  const versions = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
+  const phantoms = phantomsOf(bench);
   return entry.runs.flatMap((run, index) => {
-    const phantom = versions[index];
-    return run && phantom ? [{ run: run.id, phantom: phantom.phantom.$.slug, state: run.state, review: run.review }] : [];
+    const on = phantoms[index];
+    return run && on ? [{ run: run.id, phantom: on.phantom.slug, state: run.state, review: run.review }] : [];
   });
 }
 

@@ -2,13 +2,13 @@ import type { EntityManager } from '@mikro-orm/sqlite';
 import { AppError } from '../../../shared/errors.ts';
 import { metrics } from '../../../solvers/metrics/registry';
 import { median } from '../../../solvers/statistics/quantiles';
+import type { Bench } from '../../entities/bench.ts';
 import { RunEntity, type Run } from '../../entities/run.ts';
 import { loadRunFigures, type RunFigures } from '../figures/load-run-figures.ts';
-import type { LoadedBench } from './find-bench.ts';
+import { entriesOf, phantomsOf, type BenchEntry, type LoadedBench } from './find-bench.ts';
 import { floorsOf } from './show-bench.ts';
 
-export interface EntryResults {
-  readonly entry: ReturnType<LoadedBench['entries']['getItems']>[number];
+export interface EntryResults extends BenchEntry {
   /** By phantom in the order of the bench; null where there is no run. */
   readonly runs: readonly (Run | null)[];
   /** Of the runs that count: finished and not declined. */
@@ -16,7 +16,7 @@ export interface EntryResults {
 }
 
 export interface BenchResults {
-  /** Names all that a figure depends on: entries, results and reviewers' words. */
+  /** `resultsKey`. */
   readonly key: string;
   readonly entries: readonly EntryResults[];
   /** Largest model-error floor of the phantoms, and whose it is. */
@@ -24,15 +24,28 @@ export interface BenchResults {
   readonly floorPhantom: string | null;
 }
 
+/**
+ * Names all that a figure of the bench depends on: its entries, the results and the reviewers' words. One plain query: it is
+ * asked before every answer from memory.
+ */
+export async function resultsKey(em: EntityManager, bench: Pick<Bench, 'id' | 'revision'>): Promise<string> {
+  const rows: { text: string }[] = await em.execute(
+    `select r.id || ':' || r.state || ':' || coalesce(r.result_hash, '') || ':' || r.review || ':' || coalesce(r.reservation, '') as text
+     from run r join entry e on r.entry_id = e.id where e.bench_id = ? order by r.id`,
+    [bench.id],
+  );
+  return [bench.id, bench.revision, ...rows.map((row) => row.text)].join('|');
+}
+
 /** The runs of a bench, without their figures. A declined run leaves the ranking. */
 export async function loadBenchResults(em: EntityManager, bench: LoadedBench): Promise<BenchResults> {
-  const versions = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
+  const versions = phantomsOf(bench).map(({ version }) => version);
   const runs = await em.find(RunEntity, { entry: { bench: bench.id } }, { orderBy: { id: 'asc' } });
   const floors = await floorsOf(em, versions.map((version) => version.definitionHash));
   const byPlace = new Map(runs.map((run) => [`${run.entry.id}/${run.phantomVersion.id}`, run]));
-  const entries = bench.entries.getItems().map((entry): EntryResults => {
-    const own = versions.map((version) => byPlace.get(`${entry.id}/${version.id}`) ?? null);
-    return { entry, runs: own, counted: own.map((run) => (run && run.state === 'finished' && run.review !== 'declined' ? run : null)) };
+  const entries = entriesOf(bench).map((entered): EntryResults => {
+    const own = versions.map((version) => byPlace.get(`${entered.entry.id}/${version.id}`) ?? null);
+    return { ...entered, runs: own, counted: own.map((run) => (run && run.state === 'finished' && run.review !== 'declined' ? run : null)) };
   });
   let floor = 0;
   let floorPhantom: string | null = null;
@@ -40,8 +53,7 @@ export async function loadBenchResults(em: EntityManager, bench: LoadedBench): P
     const own = floors.get(version.definitionHash) ?? 0;
     if (own > floor) [floor, floorPhantom] = [own, version.name];
   }
-  const key = [bench.id, bench.revision, floor, ...runs.map((run) => `${run.id}:${run.state}:${run.resultHash ?? ''}:${run.review}:${run.reservation ?? ''}`)].join('|');
-  return { key, entries, floor, floorPhantom };
+  return { key: await resultsKey(em, bench), entries, floor, floorPhantom };
 }
 
 /** Figures of an entry by phantom; null where the run does not count. */

@@ -3,11 +3,12 @@ import type { Series } from '../../../shared/contracts/benches';
 import type { LevelStatistics, StabilitySheetWire } from '../../../shared/contracts/common';
 import { AppError } from '../../../shared/errors.ts';
 import { levelStatistics } from '../../../solvers/statistics/error-table';
+import type { Bench } from '../../entities/bench.ts';
 import { BoundedCache } from '../figures/bounded-cache.ts';
 import { drawsAt, levelTable, makeSheet } from '../figures/run-tables.ts';
 import type { RunFigures } from '../figures/load-run-figures.ts';
-import { loadBenchResults, loadEntryFigures, requireMetric, trivialOf, type BenchResults, type EntryResults } from './bench-results.ts';
-import type { LoadedBench } from './find-bench.ts';
+import { loadBenchResults, loadEntryFigures, requireMetric, resultsKey, trivialOf, type BenchResults, type EntryResults } from './bench-results.ts';
+import { findBench, phantomsOf, type BenchEntry, type LoadedBench } from './find-bench.ts';
 
 export interface EntrySeries {
   readonly results: EntryResults;
@@ -55,32 +56,35 @@ function pooledSheet(figures: readonly RunFigures[], input: { readonly bench: Lo
   return makeSheet({ metric, ladder: bench.ladder, draws: bench.ladder.map((_, level) => figures.flatMap((own) => drawsAt(own, metric, level))), trivial, seed });
 }
 
-export async function benchSeries(em: EntityManager, input: { readonly bench: LoadedBench; readonly metric: string; readonly phantom?: string | undefined }): Promise<Series> {
-  const { bench, metric } = input;
+const wireCache = new BoundedCache<Series>(200);
+
+export async function benchSeries(
+  em: EntityManager,
+  input: { readonly bench: Pick<Bench, 'id' | 'slug' | 'revision'>; readonly metric: string; readonly phantom?: string | undefined },
+): Promise<Series> {
+  const { metric } = input;
   requireMetric(metric);
-  const versions = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
-  const phantom = input.phantom === undefined ? undefined : versions.findIndex((version) => version.phantom.$.slug === input.phantom);
+  const key = (results: string): string => `${results}|${metric}|${input.phantom ?? ''}`;
+  const kept = wireCache.get(key(await resultsKey(em, input.bench)));
+  if (kept) return kept;
+  const bench = await findBench(em, input.bench.slug);
+  const slugs = phantomsOf(bench).map(({ phantom: own }) => own.slug);
+  const phantom = input.phantom === undefined ? undefined : slugs.indexOf(input.phantom);
   if (phantom === -1) {
-    throw new AppError('validation-failed', `'${input.phantom}' is not a phantom of this bench.`, [{ path: ['phantom'], message: `There are: ${versions.map((version) => version.phantom.$.slug).join(', ')}.` }]);
+    throw new AppError('validation-failed', `'${input.phantom}' is not a phantom of this bench.`, [{ path: ['phantom'], message: `There are: ${slugs.join(', ')}.` }]);
   }
   const results = await loadBenchResults(em, bench);
   const series = await entrySeries(em, { bench, results, metric, phantom });
-  return {
+  return wireCache.set(key(results.key), {
     metric,
     ladder: bench.ladder,
     trivial: trivialOf(results.entries, metric, phantom),
     modelErrorFloor: results.floor,
-    items: series.map(({ results: { entry }, levels, sheet }) => ({ ...entryRefs(entry), levels: levels.map(({ draws: _draws, ...rest }) => rest), sheet })),
-  };
+    items: series.map(({ results: own, levels, sheet }) => ({ ...entryRefs(own), levels: levels.map(({ draws: _draws, ...rest }) => rest), sheet })),
+  });
 }
 
 /** How rows of a ranking and of the series name an entry. */
-export function entryRefs(entry: EntryResults['entry']) {
-  const version = entry.solverVersion.$;
-  const solver = version.solver.$;
-  return {
-    glyph: entry.glyph,
-    solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n },
-    group: { slug: solver.group.$.slug, name: solver.group.$.name },
-  };
+export function entryRefs({ entry, version, solver, group }: BenchEntry) {
+  return { glyph: entry.glyph, solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n }, group: { slug: group.slug, name: group.name } };
 }

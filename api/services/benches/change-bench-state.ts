@@ -4,17 +4,17 @@ import { AppError } from '../../../shared/errors.ts';
 import { RunEntity } from '../../entities/run.ts';
 import type { Acting } from '../acting.ts';
 import { recordAudit } from '../audit/record-audit.ts';
-import { benchHash, termsOf, type LoadedBench } from './find-bench.ts';
+import { benchHash, phantomsOf, termsOf, type LoadedBench } from './find-bench.ts';
 
 /** From now on what it asks never changes and configurations may be entered. */
 export async function openBench(em: EntityManager, input: Acting & { readonly bench: LoadedBench }): Promise<void> {
   const { actor, now, bench } = input;
   if (!mayMove.bench(bench.state, 'open')) throw new AppError('conflict', `The bench is ${bench.state}: only a draft can be opened.`);
-  const unpublished = bench.phantoms.getItems().filter((phantom) => phantom.phantomVersion.$.state !== 'published');
+  const unpublished = phantomsOf(bench).filter(({ version }) => version.state !== 'published');
   if (unpublished.length > 0) {
     throw new AppError(
       'conflict',
-      `Publish the phantoms first: ${unpublished.map(({ phantomVersion: { $: version } }) => `'${version.name}', version ${version.n}, is ${version.state}`).join('; ')}.`,
+      `Publish the phantoms first: ${unpublished.map(({ version }) => `'${version.name}', version ${version.n}, is ${version.state}`).join('; ')}.`,
     );
   }
   bench.state = 'open';

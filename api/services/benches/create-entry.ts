@@ -8,7 +8,7 @@ import { recordAudit } from '../audit/record-audit.ts';
 import { enqueueRun } from '../runs/queue-run.ts';
 import { whyUnfit } from '../solvers/check-configuration.ts';
 import { findVersion, type LoadedSolver } from '../solvers/find-solver.ts';
-import type { LoadedBench } from './find-bench.ts';
+import { phantomsOf, type LoadedBench } from './find-bench.ts';
 
 /**
  * Enters a registered solver version and queues one run for each phantom. After it, `jobs.kick()` starts them.
@@ -19,7 +19,7 @@ export async function createEntry(em: EntityManager, input: Acting & { readonly 
   if (bench.state !== 'open') throw new AppError('conflict', `The bench is ${bench.state}: only an open one takes entries.`);
   const version = findVersion(solver, input.version);
   if (version.state !== 'registered') throw new AppError('conflict', `Version ${version.n} is ${version.state}: register it first.`);
-  const phantoms = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
+  const phantoms = phantomsOf(bench).map(({ version: phantom }) => phantom);
   const issues: Issue[] = phantoms.flatMap((phantom) => {
     const reason = whyUnfit(version.method, phantom.definition);
     return reason === null ? [] : [{ path: ['solver'], message: `On '${phantom.name}': ${reason}` }];

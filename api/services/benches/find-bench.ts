@@ -2,7 +2,10 @@ import type { EntityManager, Loaded } from '@mikro-orm/sqlite';
 import type { Subject } from '../../../shared/domain/permissions.ts';
 import { AppError } from '../../../shared/errors.ts';
 import { contentHash } from '../../../solvers/core/hash';
-import { BenchEntity, type Bench } from '../../entities/bench.ts';
+import { BenchEntity, type Bench, type Entry } from '../../entities/bench.ts';
+import type { Group } from '../../entities/group.ts';
+import type { Phantom, PhantomVersion } from '../../entities/phantom.ts';
+import type { Solver, SolverVersion } from '../../entities/solver.ts';
 
 const parts = [
   'group', 'phantoms', 'phantoms.phantomVersion', 'phantoms.phantomVersion.phantom',
@@ -10,8 +13,38 @@ const parts = [
 ] as const;
 export type LoadedBench = Loaded<Bench, (typeof parts)[number]>;
 
+/** Phantom versions of a bench in its order, with their phantoms. */
+export function phantomsOf(bench: LoadedBench): { readonly version: PhantomVersion; readonly phantom: Phantom }[] {
+  return bench.phantoms.getItems().map((row) => {
+    const version = row.phantomVersion.getEntity();
+    return { version, phantom: version.phantom.getEntity() };
+  });
+}
+
+export interface BenchEntry {
+  readonly entry: Entry;
+  readonly version: SolverVersion;
+  readonly solver: Solver;
+  readonly group: Group;
+}
+/** Entries of a bench in the order of their glyphs, with what was entered and by which group. */
+export function entriesOf(bench: LoadedBench): BenchEntry[] {
+  return bench.entries.getItems().map((entry) => {
+    const version = entry.solverVersion.getEntity();
+    const solver = version.solver.getEntity();
+    return { entry, version, solver, group: solver.group.getEntity() };
+  });
+}
+
 export async function findBench(em: EntityManager, slug: string): Promise<LoadedBench> {
   const bench = await em.findOne(BenchEntity, { slug }, { populate: parts, strategy: 'select-in' });
+  if (!bench) throw new AppError('not-found', `No bench has the address '${slug}'.`);
+  return bench;
+}
+
+/** The row alone, for what is answered from memory. @throws AppError 'not-found' */
+export async function findBenchRow(em: EntityManager, slug: string): Promise<Bench> {
+  const bench = await em.findOne(BenchEntity, { slug });
   if (!bench) throw new AppError('not-found', `No bench has the address '${slug}'.`);
   return bench;
 }
@@ -37,7 +70,7 @@ export function benchHash(terms: BenchTerms, results?: readonly { readonly solve
 
 export const termsOf = (bench: LoadedBench): BenchTerms => ({
   question: bench.question,
-  phantomHashes: bench.phantoms.getItems().map((phantom) => phantom.phantomVersion.$.contentHash),
+  phantomHashes: phantomsOf(bench).map(({ version }) => version.contentHash),
   ladder: bench.ladder,
   draws: bench.draws,
   seed: bench.seed,

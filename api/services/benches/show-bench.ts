@@ -7,7 +7,7 @@ import { RunEntity } from '../../entities/run.ts';
 import { SimulationEntity } from '../../entities/simulation.ts';
 import { isSealed } from '../phantoms/phantom-access.ts';
 import { methodName } from '../solvers/check-configuration.ts';
-import { benchSubject, type LoadedBench } from './find-bench.ts';
+import { benchSubject, entriesOf, phantomsOf, type LoadedBench } from './find-bench.ts';
 import { phantomLine } from './phantom-facts.ts';
 
 export interface BenchCounts {
@@ -58,16 +58,15 @@ export async function floorsOf(em: EntityManager, definitionHashes: readonly str
 
 export async function showBench(em: EntityManager, input: { readonly bench: LoadedBench; readonly actor: Actor | null; readonly now: Date }): Promise<BenchDetail> {
   const { bench, actor, now } = input;
-  const entries = bench.entries.getItems();
-  const versions = bench.phantoms.getItems().map((row) => row.phantomVersion.$);
+  const onBench = phantomsOf(bench);
   const [counts, floors, runs] = await Promise.all([
     countBenches(em, [bench.id]),
-    floorsOf(em, versions.map((version) => version.definitionHash)),
+    floorsOf(em, onBench.map(({ version }) => version.definitionHash)),
     em.find(RunEntity, { entry: { bench: bench.id } }, { populate: ['phantomVersion.phantom'], orderBy: { id: 'asc' } }),
   ]);
-  const phantoms = versions.map((version) => ({
-    slug: version.phantom.$.slug,
-    id: version.phantom.id,
+  const phantoms = onBench.map(({ version, phantom }) => ({
+    slug: phantom.slug,
+    id: phantom.id,
     name: version.name,
     version: version.n,
     contentHash: version.contentHash,
@@ -91,18 +90,14 @@ export async function showBench(em: EntityManager, input: { readonly bench: Load
     revision: bench.revision,
     contentHash: bench.contentHash,
     phantoms,
-    entries: entries.map((entry) => {
-      const version = entry.solverVersion.$;
-      const solver = version.solver.$;
-      return {
-        glyph: entry.glyph,
-        solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n, methodName: methodName(version.method) },
-        group: { slug: solver.group.$.slug, name: solver.group.$.name },
-        runs: runs
-          .filter((run) => run.entry.id === entry.id)
-          .map((run) => ({ run: run.id, phantom: run.phantomVersion.$.phantom.$.slug, state: run.state, review: run.review, done: run.done, total: run.total, failure: run.failure ?? null })),
-      };
-    }),
+    entries: entriesOf(bench).map(({ entry, version, solver, group }) => ({
+      glyph: entry.glyph,
+      solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n, methodName: methodName(version.method) },
+      group: { slug: group.slug, name: group.name },
+      runs: runs
+        .filter((run) => run.entry.id === entry.id)
+        .map((run) => ({ run: run.id, phantom: run.phantomVersion.$.phantom.$.slug, state: run.state, review: run.review, done: run.done, total: run.total, failure: run.failure ?? null })),
+    })),
     modelErrorFloor: worst.modelErrorFloor,
     floorPhantom: worst.name,
     may: {

@@ -2,11 +2,16 @@ import type { EntityManager } from '@mikro-orm/sqlite';
 import type { z } from 'zod';
 import type { reviewQueueSchema } from '../../../shared/contracts/runs';
 import { can, type Actor } from '../../../shared/domain/permissions.ts';
+import { getMetric } from '../../../solvers/metrics/registry';
+import type { LevelStatistics } from '../../../shared/contracts/common';
+import { lossOf } from '../../../solvers/statistics/loss';
 import { MembershipEntity } from '../../entities/group.ts';
 import { PhantomVersionEntity } from '../../entities/phantom.ts';
 import { CommentEntity, RunEntity } from '../../entities/run.ts';
 import { SimulationEntity } from '../../entities/simulation.ts';
+import { floorsOf } from '../benches/show-bench.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
+import { levelTable } from '../figures/run-tables.ts';
 import { runGroup, runParts, runSubject, type LoadedRun } from '../runs/find-run.ts';
 import { toRunSummary } from '../runs/run-summary.ts';
 
@@ -22,6 +27,8 @@ export async function readReviewQueue(em: EntityManager, input: { readonly actor
   for (const membership of await em.find(MembershipEntity, { group: { $in: [...new Set(runs.map((run) => runGroup(run).id))] } })) {
     members.set(membership.group.id, (members.get(membership.group.id) ?? new Set()).add(membership.user.id));
   }
+  const best = await bestMedians(em, runs);
+  const floors = await floorsOf(em, runs.map((run) => run.phantomVersion.$.definitionHash));
   const rows: Queue['runs'] = [];
   for (const run of runs) {
     const notes = comments.filter((comment) => comment.run.id === run.id);
@@ -35,7 +42,10 @@ export async function readReviewQueue(em: EntityManager, input: { readonly actor
       // A reviewer's question that nobody answered puts the run on the developer's side.
       waitsFor: notes.some((note) => note.question && !note.answered && !own.has(note.by.id)) ? 'developer' : 'reviewer',
       lastNote: last ? { by: { handle: last.by.$.handle }, at: last.createdAt.toISOString(), text: last.text } : null,
-      flags: await flagsOf(em, run),
+      checks: run.checks ?? [],
+      modelErrorFloor: floors.get(run.phantomVersion.$.definitionHash) ?? 0,
+      best: best.get(`${run.entry.$.bench.id}/${run.phantomVersion.id}`) ?? run.ladder.map(() => null),
+      ...(await readingsOf(em, run)),
     });
   }
   return { runs: rows, phantoms: await waitingPhantoms(em, actor, now) };
@@ -75,29 +85,41 @@ async function waitingPhantoms(em: EntityManager, actor: Actor, now: Date): Prom
   });
 }
 
-/** What a reviewer looks at first, in words. */
-async function flagsOf(em: EntityManager, run: LoadedRun): Promise<string[]> {
-  const flags = (run.checks ?? []).filter(({ state }) => state === 'fail' || state === 'warning').map(({ name, state }) => `${name}: ${state}`);
+/** Best median of the ranking metric by bench and phantom, at each level: what the run is held against. */
+async function bestMedians(em: EntityManager, runs: readonly LoadedRun[]): Promise<Map<string, (number | null)[]>> {
+  const rivals = await em.find(RunEntity, {
+    state: 'finished', review: { $ne: 'declined' }, entry: { bench: { $in: [...new Set(runs.map((run) => run.entry.$.bench.id))] } },
+  }, { populate: ['entry', 'entry.bench'] });
+  const best = new Map<string, (number | null)[]>();
+  for (const rival of rivals) {
+    const key = `${rival.entry.$.bench.id}/${rival.phantomVersion.id}`;
+    const { better } = getMetric(rival.entry.$.bench.$.rankingMetric);
+    const so = best.get(key) ?? rival.ladder.map(() => null);
+    best.set(key, so.map((value, level) => {
+      const own = rival.levelMedians[level] ?? null;
+      return lossOf(own, better) < lossOf(value, better) ? own : value;
+    }));
+  }
+  return best;
+}
+
+/** Figures of the ranking metric, and what a reviewer looks at first, in words. */
+async function readingsOf(em: EntityManager, run: LoadedRun): Promise<Pick<Queue['runs'][number], 'metric' | 'levels' | 'trivial' | 'flags'>> {
   const metric = run.entry.$.bench.$.rankingMetric;
   const figures = await loadRunFigures(em, run);
-  const column = figures.values.get(metric);
-  const outliers = column ? countOutliers(column, figures.levels, figures.draws) : 0;
+  const levels = levelTable(figures, run.ladder, metric).map((row) => ({ level: row.level, median: row.median, p05: row.p05, p95: row.p95, outliers: countOutliers(row) }));
+  const trivial = run.trivial?.[metric] ?? null;
+  const flags = (run.checks ?? []).filter(({ state }) => state === 'fail' || state === 'warning').map(({ name, state }) => `${name}: ${state}`);
+  const outliers = levels.reduce((sum, row) => sum + row.outliers, 0);
   if (outliers > 0) flags.push(`${outliers} ${outliers === 1 ? 'draw' : 'draws'} beyond 3 sd`);
-  const trivial = run.trivial?.[metric];
-  const lowest = run.levelMedians[0];
-  if (typeof trivial === 'number' && typeof lowest === 'number' && lowest >= trivial) flags.push('no better than the trivial reconstruction at the lowest noise');
-  return flags;
+  const lowest = levels[0]?.median ?? null;
+  const { better } = getMetric(metric);
+  if (trivial !== null && lowest !== null && lossOf(lowest, better) >= lossOf(trivial, better)) flags.push('no better than the trivial reconstruction at the lowest noise');
+  return { metric, levels, trivial, flags };
 }
 
 /** Draws further than three standard deviations above the mean of their level. */
-export function countOutliers(column: Float64Array, levels: number, draws: number): number {
-  let outliers = 0;
-  for (let level = 0; level < levels; level++) {
-    const values = [...column.subarray(level * draws, (level + 1) * draws)].filter((value) => !Number.isNaN(value));
-    if (values.length < 3) continue;
-    const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
-    const sd = Math.sqrt(values.reduce((sum, value) => sum + (value - mean) * (value - mean), 0) / (values.length - 1));
-    outliers += values.filter((value) => value - mean > 3 * sd && sd > 0).length;
-  }
-  return outliers;
+export function countOutliers({ draws, mean, sd }: Pick<LevelStatistics, 'draws' | 'mean' | 'sd'>): number {
+  if (mean === null || sd === null || sd === 0) return 0;
+  return draws.filter((value) => value !== null && value - mean > 3 * sd).length;
 }

@@ -14,7 +14,7 @@ import { recordAudit, siteActor } from '../audit/record-audit.ts';
 import { openBench } from '../benches/change-bench-state.ts';
 import { createBench } from '../benches/create-bench.ts';
 import { createEntry } from '../benches/create-entry.ts';
-import { findBench } from '../benches/find-bench.ts';
+import { entriesOf, findBench, phantomsOf } from '../benches/find-bench.ts';
 import { readArrayFile } from '../files/read-upload.ts';
 import { addMember, createGroup } from '../groups/change-group.ts';
 import { giveVerdict } from '../phantoms/decide-version.ts';
@@ -186,9 +186,9 @@ async function seedBench(context: SeedContext, plan: BenchPlan, solvers: readonl
   }
   const opened = orm.em.fork();
   const bench = await findBench(opened, slug);
-  const unpublished = bench.phantoms.getItems().filter((row) => row.phantomVersion.$.state !== 'published');
+  const unpublished = phantomsOf(bench).filter(({ version }) => version.state !== 'published');
   if (unpublished.length > 0) {
-    logger.error({ bench: slug, phantoms: unpublished.map((row) => row.phantomVersion.$.name) }, 'a bench of the demonstration waits for its phantoms');
+    logger.error({ bench: slug, phantoms: unpublished.map(({ version }) => version.name) }, 'a bench of the demonstration waits for its phantoms');
     return;
   }
   if (bench.state === 'draft') await openBench(opened, { ...acting, now: clock(), bench });
@@ -199,7 +199,7 @@ async function seedBench(context: SeedContext, plan: BenchPlan, solvers: readonl
     const entered = await findBench(inner, slug);
     const solver = await findSolver(inner, slugify(name));
     const n = version ?? Math.max(...solver.versions.getItems().map((row) => row.n));
-    if (entered.entries.getItems().some((entry) => entry.solverVersion.$.solver.$.id === solver.id && entry.solverVersion.$.n === n)) continue;
+    if (entriesOf(entered).some((entry) => entry.solver.id === solver.id && entry.version.n === n)) continue;
     await createEntry(inner, { ...(await actAs(context, inner, by)), bench: entered, solver, version: n });
     jobs.kick();
   }
