@@ -22,11 +22,11 @@ export interface InversionMesh {
 }
 
 /**
- * Detail for a contact impedance, z sigma / R, a pure number. About 1,600 cells, finer towards the boundary where the data
+ * Detail for a contact impedance, z sigma / R, a pure number, and a number of electrodes. About 1,600 cells, finer towards the boundary where the data
  * resolve more.
  */
-export function inversionDetail(contact: number): InversionDetail {
-  return { cellMin: 0.055, cellMax: 0.084, grading: 1, elementMin: Math.min(2e-3, Math.max(5e-5, 0.8 * contact)) };
+export function inversionDetail(contact: number, electrodes: number): InversionDetail {
+  return { cellMin: 0.055, cellMax: 0.084, grading: electrodes > 16 ? 0.8 : 1, elementMin: Math.min(2e-3, Math.max(5e-5, 1.2 * contact)) };
 }
 
 /**

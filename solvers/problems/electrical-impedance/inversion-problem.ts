@@ -54,7 +54,7 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
   const frame = electrodeFrame(geometry);
   const contact = Math.max(smallestContact, (geometry.contactImpedance * background) / radius);
   const zeta = contact / background;
-  const meshes = inversionMesh(frame, detail ?? inversionDetail(contact));
+  const meshes = inversionMesh(frame, detail ?? inversionDetail(contact, geometry.electrodes));
   const { elements: mesh, cellOf } = meshes;
   const cells = conductivityCells(meshes.cells, mesh, cellOf, radius);
   const grid = createEvaluationGrid(radius);
