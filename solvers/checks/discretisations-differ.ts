@@ -23,7 +23,7 @@ export const discretisationsDifferCheck: Check<PhantomCheckContext> = {
     const frame = electrodeFrame(geometry);
     const contact = contactNumber(geometry, truth.background);
     const simulated = simulationMesh(truth, frame, simulationDetail(contact)).quadratic;
-    const inverted = inversionMesh(frame, inversionDetail(contact)).elements;
+    const inverted = inversionMesh(frame, inversionDetail(contact, geometry.electrodes)).elements;
     return judge(
       this,
       sharedInteriorVertices(simulated, inverted),
