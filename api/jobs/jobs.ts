@@ -44,12 +44,17 @@ export interface JobsOptions {
   readonly workerFile?: string;
 }
 export interface JobLimits {
+  /** Of one batch of draws. */
   readonly sliceMs: number;
+  /** Processor time of a whole run. */
   readonly jobMs: number;
+  /** Of a preview, an image, a sensitivity view. */
   readonly interactiveMs: number;
+  /** Of a simulation with its checks. */
+  readonly checkedMs: number;
   readonly memoryMb: number;
 }
-export const defaultLimits: JobLimits = { sliceMs: 120_000, jobMs: 3_600_000, interactiveMs: 60_000, memoryMb: 1024 };
+export const defaultLimits: JobLimits = { sliceMs: 120_000, jobMs: 3_600_000, interactiveMs: 60_000, checkedMs: 180_000, memoryMb: 1024 };
 
 export function makeJobs(options: JobsOptions): Jobs {
   const { orm, clock, logger, workers, workerFile } = options;
@@ -73,7 +78,7 @@ export function makeJobs(options: JobsOptions): Jobs {
   const simulateOnce = async (task: SimulateTask): Promise<SimulationOutput> => {
     let answer: Answer<SimulationOutput>;
     try {
-      answer = await interactive.run('simulate', task, { timeLimitMs: limits.interactiveMs });
+      answer = await interactive.run('simulate', task, { timeLimitMs: task.checks ? limits.checkedMs : limits.interactiveMs });
     } catch (error) {
       if (!(error instanceof WorkerFailure)) throw error;
       if (error.kind === 'threw') throw new Error('the simulation failed', { cause: error });

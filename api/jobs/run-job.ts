@@ -3,8 +3,10 @@ import { AppError } from '../../shared/errors.ts';
 import type { Metric } from '../../solvers/core/types';
 import { runHash } from '../../solvers/campaign/trial';
 import { metrics } from '../../solvers/metrics/registry';
+import type { CheckResultWire } from '../../shared/contracts/common';
 import { toBlob } from '../entities/float64-blob.ts';
 import { RunEntity, RunImageEntity, TrialEntity } from '../entities/run.ts';
+import { SimulationEntity } from '../entities/simulation.ts';
 import { announceRunEnd } from '../services/runs/announce-run-end.ts';
 import { codeVersion } from './code-version.ts';
 import type { Job } from './job.ts';
@@ -104,10 +106,9 @@ async function openRunJob(context: JobContext, id: string): Promise<Job> {
       await storeMissingImages(context, { id, metricKey, input, pool, signal });
       const reader = orm.em.fork();
       const trials = await reader.find(TrialEntity, { run: id }, { orderBy: { level: 'asc', draw: 'asc' } });
-      const lowest = trials.filter((trial) => trial.level === 0);
       const answer = await pool.run('checkRun', {
         run: input,
-        lowestMedian: lowest.length === 0 ? null : pickDraws(lowest.map(({ draw, metrics: values }) => ({ draw, value: values['relative-l2-error'] ?? null })), 'lower').median,
+        lowestErrors: trials.filter((trial) => trial.level === 0).map((trial) => trial.metrics['relative-l2-error'] ?? null),
         stored: spread(trials, recheckedDraws).map(({ level, draw, imageHash }) => ({ level, draw, imageHash })),
       }, { timeLimitMs: context.timeLimitMs, signal });
       if (!answer.ok) throw new WorkerFailure('threw', answer.message);
@@ -214,7 +215,7 @@ async function finishRun(context: JobContext, id: string, answer: RunChecksOutpu
       state: 'finished' as const,
       finishedAt: clock(),
       resultHash,
-      checks: answer.checks,
+      checks: [...answer.checks, ...(await inverseCrimeCheck(em, run.phantomVersion.$.definitionHash))],
       trivial: answer.trivial,
       secondsPerReconstruction: answer.secondsPerReconstruction,
       timeRatio: answer.timeRatio,
@@ -225,6 +226,12 @@ async function finishRun(context: JobContext, id: string, answer: RunChecksOutpu
   if (!done) return;
   context.mailWaits();
   events.changed(id);
+}
+
+/** Whether simulation and inversion share a discretisation was measured with the phantom; a run's table shows it again. */
+async function inverseCrimeCheck(em: EntityManager, definitionHash: string): Promise<CheckResultWire[]> {
+  const simulation = await em.findOne(SimulationEntity, { contentHash: definitionHash });
+  return (simulation?.checks ?? []).filter((check) => check.key === 'discretisations-differ');
 }
 
 async function failRun(context: JobContext, id: string, reason: string): Promise<void> {

@@ -79,8 +79,8 @@ export interface SliceOutput {
 
 export interface RunChecksTask {
   readonly run: RunInput;
-  /** Median of the relative L2 error at the lowest level, for the comparison with the trivial reconstruction. */
-  readonly lowestMedian: number | null;
+  /** Relative L2 errors at the lowest level by draw, as stored. */
+  readonly lowestErrors: readonly (number | null)[];
   /** Hashes of stored trials, to recompute. */
   readonly stored: readonly { readonly level: number; readonly draw: number; readonly imageHash: string }[];
 }

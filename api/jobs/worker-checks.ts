@@ -2,13 +2,17 @@ import type { CheckResultWire } from '../../shared/contracts/common';
 import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
 import { runLevel, trivialMetrics } from '../../solvers/campaign/run';
 import { secondsPerReconstruction, timeBaseline } from '../../solvers/campaign/timing';
+import { checkPhantom } from '../../solvers/checks/check-phantom';
+import { checkRun } from '../../solvers/checks/check-run';
+import { problemChecks } from '../../solvers/checks/registry';
 import type { EitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
 import type { SimulatedImpedance } from '../../solvers/problems/electrical-impedance/simulated-phantom';
 import type { RunChecksOutput, RunChecksTask } from './tasks.ts';
 import { preparedOf, problemOf, seedOf, simulatedOf } from './worker-tasks.ts';
 
-export function phantomChecks(_input: { definition: PhantomDefinition; arrayValues: Float64Array | null; problem: EitInversion; simulated: SimulatedImpedance }): CheckResultWire[] {
-  return [];
+/** Every check of a simulated phantom, and of the model that inverts it. */
+export function phantomChecks({ definition, problem, simulated }: { readonly definition: PhantomDefinition; readonly problem: EitInversion; readonly simulated: SimulatedImpedance }): CheckResultWire[] {
+  return [...checkPhantom({ definition, ...simulated }), ...problemChecks.map((check) => check.evaluate(problem))];
 }
 
 /** A slow method is timed on few draws. */
@@ -27,7 +31,16 @@ export function checkFinishedRun(task: RunChecksTask, now: () => number): RunChe
   const seconds = secondsPerReconstruction(runLevel(prepared, simulated, { ...options, draws: options.draws.slice(0, count) }));
   const baseline = timeBaseline(problem, simulated, options);
   return {
-    checks: [],
+    checks: checkRun({
+      prepared,
+      simulated,
+      benchSeed: run.seed,
+      phantomHash: run.phantomHash,
+      ladder: run.ladder,
+      draws: run.draws,
+      lowestErrors: task.lowestErrors,
+      stored: task.stored.map(({ level, draw, imageHash }) => ({ levelIndex: level, drawIndex: draw, imageHash })),
+    }),
     trivial: Object.fromEntries(Object.entries(trivialMetrics(problem, simulated)).map(([key, { value }]) => [key, value !== null && Number.isFinite(value) ? value : null])),
     secondsPerReconstruction: seconds,
     timeRatio: seconds !== null && baseline !== null && baseline > 0 ? seconds / baseline : null,

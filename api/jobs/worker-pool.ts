@@ -51,7 +51,7 @@ export function makeWorkerPool({ threads, memoryLimitMb, logger, workerFile = wo
     concurrentTasksPerWorker: 1,
     resourceLimits: { maxOldGenerationSizeMb: memoryLimitMb },
     // TypeScript sources need a loader of their own in every thread; what the parent was started with does not matter.
-    execArgv: workerFile.endsWith('.ts') ? ['--import', tsxLoader()] : ['--enable-source-maps'],
+    execArgv: workerFile.endsWith('.ts') ? ['--import', typescriptLoader()] : ['--enable-source-maps'],
     workerData: { memoryLimitMb },
   });
   // A thread that dies between tasks is replaced; without a listener the process would end.
@@ -85,4 +85,9 @@ function workerEntry(): string {
   const bundled = path.join(import.meta.dirname, 'worker.js');
   return existsSync(bundled) ? bundled : path.join(import.meta.dirname, 'worker.ts');
 }
-const tsxLoader = (): string => import.meta.resolve('tsx');
+
+/** tsx registers itself in the main thread only; a worker has to ask for it. */
+function typescriptLoader(): string {
+  const api = import.meta.resolve('tsx/esm/api');
+  return `data:text/javascript,${encodeURIComponent(`import { register } from ${JSON.stringify(api)}; register();`)}`;
+}

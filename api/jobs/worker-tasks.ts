@@ -65,7 +65,7 @@ export function simulatePhantom({ definition, arrayValues, checks }: SimulateTas
     reference,
     clean,
     truthImage,
-    checks: checks ? phantomChecks({ definition, arrayValues, problem, simulated }) : null,
+    checks: checks ? phantomChecks({ definition, problem, simulated }) : null,
     seconds: now() - begin,
   };
 }
