@@ -352,7 +352,7 @@ export function SmallStability({ label, curves, levels, noise, floor = null, hei
         {[1e-4, 1e-3, 1e-2, 0.1].filter((v) => v >= xMin * 0.99 && v <= xMax).map((v, i) => (
           <g key={v}>
             <line x1={x(v)} x2={x(v)} y1={area.top} y2={area.bottom} stroke="var(--hair)" />
-            <text className="ax" x={x(v)} y={area.bottom + 15} textAnchor={i === 0 ? 'start' : 'middle'}>{tickText(v * 100)}{thinSpace}%</text>
+            {width < 220 && i % 2 === 1 ? null : <text className="ax" x={x(v)} y={area.bottom + 15} textAnchor={i === 0 ? 'start' : 'middle'}>{tickText(v * 100)}{thinSpace}%</text>}
           </g>
         ))}
         <rect x={area.left} y={area.top} width={Math.max(0, area.right - area.left)} height={raw(1) - area.top} fill={`url(#${id}h)`} />
