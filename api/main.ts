@@ -9,6 +9,7 @@ import { SqliteSessionStore } from './http/session-store.ts';
 import { makeJobs } from './jobs/jobs.ts';
 import { makeMailer } from './mail/mailer.ts';
 import { databaseFile, openDatabase } from './orm.ts';
+import { seedDemo, type Seeding } from './services/seed/seed-demo.ts';
 import { demoAccounts } from './sign-in/demo-accounts.ts';
 
 const stopWithinMs = 2_500;
@@ -19,8 +20,12 @@ const logger = makeLogger(env.logLevel);
 const clock = (): Date => new Date();
 const orm = await openDatabase(databaseFile(env.dataDir));
 const mailer = makeMailer({ orm, env, clock, logger });
-const jobs = makeJobs({ orm, clock, logger, mailer, workers: env.workers, origin: env.publicUrl ?? `http://localhost:${env.port}` });
-const app = createApp({ orm, env, clock, rng: randomBytes, mailer, jobs, logger, standInAccounts: demoAccounts, clientDir: clientDir() });
+const origin = env.publicUrl ?? `http://localhost:${env.port}`;
+const jobs = makeJobs({ orm, clock, logger, mailer, workers: env.workers, origin });
+let seeding: Seeding | null = null;
+const app = createApp({
+  orm, env, clock, rng: randomBytes, mailer, jobs, logger, standInAccounts: demoAccounts, clientDir: clientDir(), seeding: () => seeding?.running() ?? false,
+});
 
 const server = app.listen(env.port, env.host, (error?: Error) => {
   if (error) {
@@ -34,6 +39,7 @@ const server = app.listen(env.port, env.host, (error?: Error) => {
 });
 mailer.start();
 await jobs.start();
+if (env.seedDemo) seeding = seedDemo({ orm, jobs, clock, logger, origin });
 const sessions = new SqliteSessionStore(orm, clock);
 const sweeper = setInterval(sweepSessions, sweepEveryMs);
 sweeper.unref();
@@ -63,7 +69,7 @@ async function stop(): Promise<void> {
   server.closeIdleConnections();
   setTimeout(() => server.closeAllConnections(), 1_000).unref();
   await closed;
-  await jobs.stop();
+  await Promise.all([seeding?.stop(), jobs.stop()]);
   await mailer.stop();
   await orm.close(true);
 }

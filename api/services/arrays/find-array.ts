@@ -8,7 +8,9 @@ import { mayReadVersion, maySeeTruth } from '../phantoms/phantom-access.ts';
 
 /** The values of a stored array. @throws AppError 'not-found'. */
 export async function loadArrayValues(em: EntityManager, key: { sha256: string; kind: 'array' | 'frames'; rows: number; cols: number }): Promise<Float64Array> {
-  const array = await em.findOne(ArrayEntity, key, { populate: ['values'] });
+  // Callers hand over whole definitions: only these four are columns.
+  const { sha256, kind, rows, cols } = key;
+  const array = await em.findOne(ArrayEntity, { sha256, kind, rows, cols }, { populate: ['values'] });
   if (!array) throw new AppError('not-found', `No ${key.rows} x ${key.cols} ${key.kind === 'array' ? 'array' : 'file of frames'} with the hash ${key.sha256} was uploaded.`);
   return fromBlob(array.values.$);
 }

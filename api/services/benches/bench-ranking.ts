@@ -53,11 +53,14 @@ async function compute(em: EntityManager, input: { readonly bench: LoadedBench; 
       const sheet = series.find((candidate) => candidate.results.entry.id === row.id)!.sheet;
       const counted = entry.counted.filter((run): run is Run => run !== null);
       const tables = medians.get(row.id) ?? [];
+      // Where no entry has a phantom left, the ranking cannot know that it is missing.
+      const complete = row.complete && entry.counted.every((run) => run !== null);
+      const placed = complete && !belowFloor;
       return {
         ...entryRefs(entry),
-        rank: belowFloor ? null : row.rank,
-        tieGroup: belowFloor ? null : row.tieGroup,
-        meanRank: belowFloor ? null : row.meanRank,
+        rank: placed ? row.rank : null,
+        tieGroup: placed ? row.tieGroup : null,
+        meanRank: placed ? row.meanRank : null,
         median: row.median,
         p05: row.p05,
         p95: row.p95,
@@ -70,7 +73,7 @@ async function compute(em: EntityManager, input: { readonly bench: LoadedBench; 
         review: reviewOf(counted),
         reservations: [...new Set(counted.flatMap((run) => (run.reservation ? [run.reservation] : [])))],
         runs: runRefs(bench, entry),
-        complete: row.complete,
+        complete,
       };
     }),
     trivial: trivialOf(results.entries, metric),
