@@ -20,3 +20,8 @@ export { rankAtNoise, placeOnLadder, interpolateLevels, type Ranking, type Ranki
 export { comparePairs, type PairComparison } from './statistics/pairs';
 export { lossOf, type Better } from './statistics/loss';
 export { quantileOfSorted, median } from './statistics/quantiles';
+
+export { createProblem, describeProblem, simulate, type ProblemDescriptor } from './problems/registry';
+export { createTruthField, type TruthField } from './truth/truth-field';
+export { TruthError } from './truth/truth-error';
+export { phantomChecks, problemChecks, methodChecks, runChecks } from './checks/registry';

@@ -16,7 +16,7 @@ import { degreeFourShapes } from './elements';
 import { inversionDetail, inversionMesh, type InversionDetail } from './inversion-mesh';
 import { frameJacobian, pairWeights } from './jacobian';
 import { frameSize, measure, patternCount } from './patterns';
-import { pairSensitivities, unitStiffness } from './sensitivity';
+import { elementsByCell, pairSensitivities, unitStiffness } from './sensitivity';
 import { smallestContact } from './simulation';
 
 /** The inversion model of electrical impedance, with what the floor and the checks need beyond the common contract. */
@@ -64,6 +64,8 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
   const dataSize = frameSize(geometry);
   const unknowns = cells.count;
   const stiffness = unitStiffness(mesh);
+  const groups = elementsByCell(cellOf, unknowns);
+  const pairScratch = new Float64Array(unknowns * L * L);
   const pairCurrents = new Float64Array(L * L);
   for (let j = 0; j < L; j++) {
     pairCurrents[j * L + j] = 1;
@@ -113,7 +115,7 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
       return data;
     },
     linearise(x) {
-      const pairs = pairSensitivities(mesh, stiffness, cellOf, unknowns, solve(x).fields, L);
+      const pairs = pairSensitivities(mesh, stiffness, groups, solve(x).fields, L, pairScratch);
       return matrixOperator(frameJacobian(geometry, pairs, unknowns), dataSize, unknowns);
     },
     toImage: (x, out) => applySparse(shares, x, out),

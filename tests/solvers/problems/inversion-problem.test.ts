@@ -11,7 +11,7 @@ import { electrodeModel, solveElectrodes } from '../../../solvers/problems/elect
 import { electrodeFrame } from '../../../solvers/problems/electrical-impedance/electrodes';
 import { createEitInversion, type EitInversion } from '../../../solvers/problems/electrical-impedance/inversion-problem';
 import { frameJacobian } from '../../../solvers/problems/electrical-impedance/jacobian';
-import { pairSensitivities, unitStiffness } from '../../../solvers/problems/electrical-impedance/sensitivity';
+import { elementsByCell, pairSensitivities, unitStiffness } from '../../../solvers/problems/electrical-impedance/sensitivity';
 import { sampleConductivity } from '../../../solvers/problems/electrical-impedance/simulation';
 import { simulationDetail, simulationMesh } from '../../../solvers/problems/electrical-impedance/simulation-mesh';
 import { createTruthField } from '../../../solvers/truth/truth-field';
@@ -66,7 +66,7 @@ describe('derivative', () => {
     const fields = matmulTransposed(transpose(unitPotentials, L, model.pattern.n), voltages, model.pattern.n, L, L);
     // Two cells: outside and inside the inclusion.
     const cellOf = Int32Array.from({ length: mesh.elements.length / 6 }, (_, t) => (sigma[6 * t] > 3 ? 1 : 0));
-    const jacobian = frameJacobian(g, pairSensitivities(mesh, unitStiffness(mesh), cellOf, 2, fields, L), 2);
+    const jacobian = frameJacobian(g, pairSensitivities(mesh, unitStiffness(mesh), elementsByCell(cellOf, 2), fields, L), 2);
     const { values } = reference.derivative;
     // The simulation's accuracy, 1e-4 of the data; derivatives lose about a digit.
     for (let m = 0; m < L; m++) expect(Math.abs(jacobian[2 * m + 1] - values[m])).toBeLessThan(1e-3 * largest(values));
