@@ -6,7 +6,7 @@ import { expandCoefficients, frameSpectrum, spectralSystem } from './spectral-sy
 
 const specs = {
   penalty: { kind: 'choice', label: 'Smoothing norm', symbol: 'L', default: 'identity', choices: penaltyChoices, help: 'The inner product of the iteration: the size of the change, its gradient, or its Laplacian.' },
-  largestIteration: { kind: 'integer', label: 'Most iterations', default: 60, minimum: 1, maximum: 1000, help: 'The iteration ends here even if the discrepancy is not reached.' },
+  largestIteration: { kind: 'integer', label: 'Most iterations', default: 200, minimum: 1, maximum: 2000, help: 'The iteration ends here even if the discrepancy is not reached.' },
 } as const;
 const { schema, fields } = defineParameters(specs);
 

@@ -10,28 +10,42 @@ import { makeReconstructor } from './reconstructor';
 const specs = {
   penalty: { kind: 'choice', label: 'Penalty', symbol: 'L', default: 'gradient', choices: penaltyChoices, help: 'What is kept small: the size of the change from the background, its gradient, or its Laplacian.' },
   firstAlpha: { kind: 'number', label: 'First alpha', symbol: '\\alpha_0/\\sigma_1', default: 0.3, minimum: 1e-6, maximum: 10, scale: 'log', help: 'Penalty weight of the first step, as a share of the largest singular value at the background.' },
-  decay: { kind: 'number', label: 'Decay', symbol: 'q', default: 0.4, minimum: 0.05, maximum: 0.95, scale: 'linear', help: 'The weight is multiplied by this after every step.' },
+  decay: { kind: 'number', label: 'Decay', symbol: 'q', default: 0.3, minimum: 0.05, maximum: 0.95, scale: 'linear', help: 'The weight is multiplied by this after every step.' },
   largestIteration: { kind: 'integer', label: 'Most iterations', default: 10, minimum: 1, maximum: 60, help: 'The iteration ends here even if the discrepancy is not reached.' },
 } as const;
 const { schema, fields } = defineParameters(specs);
 
-/** Data-space form of one linearisation: G = P^{-1} J^T by rows, and J G. */
+/** Data-space form of one linearisation, P = R^T R the penalty matrix. */
 interface Linearised {
   readonly jacobian: Float64Array;
-  /** Row i is P^{-1} J_i^T, dataSize x unknowns. */
-  readonly smoothed: Float64Array;
-  /** J P^{-1} J^T, dataSize x dataSize. */
+  /** B = J R^{-1}, dataSize x unknowns. */
+  readonly standard: Float64Array;
+  /** B B^T = J P^{-1} J^T, dataSize x dataSize, lower triangle. */
   readonly gram: Float64Array;
 }
 
 function lineariseAt(problem: ForwardProblem, factor: CholeskyFactor, x: Float64Array): Linearised {
   const jacobian = problem.linearise(x).values;
-  const smoothed = Float64Array.from(jacobian);
-  factor.solveMany(smoothed, problem.dataSize);
-  return { jacobian, smoothed, gram: matmulTransposed(jacobian, smoothed, problem.dataSize, problem.unknowns, problem.dataSize) };
+  const standard = Float64Array.from(jacobian);
+  factor.halfSolveMany(standard, problem.dataSize, 'forward');
+  return { jacobian, standard, gram: lowerGram(standard, problem.dataSize, problem.unknowns) };
 }
 
-/** Square root of the largest eigenvalue of a positive semidefinite matrix, by 60 power steps from a fixed start; a lower bound, close. */
+/** Rows per block of the symmetric product. */
+const gramBlock = 48;
+
+/** Lower triangle of B B^T, by blocks of rows against all rows up to the block: half the work of the full product. */
+function lowerGram(b: Float64Array, m: number, n: number): Float64Array {
+  const gram = new Float64Array(m * m);
+  for (let from = 0; from < m; from += gramBlock) {
+    const to = Math.min(m, from + gramBlock);
+    const block = matmulTransposed(b.subarray(from * n, to * n), b.subarray(0, to * n), to - from, n, to);
+    for (let i = from; i < to; i++) for (let j = 0; j <= i; j++) gram[i * m + j] = block[(i - from) * to + j];
+  }
+  return gram;
+}
+
+/** Square root of the largest eigenvalue of a positive semidefinite matrix given by its lower triangle, by 60 power steps from a fixed start; a lower bound, close. */
 function largestSingularValue(gram: Float64Array, m: number): number {
   let v = new Float64Array(m);
   for (let i = 0; i < m; i++) v[i] = 1 + (i % 7) / 7 - (i % 3) / 3;
@@ -40,9 +54,16 @@ function largestSingularValue(gram: Float64Array, m: number): number {
     const size = norm2(v);
     if (size === 0) return 0;
     for (let i = 0; i < m; i++) v[i] /= size;
-    const w = matmulTransposed(gram, v, m, m, 1);
+    const w = new Float64Array(m);
+    for (let i = 0; i < m; i++) {
+      for (let j = 0; j < i; j++) {
+        w[i] += gram[i * m + j] * v[j];
+        w[j] += gram[i * m + j] * v[i];
+      }
+      w[i] += gram[i * m + i] * v[i];
+    }
     value = dot(v, w);
-    v = Float64Array.from(w);
+    v = w;
   }
   return Math.sqrt(Math.max(0, value));
 }
@@ -62,7 +83,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   fields,
   capabilities: { linear: false, nonlinear: true, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.1 },
-  fixedValue: defineField('value', { kind: 'number', label: 'Last alpha', symbol: '\\alpha/\\sigma_1', default: 0.01, minimum: 1e-8, maximum: 10, scale: 'log', help: 'The weight decays to this share of the largest singular value and stays there.' }),
+  fixedValue: defineField('value', { kind: 'number', label: 'Last alpha', symbol: '\\alpha/\\sigma_1', default: 1e-4, minimum: 1e-10, maximum: 10, scale: 'log', help: 'The weight decays to this share of the largest singular value and stays there.' }),
   prepare(problem, parameters, rule) {
     const { penalty, firstAlpha, decay, largestIteration } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
@@ -88,9 +109,14 @@ const method: Method<ParametersOf<typeof specs>> = {
         w[i] = sum;
       }
       denseCholesky(system, m).solveMany(w, 1);
-      out.set(background);
-      for (let i = 0; i < m; i++) for (let j = 0; j < n; j++) out[j] += w[i] * at.smoothed[i * n + j];
-      for (let j = 0; j < n; j++) if (out[j] < lowerBound) out[j] = lowerBound;
+      // h = P^{-1} J^T w = R^{-1} B^T w.
+      out.fill(0);
+      for (let i = 0; i < m; i++) for (let j = 0; j < n; j++) out[j] += w[i] * at.standard[i * n + j];
+      factor.halfSolveMany(out, 1, 'backward');
+      for (let j = 0; j < n; j++) {
+        out[j] += background[j];
+        if (out[j] < lowerBound) out[j] = lowerBound;
+      }
     }
 
     return makeReconstructor((data, noise, context): Reconstruction => {

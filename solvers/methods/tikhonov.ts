@@ -9,7 +9,7 @@ import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystem } from '
 const specs = {
   penalty: { kind: 'choice', label: 'Penalty', symbol: 'L', default: 'gradient', choices: penaltyChoices, help: 'What is kept small: the size of the change, its gradient, or its Laplacian.' },
   smallestAlpha: {
-    kind: 'number', label: 'Smallest alpha', symbol: '\\alpha_{\\min}/\\sigma_1', default: 1e-5, minimum: 1e-8, maximum: 1, scale: 'log',
+    kind: 'number', label: 'Smallest alpha', symbol: '\\alpha_{\\min}/\\sigma_1', default: 1e-7, minimum: 1e-12, maximum: 1, scale: 'log',
     help: 'No rule goes below this share of the largest singular value. It guards against a model error that no alpha can fit.',
   },
 } as const;
@@ -30,7 +30,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   fields,
   capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'gcv', 'l-curve', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
-  fixedValue: defineField('value', { kind: 'number', label: 'Alpha', symbol: '\\alpha/\\sigma_1', default: 0.01, minimum: 1e-8, maximum: 10, scale: 'log', help: 'As a share of the largest singular value of the problem in standard form.' }),
+  fixedValue: defineField('value', { kind: 'number', label: 'Alpha', symbol: '\\alpha/\\sigma_1', default: 0.001, minimum: 1e-10, maximum: 10, scale: 'log', help: 'As a share of the largest singular value of the problem in standard form.' }),
   prepare(problem, parameters, rule) {
     const { penalty, smallestAlpha } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);

@@ -8,7 +8,7 @@ import { frameSpectrum, isZeroFrame, spectralSystem, type SpectralSystem } from 
 const specs = {
   largestIteration: { kind: 'integer', label: 'Iterations', default: 250, minimum: 10, maximum: 5000, help: 'Primal-dual steps. The iteration ends earlier when the image no longer changes.' },
   smallestLambda: {
-    kind: 'number', label: 'Smallest lambda', symbol: '\\lambda_{\\min}', default: 1e-7, minimum: 1e-12, maximum: 1, scale: 'log',
+    kind: 'number', label: 'Smallest lambda', symbol: '\\lambda_{\\min}', default: 1e-10, minimum: 1e-14, maximum: 1, scale: 'log',
     help: 'The discrepancy principle does not go below this weight (same scale as a fixed lambda). It guards against a model error that no image can fit.',
   },
 } as const;
@@ -82,7 +82,7 @@ function primalDual(system: SpectralSystem, jumps: Jumps, task: Task): Outcome {
   // A smooth start, and with it the size of the image: the ratio of the steps should match image and dual variable.
   for (let k = 0; k < used; k++) d[k] = (s[k] * c[k]) / (s[k] * s[k] + 1e-4 * s[0] * s[0]);
   addExpansion(basis, n, d, used, h);
-  const ratio = norm2(h) / (0.5 * norm2(lengths));
+  const ratio = (norm2(h) || 1) / (0.5 * norm2(lengths) || 1);
   const tau = ratio / Math.sqrt(normSquare);
   const sigma = 1 / (ratio * Math.sqrt(normSquare));
   const extrapolated = Float64Array.from(h);
@@ -147,7 +147,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', {
-    kind: 'number', label: 'Lambda', symbol: '\\lambda', default: 1e-4, minimum: 1e-12, maximum: 100, scale: 'log',
+    kind: 'number', label: 'Lambda', symbol: '\\lambda', default: 1e-6, minimum: 1e-14, maximum: 100, scale: 'log',
     help: 'Weight of the total variation, as a share of the squared largest singular value (unknowns weighted by area) times the mean background times the body radius.',
   }),
   prepare(problem, parameters, rule) {

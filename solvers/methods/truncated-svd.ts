@@ -6,7 +6,7 @@ import { makeReconstructor } from './reconstructor';
 import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystem } from './spectral-system';
 
 const specs = {
-  largestIndex: { kind: 'integer', label: 'Largest index', symbol: 'k_{\\max}', default: 80, minimum: 1, maximum: 2000, help: 'No rule keeps more singular values than this, nor more than the numerical rank.' },
+  largestIndex: { kind: 'integer', label: 'Largest index', symbol: 'k_{\\max}', default: 200, minimum: 1, maximum: 2000, help: 'No rule keeps more singular values than this, nor more than the numerical rank.' },
 } as const;
 const { schema, fields } = defineParameters(specs);
 

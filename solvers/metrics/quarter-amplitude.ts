@@ -45,7 +45,10 @@ export function quarterAmplitude(input: MetricInput, highest: number, lowest: nu
     const wanted = targets.filter((target) => (sign > 0 ? target.contrast > 0 : target.contrast < 0));
     if (wanted.length === 0) continue;
     const peak = sign > 0 ? highest : -lowest;
-    if (!(peak > 0))
+    // A background that went through the projection to pixels differs from itself by rounding: that is no response.
+    let contrast = 0;
+    for (const target of wanted) contrast = Math.max(contrast, Math.abs(target.contrast));
+    if (!(peak > 1e-9 * contrast))
       return { findings: null, reason: `The image has no ${sign > 0 ? 'rise above' : 'fall below'} the background, as the target has.`, count: 0, falseSpots: 0 };
     const whole = wanted.length === 1 ? wholeSet(input, geometry, sign, 0.25 * peak) : null;
     const spots = whole ? [whole] : connectedSpots(input, geometry, sign, 0.25 * peak);

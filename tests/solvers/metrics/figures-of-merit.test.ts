@@ -120,6 +120,9 @@ describe('error norms', () => {
       expect(values[key]).toEqual({ value: null, reason: expect.stringMatching(/\.$/) });
     const inverted = evaluateMetrics({ ...base, targets: [{ label: 'a', x: 0, y: 0, area: 1, contrast: 1 }], estimate: background.map((v) => v - 1) });
     expect(inverted['position-error']).toEqual({ value: null, reason: 'The image has no rise above the background, as the target has.' });
+    // Rounding in the projection of a background is no response either.
+    const rounded = evaluateMetrics({ ...base, targets: [{ label: 'a', x: 0, y: 0, area: 1, contrast: 1 }], estimate: background.map((v, i) => v + (i % 7) * 2.2e-16) });
+    expect(rounded['position-error'].value).toBeNull();
   });
   it('refuses images of another size and values that are not finite', () => {
     expect(() => evaluateMetrics({ ...base, truth: truth.subarray(1) })).toThrow(`The truth has ${count - 1} pixels, the body ${count}.`);
