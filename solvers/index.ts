@@ -25,3 +25,5 @@ export { createProblem, describeProblem, simulate, type ProblemDescriptor } from
 export { createTruthField, type TruthField } from './truth/truth-field';
 export { TruthError } from './truth/truth-error';
 export { phantomChecks, problemChecks, methodChecks, runChecks } from './checks/registry';
+export { checkRun } from './checks/check-run';
+export { type RunCheckContext } from './checks/run-check';
