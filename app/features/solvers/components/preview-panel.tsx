@@ -29,7 +29,7 @@ export function usePreviewPictures(phantom: PreviewPhantom | null, image: Float6
 
 /** What the configuration makes of draw 1 at the rule's noise, computed in this browser. */
 export function PreviewPanel({ phantom, preview, noise, levels, others, stale }: Props) {
-  const { image, points, draws, parameter } = preview;
+  const { image, points, draws, parameter, hasParameter } = preview;
   const { yours, error } = usePreviewPictures(phantom, image.data?.image);
   const limit = useMemo(() => (error ? differenceLimit(largest(error).value) : 0.5), [error]);
   const [low, high] = phantom.range;
@@ -59,8 +59,8 @@ export function PreviewPanel({ phantom, preview, noise, levels, others, stale }:
         </div>
         <div>
           <h3>Error against the parameter</h3>
-          {answer ? <ParameterCurve answer={answer} /> : <div style={{ height: 150, display: 'grid', placeItems: 'center' }}><span className="sm">{answer === null || !parameter.isFetching ? 'This method has no curve to show.' : 'Computing'}</span></div>}
-          {answer ? <p>Dot: your rule. Diamond: best possible{answer.choice?.error ? `, ${Math.max(0, Math.round((1 - answer.oracle.error / answer.choice.error) * 100))} % lower` : ''}.</p> : null}
+          {answer && hasParameter ? <ParameterCurve answer={answer} /> : <div style={{ height: 150, display: 'grid', placeItems: 'center' }}><span className="sm">{answer === null || !hasParameter ? 'This method has no curve to show.' : 'Computing'}</span></div>}
+          {answer && hasParameter ? <p>Dot: your rule. Diamond: best possible{answer.choice?.error ? `, ${Math.max(0, Math.round((1 - answer.oracle.error / answer.choice.error) * 100))} % lower` : ''}.</p> : null}
         </div>
       </div>
     </>

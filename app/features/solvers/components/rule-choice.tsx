@@ -1,4 +1,3 @@
-import { Formula } from '../../../components/ui/formula';
 import { StateShape } from '../../../components/ui/state-mark';
 import type { Method, RuleKey } from '../../../../solvers/core/types';
 import { parameterRules } from '../../../../solvers/parameter-choice/registry';
@@ -33,7 +32,7 @@ function RuleRow({ rule, method, form, change, issueAt }: Props & { rule: RuleKe
         <input type="radio" name="rule" checked={on} onChange={() => change({ rule })} />
         <span>
           <b>{described?.name ?? rule}</b>
-          <span>{described?.summary}{described?.usesNoiseLevel ? ' It is told the noise level.' : ''}</span>
+          <span>{described?.summary}</span>
         </span>
       </label>
       {fields.map((field) => {
@@ -42,7 +41,7 @@ function RuleRow({ rule, method, form, change, issueAt }: Props & { rule: RuleKe
         const id = on ? fieldId(rulePath(field.name)) : `s-${rule}-${field.name}`;
         return (
           <div key={key} className={fault ? 'set fld err' : 'set'}>
-            <label htmlFor={id}>{rule === 'fixed' && field.symbol ? <Formula tex={field.symbol} inline /> : null} {field.label.toLowerCase()}</label>
+            <label htmlFor={id}>{field.label.toLowerCase()}</label>
             <input className="t" id={id} inputMode="decimal" disabled={!on} value={form.ruleValues[key] ?? ''} aria-invalid={fault ? true : undefined} aria-describedby={fault ? `${id}-help` : undefined} onChange={(e) => change({ ruleValues: { ...form.ruleValues, [key]: e.target.value } })} />
             {fault ? <span className="help" id={`${id}-help`}><StateShape state="fail" />{fault}</span> : null}
           </div>

@@ -135,7 +135,7 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
                 ))}
               </div>
               <div style={{ marginTop: 14 }}>
-                <Select id={fieldId('configuration.method')} label="Algorithm" value={form.method} error={issueAt('configuration.method')} help={`${method.summary} ${capabilityWords(method)}. ${method.sources.map((s) => s.short).join('; ')}.`} onChange={(e) => editor.chooseMethod(e.target.value)}>
+                <Select id={fieldId('configuration.method')} label="Algorithm" value={form.method} error={issueAt('configuration.method')} help={`${method.summary} (${capabilityWords(method)}; ${method.sources.map((s) => s.short).join('; ')})`} onChange={(e) => editor.chooseMethod(e.target.value)}>
                   {methods.filter((m) => m.class === method.class).map((m) => <option key={m.key} value={m.key}>{m.name}</option>)}
                 </Select>
                 <div className="fline" tabIndex={0} role="region" aria-label="Formula of the method"><Formula tex={method.formula} label={`Formula of ${method.name}`} /></div>

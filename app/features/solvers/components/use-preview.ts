@@ -42,9 +42,10 @@ export function usePreview({ phantom, configuration, noise, levels, seed }: Prev
   });
   // Filled by the progress of the query above, never fetched.
   const partial = useQuery<NoiseAnswer['points']>({ queryKey: [...curveKey, 'partial'], queryFn: () => [], enabled: false, structuralSharing: false });
+  const hasParameter = !!capabilities?.linear && capabilities.rules.length > 0;
   const parameter = useQuery({
     queryKey: ['preview', 'parameter', ...what, seed, noise], queryFn: ({ signal }) => reconstructionClient().errorAgainstParameter({ ...job(), draw }, { signal }),
-    enabled: ready && curve.isSuccess && !!capabilities?.linear, placeholderData: keepPreviousData, ...common,
+    enabled: ready && curve.isSuccess && hasParameter, placeholderData: keepPreviousData, ...common,
   });
-  return { image, points: curve.data?.points ?? partial.data ?? [], draws, curveError: curve.error, parameter };
+  return { image, points: curve.data?.points ?? partial.data ?? [], draws, curveError: curve.error, parameter, hasParameter };
 }
