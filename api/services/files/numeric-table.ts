@@ -18,6 +18,8 @@ export interface TableLimits {
 }
 
 const numberPattern = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?$/;
+/** Beyond any unit; sums of squares of what is below stay finite. */
+export const largestNumber = 1e100;
 const neighbourReach = 2;
 const listedIssues = 20;
 
@@ -119,7 +121,7 @@ function delimiterOf(text: string): string {
 
 function cellFault(text: string): string | undefined {
   if (text === '') return 'the cell is empty';
-  if (numberPattern.test(text)) return Number.isFinite(Number(text)) ? undefined : `${text} is too large for a double`;
+  if (numberPattern.test(text)) return Math.abs(Number(text)) <= largestNumber ? undefined : `${shorten(text)} is too large, the limit is ${largestNumber}`;
   if (/^[+-]?(?:nan|inf(?:inity)?)$/i.test(text)) return `${text} is not a finite number`;
   return `'${shorten(text)}' is not a number`;
 }

@@ -1,5 +1,5 @@
 import { AppError } from '../../../shared/errors.ts';
-import type { NumericTable } from './numeric-table.ts';
+import { largestNumber, type NumericTable } from './numeric-table.ts';
 
 const rejected = (detail: string): AppError => new AppError('file-rejected', detail, [{ path: ['file'], message: detail }]);
 
@@ -66,14 +66,14 @@ export function readNpy(bytes: Uint8Array, maxSide: number): NumericTable {
     for (let col = 0; col < cols; col++) {
       const position = fortran ? col * rows + row : row * cols + col;
       const value = reader.read(view, data + position * reader.size, little);
-      if (!Number.isFinite(value)) throw notFinite(row + 1, col + 1, value);
+      if (!(Math.abs(value) <= largestNumber)) throw badValue(row + 1, col + 1, value);
       values[row * cols + col] = value;
     }
   return { rows, cols, values };
 }
 
-function notFinite(row: number, column: number, value: number): AppError {
-  const message = `Row ${row}, column ${column}: ${value} is not a finite number.`;
+function badValue(row: number, column: number, value: number): AppError {
+  const message = `Row ${row}, column ${column}: ${value} ${Number.isFinite(value) ? `is too large, the limit is ${largestNumber}` : 'is not a finite number'}.`;
   return new AppError('file-rejected', message, [{ path: ['file'], message, row, column }], { extra: { row, column } });
 }
 

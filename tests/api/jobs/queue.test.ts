@@ -7,7 +7,7 @@ import { UserEntity } from '../../../api/entities/user.ts';
 import { progressSchema, runDetailSchema, type Progress } from '../../../shared/contracts/runs.ts';
 import { sha256Hex } from '../../../solvers/core/hash.ts';
 import type { HttpClient } from '../../support/http-client.ts';
-import { makeBench } from '../../support/registry-fixture.ts';
+import { discDefinition, makeBench } from '../../support/registry-fixture.ts';
 import { startTestApp, type TestApp } from '../../support/test-app.ts';
 import { seeds } from '../support/faulty-worker.ts';
 
@@ -20,7 +20,7 @@ let made = 0;
 beforeAll(async () => {
   app = await startTestApp({
     env: { WORKERS: '2' },
-    jobs: { workerFile: path.join(import.meta.dirname, '../support/faulty-worker.ts'), limits: { sliceMs: 10_000, memoryMb: 64 } },
+    jobs: { workerFile: path.join(import.meta.dirname, '../support/faulty-worker.ts'), limits: { sliceMs: 10_000, interactiveMs: 5_000, memoryMb: 64 } },
   });
   developer = await app.signInAs('developer-demo');
 });
@@ -164,6 +164,20 @@ describe('the queue', () => {
     await app.deps.jobs.idle();
     for (const run of [id!, fresh!]) expect(await runOf(run)).toMatchObject({ state: 'finished', done: 18 });
     expect(await app.orm.em.fork().count(TrialEntity, { run: id, imageHash: 'old' })).toBe(0);
+  });
+});
+
+describe('a simulation that goes wrong', () => {
+  const truth = (expression: string) => ({ ...discDefinition(0.03), truth: { kind: 'expression', background: 1, expression } });
+  it('is refused with a reason when it leaves its time, and told as a fault of the server when it throws', async () => {
+    const late = await developer.post('/api/v1/simulations', { definition: truth('x') });
+    expect(late.status, late.text).toBe(422);
+    expect(late.body).toMatchObject({ code: 'simulation-failed', detail: expect.stringMatching(/did not end within 5 s/) as string });
+    const broken = await developer.post('/api/v1/simulations', { definition: truth('1 + x') });
+    expect(broken.status).toBe(500);
+    // The cause goes to the log, not to the reader.
+    expect(broken.text).not.toContain('the mesh broke down');
+    expect(app.log()).toContain('the mesh broke down');
   });
 });
 

@@ -3,7 +3,7 @@
  * for is in its seed, so that several runs of one queue can differ.
  */
 import { sha256Hex } from '../../../solvers/core/hash.ts';
-import type { RunChecksTask, SliceTask } from '../../../api/jobs/tasks.ts';
+import type { RunChecksTask, SimulateTask, SliceTask } from '../../../api/jobs/tasks.ts';
 
 export const seeds = {
   plain: 1,
@@ -50,7 +50,9 @@ export function checkRun({ stored }: RunChecksTask): unknown {
   };
 }
 
-export const simulate = (): unknown => {
-  throw new Error('not in this test');
-};
+/** Hangs where the ground truth is the expression 'x', throws otherwise. */
+export function simulate({ definition }: SimulateTask): unknown {
+  if (definition.truth.kind === 'expression' && definition.truth.expression === 'x') for (;;) sleep(1000);
+  throw new Error('the mesh broke down');
+}
 export const sensitivity = simulate;
