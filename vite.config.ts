@@ -3,7 +3,7 @@ import react from '@vitejs/plugin-react';
 import { defineConfig } from 'vite';
 
 /** The API of `npm run dev` listens here; the page comes from Vite and asks it through the proxy. */
-const api = `http://127.0.0.1:${process.env.API_PORT ?? '4310'}`;
+const api = `http://127.0.0.1:${process.env.API_PORT ?? process.env.PORT ?? '3000'}`;
 
 export default defineConfig({
   root: '.',

@@ -1,13 +1,14 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { useState } from 'react';
 import { benchDetailSchema, type BenchDetail } from '../../../../shared/contracts/benches';
-import { Button } from '../../../components/ui/button';
+import { Button, ButtonLink } from '../../../components/ui/button';
 import { Confirm } from '../../../components/ui/dialog';
 import { ErrorPanel } from '../../../components/ui/notices';
 import { StateMark } from '../../../components/ui/state-mark';
 import { useToast } from '../../../components/ui/toast';
 import { api } from '../../../lib/api-client';
 import { plural } from '../../../lib/format';
+import { paths } from '../../../lib/paths';
 import { benchKeys } from '../api/keys';
 
 type Move = 'open' | 'close';
@@ -27,10 +28,11 @@ export function BenchActions({ bench }: { bench: BenchDetail }) {
     },
   });
   const running = bench.runsFinished < bench.runsTotal;
-  if (!running && !bench.may.open && !bench.may.close) return null;
+  if (!running && !bench.may.open && !bench.may.close && !bench.may.enter) return null;
   return (
     <div className="sheet pad flex gap-x4 items-center flex-wrap" style={{ marginBottom: 16 }}>
       {running ? <><StateMark state="running" word={`${bench.runsFinished} of ${plural(bench.runsTotal, 'run')} finished`} /><span className="sm">The ranking counts what is finished.</span></> : null}
+      {bench.may.enter ? <ButtonLink to={`${paths.solverNew()}?bench=${bench.slug}`}>Enter a solver</ButtonLink> : null}
       {bench.may.open ? <Button look="primary" onClick={() => setAsked('open')}>Open bench</Button> : null}
       {bench.may.close ? <Button onClick={() => setAsked('close')}>Close bench</Button> : null}
       <Confirm
