@@ -7,7 +7,7 @@ import { actingOf } from '../http/acting-of.ts';
 import { defineRawRoute, defineRoute, type Route } from '../http/define-route.ts';
 import { caution } from '../services/benches/caution.ts';
 import { certifyRun } from '../services/runs/certify-run.ts';
-import { findRun, runSubject } from '../services/runs/find-run.ts';
+import { findRun, requireFinished, runSubject } from '../services/runs/find-run.ts';
 import { listRuns } from '../services/runs/list-runs.ts';
 import { listTrials } from '../services/runs/list-trials.ts';
 import { newestRecomputation, toRecomputation } from '../services/runs/newest-recomputation.ts';
@@ -64,7 +64,10 @@ const readSensitivity = defineRoute({
   permission: 'content.read', params: runParamsSchema, query: sensitivityQuerySchema, response: sensitivitySchema, limit: 'simulate',
   load: ({ em, params }) => findRun(em, params.id),
   subject: runSubject,
-  handle: ({ em, deps, loaded, query }) => sensitivity(em, deps.jobs, loaded, query.level),
+  handle: ({ em, deps, loaded, query }) => {
+    requireFinished(loaded);
+    return sensitivity(em, deps.jobs, loaded, query.level);
+  },
 });
 
 const recompute = defineRoute({

@@ -1,10 +1,11 @@
-import { solverCreateSchema, solverDetailSchema, solverListQuerySchema, solverListSchema, solverParamsSchema, solverVersionCreateSchema, solverVersionParamsSchema, solverWithdrawSchema } from '../../shared/contracts/solvers.ts';
+import { solverCreateSchema, solverDetailSchema, solverListQuerySchema, solverListSchema, solverParamsSchema, solverStabilityQuerySchema, solverStabilitySchema, solverVersionCreateSchema, solverVersionParamsSchema, solverWithdrawSchema } from '../../shared/contracts/solvers.ts';
 import { defineRoute, type Route } from '../http/define-route.ts';
 import { findGroup } from '../services/groups/find-group.ts';
 import { registerSolverVersion, withdrawSolverVersion } from '../services/solvers/change-version-state.ts';
 import { createSolver, createSolverVersion } from '../services/solvers/create-solver.ts';
-import { findSolver, solverSubject } from '../services/solvers/find-solver.ts';
+import { findSolver, findVersion, solverSubject } from '../services/solvers/find-solver.ts';
 import { listSolvers } from '../services/solvers/list-solvers.ts';
+import { solverStability } from '../services/solvers/solver-stability.ts';
 import { showSolver } from '../services/solvers/show-solver.ts';
 
 const tag = 'solvers';
@@ -69,4 +70,12 @@ const withdrawVersion = defineRoute({
   },
 });
 
-export const solverRoutes: readonly Route[] = [readSolvers, addSolver, readSolver, addVersion, registerVersion, withdrawVersion];
+const readStability = defineRoute({
+  method: 'get', path: '/solvers/:slug/versions/:n/stability', tag, summary: 'How the error of a version grows with the noise, one sheet a finished run',
+  permission: 'content.read', params: solverVersionParamsSchema, query: solverStabilityQuerySchema, response: solverStabilitySchema,
+  load: ({ em, params }) => findSolver(em, params.slug),
+  subject: (solver, { params }) => ({ groupId: solver.group.id, published: findVersion(solver, params.n).registeredAt !== null }),
+  handle: ({ em, deps, loaded, params, query }) => solverStability(em, { versionId: findVersion(loaded, params.n).id, metric: query.metric, now: deps.clock() }),
+});
+
+export const solverRoutes: readonly Route[] = [readSolvers, addSolver, readSolver, addVersion, registerVersion, withdrawVersion, readStability];

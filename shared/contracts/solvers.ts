@@ -56,6 +56,7 @@ export const solverDetailSchema = solverSummarySchema.extend({
 });
 export type SolverDetail = z.infer<typeof solverDetailSchema>;
 
+export const solverStabilityQuerySchema = z.strictObject({ metric: z.string().max(60).default('relative-l2-error') });
 /** GET /solvers/:slug/versions/:n/stability?metric=: one sheet a finished run (phantom). */
 export const solverStabilitySchema = z.object({
   metric: z.string(),

@@ -1,16 +1,15 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import type { Certificate } from '../../../shared/contracts/certificates';
 import type { Actor } from '../../../shared/domain/permissions.ts';
-import { AppError } from '../../../shared/errors.ts';
 import { caution } from '../benches/caution.ts';
 import { verdictWords } from '../review/record-verdict.ts';
-import type { LoadedRun } from './find-run.ts';
+import { requireFinished, type LoadedRun } from './find-run.ts';
 import { showRun } from './show-run.ts';
 
 /** What a printed certificate says. Only a finished run has one. */
 export async function certifyRun(em: EntityManager, input: { readonly run: LoadedRun; readonly actor: Actor | null; readonly now: Date; readonly origin: string }): Promise<Certificate> {
   const { run, now, origin } = input;
-  if (run.state !== 'finished') throw new AppError('conflict', `The run is ${run.state}: only a finished one has a certificate.`);
+  requireFinished(run);
   const bench = run.entry.$.bench.$;
   const version = run.entry.$.solverVersion.$;
   const phantom = run.phantomVersion.$;

@@ -27,3 +27,8 @@ export function runSubject(run: LoadedRun): Subject {
 
 /** The run's own group, as facts for the developer's side. */
 export const runGroup = (run: LoadedRun) => run.entry.$.solverVersion.$.solver.$.group.$;
+
+/** @throws AppError 'conflict' */
+export function requireFinished(run: Pick<LoadedRun, 'state'>): void {
+  if (run.state !== 'finished') throw new AppError('conflict', `The run is ${run.state}: this needs a finished one.`);
+}

@@ -5,6 +5,7 @@ import { addComment } from '../review/comments.ts';
 import { recordVerdict } from '../review/record-verdict.ts';
 import { takeReview } from '../review/take-review.ts';
 import { findRun } from '../runs/find-run.ts';
+import { cancelRun } from '../runs/queue-run.ts';
 import type { DemoPlan, ReviewPlan } from './demo-plan.ts';
 import { actAs, type SeedContext } from './seed-context.ts';
 import { readStockPhantom } from './stock-phantoms.ts';
@@ -35,8 +36,9 @@ async function sayWords(context: SeedContext, plan: DemoPlan, review: ReviewPlan
     entry: { bench: { slug: slugify(bench.title) }, solverVersion: { solver: { slug: slugify(solver.name) } } },
     phantomVersion: { phantom: { slug: slugs.get(review.phantom) } },
   });
-  if (!row || row.state === 'failed' || row.state === 'cancelled') return true;
-  if (row.state !== 'finished') return false;
+  if (!row || row.state === 'cancelled' || (row.state === 'failed' && !review.giveUp)) return true;
+  if (row.state !== 'finished' && row.state !== 'failed') return false;
+  if (review.giveUp && row.state === 'finished') return true;
   const { origin } = context;
   for (const { by, ...comment } of review.comments ?? []) {
     if ((await em.count(CommentEntity, { run: row.id, text: comment.text })) > 0) continue;
@@ -45,6 +47,14 @@ async function sayWords(context: SeedContext, plan: DemoPlan, review: ReviewPlan
   }
   const last = context.orm.em.fork();
   const run = await findRun(last, row.id);
+  if (review.giveUp) {
+    const siblings = await last.find(RunEntity, { entry: row.entry.id, state: { $in: ['queued', 'running'] } });
+    for (const sibling of siblings) {
+      const inner = context.orm.em.fork();
+      await cancelRun(inner, context.jobs, { ...(await actAs(context, inner, review.giveUp.by)), run: await findRun(inner, sibling.id) });
+    }
+    return true;
+  }
   if (run.review !== 'unreviewed') return true;
   if (review.taken) await takeReview(last, { ...(await actAs(context, last, review.taken)), run });
   if (review.verdict) {
