@@ -196,7 +196,8 @@ function Pictures({ runs, first, contenders, level, draw }: { runs: readonly Run
   const far = columns.find((c) => c.contender.id === pair?.far.id);
   return (
     <>
-      <section className="sec" style={{ marginTop: 24 }} aria-label="Images">
+      <section className="sec" style={{ marginTop: 24 }} aria-labelledby="images-title">
+        <h2 className="vh" id="images-title">Images</h2>
         <Matrix phantom={first.phantom} truth={truth} columns={columns} draw={draw} low={low} high={high} limit={limit} radius={first.grid.bodyRadius} unit={first.unit} electrodes={{ ...first.electrodes }} start={far?.difference ? largest(far.difference) : { x: 0, y: 0 }} />
         <div className="bars">
           <ColourBar width={280} labels={[formatNumber(low, 2), `${formatNumber(first.background, 2)} background`, `${formatNumber(high, 2)} ${first.unit}`]} label="Scale of truth and reconstructions" />

@@ -30,7 +30,7 @@ export function BenchActions({ bench }: { bench: BenchDetail }) {
   const running = bench.runsFinished < bench.runsTotal;
   if (!running && !bench.may.open && !bench.may.close && !bench.may.enter) return null;
   return (
-    <div className="sheet pad flex gap-x4 items-center flex-wrap" style={{ marginBottom: 16 }}>
+    <div className={running ? 'sheet pad bact' : 'bact'}>
       {running ? <><StateMark state="running" word={`${bench.runsFinished} of ${plural(bench.runsTotal, 'run')} finished`} /><span className="sm">The ranking counts what is finished.</span></> : null}
       {bench.may.enter ? <ButtonLink to={`${paths.solverNew()}?bench=${bench.slug}`}>Enter a solver</ButtonLink> : null}
       {bench.may.open ? <Button look="primary" onClick={() => setAsked('open')}>Open bench</Button> : null}
