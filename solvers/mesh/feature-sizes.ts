@@ -8,7 +8,7 @@ export interface FeatureSpec {
   readonly curvatureShare: number;
   /** Size over the gap to another interface, to the same one across, or to the body's boundary. */
   readonly gapShare: number;
-  /** Nothing here asks for less. */
+  /** Nothing here asks for less, but for small closed curves: they get at least `smallestParts` edges down to `smallestFloor`. */
   readonly floor: number;
 }
 
@@ -20,6 +20,9 @@ export interface InterfaceFeatures {
    */
   readonly corners: Float64Array;
 }
+
+const smallestParts = 24;
+const smallestFloor = 5e-4;
 
 /** Turn of a polyline, as a cosine, beyond which a vertex counts as a corner (20 degrees). */
 const cornerCosine = 0.94;
@@ -36,6 +39,7 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
   const ny: number[] = [];
   const size: number[] = [];
   const owner: number[] = [];
+  const floors: number[] = [];
   /** Next sample along the same curve, to find crossings; -1 where it lies outside. */
   const nextX: number[] = [];
   const nextY: number[] = [];
@@ -47,7 +51,8 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
     const coarse = curve.points(() => 0.1);
     let perimeter = 0;
     for (let i = 0, n = coarse.length / 2; i < n; i++) perimeter += distance(coarse, i, (i + 1) % n);
-    const samples = curve.points(() => Math.max(0.004, Math.min(0.03, perimeter / 60)));
+    const samples = curve.points(() => Math.max(smallestFloor, Math.min(0.03, perimeter / 60)));
+    floors.push(Math.min(spec.floor, Math.max(smallestFloor, perimeter / smallestParts)));
     const n = samples.length / 2;
     for (let i = 0; i < n; i++) {
       const px = samples[2 * i];
@@ -102,7 +107,7 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
     }
   }
   const sources: SizeSource[] = [];
-  for (let i = 0; i < x.length; i++) sources.push({ x: x[i], y: y[i], size: Math.max(spec.floor, size[i]) });
+  for (let i = 0; i < x.length; i++) sources.push({ x: x[i], y: y[i], size: Math.max(floors[owner[i]], size[i]) });
   return { sources, corners: Float64Array.from(corners) };
 }
 

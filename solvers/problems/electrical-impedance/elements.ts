@@ -7,12 +7,12 @@ export interface TriangleRule {
   readonly weight: readonly number[];
 }
 
-const a1 = 0.445948490915964886318329253883051;
-const b1 = 0.108103018168070227363341492233897;
-const w1 = 0.5 * 0.223381589678011465838158836469987;
-const a2 = 0.0915762135097707434595714634022015;
-const b2 = 0.816847572980458513080857073195597;
-const w2 = 0.5 * 0.109951743655321867495174496863346;
+const a1 = 0.4459484909159649;
+const b1 = 0.10810301816807023;
+const w1 = 0.5 * 0.22338158967801147;
+const a2 = 0.09157621350977074;
+const b2 = 0.8168475729804585;
+const w2 = 0.5 * 0.10995174365532187;
 
 /** Six points, exact to degree 4 (Strang and Fix 1973; Dunavant 1985, table II). */
 export const degreeFour: TriangleRule = {
@@ -98,8 +98,8 @@ const scratch = new Float64Array(3 * entriesPerElement);
 const midpointShapes = shapeTable({ r: [0.5, 0.5, 0], s: [0, 0.5, 0.5], weight: [1 / 6, 1 / 6, 1 / 6] });
 
 /** Gauss-Legendre points on (-1, 1), four points, exact to degree 7 (Abramowitz and Stegun 1964, table 25.4). */
-export const gaussPoints = [-0.861136311594052575224, -0.339981043584856264803, 0.339981043584856264803, 0.861136311594052575224] as const;
-export const gaussWeights = [0.347854845137453857373, 0.652145154862546142627, 0.652145154862546142627, 0.347854845137453857373] as const;
+export const gaussPoints = [-0.8611363115940526, -0.33998104358485626, 0.33998104358485626, 0.8611363115940526] as const;
+export const gaussWeights = [0.34785484513745385, 0.6521451548625461, 0.6521451548625461, 0.34785484513745385] as const;
 
 /** Shape values of the quadratic edge (start, end, middle) at t in (-1, 1). */
 export function edgeShapes(t: number): [number, number, number] {
