@@ -22,7 +22,7 @@ import { listPhantomsQueryOptions } from '../features/phantoms/api/list-phantoms
 import { listRunsQueryOptions } from '../features/runs/api/get-run';
 import { RunsInFlight } from '../features/runs/components/runs-in-flight';
 import { useSession } from '../features/session/api/session';
-import { listSolversQueryOptions } from '../features/solvers/api/list-solvers';
+import { listSolversQueryOptions } from '../features/solvers/api/get-solver';
 import { isApiError } from '../lib/api-client';
 import { formatDate, plural } from '../lib/format';
 import { paths } from '../lib/paths';

@@ -1,4 +1,5 @@
 import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire } from '../../../../shared/contracts/catalogue';
+import { formatNumber } from '../../../lib/format';
 
 export const kinds = ['metrics', 'methods', 'rules', 'noise', 'checks'] as const;
 export type Kind = (typeof kinds)[number];
@@ -32,6 +33,8 @@ export interface Definition {
 }
 
 const better = { lower: 'lower', higher: 'higher', one: 'near 1', zero: 'near 0' } as const;
+const comparisons = { 'at-most': 'at most', 'at-least': 'at least', equal: 'equal to' } as const;
+const subjects = { phantom: 'a simulated phantom', problem: 'the model that inverts', method: 'a prepared method' } as const;
 const none = { title: '', items: [] };
 const capabilityWords = (method: MethodWire): string => (['linear', 'nonlinear', 'direct', 'statistical'] as const).filter((word) => method.capabilities[word]).join(', ');
 
@@ -59,8 +62,8 @@ export function definitionsOf(kind: Kind, catalogue: Catalogue): Definition[] {
       }));
     case 'checks':
       return catalogue.checks.map((c) => ({
-        kind, key: c.key, name: c.name, summary: c.summary, formula: null, fields: [], sources: c.sources, notes: none,
-        facts: [['Applies to', c.appliesTo.join(', ')], ['Bound', c.bound], ['Unit', c.unit || 'none'], ['Key', c.key]],
+        kind, key: c.key, name: c.name, summary: c.summary, formula: c.formula, fields: [], sources: c.sources, notes: none,
+        facts: [['Applies to', subjects[c.appliesTo]], ['Bound', `${comparisons[c.comparison]} ${formatNumber(c.bound, 2)}`], ['Unit', c.unit || 'none'], ['Key', c.key]],
       }));
   }
 }

@@ -1,5 +1,5 @@
 import { useMemo } from 'react';
-import { SmallStability } from '../../../components/charts/small-stability';
+import { SmallStability } from '../../../components/charts/stability-chart';
 import { DiscImage } from '../../../components/images/disc-image';
 import { ButtonLink, Button } from '../../../components/ui/button';
 import { SealedDisc } from '../../../components/ui/notices';
@@ -34,7 +34,7 @@ export function RunLook({ run, noise, onSkip }: { run: WaitingRun; noise: number
       </div>
       <div className="peek-chart">
         <SmallStability
-          label={`Error of ${run.solver.name} against noise`} height={112} noise={noise} levels={ladder} floor={run.modelErrorFloor} trivial={run.trivial} focusId={run.id}
+          label={`Error of ${run.solver.name} against noise`} height={112} noise={noise} levels={ladder} floor={run.modelErrorFloor}
           curves={[{ id: run.id, glyph: run.glyph, name: run.solver.name, points: run.levels.map((row) => ({ level: row.level, median: row.median, low: row.p05, high: row.p95 })) }]}
         />
       </div>
