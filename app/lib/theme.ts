@@ -43,7 +43,12 @@ export function setThemeChoice(choice: ThemeChoice): void {
   applyTheme();
 }
 
+/** Follows the system where it decides. Paper always gets the light sheet. */
 export function watchSystemTheme(): void {
+  window.addEventListener('beforeprint', () => {
+    document.documentElement.dataset.theme = 'light';
+  });
+  window.addEventListener('afterprint', applyTheme);
   if (typeof window.matchMedia === 'function') window.matchMedia('(prefers-color-scheme: dark)').addEventListener('change', applyTheme);
 }
 

@@ -117,6 +117,7 @@ function FindAMethod({ bench, open, onBench }: { bench: BenchSummary; open: read
         <div className="sh" style={{ marginBottom: 4 }}><h2 style={{ fontSize: 18 }}>Read at {formatPercent(noise)}</h2><p>{care.by}</p></div>
         {ranking.isError ? <ErrorPanel error={ranking.error} what="The reading" onRetry={() => void ranking.refetch()} /> : null}
         {ranking.data && rows.length ? <AnswerList rows={rows} ranking={ranking.data} care={care.key} noise={settled} ladderEnd={ladderEnd} /> : null}
+        {ranking.data?.belowFloor ? <p className="sm"><span className="kd" />Below the model-error floor no ranks are given: the gap between the two meshes is larger than this noise.</p> : null}
         {ranking.data && rows.length === 0 ? (
           <p className="sm" style={{ padding: '12px 0' }}>{ranking.data.rows.length === 0 ? 'No run of this bench has finished yet.' : 'No method here meets this at your noise. Allow more time, or lower the noise by averaging frames.'}</p>
         ) : null}

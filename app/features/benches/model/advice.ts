@@ -46,8 +46,7 @@ export function marginWords(row: Pick<RankingRow, 'breakdown' | 'breakdownNote'>
 
 /** How sure the reading is: who else the test cannot tell from it. */
 export function tieWords(row: RankingRow, ranking: Ranking): string {
-  if (ranking.belowFloor) return 'Below the model-error floor no ranks are given.';
-  if (row.tieGroup === null) return '';
+  if (ranking.belowFloor || row.tieGroup === null) return '';
   const others = ranking.rows.filter((r) => r.tieGroup === row.tieGroup && r.solver.slug !== row.solver.slug).length;
   if (others === 0) return '';
   return `Cannot be separated from ${others === 1 ? 'one other' : `${others} others`}.`;
