@@ -145,7 +145,7 @@ const method: Method<ParametersOf<typeof specs>> = {
         step(at, x, residual, alpha * scale, candidate);
         iterations++;
         // A step that more than doubles the residual is halved: the linearisation does not carry that far.
-        let trial = Float64Array.from(candidate);
+        const trial = Float64Array.from(candidate);
         let model = problem.evaluate(trial);
         forwardSolves++;
         let trialSize = distance(data, model);
