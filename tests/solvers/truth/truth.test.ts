@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { truthSchema, type TruthDefinition } from '../../../shared/domain/phantom-definition';
 import { createEvaluationGrid } from '../../../solvers/core/grid';
+import { requireInBody } from '../../../solvers/truth/check-in-body';
 import { createTruthField } from '../../../solvers/truth/truth-field';
 import { truthOnGrid } from '../../../solvers/truth/truth-on-grid';
 
@@ -159,5 +160,20 @@ describe('expressions and arrays as ground truth', () => {
     // The step crosses the pixels 0 < x < 1/32 at 0.32 of their width; 16 samples resolve it to 1/32.
     const row = grid.inside.findIndex((index) => index % 64 === 32 && Math.floor(index / 64) === 32);
     expect(Math.abs(image[row] - 1.68)).toBeLessThan(1 / 32);
+  });
+});
+
+describe('shapes against the body', () => {
+  const check = (shape: Record<string, unknown>) => () => {
+    const definition = shapes(shape);
+    requireInBody(definition, 1, () => createTruthField(definition));
+  };
+  it('refuse a shape outside the body or over all of it, and accept one across the boundary', () => {
+    expect(check(ellipse({ x: 1.5 }))).toThrow(/Shape 1 \(e\) lies outside the body of radius 1 m/);
+    expect(check(ellipse({ x: 0, y: 0, semiAxisA: 2, semiAxisB: 2 }))).toThrow(/covers the body/);
+    expect(check({ kind: 'annulus', label: 'a', value: 2, x: 0, y: 0, innerRadius: 1.2, outerRadius: 2 })).toThrow(/outside/);
+    expect(check({ kind: 'bump', label: 'b', value: 2, x: 2, y: 0, semiAxisA: 0.5, semiAxisB: 0.5 })).toThrow(/outside/);
+    expect(check(ellipse({ x: 0.9 }))).not.toThrow();
+    expect(check({ kind: 'annulus', label: 'a', value: 2, x: 0, y: 0, innerRadius: 0.9, outerRadius: 2 })).not.toThrow();
   });
 });
