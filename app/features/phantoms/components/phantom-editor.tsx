@@ -90,7 +90,7 @@ export function PhantomEditor(props: PhantomEditorProps) {
       </div>
       {save.isError ? <div style={{ marginBottom: 14 }}><ErrorPanel error={save.error} what={stored ? 'The draft is stored, but' : 'Not saved'} /></div> : null}
       <div className="pn-cols">
-        <form onSubmit={(e) => e.preventDefault()} onBlur={(e) => editor.touch(e.target.id)} onInput={(e) => editor.touch((e.target as HTMLElement).id)}>
+        <form onSubmit={(e) => e.preventDefault()} onBlur={(e) => editor.touch(e.target.id)} onChange={(e) => editor.touch((e.target as HTMLElement).id)}>
           <div {...at(1)}><section style={{ paddingBottom: 26 }}><FamilyChoice /></section></div>
           <div {...at(2)}><TruthSection {...part} truth={editor.truth} /></div>
           <div {...at(3)}><GeometrySection {...part} /></div>

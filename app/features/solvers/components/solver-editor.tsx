@@ -102,7 +102,7 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
       </div>
       {submit.isError ? <div style={{ marginBottom: 14 }}><ErrorPanel error={submit.error} what={stored ? 'Registered, but not entered' : 'Not submitted'} /></div> : null}
       <div className="sn-cols">
-        <form className="sn-form" onSubmit={(e) => e.preventDefault()} onBlur={(e) => editor.touch(e.target.id)} onInput={(e) => editor.touch((e.target as HTMLElement).id)}>
+        <form className="sn-form" onSubmit={(e) => e.preventDefault()} onBlur={(e) => editor.touch(e.target.id)} onChange={(e) => editor.touch((e.target as HTMLElement).id)}>
           <section {...at(1)}>
             <div><h2>Bench</h2><p>The configuration runs unchanged on every phantom of it.</p></div>
             <div className="g2">
