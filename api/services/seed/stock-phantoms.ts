@@ -14,8 +14,8 @@ export type StockPhantom = z.infer<typeof stockSchema> & {
 
 /** `phantoms/` of the checkout, from the sources or from the built server. */
 export function stockFolder(): string {
-  const candidates = ['../../../phantoms', '../../phantoms'].map((relative) => path.join(import.meta.dirname, relative));
-  return candidates.find((folder) => existsSync(folder)) ?? candidates[0]!;
+  const candidates = ['../../phantoms', '../../../phantoms'].map((relative) => path.join(import.meta.dirname, relative));
+  return candidates.find((folder) => existsSync(folder)) ?? candidates[1]!;
 }
 
 /** Reads `phantoms/<folder>`: phantom.json, description.md and, for an array, values.png. */
