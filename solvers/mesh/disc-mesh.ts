@@ -98,7 +98,6 @@ export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
     cornerGrading: Math.min(0.7, (spec.cornerGrading ?? grading) * Math.sqrt(crowd)),
     cornerMinimum: (spec.cornerMinimum ?? 0.002) * crowd,
   });
-  // A little less than the size asked for, since the curves give spacings of at most what they are asked.
   const polylines = interfaces.map((curve) => curve.points((x, y) => field.at(x, y)));
   const fixed = withCrossings(ends, polylines, field);
   const angles = boundaryAngles(fixed, field);
