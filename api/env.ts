@@ -122,7 +122,7 @@ export function readEnv(source: Record<string, string | undefined>): Env {
     smtpUrl: e.SMTP_URL ?? null,
     mailFrom: e.MAIL_FROM,
     administrators: e.ADMINISTRATORS,
-    workers: e.WORKERS ?? Math.max(1, availableParallelism() - 1),
+    workers: e.WORKERS ?? availableParallelism(),
     logLevel: e.LOG_LEVEL,
     rateLimit: e.RATE_LIMIT,
     seedDemo: e.SEED_DEMO === undefined ? !production : e.SEED_DEMO === '1',
