@@ -1,3 +1,7 @@
+import type { Graph } from './graph';
+import { LeafOrderer } from './minimum-degree';
+import { SeparatorFinder } from './vertex-separator';
+
 /**
  * Fill-reducing ordering of a symmetric sparse matrix by nested dissection (George 1973): a small vertex separator is
  * numbered last, the two sides are ordered the same way, leaves by minimum degree with their halo (Tinney and Walker 1967).
@@ -5,43 +9,11 @@
  * a breadth-first search. The separator is a minimum vertex cover of the cut edges (Koenig's theorem).
  */
 
-/** Undirected graph without loops: the neighbours of `i` are `neighbours[start[i] .. start[i + 1])`. */
-export interface Graph {
-  readonly n: number;
-  readonly start: Int32Array;
-  readonly neighbours: Int32Array;
-}
-
 /** Nodes in a leaf: below this, minimum degree fills less than a further cut. */
 const leafSize = 96;
 const sampleSize = 511;
 const halfRoot = 0.7071067811865476;
 const directions = [1, 0, 0, 1, halfRoot, halfRoot, halfRoot, -halfRoot];
-
-/** Graph of a symmetric pattern given by its lower triangle, column by column. */
-export function graphOfPattern(n: number, colStart: Int32Array, rows: Int32Array): Graph {
-  const start = new Int32Array(n + 1);
-  for (let j = 0; j < n; j++)
-    for (let k = colStart[j]; k < colStart[j + 1]; k++) {
-      const i = rows[k];
-      if (i !== j) {
-        start[i + 1]++;
-        start[j + 1]++;
-      }
-    }
-  for (let i = 0; i < n; i++) start[i + 1] += start[i];
-  const next = start.slice(0, n);
-  const neighbours = new Int32Array(start[n]);
-  for (let j = 0; j < n; j++)
-    for (let k = colStart[j]; k < colStart[j + 1]; k++) {
-      const i = rows[k];
-      if (i !== j) {
-        neighbours[next[i]++] = j;
-        neighbours[next[j]++] = i;
-      }
-    }
-  return { n, start, neighbours };
-}
 
 /**
  * Elimination order of the nodes of `graph`.
@@ -209,192 +181,4 @@ function splitByLevels(
       for (let k = 0; k < tail; k++) side[queue[k]] = k < cut ? 0 : 1;
     }
   }
-}
-
-/** Turns the cut edges of a two-sided piece into a minimum vertex separator (side 2). */
-class SeparatorFinder {
-  private readonly match: Int32Array;
-  private readonly visited: Int32Array;
-  private readonly edgeAt: Int32Array;
-  private stamp = 0;
-  constructor(
-    private readonly graph: Graph,
-    private readonly piece: Int32Array,
-    private readonly side: Uint8Array,
-  ) {
-    this.match = new Int32Array(graph.n).fill(-1);
-    this.visited = new Int32Array(graph.n);
-    this.edgeAt = new Int32Array(graph.n);
-  }
-
-  find(nodes: Int32Array, low: number, high: number, mark: number): number {
-    const { graph, piece, side, match } = this;
-    const { start, neighbours } = graph;
-    const leftBoundary: number[] = [];
-    const rightBoundary: number[] = [];
-    for (let k = low; k < high; k++) {
-      const node = nodes[k];
-      for (let e = start[node]; e < start[node + 1]; e++) {
-        const other = neighbours[e];
-        if (piece[other] === mark && side[other] !== side[node]) {
-          (side[node] === 0 ? leftBoundary : rightBoundary).push(node);
-          break;
-        }
-      }
-    }
-    for (const node of leftBoundary)
-      for (let e = start[node]; e < start[node + 1]; e++) {
-        const other = neighbours[e];
-        if (piece[other] === mark && side[other] === 1 && match[other] < 0) {
-          match[other] = node;
-          match[node] = other;
-          break;
-        }
-      }
-    for (const node of leftBoundary) if (match[node] < 0) this.augment(node, mark);
-    // Koenig: left nodes not reached, and right nodes reached, by alternating paths from unmatched left nodes.
-    const { visited } = this;
-    const stamp = ++this.stamp;
-    const stack: number[] = [];
-    for (const node of leftBoundary)
-      if (match[node] < 0) {
-        visited[node] = stamp;
-        stack.push(node);
-      }
-    while (stack.length > 0) {
-      const node = stack.pop() as number;
-      for (let e = start[node]; e < start[node + 1]; e++) {
-        const other = neighbours[e];
-        if (piece[other] !== mark || side[other] !== 1 || visited[other] === stamp) continue;
-        visited[other] = stamp;
-        const partner = match[other];
-        if (partner >= 0 && visited[partner] !== stamp) {
-          visited[partner] = stamp;
-          stack.push(partner);
-        }
-      }
-    }
-    let count = 0;
-    for (const node of leftBoundary) {
-      match[node] = -1;
-      if (visited[node] !== stamp) {
-        side[node] = 2;
-        count++;
-      }
-    }
-    for (const node of rightBoundary) {
-      match[node] = -1;
-      if (visited[node] === stamp) {
-        side[node] = 2;
-        count++;
-      }
-    }
-    return count;
-  }
-
-  /** One augmenting path from an unmatched left node, depth first without recursion. */
-  private augment(root: number, mark: number): void {
-    const { graph, piece, side, match, visited, edgeAt } = this;
-    const { start, neighbours } = graph;
-    const stamp = ++this.stamp;
-    const path: number[] = [root];
-    edgeAt[root] = start[root];
-    visited[root] = stamp;
-    while (path.length > 0) {
-      const node = path[path.length - 1];
-      if (edgeAt[node] >= start[node + 1]) {
-        path.pop();
-        continue;
-      }
-      const other = neighbours[edgeAt[node]++];
-      if (piece[other] !== mark || side[other] !== 1 || visited[other] === stamp) continue;
-      visited[other] = stamp;
-      const partner = match[other];
-      if (partner < 0) {
-        let free = other;
-        for (let k = path.length - 1; k >= 0; k--) {
-          const left = path[k];
-          const previous = match[left];
-          match[left] = free;
-          match[free] = left;
-          free = previous;
-        }
-        return;
-      }
-      if (visited[partner] !== stamp) {
-        visited[partner] = stamp;
-        edgeAt[partner] = start[partner];
-        path.push(partner);
-      }
-    }
-  }
-}
-
-/** Minimum degree on a leaf; the halo (numbered later) counts in the degrees but is never eliminated. */
-class LeafOrderer {
-  private readonly local: Int32Array;
-  constructor(
-    private readonly graph: Graph,
-    private readonly piece: Int32Array,
-  ) {
-    this.local = new Int32Array(graph.n).fill(-1);
-  }
-
-  order(nodes: Int32Array, low: number, high: number, mark: number): void {
-    const { graph, piece, local } = this;
-    const { start, neighbours } = graph;
-    const inner = high - low;
-    if (inner <= 1) return;
-    const members: number[] = [];
-    for (let k = low; k < high; k++) {
-      local[nodes[k]] = k - low;
-      members.push(nodes[k]);
-    }
-    for (let k = low; k < high; k++)
-      for (let e = start[nodes[k]]; e < start[nodes[k] + 1]; e++) {
-        const other = neighbours[e];
-        if (piece[other] !== mark && local[other] < 0) {
-          local[other] = members.length;
-          members.push(other);
-        }
-      }
-    const words = (members.length + 31) >> 5;
-    const rows = new Int32Array(words * members.length);
-    for (let k = 0; k < inner; k++)
-      for (let e = start[members[k]]; e < start[members[k] + 1]; e++) {
-        const other = local[neighbours[e]];
-        rows[k * words + (other >> 5)] |= 1 << (other & 31);
-        rows[other * words + (k >> 5)] |= 1 << (k & 31);
-      }
-    const degree = new Int32Array(inner);
-    const alive = new Uint8Array(inner).fill(1);
-    for (let k = 0; k < inner; k++) degree[k] = countBits(rows, k * words, words);
-    for (let step = 0; step < inner; step++) {
-      let pivot = -1;
-      for (let k = 0; k < inner; k++) if (alive[k] && (pivot < 0 || degree[k] < degree[pivot])) pivot = k;
-      alive[pivot] = 0;
-      nodes[low + step] = members[pivot];
-      const from = pivot * words;
-      for (let k = 0; k < inner; k++) {
-        if (!alive[k] || (rows[from + (k >> 5)] & (1 << (k & 31))) === 0) continue;
-        const at = k * words;
-        for (let w = 0; w < words; w++) rows[at + w] |= rows[from + w];
-        rows[at + (k >> 5)] &= ~(1 << (k & 31));
-        rows[at + (pivot >> 5)] &= ~(1 << (pivot & 31));
-        degree[k] = countBits(rows, at, words);
-      }
-    }
-    for (let k = 0; k < members.length; k++) local[members[k]] = -1;
-  }
-}
-
-function countBits(words: Int32Array, from: number, count: number): number {
-  let total = 0;
-  for (let k = from; k < from + count; k++) {
-    let v = words[k];
-    v -= (v >>> 1) & 0x55555555;
-    v = (v & 0x33333333) + ((v >>> 2) & 0x33333333);
-    total += Math.imul((v + (v >>> 4)) & 0x0f0f0f0f, 0x01010101) >>> 24;
-  }
-  return total;
 }

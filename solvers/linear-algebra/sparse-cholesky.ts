@@ -1,5 +1,6 @@
 import { columnCounts, eliminationTree, postorder, transposedStrict, type LowerPattern } from './elimination';
-import { graphOfPattern, nestedDissection } from './ordering';
+import { graphOfPattern } from './graph';
+import { nestedDissection } from './ordering';
 import { factorDiagonalRows, subtractProduct } from './panel-kernels';
 import { backwardBlock, blockWidth, forwardBlock } from './panel-solve';
 

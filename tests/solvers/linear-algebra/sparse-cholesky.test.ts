@@ -2,7 +2,8 @@ import fc from 'fast-check';
 import { lup, lusolve, matrix, sparse, type Matrix as MathSparse } from 'mathjs';
 import { CholeskyDecomposition, Matrix } from 'ml-matrix';
 import { describe, expect, it } from 'vitest';
-import { nestedDissection, graphOfPattern } from '../../../solvers/linear-algebra/ordering';
+import { graphOfPattern } from '../../../solvers/linear-algebra/graph';
+import { nestedDissection } from '../../../solvers/linear-algebra/ordering';
 import { analyse, factorise } from '../../../solvers/linear-algebra/sparse-cholesky';
 import { laplacianOnGrid, lowerTriangle, randomPositiveDefinite, uniform } from '../../support/sparse-matrices';
 
