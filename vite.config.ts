@@ -8,7 +8,8 @@ const api = `http://127.0.0.1:${process.env.API_PORT ?? process.env.PORT ?? '300
 export default defineConfig({
   root: '.',
   plugins: [react(), tailwindcss()],
-  build: { outDir: 'dist/client', emptyOutDir: true, sourcemap: true, target: 'es2022' },
+  // No data: addresses: the content policy allows files of this site only.
+  build: { outDir: 'dist/client', emptyOutDir: true, sourcemap: true, target: 'es2022', assetsInlineLimit: 0 },
   worker: { format: 'es' },
   server: {
     proxy: {

@@ -1,4 +1,5 @@
 import { createBrowserRouter, type RouteObject } from 'react-router-dom';
+import NotFound from './routes/not-found';
 import { RootError } from './routes/root-error';
 import { Root } from './routes/root';
 
@@ -39,7 +40,7 @@ export const routes: RouteObject[] = [
       page('reference/:kind/:key', () => import('./routes/reference-entry')),
       page('verification', () => import('./routes/verification')),
       page('api', () => import('./routes/api-reference')),
-      page('*', () => import('./routes/not-found')),
+      { path: '*', Component: NotFound },
     ].map((route) => ({ ErrorBoundary: RootError, ...route })),
   },
 ];

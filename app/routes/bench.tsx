@@ -130,7 +130,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
               </div>
             </section>
           </div>
-          {ranking.data ? <SeenAt bench={bench} ranking={ranking.data} noise={noise} pictures={pictures} /> : null}
+          {ranking.data ? <SeenAt bench={bench} ranking={ranking.data} noise={settled} pictures={pictures} /> : null}
           {ranking.data ? <WhoBeatsWhom ranking={ranking.data} noise={noise} floor={bench.modelErrorFloor} /> : null}
         </>
       )}

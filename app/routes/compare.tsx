@@ -27,6 +27,7 @@ import { getRunImageQueryOptions, listTrialsQueryOptions } from '../features/run
 import { formatError, formatNumber, formatPercent, formatSigned, numberWord, plural } from '../lib/format';
 import { paths } from '../lib/paths';
 import { useNarrow } from '../lib/use-media';
+import { useSettled } from '../lib/use-settled';
 import '../styles/pages/compare.css';
 
 export default function Compare() {
@@ -117,7 +118,7 @@ function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDet
   const { noise } = useNoise();
   const narrow = useNarrow();
   const [drawText, setDraw] = useParam('draw');
-  const level = nearestLevel(ruleScale(first.ladder), noise).index;
+  const level = nearestLevel(ruleScale(first.ladder), useSettled(noise)).index;
   const levelNoise = first.ladder[level] ?? noise;
   const trials = useQueries({ queries: runs.map((r) => listTrialsQueryOptions(r.id, level)) });
   const short = shortNames(runs.map((r) => r.solver.name));

@@ -1,4 +1,4 @@
-import { createContext, useCallback, useContext, useEffect, useMemo, useRef, useState, type ReactNode } from 'react';
+import { createContext, useCallback, useContext, useEffect, useRef, useState, type ReactNode } from 'react';
 import { useSearchParams } from 'react-router-dom';
 
 export const defaultNoise = 0.01;
@@ -15,8 +15,17 @@ export const noiseParam = (noise: number): string => String(Number(noise.toPreci
 interface NoiseState {
   noise: number;
   setNoise: (noise: number) => void;
+  /** Changes search parameters in place, without a history entry. */
+  update: (change: (params: URLSearchParams) => void) => void;
 }
 const NoiseContext = createContext<NoiseState | null>(null);
+
+/** A value ahead of the address, and the addresses it may be ahead of: the one it started from and those written since. */
+interface Held {
+  noise: number;
+  over: readonly number[];
+}
+const rounded = (noise: number): number => Number(noiseParam(noise));
 
 /** Browsers limit how often the address may change; a drag is written once it rests this long. */
 const writeDelayMs = 150;
@@ -28,54 +37,58 @@ const writeDelayMs = 150;
 export function NoiseProvider({ children }: { children: ReactNode }) {
   const [params, setParams] = useSearchParams();
   const fromAddress = parseNoise(params.get('noise'));
-  const [held, setHeld] = useState<{ noise: number; over: number } | null>(null);
+  const [held, setHeld] = useState<Held | null>(null);
   const timer = useRef(0);
   useEffect(() => () => window.clearTimeout(timer.current), []);
-  // A held value ends when the address has moved on from what it was laid over.
-  const noise = held && held.over === fromAddress ? held.noise : fromAddress;
-  const setNoise = useCallback(
-    (next: number) => {
-      setHeld({ noise: next, over: fromAddress });
-      window.clearTimeout(timer.current);
-      timer.current = window.setTimeout(() => {
-        setParams(
-          (old) => {
-            const copy = new URLSearchParams(old);
-            copy.set('noise', noiseParam(next));
-            return copy;
-          },
-          { replace: true, preventScrollReset: true },
-        );
-      }, writeDelayMs);
-    },
-    [fromAddress, setParams],
-  );
-  const value = useMemo(() => ({ noise, setNoise }), [noise, setNoise]);
+  // The address on screen lags behind what was asked for (navigation is a transition), so changes are made to the newest
+  // one: two quick changes would otherwise write over each other.
+  const newest = useRef({ params, write: setParams });
+  useEffect(() => {
+    newest.current = { params, write: setParams };
+  }, [params, setParams]);
+  const update = useCallback((change: (params: URLSearchParams) => void) => {
+    const next = new URLSearchParams(newest.current.params);
+    change(next);
+    newest.current.params = next;
+    newest.current.write(next, { replace: true, preventScrollReset: true });
+  }, []);
+  // A held value ends when the address has caught up with it, or moved to a value that did not come from here.
+  if (held && (fromAddress === rounded(held.noise) || !held.over.includes(fromAddress))) setHeld(null);
+  const noise = held?.noise ?? fromAddress;
+  const setNoise = (next: number) => {
+    setHeld((old) => ({ noise: next, over: old?.over ?? [fromAddress] }));
+    window.clearTimeout(timer.current);
+    timer.current = window.setTimeout(() => {
+      setHeld((old) => old && { ...old, over: [...old.over, rounded(next)] });
+      update((copy) => copy.set('noise', noiseParam(next)));
+    }, writeDelayMs);
+  };
+  const value = { noise, setNoise, update };
   return <NoiseContext.Provider value={value}>{children}</NoiseContext.Provider>;
 }
 
-/** Relative noise (fraction) at the rule's cursor, and its setter. */
-export function useNoise(): NoiseState {
+function useNoiseContext(): NoiseState {
   const state = useContext(NoiseContext);
-  if (!state) throw new Error('useNoise needs a NoiseProvider above it.');
+  if (!state) throw new Error('The noise and the search parameters need a NoiseProvider above them.');
   return state;
+}
+
+/** Relative noise (fraction) at the rule's cursor, and its setter. */
+export function useNoise(): Pick<NoiseState, 'noise' | 'setNoise'> {
+  return useNoiseContext();
 }
 
 /** A search parameter with a fallback, written without a new history entry. */
 export function useParam(key: string, fallback = ''): [string, (value: string | null) => void] {
-  const [params, setParams] = useSearchParams();
+  const [params] = useSearchParams();
+  const { update } = useNoiseContext();
   const set = useCallback(
     (value: string | null) =>
-      setParams(
-        (old) => {
-          const copy = new URLSearchParams(old);
-          if (value === null || value === '' || value === fallback) copy.delete(key);
-          else copy.set(key, value);
-          return copy;
-        },
-        { replace: true, preventScrollReset: true },
-      ),
-    [key, fallback, setParams],
+      update((copy) => {
+        if (value === null || value === '' || value === fallback) copy.delete(key);
+        else copy.set(key, value);
+      }),
+    [key, fallback, update],
   );
   return [params.get(key) ?? fallback, set];
 }

@@ -4,12 +4,17 @@ import { createMemoryRouter, RouterProvider } from 'react-router-dom';
 import { afterEach, describe, expect, it } from 'vitest';
 import { NoiseRule, type NoiseRuleProps } from '../../../app/components/noise-rule/noise-rule';
 import { fromShare, nearestLevel, ruleScale, snap, stepLevel, toShare } from '../../../app/components/noise-rule/scale';
-import { NoiseProvider, parseNoise, useNoise } from '../../../app/components/noise-rule/use-noise';
+import { NoiseProvider, parseNoise, useNoise, useParam } from '../../../app/components/noise-rule/use-noise';
 
 afterEach(cleanup);
 
 function Reader() {
   return <output data-testid="noise">{useNoise().noise}</output>;
+}
+function Two() {
+  const [, setFocus] = useParam('focus');
+  const [, setMetric] = useParam('metric');
+  return <button type="button" onClick={() => { setFocus('tv'); setMetric('sup-error'); }}>both</button>;
 }
 function show(address: string, props: NoiseRuleProps = {}) {
   const router = createMemoryRouter([{ path: '/', element: <NoiseProvider><NoiseRule {...props} /><Reader /></NoiseProvider> }], { initialEntries: [address] });
@@ -62,6 +67,13 @@ describe('noise rule', () => {
   it('names the ground below the model-error floor', () => {
     show('/?noise=0.0002', { floor: 5e-4 });
     expect(screen.getByRole('slider').getAttribute('aria-valuetext')).toMatch(/below the model-error floor$/);
+  });
+
+  it('loses no parameter when two change at once', async () => {
+    const router = createMemoryRouter([{ path: '/', element: <NoiseProvider><Two /></NoiseProvider> }], { initialEntries: ['/?noise=0.02'] });
+    render(<RouterProvider router={router} />);
+    await userEvent.setup().click(screen.getByRole('button'));
+    expect(router.state.location.search).toBe('?noise=0.02&focus=tv&metric=sup-error');
   });
 
   it('follows the address when it changes from outside', async () => {
