@@ -1,4 +1,4 @@
-import { commentCreateSchema, commentListSchema, reviewCountSchema, reviewQueueSchema, runDetailSchema, runParamsSchema, verdictCreateSchema } from '../../shared/contracts/runs.ts';
+import { commentCreateSchema, commentListSchema, commentSchema, reviewCountSchema, reviewQueueSchema, runDetailSchema, runParamsSchema, verdictCreateSchema } from '../../shared/contracts/runs.ts';
 import type { EntityManager } from '@mikro-orm/sqlite';
 import type { Actor } from '../../shared/domain/permissions.ts';
 import type { Dependencies } from '../dependencies.ts';
@@ -75,13 +75,13 @@ const readComments = defineRoute({
 
 const comment = defineRoute({
   method: 'post', path: '/runs/:id/comments', tag, summary: 'Add a note, or ask a question',
-  permission: 'run.comment', params: runParamsSchema, body: commentCreateSchema, response: commentListSchema, status: 201,
+  permission: 'run.comment', params: runParamsSchema, body: commentCreateSchema, response: commentSchema, status: 201,
   load: ({ em, params }) => findRun(em, params.id),
   subject: runSubject,
   handle: async (context) => {
-    const items = await addComment(context.em, { ...actingOf(context), run: context.loaded, comment: context.body, origin: context.origin });
+    const added = await addComment(context.em, { ...actingOf(context), run: context.loaded, comment: context.body, origin: context.origin });
     context.deps.mailer.kick();
-    return { items };
+    return added;
   },
 });
 

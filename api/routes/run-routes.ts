@@ -3,6 +3,7 @@ import {
   recomputationSchema, replaySchema, runDetailSchema, runImageQuerySchema, runImageSchema, runListQuerySchema, runListSchema, runParamsSchema, sensitivityQuerySchema,
   sensitivitySchema, trialListSchema, trialQuerySchema,
 } from '../../shared/contracts/runs.ts';
+import { RecomputationEntity } from '../entities/run.ts';
 import { actingOf } from '../http/acting-of.ts';
 import { defineRawRoute, defineRoute, type Route } from '../http/define-route.ts';
 import { caution } from '../services/benches/caution.ts';
@@ -77,17 +78,17 @@ const recompute = defineRoute({
   subject: runSubject,
   handle: async (context) => {
     const { em, deps, loaded } = context;
-    await requestRecomputation(em, deps.jobs, { ...actingOf(context), run: loaded });
-    return toRecomputation(await newestRecomputation(em.fork(), loaded.id));
+    const { id } = await requestRecomputation(em, deps.jobs, { ...actingOf(context), run: loaded });
+    return toRecomputation(await em.fork().findOneOrFail(RecomputationEntity, { id }, { populate: ['requestedBy'] }));
   },
 });
 
 const readRecomputation = defineRoute({
-  method: 'get', path: '/runs/:id/recomputations', tag, summary: 'The newest recomputation',
-  permission: 'content.read', params: runParamsSchema, response: recomputationSchema,
+  method: 'get', path: '/runs/:id/recomputations', tag, summary: 'The newest recomputation, null while nobody asked for one',
+  permission: 'content.read', params: runParamsSchema, response: recomputationSchema.nullable(),
   load: ({ em, params }) => findRun(em, params.id),
   subject: runSubject,
-  handle: async ({ em, loaded }) => toRecomputation(await newestRecomputation(em, loaded.id)),
+  handle: ({ em, loaded }) => newestRecomputation(em, loaded.id),
 });
 
 const readCertificate = defineRoute({

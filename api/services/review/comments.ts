@@ -29,13 +29,13 @@ export async function listComments(em: EntityManager, run: Pick<LoadedRun, 'id'>
 export async function addComment(
   em: EntityManager,
   input: Acting & { readonly run: LoadedRun; readonly comment: z.output<typeof commentCreateSchema>; readonly origin: string },
-): Promise<CommentWire[]> {
+): Promise<CommentWire> {
   const { actor, now, run, comment: given, origin } = input;
   const group = runGroup(run);
   const members = new Set((await em.find(MembershipEntity, { group: group.id })).map((membership) => membership.user.id));
   const open = await em.find(CommentEntity, { run: run.id, question: true, answered: false });
   for (const question of open) if (members.has(question.by.id) !== members.has(actor.id)) question.answered = true;
-  em.create(CommentEntity, {
+  const row = em.create(CommentEntity, {
     run: em.getReference(RunEntity, run.id),
     by: em.getReference(UserEntity, actor.id),
     text: given.text,
@@ -59,7 +59,7 @@ export async function addComment(
     now,
   );
   await em.flush();
-  return listComments(em, run);
+  return { id: row.id, by: { handle: actor.handle }, at: now.toISOString(), text: row.text, anchor: row.anchor, question: row.question, answered: false };
 }
 
 /** Questions nobody of the other side has answered, by run id. */

@@ -1,15 +1,13 @@
 import type { EntityManager, Loaded } from '@mikro-orm/sqlite';
 import type { Recomputation as RecomputationWire } from '../../../shared/contracts/runs';
-import { AppError } from '../../../shared/errors.ts';
 import { RecomputationEntity, type Recomputation } from '../../entities/run.ts';
 
 type Shown = Loaded<Recomputation, 'requestedBy'>;
 
-/** @throws AppError 'not-found' while nobody asked for one */
-export async function newestRecomputation(em: EntityManager, runId: string): Promise<Shown> {
+/** Null while nobody asked for one. */
+export async function newestRecomputation(em: EntityManager, runId: string): Promise<RecomputationWire | null> {
   const newest = await em.findOne(RecomputationEntity, { run: runId }, { populate: ['requestedBy'], orderBy: { createdAt: 'desc', id: 'desc' } });
-  if (!newest) throw new AppError('not-found', `${runId} was not recomputed yet.`);
-  return newest;
+  return newest && toRecomputation(newest);
 }
 
 export function toRecomputation(row: Shown): RecomputationWire {
