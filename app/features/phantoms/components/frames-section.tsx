@@ -61,7 +61,7 @@ export function FramesSection({ form, change, issueAt }: FormPart) {
                 <b className="mono">{form.frames.fileName || 'stored frames'}</b>
                 <p className="sm">
                   {form.frames.frames} frames of {form.frames.valuesPerFrame} values{form.frames.fileSize ? `, ${formatBytes(form.frames.fileSize)}` : ''}. Hash {formatHash(form.frames.sha256)}
-                  {form.frames.largestChange > 0 ? `. Largest change ${formatQuantity(form.frames.largestChange, 'V', 2)}` : ''}
+                  {form.frames.largestChange > 0 ? `. Norm of the largest change ${formatQuantity(form.frames.largestChange, 'V', 2)}` : ''}
                 </p>
                 <Button onClick={() => change({ frames: null })}>Remove the frames</Button>
               </div>
