@@ -5,7 +5,7 @@ import { BenchEntity } from '../../entities/bench.ts';
 import { GroupEntity, MembershipEntity, type Group } from '../../entities/group.ts';
 import { PhantomEntity } from '../../entities/phantom.ts';
 import { SolverEntity } from '../../entities/solver.ts';
-import { UserEntity, type User } from '../../entities/user.ts';
+import { UserEntity } from '../../entities/user.ts';
 import type { Jobs } from '../../jobs/jobs.ts';
 import { demoAccounts, type StandInAccount } from '../../sign-in/demo-accounts.ts';
 import { ensureDemoAccounts } from '../accounts/ensure-demo-accounts.ts';
