@@ -28,7 +28,7 @@ export const simulationSchema = z.object({
   truth: encodedArraySchema.nullable(), truthRange: z.tuple([z.number(), z.number()]).nullable(),
   background: z.number(), unit: z.string(),
   targets: z.array(targetSchema).nullable(),
-  /** Gap between the simulating and the inverting model on the same truth, relative to the noise reference. */
+  /** Gap between the simulating and the inverting model on the background, relative to the noise reference. */
   modelErrorFloor: z.number(),
   simulation: z.object({ unknowns: z.int(), elements: z.int(), kind: z.string() }),
   inversion: z.object({ cells: z.int(), nodes: z.int() }),

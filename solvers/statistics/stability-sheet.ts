@@ -144,16 +144,23 @@ function aicc(residual: number, n: number, constants: number): number {
 
 type Crossing = { readonly at: number } | { readonly note: 'beyond' | 'throughout' };
 
-/** First noise at which the medians reach `trivial`, interpolated in log-log between ladder levels. */
+/**
+ * Noise at which the medians, having been below `trivial`, first rise to it; interpolated in log-log between ladder levels. A
+ * method that starts above (it fits the error of its model) and comes below later breaks down where it rises again.
+ */
 export function breakdownNoise(levels: ArrayLike<number>, medians: ArrayLike<number>, trivial: number): Crossing {
-  if (medians[0] >= trivial) return { note: 'throughout' };
-  for (let i = 1; i < medians.length; i++)
-    if (medians[i] >= trivial) {
-      const below = ln(Math.max(medians[i - 1], 1e-300));
-      const share = (ln(trivial) - below) / (ln(medians[i]) - below);
-      return { at: exp(ln(levels[i - 1]) + share * (ln(levels[i]) - ln(levels[i - 1]))) };
+  let wasBelow = false;
+  for (let i = 0; i < medians.length; i++) {
+    if (medians[i] < trivial) {
+      wasBelow = true;
+      continue;
     }
-  return { note: 'beyond' };
+    if (!wasBelow) continue;
+    const below = ln(Math.max(medians[i - 1], 1e-300));
+    const share = (ln(trivial) - below) / (ln(medians[i]) - below);
+    return { at: exp(ln(levels[i - 1]) + share * (ln(levels[i]) - ln(levels[i - 1]))) };
+  }
+  return { note: wasBelow ? 'beyond' : 'throughout' };
 }
 
 /** Median of an array that may be reordered: insertion sort, several times faster than the engine's at two dozen values. */
@@ -193,7 +200,9 @@ export function stabilitySheet(input: StabilityInput): StabilitySheet {
   const first = trivial === null || !(trivial > 0) ? null : breakdownNoise(levels, errors, trivial);
   const n = errors.length;
   const spread = Math.max(...errors) - Math.min(...errors);
-  const fits = n >= fewestLevels && errors.every((error) => error > 0) && spread > 1e-9 * Math.max(...errors);
+  // Where the largest noise gives no larger error than the smallest, a law of growth would only report the ends of its search.
+  const grows = n > 0 && errors[n - 1] > errors[0];
+  const fits = n >= fewestLevels && errors.every((error) => error > 0) && spread > 1e-9 * Math.max(...errors) && grows;
 
   const powers = powerTable(levels, exponentGrid, 1);
   const logs = levels.map((level) => -ln(level));
@@ -236,7 +245,7 @@ export function stabilitySheet(input: StabilityInput): StabilitySheet {
   const breakdown = first && 'at' in first ? interval(first.at, crossings) : null;
   const breakdownNote = first && 'note' in first ? first.note : null;
   if (!chosen) {
-    const reason = n < fewestLevels ? `Fewer than ${fewestLevels} levels have a defined value.` : spread <= 1e-9 * Math.max(...errors) ? 'The error does not change with the noise.' : 'An error of zero has no logarithm.';
+    const reason = n < fewestLevels ? `Fewer than ${fewestLevels} levels have a defined value.` : spread <= 1e-9 * Math.max(...errors) ? 'The error does not change with the noise.' : !grows ? 'The error does not grow with the noise on this ladder, so no law of growth is fitted.' : 'An error of zero has no logarithm.';
     return none(reason, { breakdown, breakdownNote });
   }
   return {

@@ -46,6 +46,9 @@ describe('stability sheet', () => {
   it('says why there is none', () => {
     const constant = stabilitySheet({ ladder: defaultLadder, draws: scattered(() => 1, 0, 'one'), trivial: 1, seed: 's' });
     expect(constant).toMatchObject({ model: 'none', breakdownNote: 'throughout', reason: 'The error does not change with the noise.' });
+    // A rule that trusts the data too much at low noise: the error falls as the noise grows, then rises a little.
+    const falling = stabilitySheet({ ladder: defaultLadder, draws: scattered((d) => 0.6 + 0.02 / Math.sqrt(d), 0.01, 'falling'), trivial: 1, seed: 's' });
+    expect(falling).toMatchObject({ model: 'none', exponent: null, reason: expect.stringMatching(/does not grow/) });
     expect(stabilitySheet({ ladder: [0.1, 0.2], draws: [[0.1], [0.2]], trivial: null, seed: 's' })).toMatchObject({ model: 'none', breakdown: null, breakdownNote: null });
     expect(stabilitySheet({ ladder: [0.1], draws: [[null]], trivial: 1, seed: 's' }).reason).toMatch(/No level/);
     expect(stabilitySheet({ ladder: defaultLadder, draws: scattered((d) => d, 0, 'low'), trivial: 1, seed: 's' }).breakdownNote).toBe('beyond');
@@ -54,6 +57,11 @@ describe('stability sheet', () => {
   it('interpolates the breakdown in log-log', () => {
     // Medians 0.5 and 2 at 0.01 and 0.04: 1 lies half-way in the logarithm.
     expect(breakdownNoise([0.01, 0.04], [0.5, 2], 1)).toEqual({ at: expect.closeTo(0.02, 14) });
+  });
+  it('looks for the breakdown after the method was of use, and says when it never was', () => {
+    expect(breakdownNoise([0.001, 0.01, 0.04], [3, 0.5, 2], 1)).toEqual({ at: expect.closeTo(0.02, 14) });
+    expect(breakdownNoise([0.001, 0.01, 0.04], [3, 0.5, 0.6], 1)).toEqual({ note: 'beyond' });
+    expect(breakdownNoise([0.001, 0.01, 0.04], [3, 2, 1], 1)).toEqual({ note: 'throughout' });
   });
 });
 
