@@ -25,9 +25,11 @@ export interface CertificateCell {
 
 /** Double frame, one cell a check, the seal last. */
 export function CertificateStrip({ cells, hash, sealNote, className }: { cells: readonly CertificateCell[]; hash?: string | null; sealNote?: ReactNode; className?: string }) {
-  const columns = cells.length + (hash ? 1 : 0);
+  const count = cells.length + (hash ? 1 : 0);
+  // Two even rows where one would be too tight.
+  const columns = count <= 6 ? count : Math.ceil(count / 2);
   return (
-    <div className={clsx('cert', className)} style={{ gridTemplateColumns: `repeat(${Math.min(columns, 6)}, minmax(0, 1fr))` }}>
+    <div className={clsx('cert', className)} style={{ '--columns': columns }}>
       {cells.map((c) => (
         <div key={c.name}>
           <h4>{c.name}</h4>

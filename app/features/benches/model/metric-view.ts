@@ -15,17 +15,17 @@ export interface MetricView {
   ranked: boolean;
 }
 
-/** Lengths in body radii are read as per cent of the diameter, as in the papers of the field. */
-const perDiameter = (value: number | null | undefined): string => (value === null || value === undefined ? '\u2013' : (value * 50).toFixed(1));
+/** Lengths are stored and defined in body radii and printed as per cent of the radius, on every page. */
+const perRadius = (value: number | null | undefined): string => (value === null || value === undefined ? '\u2013' : (value * 100).toFixed(1));
 
 const standing: Record<string, Partial<MetricView>> = {
   'relative-l2-error': { head: 'Relative L2', words: 'relative L2' },
   'relative-l1-error': { words: 'relative L1' },
   'sup-error': { name: 'L∞', words: 'L∞' },
   'relative-sup-error': { words: 'relative L∞' },
-  'position-error': { unit: '% diam.', words: 'position error', format: perDiameter },
-  resolution: { head: 'Resol.', unit: '% diam.', words: 'resolution', format: perDiameter },
-  'radial-position-difference': { unit: '% diam.', words: 'radial position', format: perDiameter },
+  'position-error': { unit: '% radius', words: 'position error', format: perRadius },
+  resolution: { head: 'Resol.', unit: '% radius', words: 'resolution', format: perRadius },
+  'radial-position-difference': { unit: '% radius', words: 'radial position', format: perRadius },
   'data-residual-ratio': { unit: 'to noise', words: 'data residual' },
 };
 

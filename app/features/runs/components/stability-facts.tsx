@@ -8,7 +8,7 @@ const interval = (v: { low: number; high: number } | null, print: (x: number) =>
 function breakdownWords(sheet: StabilitySheetWire): string {
   if (sheet.breakdown) return formatPercent(sheet.breakdown.value);
   if (sheet.breakdownNote === 'beyond') return 'beyond the ladder';
-  return sheet.breakdownNote === 'throughout' ? 'worse throughout' : '–';
+  return sheet.breakdownNote === 'throughout' ? 'worse at every level' : '–';
 }
 
 /** Exponent, floor and breakdown of every metric where smaller is better. */
