@@ -2,6 +2,7 @@ import type { MikroORM } from '@mikro-orm/sqlite';
 import type { Logger } from 'pino';
 import { AppError } from '../../shared/errors.ts';
 import type { Mailer } from '../mail/mailer.ts';
+import { forgetOldPreviews } from '../services/simulations/simulate.ts';
 import { makeDispatcher } from './dispatcher.ts';
 import { claimRecomputation, requeueRecomputations } from './recomputation-job.ts';
 import { makeRunEvents, type RunEvents } from './run-events.ts';
@@ -78,7 +79,8 @@ export function makeJobs(options: JobsOptions): Jobs {
   const simulateOnce = async (task: SimulateTask): Promise<SimulationOutput> => {
     let answer: Answer<SimulationOutput>;
     try {
-      answer = await interactive.run('simulate', task, { timeLimitMs: task.checks ? limits.checkedMs : limits.interactiveMs });
+      // Checks take as long as several simulations: they share the threads of the runs, and previews go past them.
+      answer = await (task.checks ? pool : interactive).run('simulate', task, { timeLimitMs: task.checks ? limits.checkedMs : limits.interactiveMs });
     } catch (error) {
       if (!(error instanceof WorkerFailure)) throw error;
       if (error.kind === 'threw') throw new Error('the simulation failed', { cause: error });
@@ -122,6 +124,7 @@ export function makeJobs(options: JobsOptions): Jobs {
     start: async () => {
       await requeueInterrupted(context);
       await requeueRecomputations(context);
+      await forgetOldPreviews(orm.em.fork(), clock());
       open = true;
       dispatcher.kick();
     },

@@ -7,6 +7,7 @@ import type { CheckResultWire } from '../../shared/contracts/common';
 import { toBlob } from '../entities/float64-blob.ts';
 import { RunEntity, RunImageEntity, TrialEntity } from '../entities/run.ts';
 import { SimulationEntity } from '../entities/simulation.ts';
+import { recordAudit, siteActor } from '../services/audit/record-audit.ts';
 import { announceRunEnd } from '../services/runs/announce-run-end.ts';
 import { codeVersion } from './code-version.ts';
 import type { Job } from './job.ts';
@@ -37,7 +38,7 @@ export async function claimRun(context: JobContext): Promise<Job | null> {
   const { orm, clock } = context;
   const em = orm.em.fork();
   const id = await em.transactional(async (inner) => {
-    const next = await inner.findOne(RunEntity, { state: 'queued' }, { orderBy: { priority: 'desc', queuedAt: 'asc', id: 'asc' } });
+    const next = await inner.findOne(RunEntity, { state: 'queued' }, { orderBy: { priority: 'desc', queuedAt: 'asc', id: 'asc' }, populate: ['entry.solverVersion.solver'] });
     if (!next) return null;
     // Trials of other code are not mixed with those to come.
     if (next.codeVersion && next.codeVersion !== codeVersion) await forgetTrials(inner, next.id);
@@ -47,6 +48,10 @@ export async function claimRun(context: JobContext): Promise<Job | null> {
     next.failure = null;
     next.startedAt ??= clock();
     next.heartbeatAt = clock();
+    recordAudit(inner, {
+      actor: siteActor, at: clock(), action: 'run.started', subject: { type: 'run', id: next.id }, groupId: next.entry.$.solverVersion.$.solver.$.group.id,
+      before: { state: 'queued' }, after: { state: 'running', codeVersion },
+    });
     await inner.flush();
     return next.id;
   });
@@ -255,11 +260,15 @@ const interruptionsAllowed = 5;
 /** At start: runs that were being worked on wait again, with the trials they have. One that stops the server every time is failed. */
 export async function requeueInterrupted(context: JobContext): Promise<void> {
   const em = context.orm.em.fork();
-  for (const run of await em.find(RunEntity, { state: 'running' })) {
+  for (const run of await em.find(RunEntity, { state: 'running' }, { populate: ['entry.solverVersion.solver'] })) {
     if (run.attempts >= interruptionsAllowed)
       await failRun(context, run.id, `The server stopped ${run.attempts} times while it worked on this run, without a new trial. Choose parameters that need less time or memory, then queue it again.`);
     else {
       run.state = 'queued';
+      recordAudit(em, {
+        actor: siteActor, at: context.clock(), action: 'run.queued', subject: { type: 'run', id: run.id }, groupId: run.entry.$.solverVersion.$.solver.$.group.id,
+        before: { state: 'running' }, after: { state: 'queued', done: run.done }, detail: 'The server stopped while it was computed.',
+      });
       await em.flush();
     }
   }

@@ -71,3 +71,11 @@ export async function findSimulation(em: EntityManager, definitionHash: string):
   if (!stored) throw new AppError('not-found', 'This version is not simulated yet. It is when it is submitted.');
   return stored;
 }
+
+const previewDays = 30;
+
+/** Simulations that no version uses are previews; old ones are computed again when somebody asks. */
+export async function forgetOldPreviews(em: EntityManager, now: Date): Promise<void> {
+  const used = await em.find(PhantomVersionEntity, {}, { fields: ['definitionHash'] });
+  await em.nativeDelete(SimulationEntity, { updatedAt: { $lt: new Date(now.getTime() - previewDays * 86_400_000) }, contentHash: { $nin: used.map((version) => version.definitionHash) } });
+}

@@ -3,6 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { AuditEntryEntity } from '../../../api/entities/audit-entry.ts';
 import { OutboxMessageEntity } from '../../../api/entities/outbox-message.ts';
 import { RecomputationEntity, RunEntity, RunImageEntity, TrialEntity } from '../../../api/entities/run.ts';
+import { SimulationEntity } from '../../../api/entities/simulation.ts';
 import { UserEntity } from '../../../api/entities/user.ts';
 import { progressSchema, runDetailSchema, type Progress } from '../../../shared/contracts/runs.ts';
 import { sha256Hex } from '../../../solvers/core/hash.ts';
@@ -164,6 +165,29 @@ describe('the queue', () => {
     await app.deps.jobs.idle();
     for (const run of [id!, fresh!]) expect(await runOf(run)).toMatchObject({ state: 'finished', done: 18 });
     expect(await app.orm.em.fork().count(TrialEntity, { run: id, imageHash: 'old' })).toBe(0);
+  });
+});
+
+describe('at start', () => {
+  it('forgets old previews and keeps what a version uses', async () => {
+    await queue(seeds.plain);
+    const em = app.orm.em.fork();
+    const used = await em.findOneOrFail(SimulationEntity, { codeVersion: 'test' }, { populate: ['frame', 'reference', 'clean', 'truthImage'] });
+    const copy = (contentHash: string) =>
+      em.create(SimulationEntity, {
+        contentHash, codeVersion: 'test', summary: used.summary, modelErrorFloor: 1, noiseScale: 1, checks: null, seconds: 1,
+        frame: used.frame.$, reference: used.reference.$, clean: used.clean.$, truthImage: used.truthImage.$,
+      });
+    copy('old preview');
+    copy('new preview');
+    await em.flush();
+    const old = new Date(Date.now() - 40 * 86_400_000);
+    await em.nativeUpdate(SimulationEntity, { contentHash: { $in: ['old preview', used.contentHash] } }, { updatedAt: old });
+    await app.deps.jobs.start();
+    const left = (await app.orm.em.fork().find(SimulationEntity, {})).map((row) => row.contentHash);
+    expect(left).not.toContain('old preview');
+    expect(left).toEqual(expect.arrayContaining(['new preview', used.contentHash]));
+    await app.deps.jobs.idle();
   });
 });
 

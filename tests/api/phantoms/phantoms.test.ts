@@ -177,7 +177,7 @@ describe('phantom versions', () => {
     expect(mails.filter((mail) => mail.kind === 'review-waiting').map((mail) => mail.recipient)).toContain('far-reviewer@hadamark.example');
     expect(mails.filter((mail) => mail.kind === 'review-waiting').map((mail) => mail.recipient)).not.toContain('own-reviewer@hadamark.example');
     expect(mails.filter((mail) => mail.kind === 'verdict' && /published/.test(mail.subject)).map((mail) => mail.recipient)).toContain('curator-demo@hadamark.example');
-  });
+  }, 180_000);
 
   it('registers the same content once, whatever it is called', async () => {
     const other = await app.group('Fell Imaging', { 'far-curator': ['owner'] });
