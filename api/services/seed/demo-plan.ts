@@ -152,9 +152,9 @@ $$ \\min_h\\; \\tfrac12 \\lVert J h - (y - F(x_b)) \\rVert^2 + \\lambda \\sum_i 
     configuration: { method: 'gauss-newton', parameters: { penalty: 'gradient', firstAlpha: 0.3, decay: 0.25, largestIteration: 6 }, rule: { key: 'discrepancy', safetyFactor: 1.1 } },
   },
   {
-    key: 'gauss-newton-long', group: 'quarry-point-geophysics', developer: 'developer-demo', name: 'Gauss-Newton, sixty steps',
-    description: `The same iteration with a slow decay and sixty steps for every frame, whatever the noise. It shows what the limit on processor time is for.`,
-    configuration: { method: 'gauss-newton', parameters: { penalty: 'gradient', firstAlpha: 0.3, decay: 0.9, largestIteration: 60 }, rule: { key: 'fixed', value: 1e-6 } },
+    key: 'gauss-newton-bare', group: 'quarry-point-geophysics', developer: 'developer-demo', name: 'Gauss-Newton, hardly regularised',
+    description: `The same iteration with a first weight of $10^{-6}\\,\\sigma_1$ that falls to a twentieth at every step: how little penalty does the problem bear?`,
+    configuration: { method: 'gauss-newton', parameters: { penalty: 'gradient', firstAlpha: 1e-6, decay: 0.05, largestIteration: 12 }, rule: { key: 'discrepancy', safetyFactor: 1 } },
   },
 ];
 
@@ -174,7 +174,10 @@ Parameters stay fixed across the ladder unless the configuration's own rule chan
     entries: [
       { solver: 'tikhonov-gradient', by: 'developer-demo' }, { solver: 'tikhonov-identity', by: 'developer-demo' }, { solver: 'tikhonov-laplacian', by: 'developer-demo' },
       { solver: 'truncated-svd', by: 'developer-demo' }, { solver: 'cgls', by: 'developer-demo' },
-      { solver: 'total-variation', by: 'developer-demo' }, { solver: 'gauss-newton', by: 'developer-demo' },
+      { solver: 'total-variation', by: 'developer-demo' },
+      // Its weight falls below what rounding bears, and the first matrix after that cannot be factorised: the run fails at once.
+      { solver: 'gauss-newton-bare', by: 'developer-demo' },
+      { solver: 'gauss-newton', by: 'developer-demo' },
     ],
   },
   {
@@ -187,8 +190,6 @@ The noise level is relative to the raw voltages, $\\lVert e \\rVert = \\delta\\,
     entries: [
       { solver: 'tikhonov-gradient', by: 'developer-demo' }, { solver: 'tikhonov-identity', by: 'developer-demo' },
       { solver: 'truncated-svd', by: 'developer-demo' }, { solver: 'cgls', by: 'developer-demo' }, { solver: 'total-variation', by: 'developer-demo' },
-      // 31 patterns and 1600 cells make a step cost seconds: its first batch runs out of the time a batch has.
-      { solver: 'gauss-newton-long', by: 'developer-demo' },
     ],
   },
 ];
@@ -231,8 +232,8 @@ const reviews: readonly ReviewPlan[] = [
   ...['four-compass-points', 'wedge-and-bump'].map((phantom) => signedOff(trigonometric, 'tikhonov-gradient', phantom, plain)),
   signedOff(trigonometric, 'truncated-svd', 'four-compass-points', plain),
   {
-    bench: trigonometric, solver: 'gauss-newton-long', phantom: 'four-compass-points', giveUp: { by: 'developer-demo' },
-    comments: [{ by: 'developer-demo', text: 'Sixty steps with 992 values are more than a batch may take. The other runs of this entry are stopped; a version with fewer steps follows.', anchor: '' }],
+    bench: buried, solver: 'gauss-newton-bare', phantom: 'two-lobes', giveUp: { by: 'developer-demo' },
+    comments: [{ by: 'developer-demo', text: 'The weight falls below 1e-8 of the largest singular value, where rounding leaves a matrix that is not positive definite. The other runs of this entry are stopped; a version with a larger first weight follows.', anchor: '' }],
   },
 ];
 
