@@ -73,7 +73,7 @@ function Editor({ mode, phantom, groups, handle }: Common & { mode: FormMode; ph
   const navigate = useNavigate();
   const toast = useToast();
   const [now] = useState(() => new Date());
-  const [initial] = useState(() => (phantom ? formFromVersion(phantom.group.slug, phantom.version) : emptyForm(groups.length === 1 ? groups[0]?.slug : '')));
+  const [initial] = useState(() => (phantom ? formFromVersion(phantom.group.slug, phantom.version) : emptyForm(groups[0]?.slug ?? '')));
   const key = phantom ? `${mode}.${phantom.slug}.${phantom.version.n}` : 'new';
   const known = phantom && !groups.some((g) => g.slug === phantom.group.slug) ? [...groups, phantom.group] : groups;
   return (

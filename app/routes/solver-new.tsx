@@ -71,7 +71,7 @@ function Editor({ solver, groups, handle, bench }: Common & { solver: SolverDeta
   const navigate = useNavigate();
   const toast = useToast();
   const [initial] = useState(() => {
-    const base = emptySolverForm(groups.length === 1 ? (groups[0]?.slug ?? '') : '', bench);
+    const base = emptySolverForm(groups[0]?.slug ?? '', bench);
     return solver ? { ...formFromConfiguration(base, solver.current.configuration), ...solver.current.declaration, bench: bench || solver.entries[0]?.bench.slug || '' } : base;
   });
   return (

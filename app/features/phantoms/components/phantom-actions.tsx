@@ -11,7 +11,7 @@ import { formatDate } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import { usePhantomVerdict, useSubmitPhantom, useWithdrawPhantom } from '../api/change-phantom';
-import { checkBound, checkReading } from '../model/check-rows';
+import { checkLine, checkReading } from '../model/check-rows';
 
 const least = 10;
 
@@ -85,7 +85,7 @@ export function PhantomChecks({ detail }: { detail: PhantomDetail }) {
   return (
     <>
       <div className="sh gap-top"><h2>Checks</h2><p>run when it was submitted</p></div>
-      <div className="sheet">{checks.map((c) => <CheckRow key={c.key} name={c.name} how={[c.meaning, checkBound(c)].filter(Boolean).join('; ')} reading={checkReading(c)} state={c.state} />)}</div>
+      <div className="sheet">{checks.map((c) => <CheckRow key={c.key} name={c.name} how={checkLine(c)} reading={checkReading(c)} state={c.state} />)}</div>
     </>
   );
 }

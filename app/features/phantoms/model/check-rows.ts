@@ -15,11 +15,18 @@ export function checkBound(check: Pick<CheckResultWire, 'bound' | 'comparison'>)
   return `${words[check.comparison]} ${formatNumber(check.bound, 2)}`;
 }
 
+/** 'Largest difference ...; at most 1e-8'. */
+export function checkLine(check: Pick<CheckResultWire, 'meaning' | 'bound' | 'comparison'>): string {
+  const bound = checkBound(check);
+  return bound ? `${check.meaning.replace(/\.$/, '')}; ${bound}` : check.meaning;
+}
+
 /** Checks of a phantom in the order in which they settle, for the rows shown while they are waited for. */
 export const phantomCheckNames: readonly { name: string; how: string }[] = [
   { name: 'Data finite and of the right shape', how: 'every value of both frames' },
   { name: 'Reciprocity', how: 'swap drive and measurement' },
   { name: 'Mesh convergence', how: 'a finer mesh of the same truth' },
+  { name: 'Closed form of the concentric disc', how: 'where the eigenvalues are known' },
   { name: 'Discretisations differ', how: 'simulation against inversion' },
-  { name: 'Closed form', how: 'where the truth has one' },
+  { name: 'Shapes clear of the electrodes', how: 'distance of an outline to the edge' },
 ];
