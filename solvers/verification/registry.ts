@@ -1,0 +1,18 @@
+import { findByKey } from '../core/registry';
+import type { VerificationCheck } from './check';
+import { closedFormChecks } from './closed-forms';
+import { concentricDiscChecks } from './concentric-disc';
+import { derivativeChecks } from './derivatives';
+import { electrodeModelChecks } from './electrode-model';
+import { metricChecks } from './metrics';
+import { randomnessChecks } from './randomness';
+import { regularisationChecks } from './regularisation';
+import { statisticsChecks } from './statistics';
+
+/** Every published value that an instance computes again, in the order of the page. */
+export const verificationChecks: readonly VerificationCheck[] = [
+  ...concentricDiscChecks, ...electrodeModelChecks, ...derivativeChecks, ...regularisationChecks, ...closedFormChecks, ...metricChecks, ...statisticsChecks, ...randomnessChecks,
+];
+
+/** @throws RangeError for an unknown key */
+export const getVerificationCheck = (key: string): VerificationCheck => findByKey(verificationChecks, key, 'verification check');
