@@ -37,7 +37,7 @@ export function PhantomNotices({ detail }: { detail: PhantomDetail }) {
         <Box tone="plain" state="draft" title={version.state === 'draft' ? 'This is a draft; only the group sees it' : 'Open for changes'} className="notice">
           <div className="acts">
             {may.edit ? <ButtonLink to={edit}>Edit the draft</ButtonLink> : null}
-            {may.submit ? <Button look="primary" disabled={submit.isPending} onClick={() => submit.mutate(undefined, { onSuccess: () => toast(`Version ${version.n} submitted for review.`) })}>{submit.isPending ? 'Checks run' : 'Submit for review'}</Button> : null}
+            {may.submit ? <Button look="primary" disabled={submit.isPending} onClick={() => void submit.mutateAsync().then(() => toast(`Version ${version.n} submitted for review.`), () => undefined)}>{submit.isPending ? 'Checks run' : 'Submit for review'}</Button> : null}
           </div>
           {submit.isError ? <div style={{ marginTop: 10 }}><ErrorPanel error={submit.error} what="Not submitted" /></div> : null}
         </Box>
@@ -57,7 +57,8 @@ export function PhantomReview({ detail }: { detail: PhantomDetail }) {
   const failing = version.checks.some((c) => c.state === 'fail');
   const blocked = !choice ? 'Choose what to say.' : choice === 'publish' && failing ? 'A check fails: publishing needs all to pass.' : reason.trim().length < least ? `Write at least ${least} characters.` : null;
   const send = () => {
-    if (choice) verdict.mutate({ verdict: choice, reason: reason.trim() }, { onSuccess: () => toast(choice === 'publish' ? 'Published.' : 'Changes requested.') });
+    // The form is gone once the version is read again, and callbacks of `mutate` go with it; the promise stays.
+    if (choice) verdict.mutateAsync({ verdict: choice, reason: reason.trim() }).then(() => toast(choice === 'publish' ? 'Published.' : 'Changes requested.'), () => undefined);
   };
   const refused = isApiError(verdict.error) ? verdict.error.issueAt('reason') : undefined;
   return (

@@ -31,7 +31,8 @@ export function VerdictForm({ run, inspected, onInspect, me }: { run: RunDetail;
   const reviewing = run.reviewer?.handle === me;
   const record = () => {
     const input: VerdictInput = { verdict, reason: reason.trim(), inspected: [...inspected] };
-    create.mutate(input, { onSuccess: () => toast(`Verdict recorded: ${choice.name.toLowerCase()}.`) });
+    // This form is gone once the run is read again, and callbacks of `mutate` go with it; the promise stays.
+    create.mutateAsync(input).then(() => toast(`Verdict recorded: ${choice.name.toLowerCase()}.`), () => undefined);
   };
   return (
     <form className="sheet" onSubmit={(event) => { event.preventDefault(); if (!missing) record(); }} aria-label="Verdict">

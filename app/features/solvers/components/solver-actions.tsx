@@ -74,7 +74,7 @@ function Withdraw({ solver, version }: { solver: SolverDetail; version: Version 
       <Button look="danger" onClick={() => setOpen(true)}>Withdraw</Button>
       <Confirm
         open={open} danger title={`Withdraw ${solver.name}, version ${version.n}?`} confirmLabel={`Withdraw version ${version.n}`} pending={withdraw.isPending} disabled={reason.trim().length < least} onClose={() => setOpen(false)}
-        onConfirm={() => withdraw.mutate({ reason: reason.trim() }, { onSuccess: () => { setOpen(false); toast(`Version ${version.n} withdrawn.`); } })}
+        onConfirm={() => void withdraw.mutateAsync({ reason: reason.trim() }).then(() => toast(`Version ${version.n} withdrawn.`), () => undefined)}
       >
         <p>{version.runs ? `${version.runs} runs keep their pages and say so.` : 'It has no runs.'} It cannot be entered again. This cannot be undone; a new version can follow.</p>
         <div style={{ marginTop: 12 }}><Textarea label="Reason, shown on the page" rows={2} value={reason} help={`At least ${least} characters.`} onChange={(e) => setReason(e.target.value)} /></div>
