@@ -14,6 +14,8 @@ import { demoAccounts } from './sign-in/demo-accounts.ts';
 
 const stopWithinMs = 2_500;
 const sweepEveryMs = 60 * 60 * 1000;
+/** The instance checks itself once the start and the demonstration have had the processor. */
+const verifyAfterMs = 10_000;
 
 const env = checkedEnv();
 const logger = makeLogger(env.logLevel);
@@ -40,6 +42,12 @@ const server = app.listen(env.port, env.host, (error?: Error) => {
 mailer.start();
 await jobs.start();
 if (env.seedDemo) seeding = seedDemo({ orm, jobs, clock, logger, origin });
+const verifying = setInterval(() => {
+  if (seeding?.running()) return;
+  clearInterval(verifying);
+  jobs.verification.start();
+}, verifyAfterMs);
+verifying.unref();
 const sessions = new SqliteSessionStore(orm, clock);
 const sweeper = setInterval(sweepSessions, sweepEveryMs);
 sweeper.unref();
@@ -64,6 +72,7 @@ async function stop(): Promise<void> {
   // Whatever hangs, the process ends in time; unfinished work is taken up again at the next start.
   setTimeout(() => process.exit(0), stopWithinMs).unref();
   clearInterval(sweeper);
+  clearInterval(verifying);
   const closed = new Promise<void>((resolve) => server.close(() => resolve()));
   closeEventStreams();
   server.closeIdleConnections();

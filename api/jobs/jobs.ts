@@ -8,6 +8,7 @@ import { claimRecomputation, requeueRecomputations } from './recomputation-job.t
 import { makeRunEvents, type RunEvents } from './run-events.ts';
 import { claimRun, requeueInterrupted, type JobContext } from './run-job.ts';
 import type { Answer, RunInput, SensitivityOutput, SimulateTask, SimulationOutput, TrialOutput } from './tasks.ts';
+import { makeVerifier, type Verifier } from './verification.ts';
 import { makeWorkerPool, WorkerFailure } from './worker-pool.ts';
 
 /** Work that is done outside the request, and what a request may ask of it. */
@@ -24,6 +25,8 @@ export interface Jobs {
   readonly drop: (id: string) => void;
   readonly secondsLeft: (runId: string) => number | null;
   readonly events: RunEvents;
+  /** The instance's own checks against published values. */
+  readonly verification: Verifier;
   readonly workers: number;
   /** Takes up what an earlier server left, then works on the queue. */
   readonly start: () => Promise<void>;
@@ -73,6 +76,7 @@ export function makeJobs(options: JobsOptions): Jobs {
     // A reviewer who waits for a recomputation comes before new runs.
     claim: async () => (await claimRecomputation(context)) ?? (await claimRun(context)),
   });
+  const verifier = makeVerifier({ pool, idle: dispatcher.idle, clock, logger, timeLimitMs: limits.checkedMs });
   const simulating = new Map<string, Promise<SimulationOutput>>();
   let open = false;
 
@@ -120,6 +124,8 @@ export function makeJobs(options: JobsOptions): Jobs {
     drop: dispatcher.drop,
     secondsLeft: dispatcher.secondsLeft,
     events,
+    // Before the start of the queue a reader's question starts nothing.
+    verification: { ...verifier, start: () => open && verifier.start(), hurry: () => open && verifier.hurry() },
     workers,
     start: async () => {
       await requeueInterrupted(context);
@@ -131,6 +137,7 @@ export function makeJobs(options: JobsOptions): Jobs {
     idle: dispatcher.idle,
     stop: async () => {
       open = false;
+      verifier.stop();
       await dispatcher.stop();
       await Promise.all([pool.close(), interactive.close()]);
     },

@@ -4,6 +4,7 @@ import type { Sensitivity } from '../../shared/contracts/runs';
 import type { Configuration } from '../../shared/contracts/solvers';
 import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
 import type { Target } from '../../solvers/core/types';
+import type { VerificationOutcome } from '../../solvers/verification/check';
 import type { SimulationSummary } from '../entities/simulation.ts';
 
 /** A phantom as a worker needs it. */
@@ -105,4 +106,13 @@ export interface SensitivityOutput {
   readonly errors: number[];
   readonly oracle: Sensitivity['oracle'];
   readonly picard: Sensitivity['picard'];
+}
+
+export interface VerifyTask {
+  /** Of a check in the verification registry. */
+  readonly key: string;
+}
+export interface VerifyOutput {
+  readonly outcome: VerificationOutcome;
+  readonly seconds: number;
 }

@@ -4,6 +4,7 @@ import { Piscina } from 'piscina';
 import type { Logger } from 'pino';
 import type {
   Answer, RunChecksOutput, RunChecksTask, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask,
+  VerifyOutput, VerifyTask,
 } from './tasks.ts';
 
 /** The functions that the worker exports, and what goes in and out of each. */
@@ -12,6 +13,7 @@ export interface WorkerFunctions {
   runSlice: { task: SliceTask; output: Answer<SliceOutput> };
   checkRun: { task: RunChecksTask; output: Answer<RunChecksOutput> };
   sensitivity: { task: SensitivityTask; output: Answer<SensitivityOutput> };
+  verify: { task: VerifyTask; output: Answer<VerifyOutput> };
 }
 export type WorkerFunction = keyof WorkerFunctions;
 

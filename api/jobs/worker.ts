@@ -6,7 +6,8 @@ import { workerData } from 'node:worker_threads';
 import { move, transferableSymbol, valueSymbol } from 'piscina';
 import { runSliceIn, sensitivityOf, simulatePhantom } from './worker-tasks.ts';
 import { checkFinishedRun } from './worker-checks.ts';
-import type { Answer, RunChecksOutput, RunChecksTask, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask } from './tasks.ts';
+import type { Answer, RunChecksOutput, RunChecksTask, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask, VerifyOutput, VerifyTask } from './tasks.ts';
+import { getVerificationCheck } from '../../solvers/verification/registry';
 import { TruthError } from '../../solvers/truth/truth-error';
 
 const now = (): number => performance.now() / 1000;
@@ -53,3 +54,9 @@ export function runSlice(task: SliceTask): Answer<SliceOutput> {
 }
 export const checkRun = (task: RunChecksTask): Answer<RunChecksOutput> => answer(() => checkFinishedRun(task, now));
 export const sensitivity = (task: SensitivityTask): Answer<SensitivityOutput> => answer(() => sensitivityOf(task));
+export const verify = ({ key }: VerifyTask): Answer<VerifyOutput> =>
+  answer(() => {
+    const begin = now();
+    const outcome = getVerificationCheck(key).run();
+    return { outcome, seconds: now() - begin };
+  });

@@ -14,6 +14,7 @@ import { catalogueRoutes } from './catalogue-routes.ts';
 import { reviewRoutes } from './review-routes.ts';
 import { runRoutes } from './run-routes.ts';
 import { queueRoutes } from './queue-routes.ts';
+import { verificationRoutes } from './verification-routes.ts';
 
 /** Every route of the API. One that is not listed here does not exist. */
-export const allRoutes: readonly Route[] = [...siteRoutes, ...sessionRoutes, ...accountRoutes, ...groupRoutes, ...adminRoutes, ...solverRoutes, ...overviewRoutes, ...uploadRoutes, ...simulationRoutes, ...phantomRoutes, ...benchRoutes, ...catalogueRoutes, ...reviewRoutes, ...runRoutes, ...queueRoutes];
+export const allRoutes: readonly Route[] = [...siteRoutes, ...sessionRoutes, ...accountRoutes, ...groupRoutes, ...adminRoutes, ...solverRoutes, ...overviewRoutes, ...uploadRoutes, ...simulationRoutes, ...phantomRoutes, ...benchRoutes, ...catalogueRoutes, ...reviewRoutes, ...runRoutes, ...queueRoutes, ...verificationRoutes];

@@ -32,6 +32,8 @@ async function newMember(world: WalkWorld): Promise<string> {
 /** Site, session, account, groups and administration. */
 export const foundationRouteCases: RouteCases = {
   'GET /health': { path: () => '/health' },
+  'GET /verification': { path: () => '/verification' },
+  'GET /verification.csv': { path: () => '/verification.csv' },
   'GET /session': { path: () => '/session' },
   'DELETE /session': { path: () => '/session', endsSession: true },
   'GET /account': { path: () => '/account' },
