@@ -18,6 +18,7 @@ const problemSchema = z.object({
   message: z.string().optional(),
   issues: z.array(issueSchema).optional(),
   requestId: z.string().optional(),
+  extra: z.record(z.string(), z.unknown()).optional(),
 });
 
 /** A refused or failed request. `message` is for the reader; `issues` name fields or cells. */
@@ -30,10 +31,13 @@ export class ApiError extends Error {
     readonly title: string,
     readonly issues: readonly ApiIssue[] = [],
     readonly requestId?: string,
-    options?: { cause?: unknown },
+    options?: { cause?: unknown; extra?: Record<string, unknown> },
   ) {
     super(message, options);
+    this.extra = options?.extra;
   }
+  /** What the code adds: the cells around a fault of a file, for instance. */
+  readonly extra?: Record<string, unknown>;
 
   /** The first message for a field, by its dotted path. */
   issueAt(path: string): string | undefined {
@@ -90,7 +94,7 @@ async function toApiError(response: Response): Promise<ApiError> {
   const title = ('title' in problem && problem.title) || `The server answered ${response.status}`;
   const detail = ('detail' in problem && problem.detail) || ('message' in problem && problem.message) || title;
   const issues = 'issues' in problem ? (problem.issues ?? []) : [];
-  return new ApiError(detail, response.status, problem.code, title, issues, 'requestId' in problem ? problem.requestId : undefined);
+  return new ApiError(detail, response.status, problem.code, title, issues, 'requestId' in problem ? problem.requestId : undefined, 'extra' in problem && problem.extra ? { extra: problem.extra } : undefined);
 }
 
 /** Sends a request and parses the answer by its schema; a 204 is parsed as `null`. */

@@ -1,3 +1,4 @@
+import { z } from 'zod';
 import { Box } from '../../../components/ui/box';
 import { Button } from '../../../components/ui/button';
 import { Checkbox, Field, Option } from '../../../components/ui/field';
@@ -75,19 +76,42 @@ export function FramesSection({ form, change, issueAt }: FormPart) {
   );
 }
 
-/** A refused file: the first cell at fault with its row and column, then the others. */
+const around = z.object({ row: z.int(), column: z.int(), neighbours: z.object({ fromRow: z.int(), fromColumn: z.int(), cells: z.array(z.array(z.string())) }) });
+
+/** The place of a fault in front of its words, unless they name it already. */
+function placed(issue: { message: string; row?: number; column?: number }): string {
+  if (issue.row === undefined || /^row /i.test(issue.message)) return issue.message;
+  return `Row ${issue.row}${issue.column === undefined ? '' : `, column ${issue.column}`}: ${issue.message}`;
+}
+
+/** A refused file: the first cell at fault with its row and column among its neighbours, then the others. */
 export function UploadFault({ error }: { error: unknown }) {
   const issues = isApiError(error) ? error.issues : [];
   const first = issues[0];
-  const place = first && first.row !== undefined ? `Row ${first.row}${first.column === undefined ? '' : `, column ${first.column}`}: ` : '';
-  const title = first ? `${place}${first.message}` : error instanceof Error ? error.message : 'The file cannot be used';
+  const title = first ? placed(first) : error instanceof Error ? error.message : 'The file cannot be used';
+  const cells = around.safeParse(isApiError(error) ? error.extra : undefined);
   return (
     <Box tone="failure" title={title} alert className="fault">
-      {first && isApiError(error) && error.message !== first.message ? <p>{error.message}</p> : null}
-      {issues.length > 1 ? (
-        <ul>{issues.slice(1, 6).map((issue, i) => <li key={i}>{issue.row === undefined ? '' : `Row ${issue.row}${issue.column === undefined ? '' : `, column ${issue.column}`}: `}{issue.message}</li>)}</ul>
-      ) : null}
+      {cells.success ? <FaultCells {...cells.data} /> : null}
+      {first && isApiError(error) && error.message !== first.message && !title.includes(error.message) ? <p>{error.message}</p> : null}
+      {issues.length > 1 ? <ul>{issues.slice(1, 6).map((issue, i) => <li key={i}>{placed(issue)}</li>)}</ul> : null}
       <p>Correct the file and choose it again. Nothing was stored.</p>
     </Box>
+  );
+}
+
+function FaultCells({ row, column, neighbours: { fromRow, fromColumn, cells } }: z.infer<typeof around>) {
+  return (
+    <div className="peekbox">
+      <table className="peekc">
+        <caption className="vh">The cell among its neighbours</caption>
+        <thead><tr><td />{cells[0]?.map((_, j) => <th key={j} scope="col">{fromColumn + j}</th>)}</tr></thead>
+        <tbody>
+          {cells.map((line, i) => (
+            <tr key={i}><th scope="row">{fromRow + i}</th>{line.map((cell, j) => <td key={j} className={fromRow + i === row && fromColumn + j === column ? 'bad' : undefined}>{cell || '(empty)'}</td>)}</tr>
+          ))}
+        </tbody>
+      </table>
+    </div>
   );
 }

@@ -18,9 +18,7 @@ export function TryHere({ items, configuration, noise, onClose }: { items: reado
   const { detail, simulation } = usePreviewPhantom(item?.phantom.slug ?? '', item?.phantom.version ?? 0);
   const phantom = useMemo(() => (detail.data && simulation.data ? previewPhantom(detail.data, simulation.data) : null), [detail.data, simulation.data]);
   const levels = item?.levels.map((l) => l.level) ?? defaultLadder;
-  const levelsText = levels.join();
-  const stillLevels = useMemo(() => levelsText.split(',').map(Number), [levelsText]);
-  const preview = usePreview({ phantom, configuration, noise, levels: stillLevels, seed: 1 });
+  const preview = usePreview({ phantom, configuration, noise, levels, seed: 1 });
   return (
     <section className="sec" id="try">
       <header><h2>Here, at {formatPercent(noise)}</h2><p>draw 1 of seed 1, computed in this browser</p></header>
@@ -29,7 +27,7 @@ export function TryHere({ items, configuration, noise, onClose }: { items: reado
           {open.length > 1 ? <><label className="sm" htmlFor="try-phantom">on</label><select className="t" id="try-phantom" value={item?.phantom.slug ?? ''} onChange={(e) => setChosen(e.target.value)}>{open.map((i) => <option key={i.run} value={i.phantom.slug}>{i.phantom.name}</option>)}</select></> : <span className="sm">{item ? `on ${item.phantom.name}` : ''}</span>}
           <Button onClick={onClose} style={{ marginLeft: 'auto' }}>Close</Button>
         </div>
-        {phantom ? <PreviewPanel phantom={phantom} preview={preview} noise={noise} levels={stillLevels} others={[]} stale={false} /> : (
+        {phantom ? <PreviewPanel phantom={phantom} preview={preview} noise={noise} levels={levels} others={[]} stale={false} /> : (
           <div className="pad">{simulation.isError ? <ErrorPanel error={simulation.error} onRetry={() => void simulation.refetch()} /> : item ? <Loading label="Fetching the phantom" disc /> : <p className="sm">It has no finished run on an open phantom to try it on.</p>}</div>
         )}
       </div>
