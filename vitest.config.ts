@@ -12,7 +12,7 @@ export default defineConfig({
         },
       },
       { test: { name: 'api', environment: 'node', testTimeout: 60_000, hookTimeout: 60_000, include: ['tests/api/**/*.test.ts'], pool: 'forks', maxWorkers: 2 } },
-      { plugins: [react()], test: { name: 'app', environment: 'jsdom', testTimeout: 20_000, include: ['tests/app/**/*.test.{ts,tsx}'] } },
+      { plugins: [react()], test: { name: 'app', environment: 'jsdom', testTimeout: 60_000, setupFiles: ['tests/support/app-setup.ts'], include: ['tests/app/**/*.test.{ts,tsx}'] } },
       {
         test: {
           name: 'browser', environment: 'node', testTimeout: 300_000, hookTimeout: 300_000, include: ['tests/browser/**/*.test.ts'],

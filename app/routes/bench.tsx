@@ -6,7 +6,7 @@ import { familyNames } from '../../shared/domain/families';
 import { MeanRankStrip } from '../components/charts/mean-rank-strip';
 import { PairedTable } from '../components/charts/paired-table';
 import { StabilityChart } from '../components/charts/stability-chart';
-import { toPicture, type Picture } from '../components/images/pixels';
+import { toPicture, valueScale } from '../components/images/pixels';
 import { Page } from '../components/layout/page';
 import { nearestLevel, ruleScale } from '../components/noise-rule/scale';
 import { useNoise, useParam } from '../components/noise-rule/use-noise';
@@ -20,8 +20,8 @@ import { StateMark } from '../components/ui/state-mark';
 import { getCitationQueryOptions, getRankingQueryOptions, getSeriesQueryOptions, useBench } from '../features/benches/api/get-bench';
 import { BenchActions } from '../features/benches/components/bench-actions';
 import { CiteBench } from '../features/benches/components/cite-bench';
-import { Gallery, imageLimits, type GalleryItem } from '../features/benches/components/gallery';
-import { PhantomThumbs } from '../features/benches/components/phantom-thumbs';
+import { Gallery, type GalleryItem } from '../features/benches/components/gallery';
+import { PhantomThumbs, type PhantomPicture } from '../features/benches/components/phantom-thumbs';
 import { RankingPanel } from '../features/benches/components/ranking-panel';
 import { toCurves } from '../features/benches/model/curves';
 import { metricView } from '../features/benches/model/metric-view';
@@ -154,18 +154,18 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
 }
 
 /** Ground truths of the open phantoms, by slug. */
-function usePhantomPictures(bench: BenchDetail): ReadonlyMap<string, Picture> {
+function usePhantomPictures(bench: BenchDetail): ReadonlyMap<string, PhantomPicture> {
   const open = bench.phantoms.filter((p) => !p.sealed);
   const answers = useQueries({ queries: open.map((p) => getPhantomSimulationQueryOptions(p.slug, p.version)) });
-  const pictures = new Map<string, Picture>();
+  const pictures = new Map<string, PhantomPicture>();
   answers.forEach(({ data }, i) => {
     const phantom = open[i];
-    if (data?.truth && phantom) pictures.set(phantom.slug, toPicture(decodeArray(data.truth), data.grid));
+    if (data?.truth && phantom) pictures.set(phantom.slug, { picture: toPicture(decodeArray(data.truth), data.grid), background: data.background });
   });
   return pictures;
 }
 
-function SeenAt({ bench, ranking, noise, pictures }: { bench: BenchDetail; ranking: Ranking; noise: number; pictures: ReadonlyMap<string, Picture> }) {
+function SeenAt({ bench, ranking, noise, pictures }: { bench: BenchDetail; ranking: Ranking; noise: number; pictures: ReadonlyMap<string, PhantomPicture> }) {
   const open = bench.phantoms.filter((p) => !p.sealed);
   const [seen, setSeen] = useParam('seen', open[0]?.slug ?? '');
   const phantom = open.find((p) => p.slug === seen) ?? open[0];
@@ -174,9 +174,9 @@ function SeenAt({ bench, ranking, noise, pictures }: { bench: BenchDetail; ranki
   const runs = ranking.rows.map((row) => row.runs.find((r) => r.phantom === phantom?.slug && r.state === 'finished')?.run ?? null);
   const images = useQueries({ queries: runs.map((run) => ({ ...getRunImageQueryOptions(run ?? '', level, 'median'), enabled: run !== null })) });
   if (!phantom) return null;
-  const truth = pictures.get(phantom.slug) ?? null;
+  const truth = pictures.get(phantom.slug)?.picture ?? null;
   const data = simulation.data;
-  const [low, high] = imageLimits(data?.truthRange ?? [0, 1]);
+  const [low, high] = valueScale(data?.truthRange ?? [0, 1], data?.background ?? 0.5);
   const view = metricView('relative-l2-error');
   const shortName = shortNames(ranking.rows.map((r) => r.solver.name));
   const items: GalleryItem[] = [

@@ -109,12 +109,13 @@ async function readingsOf(em: EntityManager, run: LoadedRun): Promise<Pick<Queue
   const figures = await loadRunFigures(em, run);
   const levels = levelTable(figures, run.ladder, metric).map((row) => ({ level: row.level, median: row.median, p05: row.p05, p95: row.p95, outliers: countOutliers(row) }));
   const trivial = run.trivial?.[metric] ?? null;
-  const flags = (run.checks ?? []).filter(({ state }) => state === 'fail' || state === 'warning').map(({ name, state }) => `${name}: ${state}`);
+  // The checks have marks of their own in the queue; only a failed one is said again.
+  const flags = (run.checks ?? []).filter(({ state }) => state === 'fail').map(({ name }) => `${name} fails`);
   const outliers = levels.reduce((sum, row) => sum + row.outliers, 0);
   if (outliers > 0) flags.push(`${outliers} ${outliers === 1 ? 'draw' : 'draws'} beyond 3 sd`);
   const lowest = levels[0]?.median ?? null;
   const { better } = getMetric(metric);
-  if (trivial !== null && lowest !== null && lossOf(lowest, better) >= lossOf(trivial, better)) flags.push('no better than the trivial reconstruction at the lowest noise');
+  if (trivial !== null && lowest !== null && lossOf(lowest, better) >= lossOf(trivial, better)) flags.push('not below trivial at the lowest noise');
   return { metric, levels, trivial, flags };
 }
 

@@ -114,9 +114,10 @@ function paint(canvas: HTMLCanvasElement, picture: Picture, map: MapName, low: n
   if (!context) return;
   const colours = colourMap(map, dark);
   const image = context.createImageData(nx, ny);
+  const values = grownOverRim(picture);
   for (let j = 0; j < ny; j++) {
     for (let i = 0; i < nx; i++) {
-      const v = picture.values[j * nx + i] ?? NaN;
+      const v = values[j * nx + i] ?? NaN;
       if (Number.isNaN(v)) continue;
       const t = Math.round(((v - low) / (high - low)) * 255);
       const colour = colours[t < 0 ? 0 : t > 255 ? 255 : t] ?? [0, 0, 0];
@@ -129,6 +130,25 @@ function paint(canvas: HTMLCanvasElement, picture: Picture, map: MapName, low: n
     }
   }
   context.putImageData(image, 0, 0);
+}
+
+/**
+ * For drawing only: pixels just outside the body take a neighbour's value, so that the round clip and not the pixel staircase
+ * ends the picture.
+ */
+function grownOverRim({ grid: { nx, ny }, values }: Picture): Float64Array {
+  let grown = values;
+  for (let pass = 0; pass < 2; pass++) {
+    const before = grown;
+    grown = before.slice();
+    for (let p = 0; p < grown.length; p++) {
+      if (!Number.isNaN(before[p])) continue;
+      const i = p % nx;
+      const around = [i > 0 ? before[p - 1] : NaN, i < nx - 1 ? before[p + 1] : NaN, p >= nx ? before[p - nx] : NaN, p < nx * (ny - 1) ? before[p + nx] : NaN];
+      grown[p] = around.find((v) => v !== undefined && !Number.isNaN(v)) ?? NaN;
+    }
+  }
+  return grown;
 }
 
 /** Angle of electrode `index` (from 0), radians counter-clockwise. */

@@ -85,9 +85,23 @@ export function rangeOf(pictures: readonly Picture[]): [low: number, high: numbe
   return low <= high ? [low, high] : [0, 1];
 }
 
-/** Symmetric limits of a difference: the least step of 0.1, 0.25, 0.5, 1, 2, 4 that holds it. */
-const differenceSteps = [0.1, 0.25, 0.5, 1, 2, 4] as const;
-export const differenceLimit = (largestError: number): number => differenceSteps.find((s) => s >= largestError * 0.8) ?? 4;
+/**
+ * Ends of the colour scale for a truth and what is shown beside it: as far below the background as above it (not below zero
+ * where nothing is), so that the background has the same shade in every picture. A tenth of room to each side.
+ */
+export function valueScale([least, greatest]: readonly [number, number], background: number): [low: number, high: number] {
+  const reach = 1.1 * Math.max(Math.abs(greatest - background), Math.abs(background - least), 1e-9 * Math.abs(background));
+  const half = reach > 1e-6 * Math.abs(background) ? reach : Math.abs(background) / 2 || 1;
+  return [least >= 0 ? Math.max(0, background - half) : background - half, background + half];
+}
+
+/** Symmetric limits of a difference: the least of 1, 2.5, 5 times a power of ten that holds four fifths of it. */
+export function differenceLimit(largestError: number): number {
+  if (!(largestError > 0)) return 0.1;
+  const decade = 10 ** Math.floor(Math.log10(largestError * 0.8));
+  const step = [1, 2.5, 5, 10].find((s) => s * decade >= largestError * 0.8) ?? 10;
+  return Number((step * decade).toPrecision(3));
+}
 
 /** Values along the cut through the centre at an angle (radians) from A to B, `count` places; null outside. */
 export function cutThrough(picture: Picture, angle: number, count = 121): { position: number; value: number | null }[] {

@@ -35,9 +35,3 @@ export function Gallery({ items, low, high, background, unit, electrodes }: { it
     </div>
   );
 }
-
-/** Common limits of truth and reconstructions: the truth's range and a tenth of it to each side, not below zero. */
-export function imageLimits([low, high]: readonly [number, number]): [number, number] {
-  const span = high - low || Math.abs(high) || 1;
-  return [Math.max(0, low - 0.1 * span), high + 0.1 * span];
-}

@@ -1,20 +1,25 @@
 import { Link } from 'react-router-dom';
 import type { BenchDetail } from '../../../../shared/contracts/benches';
 import { DiscImage } from '../../../components/images/disc-image';
-import { rangeOf, type Picture } from '../../../components/images/pixels';
+import { rangeOf, valueScale, type Picture } from '../../../components/images/pixels';
 import { SealedDisc } from '../../../components/ui/notices';
 import { paths } from '../../../lib/paths';
 
+export interface PhantomPicture {
+  readonly picture: Picture;
+  readonly background: number;
+}
+
 /** The phantoms of a bench, small: truth, name, open or sealed. */
-export function PhantomThumbs({ phantoms, pictures }: { phantoms: BenchDetail['phantoms']; pictures: ReadonlyMap<string, Picture> }) {
+export function PhantomThumbs({ phantoms, pictures }: { phantoms: BenchDetail['phantoms']; pictures: ReadonlyMap<string, PhantomPicture> }) {
   return (
     <div className="phs">
       {phantoms.map((p) => {
-        const picture = pictures.get(p.slug) ?? null;
-        const [low, high] = picture ? rangeOf([picture]) : [0, 1];
+        const known = pictures.get(p.slug);
+        const [low, high] = known ? valueScale(rangeOf([known.picture]), known.background) : [0, 1];
         return (
           <Link key={p.slug} className="ph" to={paths.phantomVersion(p.slug, p.version)}>
-            {p.sealed ? <SealedDisc /> : <DiscImage label={`Ground truth of ${p.name}`} picture={picture} low={low} high={high === low ? low + 1 : high} size={62} />}
+            {p.sealed ? <SealedDisc /> : <DiscImage label={`Ground truth of ${p.name}`} picture={known?.picture ?? null} low={low} high={high} size={62} />}
             <div><b>{p.name}</b><span>{p.id}, {p.sealed ? 'sealed' : 'open'}</span></div>
           </Link>
         );

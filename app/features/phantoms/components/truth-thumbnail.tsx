@@ -1,6 +1,6 @@
 import { useMemo } from 'react';
 import { DiscImage } from '../../../components/images/disc-image';
-import { toPicture } from '../../../components/images/pixels';
+import { toPicture, valueScale } from '../../../components/images/pixels';
 import { SealedDisc } from '../../../components/ui/notices';
 import { decodeArray } from '../../../../shared/domain/array-encoding';
 import { usePhantomSimulation } from '../api/get-phantom';
@@ -14,6 +14,6 @@ export function TruthThumbnail({ slug, version, sealed, size = 44, label }: { sl
 function OpenTruth({ slug, version, size, label }: { slug: string; version: number; size: number; label: string }) {
   const { data } = usePhantomSimulation(slug, version);
   const picture = useMemo(() => (data?.truth ? toPicture(decodeArray(data.truth), data.grid) : null), [data]);
-  const [low, high] = data?.truthRange ?? [0, 1];
-  return <span className="thumb" style={{ width: size, display: 'block' }}><DiscImage label={label} picture={picture} low={low - (high - low) * 0.1} high={high + (high - low) * 0.1} /></span>;
+  const [low, high] = valueScale(data?.truthRange ?? [0, 1], data?.background ?? 0.5);
+  return <span className="thumb" style={{ width: size, display: 'block' }}><DiscImage label={label} picture={picture} low={low} high={high} /></span>;
 }

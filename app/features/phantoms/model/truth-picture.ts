@@ -1,4 +1,4 @@
-import type { Picture, PixelGrid } from '../../../components/images/pixels';
+import { valueScale, type Picture, type PixelGrid } from '../../../components/images/pixels';
 import { rasterFunction } from './raster';
 
 /** Pixels a side of the pictures in the form. */
@@ -8,14 +8,8 @@ export function bodyGrid(radius: number, side = pictureSide): PixelGrid {
   return { nx: side, ny: side, xMin: -radius, xMax: radius, yMin: -radius, yMax: radius, bodyRadius: radius };
 }
 
-/** Ends of the colour scale: the range of the truth and its background with a tenth to each side, never a flat scale. */
-export function colourRange(range: readonly [number, number] | null, background: number): [number, number] {
-  const low = Math.min(range?.[0] ?? background, background);
-  const high = Math.max(range?.[1] ?? background, background);
-  if (!(high - low > 1e-9 * Math.abs(high))) return [background * 0.5, background * 1.5];
-  const pad = (high - low) * 0.1;
-  return [low - pad > 0 ? low - pad : low * 0.9, high + pad];
-}
+/** Ends of the colour scale of a truth that may not be known yet. */
+export const colourRange = (range: readonly [number, number] | null, background: number): [number, number] => valueScale(range ?? [background, background], background);
 
 /** Steepest change between neighbouring pixels, per body radius. */
 export function steepestSlope(picture: Picture): number {

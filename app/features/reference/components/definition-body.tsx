@@ -38,6 +38,8 @@ export function DefinitionFields({ definition: d }: { definition: Definition }) 
   );
 }
 
+const capitalised = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+
 export function DefinitionNotes({ definition: d }: { definition: Definition }) {
   if (!d.notes.items.length) return null;
   return (
@@ -45,7 +47,7 @@ export function DefinitionNotes({ definition: d }: { definition: Definition }) {
       <div className="sheet">
         {d.notes.items.map((item, i) => {
           const [head, ...rest] = item.split(': ');
-          return <div className="trap" key={item}><i aria-hidden="true">{i + 1}</i>{rest.length ? <><b>{head}</b><p>{rest.join(': ')}</p></> : <p>{item}</p>}</div>;
+          return <div className="trap" key={item}><i aria-hidden="true">{i + 1}</i>{rest.length ? <><b>{head}</b><p>{capitalised(rest.join(': '))}</p></> : <p>{item}</p>}</div>;
         })}
       </div>
     </Section>

@@ -54,8 +54,8 @@ export function MetricTrial({ metricKey }: { metricKey: string }) {
   return (
     <div className="sheet">
       <div className="lf">
-        <div><p className="cp">Truth</p><DiscImage label="Truth" picture={picture.truth} low={0.8} high={2.2} /></div>
-        <div><p className="cp">Reconstruction</p><DiscImage label="Reconstruction" picture={picture.estimate} low={0.8} high={2.2} mark={at ? { x: at[0], y: at[1] } : null} /></div>
+        <div><p className="cp">Truth</p><DiscImage label="Truth" picture={picture.truth} low={0} high={2} /></div>
+        <div><p className="cp">Reconstruction</p><DiscImage label="Reconstruction" picture={picture.estimate} low={0} high={2} mark={at ? { x: at[0], y: at[1] } : null} /></div>
         <div>
           <p className="cp"><span>{metric.short} against the shift</span><span>this blur</span></p>
           <Plot

@@ -3,7 +3,7 @@ import { Link } from 'react-router-dom';
 import { barAxis, BarAxisTicks, IntervalBar } from '../../../components/charts/interval-bar';
 import { SolverGlyph } from '../../../components/ui/solver-glyph';
 import { StateMark } from '../../../components/ui/state-mark';
-import { formatError, formatPercent, plural } from '../../../lib/format';
+import { formatError, formatPercent } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
 import type { WaitingRun } from '../api/review';
 
@@ -25,7 +25,6 @@ export function readingAt(run: WaitingRun, noise: number) {
   return { level: row?.level ?? noise, row, ratio: row?.median && best ? row.median / best : null };
 }
 
-const outliers = (run: WaitingRun): number => run.levels.reduce((sum, row) => sum + row.outliers, 0);
 const wholeDays = (run: { waitingDays: number }): number => Math.floor(run.waitingDays);
 
 export function Waited({ of }: { of: { waitingDays: number } }) {
@@ -34,14 +33,8 @@ export function Waited({ of }: { of: { waitingDays: number } }) {
 }
 
 export function Flags({ run }: { run: WaitingRun }) {
-  const count = outliers(run);
-  return (
-    <>
-      {count ? <span className="fl"><i />{plural(count, 'draw')}</span> : null}
-      {run.flags.map((flag) => <span className="fl" key={flag}><i />{flag}</span>)}
-      {!count && run.flags.length === 0 ? <span className="mu">none</span> : null}
-    </>
-  );
+  if (run.flags.length === 0) return <span className="mu">none</span>;
+  return <>{run.flags.map((flag) => <span className="fl" key={flag}><i />{flag}</span>)}</>;
 }
 
 export const CheckDots = ({ run }: { run: WaitingRun }) => <span className="dots-row">{run.checks.map((check) => <StateMark key={check.key} state={check.state} quiet word={`${check.name}: ${check.state}`} />)}</span>;

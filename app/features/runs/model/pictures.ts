@@ -1,4 +1,4 @@
-import { difference, differenceLimit, insidePixels, largest, rangeOf, toPicture, type Picture, type PixelGrid } from '../../../components/images/pixels';
+import { difference, differenceLimit, insidePixels, largest, rangeOf, toPicture, valueScale, type Picture, type PixelGrid } from '../../../components/images/pixels';
 
 export interface RunPictures {
   image: Picture;
@@ -21,13 +21,11 @@ export function runPictures(imageValues: ArrayLike<number>, truthValues: ArrayLi
   const inside = insidePixels(grid);
   const image = toPicture(imageValues, grid, inside);
   const truth = truthValues ? toPicture(truthValues, grid, inside) : null;
-  const [least, greatest] = rangeOf([truth ?? image]);
-  // Room for overshoot on both sides, and for a truth that is nearly all background.
-  const margin = Math.max(0.1 * (greatest - least), 0.05 * Math.abs(background));
+  const [low, high] = valueScale(rangeOf([truth ?? image]), background);
   const delta = truth ? difference(image, truth) : null;
   const spot = delta ? largest(delta) : null;
   return {
-    image, truth, difference: delta, low: Math.min(least, background) - margin, high: Math.max(greatest, background) + margin,
+    image, truth, difference: delta, low, high,
     limit: lockedLimit ?? differenceLimit(spot?.value ?? 1), spot,
   };
 }

@@ -2,7 +2,7 @@ import { decodeArray } from '../../../../shared/domain/array-encoding';
 import { defaultLadder } from '../../../../shared/domain/ladder';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import type { Simulation } from '../../../../shared/contracts/simulations';
-import { toPicture, type Picture } from '../../../components/images/pixels';
+import { toPicture, valueScale, type Picture } from '../../../components/images/pixels';
 import type { PhantomData, ProblemSpec } from '../../../workers/reconstruction-messages';
 
 /** A phantom version as the preview needs it. */
@@ -19,12 +19,10 @@ export interface PreviewPhantom {
 
 export function previewPhantom(detail: PhantomDetail, simulation: Simulation): PreviewPhantom {
   const truth = simulation.truth ? decodeArray(simulation.truth) : null;
-  const [low, high] = simulation.truthRange ?? [simulation.background * 0.5, simulation.background * 1.5];
-  const pad = (high - low || simulation.background) * 0.1;
   return {
     name: detail.name, problem: { geometry: detail.version.definition.geometry, background: simulation.background, dataKind: simulation.dataKind },
     data: { contentHash: simulation.contentHash, clean: Float64Array.from(simulation.clean), noiseScale: simulation.noiseScale, truth, targets: simulation.targets ?? [] },
-    grid: simulation.grid, truth: truth && toPicture(truth, simulation.grid), range: [low - pad > 0 ? low - pad : 0, high + pad], floor: simulation.modelErrorFloor, unit: simulation.unit,
+    grid: simulation.grid, truth: truth && toPicture(truth, simulation.grid), range: valueScale(simulation.truthRange ?? [simulation.background, simulation.background], simulation.background), floor: simulation.modelErrorFloor, unit: simulation.unit,
   };
 }
 
