@@ -44,7 +44,7 @@ export default function VerificationPage() {
         {browser.open ? (
           <Button look="primary" onClick={browser.stop}>Stop, {browser.open} to go</Button>
         ) : (
-          <Button look="primary" disabled={undone.length === 0} onClick={() => browser.run(undone)}>Run all in this browser</Button>
+          <Button look="primary" disabled={items.length === 0} onClick={() => browser.run(undone.length ? undone : items.map((item) => item.key))}>Run all in this browser</Button>
         )}
       </PageHead>
       {verification.isPending ? <Loading label="Reading the published values and what the server made of them" /> : null}

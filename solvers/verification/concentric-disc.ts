@@ -21,7 +21,7 @@ function mode(n: number, published: string): VerificationCheck {
     key: `concentric-disc-mode-${n}`,
     group: 'Forward models',
     name: `Concentric disc, mode ${n}`,
-    line: 'eigenvalue of the Neumann-to-Dirichlet map, s = 2, ρ = 0.5',
+    line: 'Neumann-to-Dirichlet eigenvalue, s\u00a0=\u00a02, ρ\u00a0=\u00a00.5',
     published,
     unit: '',
     bound: 3e-5,

@@ -61,10 +61,10 @@ const wilcoxonP: VerificationCheck = {
 };
 
 export const statisticsChecks: readonly VerificationCheck[] = [
-  workedExample('friedman-chi-square', 'Friedman test, worked example', 'chi-square', '9.28', (result) => result.chiSquare),
-  workedExample('friedman-f', 'Friedman test, worked example', "Iman and Davenport's F", '3.69', (result) => result.f),
-  workedExample('nemenyi-critical-difference', 'Nemenyi critical difference', '5 % level', '1.25', (result) => result.criticalDifference),
-  workedExample('nemenyi-critical-difference-10', 'Nemenyi critical difference', '10 % level', '1.12', (result) => result.criticalDifference, 0.1),
+  workedExample('friedman-chi-square', 'Friedman chi-square', 'worked example', '9.28', (result) => result.chiSquare),
+  workedExample('friedman-f', 'F of Iman and Davenport', 'worked example', '3.69', (result) => result.f),
+  workedExample('nemenyi-critical-difference', 'Nemenyi critical difference, 5 %', 'worked example', '1.25', (result) => result.criticalDifference),
+  workedExample('nemenyi-critical-difference-10', 'Nemenyi critical difference, 10 %', 'worked example', '1.12', (result) => result.criticalDifference, 0.1),
   criticalValues,
   wilcoxonStatistic,
   wilcoxonP,

@@ -36,6 +36,9 @@ export function VerificationTable({ items, running, results, onRun }: Props) {
   );
 }
 
+/** Browsers keep their clock coarse: below its step nothing is known. */
+const timeOf = (seconds: number): string => (seconds < 1e-4 ? `under 0.1${thinSpace}ms` : formatSeconds(seconds));
+
 function Row({ item, running, result, onRun }: { item: VerificationItem; running: boolean; result: BrowserResult | undefined; onRun: Props['onRun'] }) {
   const { name, line, published, measured, unit, bound, gap, source, state } = item;
   const withUnit = (text: string): string => (unit === '' || text === '–' ? text : `${text}${thinSpace}${unit}`);
@@ -58,7 +61,7 @@ function Row({ item, running, result, onRun }: { item: VerificationItem; running
       <td className="src">{source.short}{source.fromMemory ? ', from memory' : ''}</td>
       <td data-h="On the server">
         {state === 'not-run' ? <StateMark state={running ? 'queued' : 'pending'} word="Not run" /> : <StateMark state={state} />}
-        {item.seconds === null ? null : <span className="vf-time">{formatSeconds(item.seconds)}</span>}
+        {item.seconds === null ? null : <span className="vf-time">{timeOf(item.seconds)}</span>}
       </td>
       <td className="br" data-h="In this browser"><InBrowser item={item} result={result} onRun={onRun} /></td>
     </tr>
@@ -72,5 +75,5 @@ function InBrowser({ item, result, onRun }: { item: VerificationItem; result: Br
   if (result.state === 'running') return <StateMark state="running" />;
   if (result.state === 'failed') return <><StateMark state="fail" word={result.message} />{button}</>;
   const [mark, word] = verdictMarks[browserVerdict(item, result.outcome)];
-  return <><StateMark state={mark} word={word} /><span className="vf-time">{formatSeconds(result.outcome.seconds)}</span></>;
+  return <><StateMark state={mark} word={word} /><span className="vf-time">{timeOf(result.outcome.seconds)}</span></>;
 }
