@@ -19,29 +19,29 @@ export function VerificationSummary({ data, results }: { data: Verification; res
   return (
     <div className="cert vf-strip" role="group" aria-label="Summary">
       <div>
-        <h4>On the server{running && missing ? <StateMark state="running" word={`${missing} to go`} size={12} /> : faults ? <StateMark state={failed ? 'fail' : 'caution'} word={faults} size={12} /> : null}</h4>
+        <h2>On the server{running && missing ? <StateMark state="running" word={`${missing} to go`} size={12} /> : faults ? <StateMark state={failed ? 'fail' : 'caution'} word={faults} size={12} /> : null}</h2>
         <div className="v">{count('pass')} of {items.length} pass</div>
         <p>{at ? `${formatDateTime(at)}, ` : ''}code <span className="mono">{codeVersion}</span></p>
       </div>
       <div>
-        <h4>Tightest margin</h4>
+        <h2>Tightest margin</h2>
         <div className="v">{margin ? marginText(margin.margin) : '–'}</div>
         <p>{margin ? margin.item.name : 'nothing measured yet'}</p>
       </div>
       <div>
-        <h4>Slowest</h4>
+        <h2>Slowest</h2>
         <div className="v">{formatSeconds(slow?.seconds)}</div>
         <p>{slow ? slow.name : 'nothing measured yet'}</p>
       </div>
       <div>
-        <h4>In this browser</h4>
+        <h2>In this browser</h2>
         <div className="v">{browser.done} of {items.length}</div>
         <p role="status">{browser.words}</p>
       </div>
       <div className="vf-seal">
         {resultHash ? <Seal hash={resultHash} size={60} /> : null}
         <div>
-          <h4>Result hash</h4>
+          <h2>Result hash</h2>
           {resultHash ? <p className="mono">{formatHash(resultHash, 2)}<br />{formatHash(resultHash.slice(8), 2)}</p> : <p>once every check has a result</p>}
         </div>
       </div>
