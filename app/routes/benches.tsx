@@ -43,7 +43,7 @@ export default function Benches() {
         <Empty title={view === 'all' ? 'No bench yet' : `No ${view} bench`}>A curator makes one from published phantom versions. <Link to={paths.phantoms()}>See the phantoms</Link></Empty>
       ) : (
         <>
-          {charted.length ? <div className="grid4" style={{ '--tiles': Math.min(4, Math.max(2, charted.length)) }}>{charted.map((b) => <BenchTile key={b.slug} bench={b} noise={noise} height={narrow ? 110 : 140} />)}</div> : null}
+          {charted.length ? <><h2 className="vh">Curves at the cursor</h2><div className="grid4" style={{ '--tiles': Math.min(4, Math.max(2, charted.length)) }}>{charted.map((b) => <BenchTile key={b.slug} bench={b} noise={noise} height={narrow ? 110 : 140} />)}</div></> : null}
           <Section title="All figures" note="Newest first; the heads sort">
             <div className="sheet"><DataTable caption="Benches" columns={columns} rows={shown} rowKey={(b) => b.slug} className="bt" /></div>
           </Section>

@@ -100,7 +100,7 @@ export function Checkbox({ children, error, ...rest }: ComponentProps<'input'> &
 export function ErrorSummary({ title, fields, children }: { title: string; fields?: readonly { id: string; name: string }[]; children?: ReactNode }) {
   return (
     <div className="box br" role="alert">
-      <h3><StateShape state="fail" size={15} />{title}</h3>
+      <p className="box-title"><StateShape state="fail" size={15} />{title}</p>
       {children ? <div>{children}</div> : null}
       {fields?.length ? (
         <p>

@@ -32,7 +32,7 @@ export function Invitations({ slug }: { slug: string }) {
               <span className="inv-roles">{invitation.roles.map((role) => <Tag key={role}>{role}</Tag>)}</span>
               <em>{invitation.state === 'expired' ? `expired ${formatShortDate(invitation.expiresAt)}, never opened` : `sent ${formatShortDate(invitation.sentAt)} by ${invitation.invitedBy.handle}, ${plural(Math.max(0, Math.ceil((Date.parse(invitation.expiresAt) - now) / day)), 'day')} left`}</em>
               <span className="a">
-                <button type="button" className="lk" disabled={again.isPending} onClick={() => again.mutate(invitation.id, { onSuccess: () => toast(`Sent again to ${invitation.email}.`) })} aria-label={`Send the invitation to ${invitation.email} again`}>{invitation.state === 'expired' ? 'Invite again' : 'Send again'}</button>
+                <button type="button" className="lk" disabled={again.isPending} onClick={() => again.mutate(invitation.id, { onSuccess: () => toast(`Sent again to ${invitation.email}.`) })} aria-label={`${invitation.state === 'expired' ? 'Invite again' : 'Send again'}: ${invitation.email}`}>{invitation.state === 'expired' ? 'Invite again' : 'Send again'}</button>
                 <button type="button" className="lk d" disabled={revoke.isPending} onClick={() => revoke.mutate(invitation.id)} aria-label={`Revoke the invitation to ${invitation.email}`}>Revoke</button>
               </span>
             </div>

@@ -5,11 +5,14 @@ import type { Waiting, WaitingItem } from '../model/waiting';
 /** Three columns: you, a developer, reviewers; each item since when, and one action. */
 export function WaitingPanel({ waiting }: { waiting: Waiting }) {
   return (
-    <section id="waiting" className="sheet wf" aria-label="What waits for whom">
-      <Column title="Waits for you" items={waiting.you} />
-      <Column title="Waits for a developer" items={waiting.developer} />
-      <Column title="Waits for reviewers" items={waiting.reviewers} />
-    </section>
+    <>
+      <h2 className="vh">What waits for whom</h2>
+      <section id="waiting" className="sheet wf" aria-label="What waits for whom">
+        <Column title="Waits for you" items={waiting.you} />
+        <Column title="Waits for a developer" items={waiting.developer} />
+        <Column title="Waits for reviewers" items={waiting.reviewers} />
+      </section>
+    </>
   );
 }
 

@@ -6,7 +6,7 @@ import type { Definition } from '../model/definitions';
 /** Formula, one sentence, parameters with unit and range, numbered notes. */
 export function DefinitionBody({ definition: d }: { definition: Definition }) {
   return (
-    <section className="sheet def">
+    <section className="sheet def" tabIndex={0} role="region" aria-label="Definition, scrolls sideways">
       {d.formula ? <Formula tex={d.formula} label={`Formula of ${d.name}`} /> : null}
       <p>{d.summary}</p>
     </section>

@@ -1,13 +1,18 @@
 type Json = Record<string, unknown>;
 
-/** A JSON Schema in a few words, for a table: 'integer, 1 to 200', 'one of a, b', 'list of number'. */
-export function schemaWords(schema: Json, depth = 0): string {
+/**
+ * A JSON Schema in a few words, for a table: 'integer, 1 to 200', 'one of a, b', 'list of number'. A schema may be a bare
+ * true (anything) or false (nothing more), as after the items of a tuple.
+ */
+export function schemaWords(schema: Json | boolean, depth = 0): string {
+  if (typeof schema === 'boolean') return schema ? 'any' : 'nothing';
   if (typeof schema.$ref === 'string') return schema.$ref.split('/').pop() ?? 'object';
   if (Array.isArray(schema.enum)) return `one of ${schema.enum.join(', ')}`;
   if ('const' in schema) return `always ${String(schema.const)}`;
   const options = (schema.anyOf ?? schema.oneOf) as Json[] | undefined;
   if (options) return depth > 1 ? 'one of several' : [...new Set(options.map((option) => schemaWords(option, depth + 1)))].join(' or ');
-  if (schema.type === 'array') return `list of ${schemaWords((schema.items ?? {}) as Json, depth + 1)}`;
+  if (Array.isArray(schema.prefixItems)) return `${schema.prefixItems.length} values: ${(schema.prefixItems as Json[]).map((item) => schemaWords(item, depth + 1)).join(', ')}`;
+  if (schema.type === 'array') return `list of ${schemaWords((schema.items ?? true) as Json | boolean, depth + 1)}`;
   if (schema.type === 'object') return 'object';
   const range = [schema.minimum ?? schema.exclusiveMinimum, schema.maximum ?? schema.exclusiveMaximum];
   // A safe-integer bound says nothing to a reader.

@@ -91,7 +91,7 @@ function levelCells({ run, group, i, colour, onCell }: { run: RunDetail; group: 
         style={shaded && !past && column !== 'sd' ? { background: `rgba(var(--heat), ${shade(value, trivial).toFixed(3)})` } : undefined}
         title={value === null ? (row.reason ?? 'not defined') : undefined}
       >
-        {onCell ? <button type="button" className="lnk quiet" onClick={() => onCell(anchor)} aria-label={`Note on ${anchor}`}>{print(value, group)}</button> : print(value, group)}
+        {onCell ? <button type="button" className="lnk quiet" onClick={() => onCell(anchor)} aria-label={`${print(value, group)}, note on ${anchor}`}>{print(value, group)}</button> : print(value, group)}
         {flag ? <span className="vh">, draw {flag.draw + 1} lies {flag.deviations.toFixed(1)} standard deviations out</span> : null}
       </td>
     );

@@ -5,7 +5,7 @@ import { formatHash } from '../../../lib/format';
 /** Everything needed to repeat the run. */
 export function Provenance({ run }: { run: RunDetail }) {
   return (
-    <div className="sheet">
+    <div className="sheet" tabIndex={0} role="region" aria-label="Provenance, scrolls sideways">
       <table className="prov" id="provenance">
         <thead className="vh"><tr><th scope="col">What</th><th scope="col">Which</th><th scope="col">Hash</th><th scope="col">Seal</th></tr></thead>
         <tbody>

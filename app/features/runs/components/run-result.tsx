@@ -77,6 +77,7 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
   const setNoiseLevel = (value: number | undefined) => value !== undefined && setNoiseText(String(value));
   return (
     <>
+      <h2 className="vh">Images</h2>
       {image.isError ? <ErrorPanel error={image.error} what="This image" onRetry={() => void image.refetch()} /> : null}
       {image.isPending ? <Loading label="Fetching the images" disc /> : phone ? <PhoneImage run={run} pictures={pictures} cutAngle={cutAngle} cut={cut} position={trial?.metrics['position-error'] ?? null} l2={trial?.metrics['relative-l2-error'] ?? null} words={trial ? `draw ${trial.draw + 1}${drawWords ? `, ${drawWords}` : ''}` : ''} /> : <Triptych run={run} trial={trial} drawWords={drawWords} pictures={pictures} cutAngle={cutAngle} cut={cut} />}
       <ImageTools run={run} level={level} draw={choice} onDraw={(value) => setDraw(value === 'median' || value === 'worst' ? value : String(value + 1))} locked={locked} onLock={(value) => setLock(value === null ? null : String(value))} limit={pictures?.limit ?? null} stored={image.data?.stored ?? true} />

@@ -23,7 +23,7 @@ export function SignInPanel({ signIn, returnTo, children }: { signIn: Session['s
             <div className="rl" key={account.handle}>
               <b>{account.handle}</b>
               <em>{account.line}</em>
-              <ButtonAnchor href={address(signIn.url, { returnTo, login: account.handle })} aria-label={`Sign in as ${account.handle}`}>Take role</ButtonAnchor>
+              <ButtonAnchor href={address(signIn.url, { returnTo, login: account.handle })} aria-label={`Take role: sign in as ${account.handle}`}>Take role</ButtonAnchor>
             </div>
           ))}
         </section>
