@@ -42,16 +42,29 @@ afterAll(async () => {
   await site?.dispose();
 });
 
+const underWay = new WeakMap<Page, Set<unknown>>();
 async function viewer(handle: string): Promise<Viewer> {
-  const known = viewers.get(handle) ?? (await openViewer(browser, site, handle === '' ? {} : { handle }));
-  viewers.set(handle, known);
-  return known;
+  const known = viewers.get(handle);
+  if (known) return known;
+  const made = await openViewer(browser, site, handle === '' ? {} : { handle });
+  const requests = new Set<unknown>();
+  made.page.on('request', (request) => void requests.add(request));
+  made.page.on('requestfinished', (request) => void requests.delete(request));
+  made.page.on('requestfailed', (request) => void requests.delete(request));
+  underWay.set(made.page, requests);
+  viewers.set(handle, made);
+  return made;
 }
 
-/** Until the page has its heading and nothing is being fetched. */
+/** Until the page has its heading and nothing has been fetched for a moment. */
 async function settled(page: Page): Promise<void> {
-  await page.waitForFunction(() => document.querySelector('main h1') !== null && document.querySelector('main .sk') === null && !document.querySelector('[aria-busy=true]'));
-  await page.waitForLoadState('networkidle');
+  const ready = () => page.waitForFunction(() => document.querySelector('main h1') !== null && document.querySelector('main .sk') === null && !document.querySelector('[aria-busy=true]'));
+  await ready();
+  for (let quiet = 0; quiet < 4; ) {
+    await page.waitForTimeout(40);
+    quiet = underWay.get(page)?.size ? 0 : quiet + 1;
+  }
+  await ready();
 }
 
 const run = (solver: string) => () => `/runs/${small.runs[solver]}`;
