@@ -26,7 +26,8 @@ export function penaltyMatrix(problem: ForwardProblem, kind: PenaltyKey): LowerT
   return gramLower(problem.penalty(kind), problem.unknownWeights, mass);
 }
 
-function gramLower(l: SparseMatrix, weights: Float64Array, mass: number): LowerTriangle {
+/** Lower triangle of L^T L + mass * diag(weights). @throws RangeError where the number of weights is not that of the columns */
+export function gramLower(l: SparseMatrix, weights: Float64Array, mass: number): LowerTriangle {
   const n = l.cols;
   if (weights.length !== n) throw new RangeError(`The penalty has ${n} columns, the problem ${weights.length} weights.`);
   // Rows of L that touch each column.

@@ -31,7 +31,12 @@ export interface SpectralSystem {
   readonly offset: Float64Array;
 }
 
-const cache = new WeakMap<ForwardProblem, Map<StandardForm, SpectralSystem>>();
+/** R of a penalty R^T R, by its half solves on `count` right-hand sides one after another: 'forward' is R^{-T} b, 'backward' R^{-1} b. */
+export interface StandardFactor {
+  halfSolveMany(b: Float64Array, count: number, half: 'forward' | 'backward'): void;
+}
+
+const cache = new WeakMap<ForwardProblem, Map<string, SpectralSystem>>();
 
 /**
  * The system of a problem, computed once a problem object and form.
@@ -39,14 +44,22 @@ const cache = new WeakMap<ForwardProblem, Map<StandardForm, SpectralSystem>>();
  * @throws RangeError where the derivative is zero or not finite, or shapes do not fit
  */
 export function spectralSystem(problem: ForwardProblem, form: StandardForm): SpectralSystem {
+  return spectralSystemOf(problem, form, () => (form === 'none' ? null : factorPenalty(problem, form)));
+}
+
+/**
+ * The same with any penalty; `makeFactor` gets the derivative at the background (dataSize x unknowns, row-major, not to be changed).
+ * @param form names the penalty with all it depends on: one computation a problem object and name
+ */
+export function spectralSystemOf(problem: ForwardProblem, form: string, makeFactor: (jacobian: Float64Array) => StandardFactor | null): SpectralSystem {
   let forms = cache.get(problem);
   if (!forms) cache.set(problem, (forms = new Map()));
   let system = forms.get(form);
-  if (!system) forms.set(form, (system = computeSystem(problem, form)));
+  if (!system) forms.set(form, (system = computeSystem(problem, makeFactor)));
   return system;
 }
 
-function computeSystem(problem: ForwardProblem, form: StandardForm): SpectralSystem {
+function computeSystem(problem: ForwardProblem, makeFactor: (jacobian: Float64Array) => StandardFactor | null): SpectralSystem {
   const { dataSize, unknowns } = problem;
   const background = problem.background();
   requireVector(background, unknowns, 'The background');
@@ -55,7 +68,7 @@ function computeSystem(problem: ForwardProblem, form: StandardForm): SpectralSys
     throw new RangeError(`The derivative is ${jacobian.rows} x ${jacobian.cols}, the problem ${dataSize} x ${unknowns}.`);
   const matrix = Float64Array.from(jacobian.values);
   requireVector(matrix, dataSize * unknowns, 'The derivative');
-  const factor = form === 'none' ? null : factorPenalty(problem, form);
+  const factor = makeFactor(jacobian.values);
   // The rows of J are the right-hand sides of R^{-T}.
   factor?.halfSolveMany(matrix, dataSize, 'forward');
   const { u, s, v } = thinSvd(matrix, dataSize, unknowns);
