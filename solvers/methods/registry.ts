@@ -4,8 +4,13 @@ import { cglsMethod } from './cgls';
 import { exponentialFilterMethod } from './exponential-filter';
 import { gaussNewtonMethod } from './gauss-newton';
 import { iteratedTikhonovMethod } from './iterated-tikhonov';
+import { kaczmarzMethod } from './kaczmarz';
+import { landweberMethod } from './landweber';
+import { lsqrMethod } from './lsqr';
+import { nuMethod } from './nu-method';
 import { sensitivityPriorMethod } from './sensitivity-prior';
 import { smoothnessPriorMethod } from './smoothness-prior';
+import { sirtMethod } from './sirt';
 import { tikhonovMethod } from './tikhonov';
 import { totalVariationMethod } from './total-variation';
 import { trivialMethod } from './trivial';
@@ -20,6 +25,11 @@ export const methods: readonly Method[] = [
   sensitivityPriorMethod,
   smoothnessPriorMethod,
   cglsMethod,
+  lsqrMethod,
+  landweberMethod,
+  nuMethod,
+  kaczmarzMethod,
+  sirtMethod,
   totalVariationMethod,
   gaussNewtonMethod,
 ];

@@ -47,6 +47,36 @@ describe('spectral filters against numpy and scipy', () => {
   });
 });
 
+describe('iterations against numpy and scipy', () => {
+  it.each(reference.landweber)('Landweber, $steps steps, relaxation $relaxation', ({ steps, relaxation, x }) => {
+    expect(relativeGap(changeOf('landweber', { penalty: 'identity', relaxation }, fixed(steps)), x)).toBeLessThan(bound);
+  });
+  it.each(reference.nu)('nu-method, $steps steps, nu = $nu: Jacobi polynomials of scipy', ({ steps, nu, x }) => {
+    expect(relativeGap(changeOf('nu-method', { penalty: 'identity', nu }, fixed(steps)), x)).toBeLessThan(bound);
+  });
+  it.each(reference.lsqr)('LSQR, $steps steps: scipy, and CGLS here', ({ steps, x }) => {
+    const own = changeOf('lsqr', { penalty: 'identity' }, fixed(steps));
+    expect(relativeGap(own, x)).toBeLessThan(reference.tolerance.krylov);
+    expect(relativeGap(changeOf('cgls', { penalty: 'identity' }, fixed(steps)), own)).toBeLessThan(reference.tolerance.krylov);
+  });
+  it.each(reference.kaczmarz)('Kaczmarz, $steps sweeps, relaxation $relaxation', ({ steps, relaxation, x }) => {
+    expect(relativeGap(changeOf('kaczmarz', { penalty: 'identity', relaxation }, fixed(steps)), x)).toBeLessThan(bound);
+  });
+  it.each(reference.sirt)('SIRT, $steps steps, relaxation $relaxation', ({ steps, relaxation, x }) => {
+    expect(relativeGap(changeOf('sirt', { relaxation }, fixed(steps)), x)).toBeLessThan(bound);
+  });
+  it.each(['landweber', 'nu-method', 'lsqr', 'kaczmarz', 'sirt'])('%s stops at the first step within the noise', (key) => {
+    const smooth = syntheticProblem({ side: 9, data: 18 });
+    const { simulated } = syntheticTruth(smooth);
+    const noise = { norm: 0.1 * simulated.noiseScale, level: 0.1 };
+    const method = getMethod(key);
+    const { iterations, residualNorm, stop } = method.prepare(smooth, {}, { key: 'discrepancy', safetyFactor: 1.2 }).reconstruct(simulated.clean, noise);
+    expect(stop).toBe('discrepancy');
+    expect(residualNorm).toBeLessThanOrEqual(1.2 * noise.norm);
+    if (iterations > 1) expect(method.prepare(smooth, {}, fixed(iterations - 1)).reconstruct(simulated.clean, noise).residualNorm).toBeGreaterThan(1.2 * noise.norm);
+  });
+});
+
 describe('filters', () => {
   const smooth = syntheticProblem({ side: 9, data: 18 });
   const { simulated } = syntheticTruth(smooth);
