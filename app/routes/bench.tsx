@@ -134,6 +134,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
           {ranking.data ? <WhoBeatsWhom ranking={ranking.data} noise={noise} floor={bench.modelErrorFloor} /> : null}
         </>
       )}
+      <h2 className="vh">About this bench</h2>
       <section className="sec notes">
         <div>
           <h3>How the table is made</h3>
