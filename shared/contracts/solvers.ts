@@ -8,6 +8,7 @@ export const ruleSettingSchema = z.discriminatedUnion('key', [
   z.strictObject({ key: z.literal('discrepancy'), safetyFactor: z.number().min(1, 'At least 1.').max(10, 'At most 10.') }),
   z.strictObject({ key: z.literal('gcv') }),
   z.strictObject({ key: z.literal('l-curve') }),
+  z.strictObject({ key: z.literal('quasi-optimality') }),
 ]);
 /** A method with its parameters; the parameters are checked against the method's own schema through the registry. */
 export const configurationSchema = z.strictObject({

@@ -159,14 +159,15 @@ export interface MethodCapabilities {
 /** Group under which the form lists a method. */
 export type MethodClass = 'baseline' | 'spectral' | 'iterative' | 'variational' | 'nonlinear' | 'direct' | 'statistical';
 
-export type RuleKey = 'fixed' | 'discrepancy' | 'gcv' | 'l-curve';
+export type RuleKey = 'fixed' | 'discrepancy' | 'gcv' | 'l-curve' | 'quasi-optimality';
 
 /** The rule that chooses the regularisation parameter, with its own settings. */
 export type RuleSetting =
   | { readonly key: 'fixed'; readonly value: number }
   | { readonly key: 'discrepancy'; readonly safetyFactor: number }
   | { readonly key: 'gcv' }
-  | { readonly key: 'l-curve' };
+  | { readonly key: 'l-curve' }
+  | { readonly key: 'quasi-optimality' };
 
 /** One field of a method's parameters, as forms and the reference page show it. */
 export interface ParameterField {

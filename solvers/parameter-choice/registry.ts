@@ -4,9 +4,10 @@ import { discrepancyRule } from './discrepancy';
 import { fixedRule } from './fixed';
 import { gcvRule } from './gcv';
 import { lCurveRule } from './l-curve';
+import { quasiOptimalityRule } from './quasi-optimality';
 import type { ParameterRule } from './rule';
 
-export const parameterRules: readonly ParameterRule[] = [fixedRule, discrepancyRule, gcvRule, lCurveRule];
+export const parameterRules: readonly ParameterRule[] = [fixedRule, discrepancyRule, gcvRule, lCurveRule, quasiOptimalityRule];
 
 /** @throws RangeError for an unknown key. */
 export const getParameterRule = (key: RuleKey): ParameterRule => findByKey(parameterRules, key, 'parameter-choice rule');

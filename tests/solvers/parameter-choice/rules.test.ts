@@ -3,6 +3,8 @@ import { discrepancyRule } from '../../../solvers/parameter-choice/discrepancy';
 import { gcvRule } from '../../../solvers/parameter-choice/gcv';
 import { lCurveCurvature, lCurveRule } from '../../../solvers/parameter-choice/l-curve';
 import { fixedRule } from '../../../solvers/parameter-choice/fixed';
+import { quasiOptimality, quasiOptimalityRule } from '../../../solvers/parameter-choice/quasi-optimality';
+import quasi from '../../reference/quasi-optimality.json';
 import { tikhonovResidual } from '../../../solvers/parameter-choice/spectral-data';
 import { cglsInCoefficients } from '../../../solvers/methods/cgls';
 import { caseSpectrum, expandCase, regularisation } from '../../support/regularisation-case';
@@ -58,6 +60,22 @@ describe.each(regularisation.cases.map((item) => [item.id, item] as const))('%s'
     const { alpha } = lCurveRule.chooseAlpha(data, noNoise, { key: 'l-curve' });
     expect(relative(alpha!, values.lcurve.alpha)).toBeLessThan(tolerance.lCurve.relative);
     expect(relative(lCurveCurvature(data, alpha!), values.lcurve.curvature)).toBeLessThan(tolerance.lCurve.relative);
+  });
+});
+
+// Tikhonov and Glasko 1965, minimised by scipy (make-quasi-optimality.py); tolerances and their reasons are in the file.
+describe.each(quasi.cases)('quasi-optimality, $id', ({ id, alpha: expected, value }) => {
+  const { data, r } = caseSpectrum(regularisation.cases.find((item) => item.id === id)!);
+  it('finds the alpha of scipy', () => {
+    const { alpha, attained } = quasiOptimalityRule.chooseAlpha(data, noNoise, { key: 'quasi-optimality' });
+    expect(attained).toBe(true);
+    expect(relative(alpha!, expected)).toBeLessThan(quasi.tolerance.alpha);
+    expect(relative(quasiOptimality(data, alpha!), value)).toBeLessThan(quasi.tolerance.value);
+  });
+  it('takes the index with the smallest last component of truncated SVD', () => {
+    const { index } = quasiOptimalityRule.chooseIndex(data, noNoise, { key: 'quasi-optimality' }, r);
+    const components = Array.from(data.singularValues.subarray(0, Math.floor(data.dataSize / 2)), (s, k) => Math.abs(data.coefficients[k] / s));
+    expect(index).toBe(components.indexOf(Math.min(...components)) + 1);
   });
 });
 

@@ -6,7 +6,7 @@ import { methods } from '../../../../solvers/methods/registry';
 import { parameterRules } from '../../../../solvers/parameter-choice/registry';
 
 const text = z.string();
-const ruleKeys = ['fixed', 'discrepancy', 'gcv', 'l-curve'] as const;
+const ruleKeys = ['fixed', 'discrepancy', 'gcv', 'l-curve', 'quasi-optimality'] as const;
 /** The form as it is typed; numbers stay text until they are read. */
 export const solverFormSchema = z.object({
   bench: text, group: text, name: text, description: text, whatChanged: text, method: text,
