@@ -91,7 +91,7 @@ export function defineMetric(definition: Omit<MetricDefinition, 'evaluate'>): Me
 export const ownDefinition: Source = { short: 'Definition of this registry', full: 'The norm is the discrete form of the integral over the body; dividing by the distance of the truth to the background is the choice of this registry.' };
 export const adler2009: Source = {
   short: 'Adler et al. 2009',
-  full: 'A. Adler et al.: GREIT: a unified approach to 2D linear EIT reconstruction of lung images. Physiological Measurement 30 (2009) S35-S55.',
+  full: 'A. Adler et al., figures of merit for linear image reconstruction, Physiological Measurement 30 (2009) S35-S55.',
   fromMemory: true,
 };
 export const noTarget = (summary: ImageSummary): MetricValue | null => (summary.input.targets.length === 0 ? undefinedMetric('The phantom declares no target.') : null);

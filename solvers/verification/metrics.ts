@@ -37,7 +37,7 @@ const trivial: VerificationCheck = {
 
 const adler: Source = {
   short: 'Adler et al. 2009; numpy 1.24.2',
-  full: 'A. Adler et al., GREIT: a unified approach to 2D linear EIT reconstruction of lung images, Physiol. Meas. 30 (2009) S35-S55 (definitions). Values computed with numpy 1.24.2 for exp(-r²/(2·0.12²)) about (0.4, 0.2), target of radius 0.2.',
+  full: 'A. Adler et al., figures of merit for linear image reconstruction, Physiol. Meas. 30 (2009) S35-S55 (definitions). Values computed with numpy 1.24.2 for exp(-r²/(2·0.12²)) about (0.4, 0.2), target of radius 0.2.',
   fromMemory: true,
 };
 
