@@ -1,25 +1,33 @@
-import 'katex/dist/katex.min.css';
+import { Children, isValidElement, type ComponentProps, type ReactNode } from 'react';
 import ReactMarkdown from 'react-markdown';
-import rehypeKatex from 'rehype-katex';
-import rehypeSanitize, { defaultSchema } from 'rehype-sanitize';
+import rehypeSanitize from 'rehype-sanitize';
 import remarkMath from 'remark-math';
+import FormulaRendered from './formula-rendered';
 
-/** The default allow-list, plus the class names by which remark-math hands formulas to KaTeX. No style, no raw HTML. */
-const schema = {
-  ...defaultSchema,
-  attributes: {
-    ...defaultSchema.attributes,
-    code: [...(defaultSchema.attributes?.code ?? []), ['className', /^language-./, 'math-inline', 'math-display']],
-  },
-} satisfies typeof defaultSchema;
+const textOf = (children: ReactNode): string => Children.toArray(children).filter((c) => typeof c === 'string').join('').trim();
+
+const isMath = (className: string | undefined): boolean => className?.split(' ').includes('language-math') ?? false;
+
+function Code({ className, children }: ComponentProps<'code'>) {
+  return isMath(className) ? <FormulaRendered tex={textOf(children)} inline /> : <code className={className}>{children}</code>;
+}
+
+/** A displayed formula arrives as code inside pre; the pre goes, so that the formula is not set as a listing. */
+function Pre({ children }: ComponentProps<'pre'>) {
+  const only = Children.toArray(children)[0];
+  if (isValidElement<ComponentProps<'code'>>(only) && isMath(only.props.className)) return <div><FormulaRendered tex={textOf(only.props.children)} inline={false} /></div>;
+  return <pre>{children}</pre>;
+}
 
 /** A page has one h1; headings written by people start at h3. */
-const components = { h1: 'h3', h2: 'h3', h3: 'h4', h4: 'h4' } as const;
+const components = { h1: 'h3', h2: 'h3', h3: 'h4', h4: 'h4', code: Code, pre: Pre } as const;
 
-// Sanitising comes before KaTeX: what people wrote is cleaned, what KaTeX draws is trusted (trust: false by default).
+// The default allow-list of rehype-sanitize: no style, no raw HTML; of a formula it leaves the class language-math and the text.
+// KaTeX draws it afterwards (trust: false). It is the one KaTeX of this project: what another version draws does not match its
+// style sheet and loses its subscripts.
 export default function MarkdownRendered({ source }: { source: string }) {
   return (
-    <ReactMarkdown remarkPlugins={[remarkMath]} rehypePlugins={[[rehypeSanitize, schema], [rehypeKatex, { throwOnError: false, strict: 'ignore' }]]} components={components}>
+    <ReactMarkdown remarkPlugins={[remarkMath]} rehypePlugins={[rehypeSanitize]} components={components}>
       {source}
     </ReactMarkdown>
   );
