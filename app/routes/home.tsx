@@ -37,7 +37,7 @@ export default function Home() {
     <Page title="Hadamark" className="page-home" rule={{ levels: series.data?.ladder ?? defaultLadder, floor: series.data?.modelErrorFloor ?? null }}>
       <div className="hero">
         <h1>Find the inverse method that holds at your noise.</h1>
-        <p>Hadamark runs every submitted solver on every phantom, over ten noise levels with repeated draws, and publishes the errors once a reviewer has signed the table.</p>
+        <p>Hadamark runs every entered solver on every phantom of its bench, over a ladder of noise levels with repeated draws. Beside each error stands whether an independent reviewer has signed it.</p>
       </div>
       {benches.isPending ? (
         <Loading label="Fetching the benches" />
