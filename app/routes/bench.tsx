@@ -30,7 +30,7 @@ import type { RankingRow } from '../features/benches/model/ranking-groups';
 import { getPhantomSimulationQueryOptions } from '../features/phantoms/api/get-phantom';
 import { getRunImageQueryOptions } from '../features/runs/api/get-run-image';
 import { isApiError } from '../lib/api-client';
-import { formatCount, formatPercent, numberWord, plural } from '../lib/format';
+import { formatPercent, numberWord, plural } from '../lib/format';
 import { paths } from '../lib/paths';
 import { useNarrow } from '../lib/use-media';
 import { useSettled } from '../lib/use-settled';
@@ -143,7 +143,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
         </div>
         <div>
           <h3>What breakdown means</h3>
-          <p>The lowest noise at which the median error reaches that of answering with the plain background. At the other end, noise below the model-error floor (dotted) is smaller than the gap between the two meshes.</p>
+          <p>The noise at which the median error, once below that of answering with the plain background, rises to it again. A method that is worse at less noise, because it fits the error of its model, is not counted as broken down there: read its curve. At the other end, noise below the model-error floor (dotted) is smaller than the gap between the two meshes.</p>
         </div>
         <CiteBench
           slug={bench.slug} noise={settled} metric={metric} citation={citation.data}
@@ -217,7 +217,7 @@ function WhoBeatsWhom({ ranking, noise, floor }: { ranking: Ranking; noise: numb
   const ranked = order.filter((r): r is RankingRow & { meanRank: number } => r.meanRank !== null);
   if (ranking.belowFloor) return <Section title={<>Who beats whom at {formatPercent(noise)} noise</>}><BelowFloor noise={noise} floor={floor} /></Section>;
   return (
-    <Section title={<>Who beats whom at {formatPercent(ranking.level)} noise</>} note={`${formatCount(test.blocks)} paired draws. ${test.words}`}>
+    <Section title={<>Who beats whom at {formatPercent(ranking.level)} noise</>} note={test.words}>
       {ranked.length < 2 ? (
         <Empty title="Nothing to compare yet">Two finished entries are needed for paired draws.</Empty>
       ) : (

@@ -2,7 +2,7 @@ import type { Citation } from '../../../../shared/contracts/benches';
 import { Button, ButtonAnchor, ButtonLink } from '../../../components/ui/button';
 import { useToast } from '../../../components/ui/toast';
 import { apiUrl } from '../../../lib/api-client';
-import { formatHash, formatPercent } from '../../../lib/format';
+import { formatPercent } from '../../../lib/format';
 
 /** How to cite the reading, and the ways to take it along. */
 export function CiteBench({ slug, noise, metric, citation, comparePath, compareLabel }: { slug: string; noise: number; metric: string; citation: Citation | undefined; comparePath: string | null; compareLabel: string }) {
@@ -17,7 +17,7 @@ export function CiteBench({ slug, noise, metric, citation, comparePath, compareL
   return (
     <div>
       <h3>Cite this bench</h3>
-      {citation ? <p className="mono" style={{ fontSize: 12, overflowWrap: 'anywhere' }}>{words} Content hash {formatHash(citation.contentHash)}</p> : null}
+      {citation ? <p className="mono" style={{ fontSize: 12, overflowWrap: 'anywhere' }}>{words}</p> : null}
       <div className="flex gap-x2 flex-wrap" style={{ marginTop: 8 }}>
         {comparePath ? <ButtonLink to={comparePath}>{compareLabel}</ButtonLink> : null}
         {citation ? <Button onClick={() => copy(words, 'Citation')}>Copy citation</Button> : null}
