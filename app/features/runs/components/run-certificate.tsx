@@ -19,7 +19,7 @@ const stateOf = (check: CheckResultWire): MarkState => check.state;
 /** The checks of a run, each with figure, bound and source; the seal of the result last. */
 export function RunCertificate({ run }: { run: RunDetail }) {
   if (!run.checks.length) return null;
-  const meaning = (check: CheckResultWire) => [check.meaning, checkBound(check), check.source].filter(Boolean).join('; ');
+  const meaning = (check: CheckResultWire) => [check.meaning.replace(/\.$/, ''), checkBound(check), check.source].filter(Boolean).join('; ');
   return (
     <section aria-label="Validation checks" id="checks">
       <div className="only-d" style={{ marginTop: 20 }}>
