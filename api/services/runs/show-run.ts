@@ -11,6 +11,9 @@ import { metrics } from '../../../solvers/metrics/registry';
 import { runSubject, type LoadedRun } from './find-run.ts';
 import { toRunSummary } from './run-summary.ts';
 
+/** In words, as the pages write dates; the exact instant is in finishedAt. */
+const written = new Intl.DateTimeFormat('en-GB', { dateStyle: 'long', timeStyle: 'short', timeZone: 'UTC' });
+
 /** A run with every table of figures. One that is under way shows the trials it has. */
 export async function showRun(em: EntityManager, input: { readonly run: LoadedRun; readonly actor: Actor | null; readonly now: Date; readonly secondsLeft?: number | null }): Promise<RunDetail> {
   const { run, actor, now } = input;
@@ -83,6 +86,6 @@ function provenanceOf(run: LoadedRun, simulation: Simulation): RunDetail['proven
     { what: 'Bench', detail: `${bench.id}, ${bench.title}, revision ${bench.revision}`, hash: bench.contentHash },
     { what: 'Noise', detail: `Gaussian, exact level, relative to the ${phantom.definition.noiseReference}; ${run.ladder.length} levels, ${run.draws} draws each, seed ${run.seed}`, hash: null },
     { what: 'Code', detail: run.codeVersion ? `Version ${run.codeVersion}` : 'Not started', hash: null },
-    { what: 'Result', detail: run.finishedAt ? `Over the images of ${run.total} draws, finished ${run.finishedAt.toISOString()}` : 'Not finished', hash: run.resultHash ?? null },
+    { what: 'Result', detail: run.finishedAt ? `Over the images of ${run.total} draws, finished ${written.format(run.finishedAt)} UTC` : 'Not finished', hash: run.resultHash ?? null },
   ];
 }
