@@ -1,18 +1,25 @@
 import { findByKey } from '../core/registry';
 import type { MetricInput, MetricValue } from '../core/types';
 import { amplitudeResponse } from './amplitude-response';
+import { correlationScore } from './correlation-score';
 import { dataResidualRatio } from './data-residual-ratio';
 import { summarise, type MetricDefinition } from './metric-definition';
 import { positionError } from './position-error';
+import { psnrScore } from './psnr-score';
 import { radialPositionDifference } from './radial-position-difference';
+import { relativeH1Error } from './relative-h1-error';
 import { relativeL1Error } from './relative-l1-error';
 import { relativeL2Error } from './relative-l2-error';
 import { relativeSupError } from './relative-sup-error';
 import { resolution } from './resolution';
+import { ringing } from './ringing';
+import { shapeDeformation } from './shape-deformation';
+import { ssimScore } from './ssim-score';
 import { supError } from './sup-error';
 
 export const metrics: readonly MetricDefinition[] = [
   relativeL2Error, supError, relativeSupError, relativeL1Error, positionError, radialPositionDifference, resolution, amplitudeResponse, dataResidualRatio,
+  relativeH1Error, ssimScore, psnrScore, correlationScore, shapeDeformation, ringing,
 ];
 
 /** @throws RangeError for an unknown key. */

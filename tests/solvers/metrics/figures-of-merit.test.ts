@@ -38,11 +38,13 @@ describe.each(reference.cases.map((item) => [item.id, item] as const))('%s', (id
     expect(upright['position-error'].value).toBeCloseTo(values.PE_vector_distance, 11);
     expect(upright['radial-position-difference'].value).toBeCloseTo(values.PE, 11);
     expect(upright.resolution.value).toBeCloseTo(values.RES, 12);
+    expect(upright['shape-deformation'].value).toBeCloseTo(values.SD, 12);
+    expect(upright.ringing.value).toBeCloseTo(values.RNG, 11);
   });
   it('are the same for a resistive target of the same shape over a background', () => {
     const picture = pictures[id];
     const turned = evaluateMetrics(input(image((a, b) => 5 - picture(a, b)), [{ ...target, contrast: -target.contrast }], 5));
-    for (const key of ['amplitude-response', 'position-error', 'radial-position-difference', 'resolution']) expect(turned[key].value).toBeCloseTo(upright[key].value!, 11);
+    for (const key of ['amplitude-response', 'position-error', 'radial-position-difference', 'resolution', 'shape-deformation', 'ringing']) expect(turned[key].value).toBeCloseTo(upright[key].value!, 11);
   });
 });
 
@@ -93,7 +95,7 @@ describe('error norms', () => {
   const base: MetricInput = { truth, background, estimate: background, grid, targets: [], residualNorm: 0.3, noiseNorm: 0.2 };
   it('the trivial reconstruction has exactly 1 in every relative error', () => {
     const values = evaluateMetrics(base);
-    for (const key of ['relative-l2-error', 'relative-l1-error', 'relative-sup-error']) expect(values[key].value).toBe(1);
+    for (const key of ['relative-l2-error', 'relative-l1-error', 'relative-sup-error', 'relative-h1-error']) expect(values[key].value).toBe(1);
     expect(values['sup-error'].value).toBe(2);
     expect(values['data-residual-ratio'].value).toBe(0.3 / 0.2);
   });
