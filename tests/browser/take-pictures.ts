@@ -5,7 +5,7 @@
 import { mkdirSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { Page } from 'playwright-core';
-import { PNG } from 'pngjs';
+import { toPalette } from '../support/palette-png';
 import { launchBrowser, openViewer, type Site } from '../support/site';
 
 const url = process.argv[2];
@@ -20,13 +20,6 @@ const browser = await launchBrowser();
 
 const list = async (path: string): Promise<Record<string, string>[]> => ((await (await fetch(`${site.url}/api/v1${path}`)).json()) as { items: Record<string, string>[] }).items;
 
-/** Colours on a grid of 32 levels a channel but for the ends: far smaller files, and no difference to the eye. */
-function smaller(picture: Buffer): Buffer {
-  const png = PNG.sync.read(picture);
-  for (let i = 0; i < png.data.length; i++) if (i % 4 !== 3) png.data[i] = Math.min(255, Math.round(png.data[i]! / 8.2258) * 8.2258);
-  return PNG.sync.write(png, { colorType: 2, inputHasAlpha: true, deflateLevel: 9, filterType: 0 });
-}
-
 async function settle(page: Page): Promise<void> {
   await page.waitForFunction(() => document.querySelector('main h1') !== null && document.querySelector('main .sk') === null);
   await page.waitForLoadState('networkidle');
@@ -39,7 +32,7 @@ async function take(name: string, path: string, options: { handle?: string; dark
   await settle(page);
   await options.before?.(page);
   await settle(page);
-  const picture = smaller(await page.screenshot());
+  const picture = toPalette(await page.screenshot());
   writeFileSync(join(folder, `${name}.png`), picture);
   console.log(`${name}.png ${Math.round(picture.length / 1000)} kB`);
   await context.close();
