@@ -7,7 +7,7 @@ import { Matrix, SVD } from 'ml-matrix';
 import { uniform } from '../support/sparse-matrices';
 import { timeInversion } from './inversion.bench';
 import { medianMs, timeDense, timeSparseCholesky, type BenchRow } from './linear-algebra.bench';
-import { timeIterativeMethods, timeLinearMethods } from './methods.bench';
+import { timeIterativeMethods, timeLinearMethods, timeRanking } from './methods.bench';
 import { benchGeometry, timeSimulation } from './simulation.bench';
 
 /** A general package on the same sizes, and the yardstick that every other figure is divided by. */
@@ -37,6 +37,7 @@ const aims: readonly (readonly [row: string, milliseconds: number, words: string
   ['inversion model: forward solve with derivative', 200, 'forward solve with derivative under 200 ms'],
   ['linear trial with all metrics: tikhonov, discrepancy', 1, 'a linear trial with all its metrics under 1 ms'],
   ['whole linear run: preparation and 240 trials', 1500, 'a whole linear run under 1.5 s'],
+  ['ranking at a noise', 50, 'a ranking under 50 ms'],
 ];
 
 const { yardstick, rows: peers } = timePeers();
@@ -49,6 +50,7 @@ const groups: readonly (readonly [title: string, measure: () => BenchRow[]])[] =
   ['Inversion model, 32 electrodes', () => timeInversion(32)],
   ['Methods, 16 electrodes', timeLinearMethods],
   ['Methods that iterate on images', timeIterativeMethods],
+  ['Statistics', timeRanking],
 ];
 
 console.log(`Node ${process.version}, ${cpus()[0]?.model.trim() ?? 'unknown processor'}, one thread. Ratio: over the yardstick.`);
