@@ -19,7 +19,7 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
   });
   return (
     <div className="sheet" style={{ overflowX: 'auto' }} tabIndex={0} role="region" aria-label="Stability sheet, scrolls sideways">
-      <table>
+      <table style={{ minWidth: 860 }}>
         <thead>
           <tr>
             <th scope="col" style={{ paddingLeft: 16 }}>Metric</th>
@@ -27,14 +27,14 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
             <th scope="col" className="num">Exponent ν<span>90 % interval</span></th>
             <th scope="col" className="num">Floor b<span>90 % interval</span></th>
             <th scope="col" className="num">Breakdown noise<span>90 % interval</span></th>
-            <th scope="col" style={{ paddingRight: 16 }}>Note</th>
+            <th scope="col" style={{ paddingRight: 16, minWidth: 250 }}>Note</th>
           </tr>
         </thead>
         <tbody>
           {rows.map(({ metric, sheet }) => (
             <tr key={metric.key}>
               <th scope="row" className="row-name">{metric.short}{metric.unit ? `, ${metric.unit}` : ''}</th>
-              <td>{sheet.model === 'power' ? 'b + C δ^ν' : sheet.model === 'logarithmic' ? 'C |ln δ|^−κ' : '–'}</td>
+              <td>{sheet.model === 'power' ? <>b + C δ<sup>ν</sup></> : sheet.model === 'logarithmic' ? <>C |ln δ|<sup>−κ</sup></> : '–'}</td>
               <td className="num">{formatError(sheet.exponent?.value)}<span className="iv">{interval(sheet.exponent, formatError)}</span></td>
               <td className="num">{formatError(sheet.floor?.value)}<span className="iv">{interval(sheet.floor, formatError)}</span></td>
               <td className="num">{breakdownWords(sheet)}<span className="iv">{interval(sheet.breakdown, formatPercent)}</span></td>
