@@ -41,7 +41,7 @@ export default function Review() {
   const phantoms = queue.data?.phantoms ?? [];
   return (
     <Page title="Review queue" className="page-review" rule={{ floor: runs.length ? Math.max(...runs.map((run) => run.modelErrorFloor)) : null }}>
-      <PageHead title="Review queue" lead={queue.data ? `${words(ofTab('reviewer').length, 'table waits', 'tables wait')} for a reviewer. One signature publishes a table; a return sends it back. Nobody reviews their own group.` : undefined} />
+      <PageHead title="Review queue" lead={queue.data ? `${words(ofTab('reviewer').length, 'table waits', 'tables wait')} for a reviewer. One verdict signs a table, declines it or sends it back; the figures are read either way, with the verdict beside them. Nobody reviews their own group.` : undefined} />
       {queue.isError ? <ErrorPanel error={queue.error} what="The queue" onRetry={() => void queue.refetch()} /> : null}
       {queue.isPending ? <Loading label="Reading the queue" /> : null}
       {queue.data ? (

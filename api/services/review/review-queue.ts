@@ -115,7 +115,7 @@ async function readingsOf(em: EntityManager, run: LoadedRun): Promise<Pick<Queue
   if (outliers > 0) flags.push(`${outliers} ${outliers === 1 ? 'draw' : 'draws'} beyond 3 sd`);
   const lowest = levels[0]?.median ?? null;
   const { better } = getMetric(metric);
-  if (trivial !== null && lowest !== null && lossOf(lowest, better) >= lossOf(trivial, better)) flags.push('not below trivial at the lowest noise');
+  if (trivial !== null && lowest !== null && lossOf(lowest, better) >= lossOf(trivial, better)) flags.push('trivial or worse at least noise');
   return { metric, levels, trivial, flags };
 }
 

@@ -52,8 +52,8 @@ export function WaitingRuns({ runs, noise, selected, onSelect }: WaitingRunsProp
           <tr>
             <th scope="col" className="first">Waiting</th><th scope="col">Solver and phantom</th><th scope="col">Run</th><th scope="col">Checks<span>in the certificate&apos;s order</span></th>
             <th scope="col" className="num">Relative L2<span>at {formatPercent(rows[0]?.level ?? noise)}</span></th>
-            <th scope="col" style={{ width: 166 }}>90 % interval<BarAxisTicks axis={axis} /></th>
-            <th scope="col" className="num">To best<span>on bench</span></th><th scope="col">Flags</th><th scope="col" className="last">Reviewer</th>
+            <th scope="col" style={{ width: 130 }}>90 % interval<BarAxisTicks axis={axis} /></th>
+            <th scope="col" className="num">To best<span>on bench</span></th><th scope="col" style={{ minWidth: 124 }}>Flags</th><th scope="col" className="last">Reviewer</th>
           </tr>
         </thead>
         <tbody>
