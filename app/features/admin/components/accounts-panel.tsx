@@ -34,7 +34,7 @@ export function AccountsPanel() {
             caption="Accounts and their site roles" rows={rows} rowKey={(u) => u.handle} className="tk"
             columns={[
               { key: 'handle', head: 'Handle', sortBy: (u) => u.handle, cell: (u) => <><b>{u.handle}</b> {u.closed ? <Tag>closed</Tag> : null}</> },
-              { key: 'roles', head: 'Site roles', cell: (u) => <span className="scopes">{givable.map((role) => <label key={role}><input type="checkbox" checked={u.siteRoles.includes(role)} disabled={u.closed || setRoles.isPending} aria-label={`${u.handle} is ${role}`} onChange={() => change(u, role)} /> {role}</label>)}</span> },
+              { key: 'roles', head: 'Site roles', cell: (u) => <span className="scopes row">{givable.map((role) => <label key={role}><input type="checkbox" checked={u.siteRoles.includes(role)} disabled={u.closed || setRoles.isPending} aria-label={`${u.handle} is ${role}`} onChange={() => change(u, role)} /> {role}</label>)}</span> },
               { key: 'groups', head: 'Groups', numeric: true, sortBy: (u) => u.groupCount, cell: (u) => u.groupCount },
               { key: 'since', head: 'Since', numeric: true, sortBy: (u) => u.since, cell: (u) => formatDate(u.since) },
             ]}
