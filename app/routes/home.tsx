@@ -31,7 +31,9 @@ export default function Home() {
   const benches = useQuery(listBenchesQueryOptions({ state: 'open' }));
   const open = benches.data?.items ?? [];
   const [chosen, setChosen] = useParam('bench');
-  const bench = open.find((b) => b.slug === chosen) ?? open[0];
+  // The bench that has the most to say, until the reader chooses.
+  const fullest = open.reduce<BenchSummary | undefined>((best, b) => (best === undefined || b.runsFinished > best.runsFinished ? b : best), undefined);
+  const bench = open.find((b) => b.slug === chosen) ?? fullest;
   const series = useQuery({ ...getSeriesQueryOptions(bench?.slug ?? '', 'relative-l2-error'), enabled: bench !== undefined });
   return (
     <Page title="Hadamark" className="page-home" rule={{ levels: series.data?.ladder ?? defaultLadder, floor: series.data?.modelErrorFloor ?? null }}>

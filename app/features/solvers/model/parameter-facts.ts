@@ -35,6 +35,6 @@ export function ruleWords(rule: RuleSetting | Configuration['rule']): string {
 }
 
 export const noiseWords = (rule: Configuration['rule']): string =>
-  !rule ? 'not used' : parameterRules.find((r) => r.key === rule.key)?.usesNoiseLevel ? 'told, not estimated' : 'not used by the rule';
+  !rule ? 'not asked by a rule' : parameterRules.find((r) => r.key === rule.key)?.usesNoiseLevel ? 'told, not estimated' : 'not used by the rule';
 
 export const parameterSymbol = (method: Method | undefined): string => method?.fixedValue?.symbol ?? '\\alpha';
