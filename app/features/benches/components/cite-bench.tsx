@@ -13,7 +13,7 @@ export function CiteBench({ slug, noise, metric, citation, comparePath, compareL
       () => toast('The browser did not allow copying. Select the text instead.'),
     );
   };
-  const words = citation ? `${citation.plain} Read at ${formatPercent(noise)}.` : '';
+  const words = citation ? `${citation.plain}, read at ${formatPercent(noise)}.` : '';
   return (
     <div>
       <h3>Cite this bench</h3>
