@@ -273,12 +273,14 @@ describe.sequential('the main job', () => {
       await page.getByRole('radio', { name: /^Discrepancy/ }).check();
     });
     await enter(truncated, /^Spectral/, async () => {
+      await page.getByRole('combobox', { name: 'Algorithm' }).selectOption('truncated-svd');
       await page.getByRole('radio', { name: /cross-validation/i }).check();
       await page.getByText(/^L2 relative|Relative L2/).first().waitFor();
     });
     await enter(trivial, /^Baseline/, () => Promise.resolve());
     // The slow one last, so that its page stands open while it works.
     await enter(slow, /^Nonlinear/, async () => {
+      await page.getByRole('combobox', { name: 'Algorithm' }).selectOption('gauss-newton');
       await page.getByRole('textbox', { name: 'Most iterations' }).fill('60');
       await page.getByRole('radio', { name: /^Fixed/ }).check();
     });

@@ -3,6 +3,7 @@ import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
+import { demoPlan } from '../../api/services/seed/demo-plan.ts';
 import { trialListSchema, type Progress } from '../../shared/contracts/runs';
 import { HttpClient } from '../support/http-client';
 import { launchBrowser, openViewer, startSite } from '../support/site';
@@ -56,6 +57,7 @@ describe('the built server', () => {
 
   it('goes on seeding at a second start and makes nothing twice', async () => {
     const DATA_DIR = newFolder();
+    const planned = [demoPlan.groups.length, demoPlan.solvers.length];
     const counts = async (url: string): Promise<number[]> => {
       const client = new HttpClient(url);
       const of = async (noun: string): Promise<number> => ((await client.get(`/api/v1/${noun}?limit=100`)).body as { items: unknown[] }).items.length;
@@ -63,7 +65,7 @@ describe('the built server', () => {
     };
     const first = built({ DATA_DIR, SEED_DEMO: '1', WORKERS: '1' });
     const firstUrl = await first.address();
-    await expect.poll(() => counts(firstUrl), { timeout: 60_000, interval: 300 }).toEqual([4, 8]);
+    await expect.poll(() => counts(firstUrl), { timeout: 60_000, interval: 300 }).toEqual(planned);
     first.child.kill('SIGINT');
     expect(await first.ended, first.err()).toBe(0);
 
@@ -71,7 +73,7 @@ describe('the built server', () => {
     const url = await second.address();
     // The next thing seeding makes is a phantom: by then it has gone past groups and solvers again.
     await expect.poll(async () => ((await new HttpClient(url).get('/api/v1/phantoms')).body as { items: unknown[] }).items.length, { timeout: 120_000, interval: 300 }).toBeGreaterThan(0);
-    expect(await counts(url)).toEqual([4, 8]);
+    expect(await counts(url)).toEqual(planned);
     second.child.kill('SIGINT');
     expect(await second.ended, second.err()).toBe(0);
   });
