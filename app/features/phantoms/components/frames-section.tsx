@@ -80,7 +80,8 @@ const around = z.object({ row: z.int(), column: z.int(), neighbours: z.object({ 
 
 /** The place of a fault in front of its words, unless they name it already. */
 function placed(issue: { message: string; row?: number; column?: number }): string {
-  if (issue.row === undefined || /^row /i.test(issue.message)) return issue.message;
+  const named = /^row /i.test(issue.message) && (issue.column === undefined || issue.message.includes(`column ${issue.column}`));
+  if (issue.row === undefined || named) return issue.message;
   return `Row ${issue.row}${issue.column === undefined ? '' : `, column ${issue.column}`}: ${issue.message}`;
 }
 
