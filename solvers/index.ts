@@ -21,7 +21,9 @@ export { comparePairs, type PairComparison } from './statistics/pairs';
 export { lossOf, type Better } from './statistics/loss';
 export { quantileOfSorted, median } from './statistics/quantiles';
 
-export { createProblem, describeProblem, simulate, type ProblemDescriptor } from './problems/registry';
+export { createProblem, describeProblem, simulate, dataLayout, problemGrid, problemFacts } from './problems/registry';
+export { type ProblemDescriptor } from '../shared/domain/phantom-definition';
+export { type InversionProblem, type SimulatedData, type ProblemFamily, type DataLayout } from './problems/problem-family';
 export { createTruthField, type TruthField } from './truth/truth-field';
 export { TruthError } from './truth/truth-error';
 export { phantomChecks, problemChecks, methodChecks, runChecks } from './checks/registry';

@@ -5,14 +5,14 @@ import { secondsPerReconstruction, timeBaseline } from '../../solvers/campaign/t
 import { checkPhantom } from '../../solvers/checks/check-phantom';
 import { checkRun } from '../../solvers/checks/check-run';
 import { problemChecks } from '../../solvers/checks/registry';
-import type { EitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
-import type { SimulatedImpedance } from '../../solvers/problems/electrical-impedance/simulated-phantom';
+import type { InversionProblem, SimulatedData } from '../../solvers/problems/problem-family';
+import { dataLayout } from '../../solvers/problems/registry';
 import type { RunChecksOutput, RunChecksTask } from './tasks.ts';
 import { preparedOf, problemOf, seedOf, simulatedOf } from './worker-tasks.ts';
 
 /** Every check of a simulated phantom, and of the model that inverts it. */
-export function phantomChecks({ definition, problem, simulated }: { readonly definition: PhantomDefinition; readonly problem: EitInversion; readonly simulated: SimulatedImpedance }): CheckResultWire[] {
-  return [...checkPhantom({ definition, ...simulated }), ...problemChecks.map((check) => check.evaluate(problem))];
+export function phantomChecks({ definition, problem, simulated }: { readonly definition: PhantomDefinition; readonly problem: InversionProblem; readonly simulated: SimulatedData }): CheckResultWire[] {
+  return [...checkPhantom({ definition, problem, simulated, layout: dataLayout(definition), truth: simulated.truth, frame: simulated.frame, reference: simulated.reference }), ...problemChecks.map((check) => check.evaluate(problem))];
 }
 
 /** A slow method is timed on few draws. */

@@ -3,9 +3,8 @@ import { errorAgainstParameter, picardData } from '../../solvers/campaign/sensit
 import type { SimulatedPhantom, Trial } from '../../solvers/campaign/trial';
 import { canonicalJson } from '../../solvers/core/hash';
 import type { PenaltyKey } from '../../solvers/core/types';
-import type { EitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
-import { channelNames, channels, patternCount } from '../../solvers/problems/electrical-impedance/patterns';
-import { createProblem, describeProblem, simulate } from '../../solvers/problems/registry';
+import type { InversionProblem } from '../../solvers/problems/problem-family';
+import { createProblem, dataLayout, describeProblem, simulate } from '../../solvers/problems/registry';
 import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
 import type { SimulationSummary } from '../entities/simulation.ts';
 import { phantomChecks } from './worker-checks.ts';
@@ -28,10 +27,10 @@ class Recent<T> {
 }
 
 // A problem takes about 20 MB; a prepared run shares the problem and its decompositions.
-const problems = new Recent<EitInversion>(3);
+const problems = new Recent<InversionProblem>(3);
 const preparedRuns = new Recent<PreparedRun>(4);
 
-export function problemOf(definition: PhantomDefinition): EitInversion {
+export function problemOf(definition: PhantomDefinition): InversionProblem {
   const descriptor = describeProblem(definition);
   return problems.get(canonicalJson(descriptor), () => createProblem(descriptor));
 }
@@ -70,17 +69,11 @@ export function simulatePhantom({ definition, arrayValues, checks }: SimulateTas
   };
 }
 
-function summarise(definition: PhantomDefinition, problem: EitInversion, simulated: ReturnType<typeof simulate>): SimulationSummary {
-  const { geometry, dataKind, noiseReference } = definition;
+function summarise(definition: PhantomDefinition, problem: InversionProblem, simulated: ReturnType<typeof simulate>): SimulationSummary {
+  const { dataKind, noiseReference } = definition;
   const { frame, reference, truthImage, grid } = simulated;
-  const names = channelNames(geometry);
-  const patterns = patternCount(geometry);
-  const patternNames: string[] = Array.from({ length: patterns }, () => '');
-  const byPattern: string[][] = Array.from({ length: patterns }, () => []);
-  channels(geometry).forEach(({ pattern }, i) => {
-    patternNames[pattern] = names[i]!.drive;
-    byPattern[pattern]!.push(names[i]!.measure);
-  });
+  const layout = dataLayout(definition);
+  const patterns = layout.groupNames.length;
   let largestChange = 0;
   for (let i = 0; i < frame.length; i++) largestChange = Math.max(largestChange, Math.abs(frame[i]! - reference[i]!));
   let low = Infinity;
@@ -89,18 +82,18 @@ function summarise(definition: PhantomDefinition, problem: EitInversion, simulat
     low = Math.min(low, value);
     high = Math.max(high, value);
   }
-  const { nx, ny, xMin, xMax, yMin, yMax, bodyRadius } = grid;
+  const { nx, ny, xMin, xMax, yMin, yMax, bodyRadius, body } = grid;
   return {
     dataKind,
     noiseReference,
-    dataUnit: 'V',
+    dataUnit: layout.unit,
     patterns,
     valuesPerPattern: frame.length / patterns,
-    patternNames,
-    channelNames: byPattern,
+    patternNames: [...layout.groupNames],
+    channelNames: layout.valueNames.map((names) => [...names]),
     noiseScale: simulated.noiseScale,
     largestChange,
-    grid: { nx, ny, xMin, xMax, yMin, yMax, bodyRadius },
+    grid: { nx, ny, xMin, xMax, yMin, yMax, bodyRadius, body },
     truthRange: [low, high],
     background: definition.truth.background,
     unit: problem.unit,

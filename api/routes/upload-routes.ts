@@ -1,7 +1,7 @@
 import { arrayResponseSchema, arrayUploadResponseSchema, frameUploadRequestSchema, frameUploadResponseSchema } from '../../shared/contracts/arrays';
 import { z } from 'zod';
 import { encodeArray } from '../../shared/domain/array-encoding';
-import { sha256Schema } from '../../shared/domain/phantom-definition';
+import { sha256Schema } from '../../shared/domain/truth-definition';
 import { AppError } from '../../shared/errors.ts';
 import { defineRoute, type Route } from '../http/define-route.ts';
 import { fromBlob } from '../entities/float64-blob.ts';

@@ -1,5 +1,6 @@
 import type { Replay } from '../../shared/contracts/runs';
-import type { DataKind, EitGeometry } from '../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../shared/domain/geometry/electrical-impedance';
+import type { DataKind } from '../../shared/domain/phantom-definition';
 import type { RuleSetting, StopReason, Target } from '../../solvers/core/types';
 
 /** The inversion problem; prepared once for each geometry, background and data kind. */

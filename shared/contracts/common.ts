@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { bodySchema } from '../domain/body';
 import { familyKeySchema } from '../domain/families';
 
 export const slugSchema = z.string().min(1).max(80).regex(/^[a-z0-9]+(?:-[a-z0-9]+)*$/, 'Lower-case letters, digits and single hyphens.');
@@ -25,6 +26,8 @@ export type CheckResultWire = z.infer<typeof checkResultSchema>;
 
 export const gridSchema = z.object({
   nx: z.int(), ny: z.int(), xMin: z.number(), xMax: z.number(), yMin: z.number(), yMax: z.number(), bodyRadius: z.number(),
+  /** Absent in simulations stored before bodies other than discs: a disc. */
+  body: bodySchema.optional(),
 });
 
 /** A metric's value at one place of a table: null with the reason when it is not defined. */

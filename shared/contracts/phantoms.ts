@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { accountRefSchema, checkResultSchema, dateTimeSchema, familyKeySchema, groupRefSchema, hashSchema, idSchema, licenceSchema, markdownSchema, reasonSchema, slugSchema } from './common';
-import { phantomDefinitionFields, phantomDefinitionSchema } from '../domain/phantom-definition';
+import { phantomDefinitionSchema, readableDefinitionSchema } from '../domain/phantom-definition';
 import { phantomStates, reviewStates } from '../domain/states';
 
 export const phantomStateSchema = z.enum(phantomStates);
@@ -69,7 +69,7 @@ export const phantomListSchema = z.object({ items: z.array(phantomSummarySchema)
 export const phantomVersionDetailSchema = phantomVersionSummarySchema.extend({
   name: z.string(), description: z.string(), licence: licenceSchema,
   /** The definition; `truth` is null while sealed and the reader may not see it. */
-  definition: z.object({ ...phantomDefinitionFields, truth: phantomDefinitionFields.truth.nullable() }),
+  definition: readableDefinitionSchema,
   frames: z.object({ sha256: hashSchema, frames: z.int(), valuesPerFrame: z.int(), origin: z.enum(['tank', 'living']), instrument: z.string() }).nullable(),
   checks: z.array(checkResultSchema),
   modelErrorFloor: z.number().nullable(),

@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { accountRefSchema, checkResultSchema, dateTimeSchema, groupRefSchema, gridSchema, hashSchema, idSchema, levelStatisticsSchema, reasonSchema, slugSchema, stabilitySheetSchema } from './common';
 import { encodedArraySchema } from '../domain/array-encoding';
-import { eitGeometrySchema } from '../domain/phantom-definition';
+import { problemDescriptorSchema } from '../domain/phantom-definition';
 import { reviewStates, runStates, verdicts } from '../domain/states';
 import { configurationSchema } from './solvers';
 import { targetSchema } from './simulations';
@@ -39,7 +39,9 @@ export const runListSchema = z.object({ items: z.array(runSummarySchema), nextCu
 export const runDetailSchema = runSummarySchema.extend({
   ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: z.string(),
   noiseReference: z.string(), dataKind: z.string(), unit: z.string(), background: z.number(),
-  modelErrorFloor: z.number(), grid: gridSchema, electrodes: z.object({ count: z.int(), coverage: z.number(), firstDeg: z.number(), clockwise: z.boolean() }),
+  modelErrorFloor: z.number(), grid: gridSchema,
+  /** The problem that was inverted: family, acquisition, data kind, background. */
+  problem: problemDescriptorSchema,
   /** By metric key: one row a level. */
   table: z.record(z.string(), z.array(levelStatisticsSchema)),
   /** Trivial reconstruction's value by metric. */
@@ -77,7 +79,7 @@ export type RunImage = z.infer<typeof runImageSchema>;
 
 /** GET /runs/:id/replay: all that is needed to recompute the run elsewhere with the same code. */
 export const replaySchema = z.object({
-  run: idSchema, phantomHash: hashSchema, geometry: eitGeometrySchema, dataKind: z.string(), background: z.number(),
+  run: idSchema, phantomHash: hashSchema, problem: problemDescriptorSchema,
   configuration: configurationSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), noiseScale: z.number(), clean: encodedArraySchema,
   truth: encodedArraySchema.nullable(), targets: z.array(targetSchema).nullable(),
   trials: z.array(z.object({ level: z.int(), draw: z.int(), imageHash: hashSchema })), resultHash: hashSchema.nullable(),

@@ -1,5 +1,6 @@
 import type { CheckResult } from '../core/types';
 import type { PhantomCheckContext } from './phantom-check';
+import type { Check } from './check';
 import { phantomChecks } from './registry';
 
 /**
@@ -7,7 +8,9 @@ import { phantomChecks } from './registry';
  * Cost: about that of two simulations.
  */
 export function checkPhantom(context: PhantomCheckContext): CheckResult[] {
-  return phantomChecks.map((check) => {
+  // The checks of a family read definitions of that family.
+  const checks = phantomChecks[context.definition.family] as readonly Check<PhantomCheckContext>[];
+  return checks.map((check) => {
     try {
       return check.evaluate(context);
     } catch (error) {

@@ -4,7 +4,7 @@ import { contactNumber, sampleConductivity } from '../problems/electrical-impeda
 import { simulationDetail, simulationMesh } from '../problems/electrical-impedance/simulation-mesh';
 import { createTruthField } from '../truth/truth-field';
 import { judge, type Check } from './check';
-import type { PhantomCheckContext } from './phantom-check';
+import type { ImpedanceCheckContext } from './phantom-check';
 
 const orders = [1, 2, 3, 5, 8];
 
@@ -13,7 +13,7 @@ const orders = [1, 2, 3, 5, 8];
  * A phantom that is itself one concentric disc is checked as it is; every other one through a disc of half the radius and
  * five times the background.
  */
-export const closedFormCheck: Check<PhantomCheckContext> = {
+export const closedFormCheck: Check<ImpedanceCheckContext> = {
   key: 'closed-form',
   name: 'Closed form of the concentric disc',
   unit: '',

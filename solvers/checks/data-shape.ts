@@ -1,4 +1,4 @@
-import { frameSize } from '../problems/electrical-impedance/patterns';
+import { layoutSize } from '../problems/problem-family';
 import { judge, type Check } from './check';
 import { commonPractice, type PhantomCheckContext } from './phantom-check';
 
@@ -11,8 +11,8 @@ export const dataShapeCheck: Check<PhantomCheckContext> = {
   formula: '|m - m_{\\mathrm{geometry}}| + \\#\\{i : y_i \\text{ not finite}\\}',
   summary: 'Missing, surplus or non-finite values in the frame with the target and in the reference frame.',
   source: commonPractice,
-  evaluate({ definition, frame, reference }) {
-    const expected = frameSize(definition.geometry);
+  evaluate({ layout, frame, reference }) {
+    const expected = layoutSize(layout);
     let faults = Math.abs(frame.length - expected) + Math.abs(reference.length - expected);
     for (const values of [frame, reference]) for (const value of values) if (!Number.isFinite(value)) faults++;
     return judge(this, faults, `Missing, surplus or non-finite values in the two frames of ${expected}.`);

@@ -4,12 +4,12 @@ import { inversionDetail, inversionMesh } from '../problems/electrical-impedance
 import { contactNumber } from '../problems/electrical-impedance/simulation';
 import { simulationDetail, simulationMesh } from '../problems/electrical-impedance/simulation-mesh';
 import { judge, type Check } from './check';
-import type { PhantomCheckContext } from './phantom-check';
+import type { ImpedanceCheckContext } from './phantom-check';
 
 /** Two vertices are one when they lie this close, in radii. */
 const coincidence = 1e-9;
 
-export const discretisationsDifferCheck: Check<PhantomCheckContext> = {
+export const discretisationsDifferCheck: Check<ImpedanceCheckContext> = {
   key: 'discretisations-differ',
   name: 'Discretisations differ',
   unit: 'vertices',

@@ -1,7 +1,7 @@
 import { simulateElectricalImpedance } from '../problems/electrical-impedance/simulation';
 import { coarseFactor } from '../problems/electrical-impedance/simulation-mesh';
 import { judge, type Check } from './check';
-import type { PhantomCheckContext } from './phantom-check';
+import type { ImpedanceCheckContext } from './phantom-check';
 
 /** Up to this the result is a warning: the simulation is still better than the model of an inversion. */
 const limit = 1e-3;
@@ -11,7 +11,7 @@ const limit = 1e-3;
  * the difference over 1.6^p - 1. p is taken as 2, the safe side: order 4 is observed for electrode voltages where the grading
  * rules the error, less where a varying truth does.
  */
-export const meshConvergenceCheck: Check<PhantomCheckContext> = {
+export const meshConvergenceCheck: Check<ImpedanceCheckContext> = {
   key: 'mesh-convergence',
   name: 'Mesh convergence',
   unit: '',

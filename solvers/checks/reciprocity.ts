@@ -1,8 +1,8 @@
 import { reciprocityGap } from '../problems/electrical-impedance/reciprocity';
 import { judge, type Check } from './check';
-import type { PhantomCheckContext } from './phantom-check';
+import type { ImpedanceCheckContext } from './phantom-check';
 
-export const reciprocityCheck: Check<PhantomCheckContext> = {
+export const reciprocityCheck: Check<ImpedanceCheckContext> = {
   key: 'reciprocity',
   name: 'Reciprocity',
   unit: '',

@@ -11,6 +11,8 @@ import { homogeneityCheck, type HomogeneityInput } from './homogeneity';
 import { meshConvergenceCheck } from './mesh-convergence';
 import { noiseCalibrationCheck } from './noise-calibration';
 import { noiseNormalityCheck } from './noise-normality';
+import type { FamilyKey } from '../../shared/domain/families';
+import type { DefinitionOf } from '../../shared/domain/phantom-definition';
 import type { PhantomCheckContext } from './phantom-check';
 import { recomputationCheck } from './recomputation';
 import { reciprocityCheck } from './reciprocity';
@@ -18,15 +20,13 @@ import type { RunCheckContext } from './run-check';
 import { shapesInBodyCheck } from './shapes-in-body';
 import { taylorCheck } from './taylor';
 
-/** Of a simulated phantom. */
-export const phantomChecks: readonly Check<PhantomCheckContext>[] = [
-  dataShapeCheck,
-  reciprocityCheck,
-  meshConvergenceCheck,
-  closedFormCheck,
-  discretisationsDifferCheck,
-  shapesInBodyCheck,
-];
+/** Of a simulated phantom, by its family. */
+export const phantomChecks: { readonly [F in FamilyKey]: readonly Check<PhantomCheckContext<DefinitionOf<F>>>[] } = {
+  'electrical-impedance': [dataShapeCheck, reciprocityCheck, meshConvergenceCheck, closedFormCheck, discretisationsDifferCheck, shapesInBodyCheck],
+  'x-ray': [dataShapeCheck],
+  'integral-equation': [dataShapeCheck],
+  deblurring: [dataShapeCheck],
+};
 
 /** Of the model that inverts. */
 export const problemChecks: readonly Check<ForwardProblem>[] = [adjointCheck, taylorCheck];

@@ -1,7 +1,7 @@
 import { judge, notApplicable, type Check } from './check';
-import { commonPractice, type PhantomCheckContext } from './phantom-check';
+import { commonPractice, type ImpedanceCheckContext } from './phantom-check';
 
-export const shapesInBodyCheck: Check<PhantomCheckContext> = {
+export const shapesInBodyCheck: Check<ImpedanceCheckContext> = {
   key: 'shapes-in-body',
   name: 'Shapes clear of the electrodes',
   unit: 'of the radius',

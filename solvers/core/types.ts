@@ -5,8 +5,9 @@
  * a file; the same input gives the same bits on every engine.
  */
 import type { z } from 'zod';
+import type { Body } from '../../shared/domain/body';
 import type { FamilyKey } from '../../shared/domain/families';
-import type { DataKind } from '../../shared/domain/phantom-definition';
+import type { DataKind, Geometry } from '../../shared/domain/phantom-definition';
 
 /** A linear map from `cols` unknowns to `rows` data. */
 export interface LinearOperator {
@@ -23,6 +24,13 @@ export interface MatrixOperator extends LinearOperator {
   readonly values: Float64Array;
 }
 
+/** A derivative: by its action, and explicitly or sparsely where the problem has it so. */
+export interface Derivative extends LinearOperator {
+  /** Row-major, rows x cols. */
+  readonly values?: Float64Array;
+  readonly sparse?: SparseMatrix;
+}
+
 /** Compressed sparse rows: row `i` holds `values[k]` at column `columns[k]` for `rowStart[i] <= k < rowStart[i + 1]`. */
 export interface SparseMatrix {
   readonly rows: number;
@@ -32,18 +40,23 @@ export interface SparseMatrix {
   readonly values: Float64Array;
 }
 
-/**
- * The grid on which every error is measured: `ny` rows by `nx` columns of equal pixels over a rectangle, row 0 at the
- * lowest y. `mask[i] = 1` where the pixel centre lies inside the body; the metrics read those pixels only.
- */
-export interface EvaluationGrid {
+/** Pixels over a rectangle and the body in it; lengths in metres. */
+export interface GridExtent {
   readonly nx: number;
   readonly ny: number;
-  /** Extent in metres. */
   readonly xMin: number;
   readonly xMax: number;
   readonly yMin: number;
   readonly yMax: number;
+  /** A disc and a star are centred at the middle of the rectangle, a rectangle fills it; an interval has ny = 1 and unit height. */
+  readonly body: Body;
+}
+
+/**
+ * The grid on which every error is measured: `ny` rows by `nx` columns of equal pixels over a rectangle, row 0 at the
+ * lowest y. `mask[i] = 1` where the pixel centre lies inside the body; the metrics read those pixels only.
+ */
+export interface EvaluationGrid extends GridExtent {
   readonly mask: Uint8Array;
   /** Indices of the masked pixels, ascending; images are stored on these, length `inside.length`. */
   readonly inside: Int32Array;
@@ -57,6 +70,7 @@ export type PenaltyKey = 'identity' | 'gradient' | 'laplacian';
 /** A forward model on the *inversion* discretisation. It never produces the data that it inverts. */
 export interface ForwardProblem {
   readonly family: FamilyKey;
+  readonly geometry: Geometry;
   readonly dataKind: DataKind;
   /** Number of data values of one frame. */
   readonly dataSize: number;
@@ -74,8 +88,13 @@ export interface ForwardProblem {
    * F(x) - F(background).
    */
   evaluate(x: Float64Array): Float64Array;
-  /** Derivative of `evaluate` at `x` as an explicit dataSize x unknowns matrix. */
-  linearise(x: Float64Array): MatrixOperator;
+  /** True where `evaluate` is affine, so that one derivative serves every point. */
+  readonly linear: boolean;
+  /**
+   * Derivative of `evaluate` at `x`, dataSize x unknowns: explicit (`values`), sparse (`sparse`) or by its action alone. `denseMatrix`
+   * makes it explicit where that is affordable.
+   */
+  linearise(x: Float64Array): Derivative;
   /** Values of `x` on the pixels `grid.inside` (cell averages), length `grid.inside.length`. */
   toImage(x: Float64Array, out: Float64Array): void;
   /**
@@ -156,6 +175,15 @@ export interface MethodCapabilities {
   readonly rules: readonly RuleKey[];
 }
 
+/** What a method may look at to say whether it serves a problem. */
+export interface ProblemFacts {
+  readonly family: FamilyKey;
+  readonly dataKind: DataKind;
+  readonly geometry: Geometry;
+  readonly dataSize: number;
+  readonly unknowns: number;
+}
+
 /** Group under which the form lists a method. */
 export type MethodClass = 'baseline' | 'spectral' | 'iterative' | 'variational' | 'nonlinear' | 'direct' | 'statistical';
 
@@ -202,6 +230,8 @@ export interface Method<P = Record<string, number | string>> {
   readonly defaultRule: RuleSetting | null;
   /** What the value of the rule 'fixed' means for this method (alpha over sigma_1, an index, a count); null without rules. */
   readonly fixedValue: ParameterField | null;
+  /** Why the method does not serve a problem of a family that it lists (its size, its electrodes), for a reader; null where it does. */
+  readonly unfit?: (facts: ProblemFacts) => string | null;
   /** Pays once for factorisations. Throws `RangeError` naming both shapes, or what does not fit. */
   prepare(problem: ForwardProblem, parameters: P, rule: RuleSetting | null): Reconstructor;
 }

@@ -1,4 +1,5 @@
 import type { ForwardProblem, Method, Reconstruction, StopReason } from '../core/types';
+import { denseMatrix } from '../core/matrix-operator';
 import { dot, norm2, requireVector } from '../core/vector';
 import { denseCholesky } from '../linear-algebra/dense-cholesky';
 import { matmulTransposed } from '../linear-algebra/matrix-product';
@@ -25,7 +26,7 @@ interface Linearised {
 }
 
 function lineariseAt(problem: ForwardProblem, factor: CholeskyFactor, x: Float64Array): Linearised {
-  const jacobian = problem.linearise(x).values;
+  const jacobian = denseMatrix(problem.linearise(x));
   const standard = Float64Array.from(jacobian);
   factor.halfSolveMany(standard, problem.dataSize, 'forward');
   return { jacobian, standard, gram: lowerGram(standard, problem.dataSize, problem.unknowns) };

@@ -5,6 +5,7 @@
  * R^{-1} V gives the unknowns.
  */
 import type { ForwardProblem, PenaltyKey } from '../core/types';
+import { denseMatrix } from '../core/matrix-operator';
 import { requireVector } from '../core/vector';
 import { thinSvd } from '../linear-algebra/thin-svd';
 import type { SpectralData } from '../parameter-choice/spectral-data';
@@ -66,9 +67,9 @@ function computeSystem(problem: ForwardProblem, makeFactor: (jacobian: Float64Ar
   const jacobian = problem.linearise(background);
   if (jacobian.rows !== dataSize || jacobian.cols !== unknowns)
     throw new RangeError(`The derivative is ${jacobian.rows} x ${jacobian.cols}, the problem ${dataSize} x ${unknowns}.`);
-  const matrix = Float64Array.from(jacobian.values);
+  const matrix = Float64Array.from(denseMatrix(jacobian));
   requireVector(matrix, dataSize * unknowns, 'The derivative');
-  const factor = makeFactor(jacobian.values);
+  const factor = makeFactor(denseMatrix(jacobian));
   // The rows of J are the right-hand sides of R^{-T}.
   factor?.halfSolveMany(matrix, dataSize, 'forward');
   const { u, s, v } = thinSvd(matrix, dataSize, unknowns);

@@ -1,5 +1,6 @@
 /** What iterations in the coordinates of the singular vectors share: when to stop, and what to report. */
 import type { ForwardProblem, Method, ReconstructContext, Reconstructor, RuleSetting, StopReason } from '../core/types';
+import { denseMatrix } from '../core/matrix-operator';
 import type { SpectralData } from '../parameter-choice/spectral-data';
 import { makeReconstructor } from './reconstructor';
 import { expandCoefficients, frameSpectrum, type SpectralSystem } from './spectral-system';
@@ -69,5 +70,5 @@ export function derivativeAtBackground(problem: ForwardProblem): Float64Array {
   const jacobian = problem.linearise(problem.background());
   if (jacobian.rows !== problem.dataSize || jacobian.cols !== problem.unknowns)
     throw new RangeError(`The derivative is ${jacobian.rows} x ${jacobian.cols}, the problem ${problem.dataSize} x ${problem.unknowns}.`);
-  return jacobian.values;
+  return denseMatrix(jacobian);
 }

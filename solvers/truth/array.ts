@@ -1,4 +1,4 @@
-import { limits } from '../../shared/domain/phantom-definition';
+import { limits } from '../../shared/domain/limits';
 import { polygonInterface } from './polygon';
 import { TruthError } from './truth-error';
 import type { TruthField } from './truth-field';

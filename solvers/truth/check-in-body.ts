@@ -1,4 +1,4 @@
-import type { TruthDefinition } from '../../shared/domain/phantom-definition';
+import type { TruthDefinition } from '../../shared/domain/truth-definition';
 import { TruthError } from './truth-error';
 import type { TruthField } from './truth-field';
 

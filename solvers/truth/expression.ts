@@ -1,4 +1,4 @@
-import { limits } from '../../shared/domain/phantom-definition';
+import { limits } from '../../shared/domain/limits';
 import { atan2 } from '../core/math';
 import { compileExpression, type CompiledExpression } from '../core/expression';
 import { TruthError } from './truth-error';

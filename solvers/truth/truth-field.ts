@@ -1,4 +1,4 @@
-import type { Shape, TruthDefinition } from '../../shared/domain/phantom-definition';
+import type { Shape, TruthDefinition } from '../../shared/domain/truth-definition';
 import type { Target } from '../core/types';
 import { annulusField } from './annulus';
 import { arrayField } from './array';
@@ -70,8 +70,11 @@ export function createTruthField(definition: TruthDefinition, arrayValues?: Floa
     case 'array':
       if (!arrayValues) throw new RangeError(`The values of the array ${definition.sha256} are needed for this ground truth.`);
       return arrayField(definition, arrayValues);
+    case 'standard':
+      throw new RangeError('The published solution belongs to its equation: make it there.');
     case 'shapes': {
       const { background } = definition;
+      const adds = 'combine' in definition && definition.combine === 'add';
       const fields = definition.shapes.map((shape, i) => {
         try {
           return shapeField(shape);
@@ -85,13 +88,14 @@ export function createTruthField(definition: TruthDefinition, arrayValues?: Floa
         interfaces: fields.flatMap((field) => field.interfaces),
         piecewiseConstant: fields.every((field) => field.piecewiseConstant),
         targets: definition.shapes.flatMap((shape, i) =>
-          shape.target ? [{ label: shape.label, x: fields[i].x, y: fields[i].y, area: fields[i].area, contrast: shape.value - background }] : [],
+          shape.target ? [{ label: shape.label, x: fields[i].x, y: fields[i].y, area: fields[i].area, contrast: adds ? shape.value : shape.value - background }] : [],
         ),
         valueAt(x, y) {
           let value = background;
           for (let i = 0; i < fields.length; i++) {
             const weight = fields[i].weightAt(x, y);
-            if (weight === 1) value = values[i];
+            if (adds) value += weight * values[i];
+            else if (weight === 1) value = values[i];
             else if (weight > 0) value += weight * (values[i] - value);
           }
           return value;

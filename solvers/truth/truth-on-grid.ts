@@ -1,3 +1,4 @@
+import { bodyContains } from '../core/grid';
 import type { EvaluationGrid } from '../core/types';
 import type { TruthField } from './truth-field';
 
@@ -13,13 +14,13 @@ const spread = 0.02;
  * @throws RangeError naming the place where an expression has no admissible value
  */
 export function truthOnGrid(field: TruthField, grid: EvaluationGrid): Float64Array {
-  const { nx, ny, inside, bodyRadius } = grid;
+  const { nx, inside } = grid;
   const dx = (grid.xMax - grid.xMin) / nx;
-  const dy = (grid.yMax - grid.yMin) / ny;
+  const dy = (grid.yMax - grid.yMin) / grid.ny;
   const near = pixelsNearInterfaces(field, grid);
   const centreX = (grid.xMin + grid.xMax) / 2;
   const centreY = (grid.yMin + grid.yMax) / 2;
-  const limit = bodyRadius * bodyRadius;
+  const contains = bodyContains(grid.body);
   const out = new Float64Array(inside.length);
   let lowest = 0;
   let highest = 0;
@@ -32,7 +33,7 @@ export function truthOnGrid(field: TruthField, grid: EvaluationGrid): Float64Arr
       const y = y0 + ((a + 0.5) / n) * dy;
       for (let b = 0; b < n; b++) {
         const x = x0 + ((b + 0.5) / n) * dx;
-        if ((x - centreX) * (x - centreX) + (y - centreY) * (y - centreY) > limit) continue;
+        if (!contains(x - centreX, y - centreY)) continue;
         const value = field.valueAt(x, y);
         sum += value;
         count++;
@@ -60,7 +61,7 @@ export function truthOnGrid(field: TruthField, grid: EvaluationGrid): Float64Arr
 function pixelsNearInterfaces(field: TruthField, grid: EvaluationGrid): Uint8Array {
   const { nx, ny } = grid;
   const dx = (grid.xMax - grid.xMin) / nx;
-  const dy = (grid.yMax - grid.yMin) / ny;
+  const dy = (grid.yMax - grid.yMin) / grid.ny;
   const near = new Uint8Array(nx * ny);
   const step = Math.min(dx, dy) / 2;
   const reach = 2 * grid.bodyRadius;

@@ -1,4 +1,5 @@
-import type { EitGeometry, Shape } from '../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../shared/domain/geometry/electrical-impedance';
+import type { Shape } from '../../shared/domain/truth-definition';
 import { createTruthField, type TruthField } from '../truth/truth-field';
 
 /** Unit disc, electrode 1 at angle 0, counter-clockwise, half of the rim covered, 1 A/m. */

@@ -1,6 +1,7 @@
 import { createEvaluationGrid } from '../core/grid';
 import { matrixOperator } from '../core/matrix-operator';
 import type { ForwardProblem, SparseMatrix } from '../core/types';
+import { unitDisc } from './disc';
 
 /** One row per neighbouring pair of a chain of n unknowns. */
 function chain(n: number): SparseMatrix {
@@ -32,8 +33,11 @@ export function matrixProblem(values: Float64Array, n: number, level = 1): Forwa
     throw new RangeError('The unknowns of a matrix have no place on a grid.');
   };
   return {
+    // No acquisition stands behind a matrix: the unit disc fills the place.
     family: 'electrical-impedance',
+    geometry: unitDisc({ electrodes: 8 }),
     dataKind: 'difference',
+    linear: true,
     dataSize: n,
     unknowns: n,
     unknownWeights: new Float64Array(n).fill(1),

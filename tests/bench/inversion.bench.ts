@@ -1,5 +1,5 @@
 /** Times of the electrical-impedance inversion model: medians over repetitions, in ms. `npm run bench` prints them. */
-import { eitGeometrySchema } from '../../shared/domain/phantom-definition';
+import { eitGeometrySchema } from '../../shared/domain/geometry/electrical-impedance';
 import { createProblem } from '../../solvers/problems/registry';
 import { medianMs, type BenchRow } from './linear-algebra.bench';
 

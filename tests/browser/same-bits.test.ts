@@ -4,7 +4,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { recomputationSchema, replaySchema, runImageSchema, type Replay } from '../../shared/contracts/runs';
 import { decodeArray } from '../../shared/domain/array-encoding';
 import { prepareRun, recomputeDraw } from '../../solvers/campaign/run';
-import { createEitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
+import { createProblem } from '../../solvers/problems/registry';
 import { launchBrowser, openViewer, startSite, type Site } from '../support/site';
 import { cgls, fillSite, gaussNewton, tikhonov, totalVariation, truncatedSvd, type SmallSite } from '../support/small-site';
 
@@ -37,9 +37,9 @@ const sha256OfRun = (hashes: readonly string[]): string => createHash('sha256').
 
 /** Images of every draw, in this thread. */
 function recomputeHere(replay: Replay): string[] {
-  const problem = createEitInversion(replay.geometry, replay.background, 'difference');
+  const problem = createProblem(replay.problem);
   const prepared = prepareRun({ problem, ...replay.configuration });
-  const backgroundImage = new Float64Array(problem.grid.inside.length).fill(replay.background);
+  const backgroundImage = new Float64Array(problem.grid.inside.length).fill(replay.problem.background);
   const phantom = { clean: decodeArray(replay.clean), noiseScale: replay.noiseScale, truthImage: backgroundImage, backgroundImage, targets: [] };
   return replay.ladder.flatMap((level, levelIndex) =>
     Array.from({ length: replay.draws }, (_, drawIndex) => sha256(recomputeDraw(prepared, phantom, { benchSeed: replay.seed, phantomHash: replay.phantomHash, levelIndex, level, drawIndex }).image)));

@@ -1,6 +1,7 @@
 import { exp } from '../../solvers/core/math';
 import type { EvaluationGrid, ForwardProblem, MatrixOperator, PenaltyKey, SparseMatrix, Target } from '../../solvers/core/types';
 import type { DataKind } from '../../shared/domain/phantom-definition';
+import { unitGeometry } from './impedance-case';
 import type { SimulatedPhantom } from '../../solvers/campaign/trial';
 
 export interface SyntheticOptions {
@@ -27,7 +28,7 @@ export function discGrid(pixels: number): EvaluationGrid {
         inside.push(row * pixels + column);
       }
     }
-  return { nx: pixels, ny: pixels, xMin: -1, xMax: 1, yMin: -1, yMax: 1, mask, inside: Int32Array.from(inside), bodyRadius: 1 };
+  return { nx: pixels, ny: pixels, xMin: -1, xMax: 1, yMin: -1, yMax: 1, mask, inside: Int32Array.from(inside), bodyRadius: 1, body: { kind: 'disc', radius: 1 } };
 }
 
 function sparse(rows: readonly (readonly [number, number][])[], cols: number): SparseMatrix {
@@ -108,7 +109,9 @@ export function syntheticProblem(options: SyntheticOptions = {}): ForwardProblem
     return sparse(rows.map((row) => [...row.entries()]), n);
   };
   return {
-    family: 'electrical-impedance', dataKind, dataSize: data, unknowns: n, unknownWeights: weights, grid, unit: 'S/m', lowerBound: 0.01 * backgroundValue,
+    family: 'electrical-impedance',
+    geometry: unitGeometry({ electrodes: 8 }),
+    linear: curvature === 0, dataKind, dataSize: data, unknowns: n, unknownWeights: weights, grid, unit: 'S/m', lowerBound: 0.01 * backgroundValue,
     background: () => Float64Array.from(background),
     evaluate(x) {
       const y = raw(x);

@@ -1,8 +1,7 @@
+import { problemLine } from '../../../solvers/problems/registry';
 import type { PhantomVersion } from '../../entities/phantom.ts';
 
-const patternNames = { adjacent: 'adjacent pairs', trigonometric: 'trigonometric patterns' } as const;
-
 /** '16 electrodes, adjacent pairs, difference data'. */
-export function phantomLine({ definition: { geometry, dataKind } }: Pick<PhantomVersion, 'definition'>): string {
-  return `${geometry.electrodes} electrodes, ${patternNames[geometry.pattern]}, ${dataKind} data`;
+export function phantomLine({ definition }: Pick<PhantomVersion, 'definition'>): string {
+  return problemLine(definition);
 }

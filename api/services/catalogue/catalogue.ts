@@ -27,7 +27,7 @@ export const listRules = (): RuleWire[] =>
   }));
 
 export const listChecks = (): CheckDescription[] => [
-  ...phantomChecks.map((check) => toCheck(check, 'phantom')),
+  ...new Map(Object.values(phantomChecks).flat().map((check) => [check.key, toCheck(check, 'phantom')])).values(),
   ...problemChecks.map((check) => toCheck(check, 'problem')),
   ...methodChecks.map((check) => toCheck(check, 'method')),
 ];

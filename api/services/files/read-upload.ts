@@ -1,4 +1,4 @@
-import { limits } from '../../../shared/domain/phantom-definition';
+import { limits } from '../../../shared/domain/limits';
 import { AppError } from '../../../shared/errors.ts';
 import type { ArrayFormat } from '../../entities/stored-array.ts';
 import { readNpy } from './read-npy.ts';

@@ -4,7 +4,8 @@ import type { Actor } from '../../../shared/domain/permissions.ts';
 import type { PhantomDefinition } from '../../../shared/domain/phantom-definition';
 import { AppError, type Issue } from '../../../shared/errors.ts';
 import { contentHash } from '../../../solvers/core/hash';
-import { frameSize } from '../../../solvers/problems/electrical-impedance/patterns';
+import { layoutSize } from '../../../solvers/problems/problem-family';
+import { dataLayout } from '../../../solvers/problems/registry';
 import { PhantomVersionEntity } from '../../entities/phantom.ts';
 import { mayUseArray } from '../arrays/find-array.ts';
 
@@ -28,13 +29,13 @@ export function contentHashes({ definition, frames }: PhantomContent): { definit
  */
 export async function checkUploads(em: EntityManager, input: { readonly actor: Actor; readonly now: Date; readonly content: PhantomContent; readonly basePath?: readonly string[] }): Promise<void> {
   const { actor, now, content, basePath = [] } = input;
-  const { truth, geometry } = content.definition;
+  const { truth } = content.definition;
   const issues: Issue[] = [];
   if (truth.kind === 'array' && !(await mayUseArray(em, { actor, now, kind: 'array', sha256: truth.sha256, rows: truth.rows, cols: truth.cols })))
     issues.push({ path: [...basePath, 'definition', 'truth', 'sha256'], message: `No ${truth.rows} x ${truth.cols} array with this hash was uploaded. Upload it first (POST /api/v1/arrays).` });
   const frames = content.frames;
   if (frames) {
-    const expected = frameSize(geometry);
+    const expected = layoutSize(dataLayout(content.definition));
     if (frames.valuesPerFrame !== expected)
       issues.push({ path: [...basePath, 'frames', 'valuesPerFrame'], message: `A frame of this geometry has ${expected} values, the file has ${frames.valuesPerFrame}.` });
     else if (!(await mayUseArray(em, { actor, now, kind: 'frames', sha256: frames.sha256, rows: frames.frames, cols: frames.valuesPerFrame })))

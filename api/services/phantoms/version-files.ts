@@ -4,7 +4,7 @@ import { defaultDraws, defaultLadder } from '../../../shared/domain/ladder';
 import type { Actor } from '../../../shared/domain/permissions.ts';
 import { AppError } from '../../../shared/errors.ts';
 import { slugSchema } from '../../../shared/contracts/common';
-import { createEvaluationGrid } from '../../../solvers/core/grid';
+import { problemGrid } from '../../../solvers/problems/registry';
 import { deriveDrawKey } from '../../../solvers/core/random';
 import { gaussianNoise } from '../../../solvers/noise/gaussian';
 import type { Simulation } from '../../entities/simulation.ts';
@@ -113,7 +113,7 @@ async function noisyFrames({ version }: PhantomAt, simulation: Simulation): Prom
 /** The ground truth on the evaluation grid, NaN outside the body, row 0 at the lowest y. */
 async function truthArray({ version }: PhantomAt, simulation: Simulation): Promise<Uint8Array> {
   const { truthImage } = await loadSimulationArrays(simulation);
-  const grid = createEvaluationGrid(version.definition.geometry.body.radius, simulation.summary.grid.nx);
+  const grid = problemGrid(version.definition);
   if (grid.inside.length !== truthImage.length) throw new Error(`The truth of ${version.definitionHash} has ${truthImage.length} pixels, the grid ${grid.inside.length}.`);
   const values = new Float64Array(grid.nx * grid.ny).fill(NaN);
   grid.inside.forEach((pixel, i) => (values[pixel] = truthImage[i]!));

@@ -1,5 +1,6 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import type { Replay } from '../../../shared/contracts/runs';
+import { describeProblem } from '../../../solvers/problems/registry';
 import { encodeArray } from '../../../shared/domain/array-encoding';
 import type { Actor } from '../../../shared/domain/permissions.ts';
 import { fromBlob } from '../../entities/float64-blob.ts';
@@ -18,9 +19,7 @@ export async function replayRun(em: EntityManager, input: { readonly run: Loaded
   return {
     run: run.id,
     phantomHash: run.phantomHash,
-    geometry: definition.geometry,
-    dataKind: definition.dataKind,
-    background: simulation.summary.background,
+    problem: describeProblem(definition),
     configuration: run.configuration,
     ladder: run.ladder,
     draws: run.draws,

@@ -8,6 +8,7 @@ import { levelTable, runSheets } from '../figures/run-tables.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
 import { countOpenQuestions } from '../review/comments.ts';
 import { metrics } from '../../../solvers/metrics/registry';
+import { describeProblem } from '../../../solvers/problems/registry';
 import { runSubject, type LoadedRun } from './find-run.ts';
 import { toRunSummary } from './run-summary.ts';
 
@@ -18,7 +19,6 @@ const written = new Intl.DateTimeFormat('en-GB', { dateStyle: 'long', timeStyle:
 export async function showRun(em: EntityManager, input: { readonly run: LoadedRun; readonly actor: Actor | null; readonly now: Date; readonly secondsLeft?: number | null }): Promise<RunDetail> {
   const { run, actor, now } = input;
   const version = run.phantomVersion.$;
-  const { geometry } = version.definition;
   const [simulation, figures, given, questions] = await Promise.all([
     em.findOneOrFail(SimulationEntity, { contentHash: version.definitionHash }),
     loadRunFigures(em, run),
@@ -38,7 +38,7 @@ export async function showRun(em: EntityManager, input: { readonly run: LoadedRu
     background: simulation.summary.background,
     modelErrorFloor: simulation.modelErrorFloor,
     grid: simulation.summary.grid,
-    electrodes: { count: geometry.electrodes, coverage: geometry.electrodeCoverage, firstDeg: geometry.firstElectrodeDeg, clockwise: geometry.numbering === 'clockwise' },
+    problem: describeProblem(version.definition),
     table: Object.fromEntries(metrics.map(({ key }) => [key, levelTable(figures, run.ladder, key)])),
     trivial: Object.fromEntries(metrics.map(({ key }) => [key, trivial[key] ?? null])),
     sheets: runSheets(run, figures),

@@ -3,6 +3,7 @@ import { AppError, type Issue } from '../../../shared/errors.ts';
 import { contentHash } from '../../../solvers/core/hash';
 import type { Method } from '../../../solvers/core/types';
 import { methods } from '../../../solvers/methods/registry';
+import { problemFacts } from '../../../solvers/problems/registry';
 import type { PhantomDefinition } from '../../../shared/domain/phantom-definition';
 
 /**
@@ -40,7 +41,7 @@ export function configurationHash(configuration: Configuration): string {
 }
 
 /** Why the method cannot work on this phantom, in words for the developer; null when it can. */
-export function whyUnfit(methodKey: string, definition: Pick<PhantomDefinition, 'family' | 'dataKind'>): string | null {
+export function whyUnfit(methodKey: string, definition: Pick<PhantomDefinition, 'family' | 'dataKind' | 'geometry'>): string | null {
   const method = methods.find((candidate) => candidate.key === methodKey);
   if (!method) return `The method '${methodKey}' is not in this version of the code.`;
   const { families, dataKinds } = method.capabilities;
@@ -48,7 +49,7 @@ export function whyUnfit(methodKey: string, definition: Pick<PhantomDefinition, 
   if (!dataKinds.includes(definition.dataKind)) {
     return `${method.name} needs ${dataKinds.join(' or ')} data; this phantom has ${definition.dataKind} data.`;
   }
-  return null;
+  return method.unfit?.(problemFacts(definition)) ?? null;
 }
 
 export const methodName = (key: string): string => methods.find((method) => method.key === key)?.name ?? key;

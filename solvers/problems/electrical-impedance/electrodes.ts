@@ -1,4 +1,4 @@
-import type { EitGeometry } from '../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
 import { cos, sin } from '../../core/math';
 
 /**

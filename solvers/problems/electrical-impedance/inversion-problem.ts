@@ -1,12 +1,12 @@
-import type { DataKind, EitGeometry } from '../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
+import type { DataKind } from '../../../shared/domain/phantom-definition';
 import { createEvaluationGrid } from '../../core/grid';
 import { cos, sin } from '../../core/math';
 import { matrixOperator } from '../../core/matrix-operator';
 import { applySparse } from '../../core/sparse';
-import type { ForwardProblem } from '../../core/types';
 import { requireVector } from '../../core/vector';
 import { matmul, matmulTransposed, transpose } from '../../linear-algebra/matrix-product';
-import type { TruthField } from '../../truth/truth-field';
+import type { InversionProblem } from '../problem-family';
 import { projectOnCells } from './cell-projection';
 import { cellJumps, cellPenalty, conductivityCells, pixelShares } from './conductivity-cells';
 import { electrodeIntegrals } from './electrode-integrals';
@@ -20,12 +20,8 @@ import { elementsByCell, pairSensitivities, unitStiffness } from './sensitivity'
 import { smallestContact } from './simulation';
 
 /** The inversion model of electrical impedance, with what the floor and the checks need beyond the common contract. */
-export interface EitInversion extends ForwardProblem {
+export interface EitInversion extends InversionProblem {
   readonly geometry: EitGeometry;
-  /** Voltages of one frame of the conductivities `x` (S/m per cell), V, whatever the data kind. */
-  frameOf(x: Float64Array): Float64Array;
-  /** A ground truth on the cells (geometric means), S/m. */
-  project(truth: TruthField): Float64Array;
   /** Elements and nodes of the potential. */
   readonly elements: number;
   readonly nodes: number;
@@ -114,6 +110,7 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
       if (dataKind === 'difference') for (let i = 0; i < dataSize; i++) data[i] -= reference[i];
       return data;
     },
+    linear: false,
     linearise(x) {
       const pairs = pairSensitivities(mesh, stiffness, groups, solve(x).fields, L, pairScratch);
       return matrixOperator(frameJacobian(geometry, pairs, unknowns), dataSize, unknowns);

@@ -1,4 +1,4 @@
-import type { EitGeometry } from '../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
 import { matmulTransposed } from '../../linear-algebra/matrix-product';
 import { channels, currentPatterns, frameSize, patternCount } from './patterns';
 

@@ -29,6 +29,7 @@ beforeAll(async () => {
   const em = app.orm.em.fork();
   em.create(ArrayEntity, { sha256: hash, kind: 'array', rows: 2, cols: 2, format: 'csv', fileName: 'truth-array.csv', fileSize: 1, values: toBlob(secret) });
   const version = await em.findOneOrFail(PhantomVersionEntity, { phantom: { slug: bench.phantoms[0] } });
+  if (version.definition.family !== 'electrical-impedance') throw new Error('The bench is one of electrical impedance.');
   version.definition = { ...version.definition, truth: { kind: 'array', background: 1, sha256: hash, rows: 2, cols: 2, extent: { xMin: -0.1, xMax: 0.1, yMin: -0.1, yMax: 0.1 }, scale: 1, offset: 0 } };
   const before = version.definitionHash;
   version.definitionHash = contentHash(version.definition);

@@ -44,7 +44,7 @@ describe('a run', () => {
     expect(shown.may).toEqual({ cancel: false, recompute: false, review: false, comment: false, requeue: false });
     expect(shown.provenance.map((item) => item.what)).toEqual(['Phantom', 'Simulation', 'Inversion model', 'Solver', 'Bench', 'Noise', 'Code', 'Result']);
     expect(shown.provenance.at(-1)!.hash).toBe(shown.resultHash);
-    expect(shown.electrodes).toEqual({ count: 16, coverage: 0.5, firstDeg: 90, clockwise: true });
+    expect(shown.problem).toMatchObject({ family: 'electrical-impedance', background: 1, geometry: { electrodes: 16, electrodeCoverage: 0.5, firstElectrodeDeg: 90, numbering: 'clockwise' } });
   });
 
   it('tells reviewers and developers apart', async () => {

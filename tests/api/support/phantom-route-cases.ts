@@ -37,6 +37,7 @@ async function publishedArray(world: WalkWorld): Promise<string> {
   const sha256 = sha256Hex(values);
   em.create(ArrayEntity, { sha256, kind: 'array', rows: 2, cols: 2, format: 'csv', fileName: 'walk.csv', fileSize: 8, values: toBlob(values) });
   const row = await em.findOneOrFail(PhantomVersionEntity, { id: versionId });
+  if (row.definition.family !== 'electrical-impedance') throw new Error('The walk makes phantoms of electrical impedance.');
   row.definition = {
     ...row.definition, truth: { kind: 'array', background: 1, sha256, rows: 2, cols: 2, extent: { xMin: -0.1, xMax: 0.1, yMin: -0.1, yMax: 0.1 }, scale: 1, offset: 0 },
   };

@@ -4,7 +4,7 @@ import { Cancelled, ReconstructionJobs, type JobControl } from '../../../app/wor
 import type { JobProgress, Request, Response } from '../../../app/workers/reconstruction-messages';
 import type { Replay } from '../../../shared/contracts/runs';
 import { encodeArray } from '../../../shared/domain/array-encoding';
-import type { EitGeometry } from '../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
 import { prepareRun, runLevel } from '../../../solvers/campaign/run';
 import { runHash } from '../../../solvers/campaign/trial';
 import { createEitInversion } from '../../../solvers/problems/electrical-impedance/inversion-problem';

@@ -2,15 +2,15 @@ import { describe, expect, it } from 'vitest';
 import { adjointCheck } from '../../../solvers/checks/adjoint';
 import { homogeneityCheck } from '../../../solvers/checks/homogeneity';
 import { taylorCheck } from '../../../solvers/checks/taylor';
-import { matrixOperator } from '../../../solvers/core/matrix-operator';
+import { denseMatrix, matrixOperator } from '../../../solvers/core/matrix-operator';
 import { norm2 } from '../../../solvers/core/vector';
 import { readRule } from '../../../solvers/methods/parameters';
 import { methods } from '../../../solvers/methods/registry';
-import type { ForwardProblem, MatrixOperator, Method, Reconstructor, RuleKey, RuleSetting } from '../../../solvers/core/types';
+import type { Derivative, ForwardProblem, Method, Reconstructor, RuleKey, RuleSetting } from '../../../solvers/core/types';
 import { syntheticProblem, syntheticTruth } from '../../support/synthetic-problem';
 
 /** The same problem with another derivative. */
-function withDerivative(problem: ForwardProblem, change: (operator: MatrixOperator) => MatrixOperator): ForwardProblem {
+function withDerivative(problem: ForwardProblem, change: (operator: Derivative) => Derivative): ForwardProblem {
   return { ...problem, linearise: (x) => change(problem.linearise(x)) };
 }
 
@@ -39,7 +39,7 @@ describe('derivative check', () => {
     // The remainder of a quadratic map is exactly quadratic in the step.
     expect(right.figure).toBeCloseTo(2, 4);
     expect(taylorCheck.evaluate(syntheticProblem()).state).toBe('pass');
-    const off = withDerivative(curved, (operator) => matrixOperator(operator.values.map((v) => v * 1.01), operator.rows, operator.cols));
+    const off = withDerivative(curved, (operator) => matrixOperator(denseMatrix(operator).map((v) => v * 1.01), operator.rows, operator.cols));
     expect(taylorCheck.evaluate(off).state).toBe('fail');
   });
 });

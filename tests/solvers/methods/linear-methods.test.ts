@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { denseMatrix } from '../../../solvers/core/matrix-operator';
 import { Matrix, solve } from 'ml-matrix';
 import reference from '../../reference/linear-methods.json';
 import type { ForwardProblem, RuleSetting } from '../../../solvers/core/types';
@@ -111,7 +112,7 @@ describe('Gaussian smoothness prior', () => {
   it('is the posterior mean of a linear Gaussian problem (Kaipio and Somersalo 2005), by the data-space formula', () => {
     const norm = 0.02 * simulated.noiseScale;
     const { x } = getMethod('smoothness-prior').prepare(smooth, { deviation, correlationLength: length }, null).reconstruct(simulated.clean, { norm, level: 0.02 });
-    const jacobian = Matrix.from1DArray(18, size, smooth.linearise(smooth.background()).values);
+    const jacobian = Matrix.from1DArray(18, size, denseMatrix(smooth.linearise(smooth.background())));
     const covariance = solve(precision, jacobian.transpose());
     const inner = jacobian.mmul(covariance).add(Matrix.eye(18, 18).mul((norm * norm) / 18));
     const mean = covariance.mmul(solve(inner, Matrix.columnVector(Array.from(simulated.clean)))).to1DArray();

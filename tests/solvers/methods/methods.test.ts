@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { denseMatrix } from '../../../solvers/core/matrix-operator';
 import { runLevel, prepareRun } from '../../../solvers/campaign/run';
 import { ballMultiplier } from '../../../solvers/methods/data-term';
 import { factorPenalty, penaltyMatrix } from '../../../solvers/methods/penalty';
@@ -10,7 +11,7 @@ import type { PenaltyKey } from '../../../solvers/core/types';
 
 const problem = syntheticProblem({ side: 9, data: 18 });
 const { simulated, x: truth } = syntheticTruth(problem);
-const jacobian = Matrix.from1DArray(18, 81, problem.linearise(problem.background()).values);
+const jacobian = Matrix.from1DArray(18, 81, denseMatrix(problem.linearise(problem.background())));
 const noise = { norm: 0.01 * simulated.noiseScale, level: 0.01 };
 
 function relativeGap(a: ArrayLike<number>, b: ArrayLike<number>): number {

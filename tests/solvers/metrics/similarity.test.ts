@@ -9,7 +9,7 @@ import { discGrid } from '../../support/synthetic-problem';
 
 const side = 24;
 const square: EvaluationGrid = {
-  nx: side, ny: side, xMin: 0, xMax: 1, yMin: 0, yMax: 1, mask: new Uint8Array(side * side).fill(1), inside: Int32Array.from({ length: side * side }, (_, k) => k), bodyRadius: 0.5,
+  nx: side, ny: side, xMin: 0, xMax: 1, yMin: 0, yMax: 1, mask: new Uint8Array(side * side).fill(1), inside: Int32Array.from({ length: side * side }, (_, k) => k), bodyRadius: 0.5, body: { kind: 'rectangle', width: 1, height: 1 },
 };
 const at = (k: number): [number, number] => [(k % side) / (side - 1), Math.floor(k / side) / (side - 1)];
 const a = Float64Array.from(square.inside, (k) => Math.sin(3 * at(k)[0]) * Math.cos(2 * at(k)[1]) + at(k)[0] * at(k)[1]);

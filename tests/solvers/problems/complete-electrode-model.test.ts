@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import reference from '../../reference/complete-electrode-model.json';
 import { maxError, shapesTruth, ellipse, unitGeometry } from '../../support/impedance-case';
-import type { EitGeometry } from '../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
 import { measure } from '../../../solvers/problems/electrical-impedance/patterns';
 import { simulateElectricalImpedance } from '../../../solvers/problems/electrical-impedance/simulation';
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { meshDisc } from '../../../solvers/mesh/disc-mesh';
+import { meshBody } from '../../../solvers/mesh/body-mesh';
 import { quadraticMesh } from '../../../solvers/mesh/quadratic-mesh';
 import { assembleStiffness, meshPattern, quadraturePoints } from '../../../solvers/problems/electrical-impedance/assembly';
 import { degreeFour, degreeFourShapes, edgeShapes, gaussPoints, gaussWeights } from '../../../solvers/problems/electrical-impedance/elements';
@@ -34,7 +34,7 @@ describe('quadratic elements', () => {
   });
 
   it('gives the energy of x exactly, that of x^2 - y^2 to the order of the curved boundary, and none to constants', () => {
-    const mesh = quadraticMesh(meshDisc({ ends: [], grading: 1, hMin: 0.15, hMax: 0.15 }));
+    const mesh = quadraticMesh(meshBody({ ends: [], grading: 1, hMin: 0.15, hMax: 0.15 }));
     const pattern = meshPattern(mesh);
     const values = new Float64Array(pattern.rows.length);
     const energy = (u: (x: number, y: number) => number, sigma: number | Float64Array): number => {

@@ -1,5 +1,5 @@
 import { beforeAll, describe, expect, it } from 'vitest';
-import { eitGeometrySchema, type EitGeometry } from '../../../shared/domain/phantom-definition';
+import { eitGeometrySchema, type EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
 import { adjointCheck } from '../../../solvers/checks/adjoint';
 import { taylorCheck } from '../../../solvers/checks/taylor';
 import { applySparse } from '../../../solvers/core/sparse';

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import reference from '../../reference/neumann-to-dirichlet.json';
 import { ellipse, shapesTruth, unitGeometry } from '../../support/impedance-case';
-import type { Shape } from '../../../shared/domain/phantom-definition';
+import type { Shape } from '../../../shared/domain/truth-definition';
 import { concentricEigenvalue, neumannToDirichlet, type Harmonic } from '../../../solvers/problems/electrical-impedance/continuum';
 import { electrodeFrame } from '../../../solvers/problems/electrical-impedance/electrodes';
 import { sampleConductivity } from '../../../solvers/problems/electrical-impedance/simulation';

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { unitGeometry } from '../../support/impedance-case';
-import { electrodeCounts, measurementKeys, patternKeys } from '../../../shared/domain/phantom-definition';
+import { electrodeCounts, measurementKeys, patternKeys } from '../../../shared/domain/geometry/electrical-impedance';
 import { channelNames, channels, currentPatterns, frameSize, measure, patternCount } from '../../../solvers/problems/electrical-impedance/patterns';
 
 describe('current patterns and measurements', () => {

@@ -1,7 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { ellipse, maxError, shapesTruth, unitGeometry } from '../../support/impedance-case';
-import type { EitGeometry, Shape } from '../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
+import type { Shape } from '../../../shared/domain/truth-definition';
 import { reciprocityGap } from '../../../solvers/problems/electrical-impedance/reciprocity';
 import { simulateElectricalImpedance } from '../../../solvers/problems/electrical-impedance/simulation';
 import { createTruthField } from '../../../solvers/truth/truth-field';

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { truthSchema, type TruthDefinition } from '../../../shared/domain/phantom-definition';
+import { conductivityTruthSchema as truthSchema, type TruthDefinition } from '../../../shared/domain/truth-definition';
 import { createEvaluationGrid } from '../../../solvers/core/grid';
 import { requireInBody } from '../../../solvers/truth/check-in-body';
 import { createTruthField } from '../../../solvers/truth/truth-field';

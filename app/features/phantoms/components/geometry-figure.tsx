@@ -1,6 +1,7 @@
 import { electrodeAngle } from '../model/geometry-facts';
 import { pairCurrentLines } from '../model/current-lines';
-import type { EitGeometry, TruthDefinition } from '../../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../../shared/domain/geometry/electrical-impedance';
+import type { TruthDefinition } from '../../../../shared/domain/truth-definition';
 import { formatNumber } from '../../../lib/format';
 import { ShapeOutline } from './shape-outline';
 

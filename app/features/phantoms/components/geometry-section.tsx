@@ -1,7 +1,7 @@
 import { Field, Select } from '../../../components/ui/field';
 import { FormSection } from '../../../components/ui/layout';
 import { parseDecimal } from '../../../lib/decimal';
-import { electrodeCounts, measurementKeys, patternKeys, type MeasurementKey, type PatternKey } from '../../../../shared/domain/phantom-definition';
+import { electrodeCounts, measurementKeys, patternKeys, type MeasurementKey, type PatternKey } from '../../../../shared/domain/geometry/electrical-impedance';
 import { fieldId } from '../model/field-id';
 import { geometryPath } from '../model/form-request';
 import { electrodeWidth, frameFacts, measurementNames, patternNames } from '../model/geometry-facts';

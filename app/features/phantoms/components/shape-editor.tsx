@@ -7,7 +7,7 @@ import { FactList } from '../../../components/ui/layout';
 import { useToast } from '../../../components/ui/toast';
 import { parseDecimal } from '../../../lib/decimal';
 import { formatNumber } from '../../../lib/format';
-import { limits } from '../../../../shared/domain/phantom-definition';
+import { limits } from '../../../../shared/domain/limits';
 import { moveShape, newShape, reach, shapeNames, type DraftShape, type ShapeKind } from '../model/draft-shape';
 import { dragShape, type Grip } from '../model/shape-drag';
 import { ShapeOverlay } from './shape-overlay';

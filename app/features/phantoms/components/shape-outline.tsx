@@ -1,4 +1,4 @@
-import type { Shape } from '../../../../shared/domain/phantom-definition';
+import type { Shape } from '../../../../shared/domain/truth-definition';
 
 /** Dashed outline of a shape in drawing units of `scale` per m, y down. */
 export function ShapeOutline({ shape, scale }: { shape: Shape; scale: number }) {

@@ -1,5 +1,5 @@
 import { decimalText, parseDecimal, shiftDecimal } from '../../../lib/decimal';
-import type { Shape } from '../../../../shared/domain/phantom-definition';
+import type { Shape } from '../../../../shared/domain/truth-definition';
 
 export type ShapeKind = Shape['kind'];
 export const shapeNames: Record<ShapeKind, string> = { ellipse: 'Ellipse', polygon: 'Polygon', annulus: 'Annulus', bump: 'Smooth bump' };

@@ -1,6 +1,7 @@
 import { parseDecimal, shiftDecimal } from '../../../lib/decimal';
 import { measuredFramesSchema, type PhantomCreate } from '../../../../shared/contracts/phantoms';
-import { limits, phantomDefinitionSchema, type PhantomDefinition } from '../../../../shared/domain/phantom-definition';
+import { limits } from '../../../../shared/domain/limits';
+import { phantomDefinitionSchema, type PhantomDefinition } from '../../../../shared/domain/phantom-definition';
 import { fieldLabel, numberKeys, reach, toShape, type DraftShape, type NumberKey } from './draft-shape';
 import { frameFacts } from './geometry-facts';
 import type { PhantomForm } from './phantom-form';

@@ -1,4 +1,4 @@
-import type { MeasurementKey, PatternKey } from '../../../../shared/domain/phantom-definition';
+import type { MeasurementKey, PatternKey } from '../../../../shared/domain/geometry/electrical-impedance';
 
 export const patternNames: Record<PatternKey, string> = { adjacent: 'Adjacent pairs', trigonometric: 'Trigonometric' };
 export const measurementNames: Record<MeasurementKey, string> = {

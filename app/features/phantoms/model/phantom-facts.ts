@@ -1,7 +1,8 @@
 import { formatCount, formatNumber, formatPercent, formatQuantity } from '../../../lib/format';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import type { Simulation } from '../../../../shared/contracts/simulations';
-import type { EitGeometry, Shape } from '../../../../shared/domain/phantom-definition';
+import type { EitGeometry } from '../../../../shared/domain/geometry/electrical-impedance';
+import type { Shape } from '../../../../shared/domain/truth-definition';
 import { electrodeWidth, frameFacts, measurementNames } from './geometry-facts';
 
 const mm = (metres: number): string => formatNumber(metres * 1000, 3);

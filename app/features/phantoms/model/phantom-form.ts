@@ -3,7 +3,8 @@ import { decimalText, shiftDecimal } from '../../../lib/decimal';
 import { licences } from '../../../../shared/contracts/common';
 import { arrayUploadResponseSchema, frameUploadResponseSchema } from '../../../../shared/contracts/arrays';
 import type { PhantomVersionDetail } from '../../../../shared/contracts/phantoms';
-import { dataKinds, measurementKeys, noiseReferences, patternKeys } from '../../../../shared/domain/phantom-definition';
+import { measurementKeys, patternKeys } from '../../../../shared/domain/geometry/electrical-impedance';
+import { dataKinds, noiseReferences } from '../../../../shared/domain/phantom-definition';
 import { fromShape, newShapeId } from './draft-shape';
 
 const text = z.string();
