@@ -11,7 +11,7 @@ import { projectOnCells } from './cell-projection';
 import { cellJumps, cellPenalty, conductivityCells, pixelShares } from './conductivity-cells';
 import { electrodeIntegrals } from './electrode-integrals';
 import { electrodeModel, solveElectrodes } from './electrode-model';
-import { electrodeFrame } from './electrodes';
+import { electrodeFrame, type ElectrodeFrame } from './electrodes';
 import { degreeFourShapes } from './elements';
 import { inversionDetail, inversionMesh, type InversionDetail } from './inversion-mesh';
 import { frameJacobian, pairWeights } from './jacobian';
@@ -22,6 +22,8 @@ import { smallestContact } from './simulation';
 /** The inversion model of electrical impedance, with what the floor and the checks need beyond the common contract. */
 export interface EitInversion extends InversionProblem {
   readonly geometry: EitGeometry;
+  /** Centroids of the cells, x, y per cell, m, in the body. */
+  readonly cellCentres: Float64Array;
   /** Elements and nodes of the potential. */
   readonly elements: number;
   readonly nodes: number;
@@ -101,6 +103,7 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
     grid,
     unit: 'S/m',
     lowerBound: 1e-3 * background,
+    cellCentres: centresInBody(cells.centroids, frame),
     elements: cellOf.length,
     nodes: model.pattern.n,
     background: () => uniform.slice(),
@@ -120,6 +123,12 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
     jumps: () => cellJumps(cells),
     project: (truth) => projectOnCells(truth, mesh, cellOf, unknowns, cells.areas, frame),
   };
+}
+
+function centresInBody(centroids: Float64Array, frame: ElectrodeFrame): Float64Array {
+  const centres = new Float64Array(centroids.length);
+  for (let c = 0; c < centres.length; c += 2) centres.set(frame.toBody(centroids[c] / frame.radius, centroids[c + 1] / frame.radius), c);
+  return centres;
 }
 
 function sameValues(a: Float64Array, b: Float64Array): boolean {
