@@ -1,4 +1,5 @@
-import type { TriangleMesh } from './disc-mesh';
+import type { TriangleMesh } from './body-mesh';
+import type { MeshBoundary } from './mesh-boundary';
 import { qualityOf } from './quality';
 
 export interface RefinedMesh {
@@ -8,9 +9,9 @@ export interface RefinedMesh {
 }
 
 /**
- * Refines a triangulation of the unit disc by bisecting longest edges along their propagation paths (Rivara 1984) until the
+ * Refines a triangulation by bisecting longest edges along their propagation paths (Rivara 1984) until the
  * longest edge of every triangle is at most `wanted` at its centroid. The mesh stays conforming, angles stay at least half
- * the smallest angle given, every new triangle lies in one old one, and new boundary vertices lie on the circle.
+ * the smallest angle given, every new triangle lies in one old one, and new boundary vertices lie on the boundary (a bend of it then moves a little area between parents).
  * @throws RangeError when more than `limit` triangles would be needed
  */
 export function bisectUntil(mesh: TriangleMesh, wanted: (x: number, y: number) => number, limit = 100_000): RefinedMesh {
@@ -100,11 +101,7 @@ export function bisectUntil(mesh: TriangleMesh, wanted: (x: number, y: number) =
       const middle = xs.length;
       let x = (xs[a] + xs[b]) / 2;
       let y = (ys[a] + ys[b]) / 2;
-      if (other < 0) {
-        const r = Math.sqrt(x * x + y * y);
-        x /= r;
-        y /= r;
-      }
+      if (other < 0) [x, y] = mesh.boundary.nearest(x, y);
       xs.push(x);
       ys.push(y);
       sides.delete(keyOf(a, b));
@@ -126,11 +123,11 @@ export function bisectUntil(mesh: TriangleMesh, wanted: (x: number, y: number) =
       bisect(t);
     }
   }
-  return { mesh: numbered(xs, ys, corners), parent: Int32Array.from(parent) };
+  return { mesh: numbered(mesh.boundary, xs, ys, corners), parent: Int32Array.from(parent) };
 }
 
 /** Puts the boundary vertices first, counter-clockwise from vertex 0 (a boundary vertex of the given mesh). */
-function numbered(xs: readonly number[], ys: readonly number[], corners: readonly number[]): TriangleMesh {
+function numbered(boundary: MeshBoundary, xs: readonly number[], ys: readonly number[], corners: readonly number[]): TriangleMesh {
   const total = xs.length;
   // An edge lies on the boundary when no triangle runs along it the other way.
   const directed = new Set<number>();
@@ -154,5 +151,5 @@ function numbered(xs: readonly number[], ys: readonly number[], corners: readonl
   const triangles = Int32Array.from(corners, (v) => place[v]);
   let quality = 1;
   for (let t = 0; t < triangles.length; t += 3) quality = Math.min(quality, qualityOf(vertices, triangles[t], triangles[t + 1], triangles[t + 2]));
-  return { vertices, boundaryCount, triangles, interfaceEdges: new Int32Array(0), quality };
+  return { boundary, vertices, boundaryCount, triangles, interfaceEdges: new Int32Array(0), quality };
 }

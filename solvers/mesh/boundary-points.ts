@@ -1,35 +1,34 @@
-import { cos, sin } from '../core/math';
+import type { MeshBoundary } from './mesh-boundary';
 import type { SizeField } from './size-field';
 
-const twoPi = 2 * Math.PI;
-
 /**
- * Angles of the boundary nodes of the unit disc, ascending in [first, first + 2 pi): every fixed angle is a node, and between
- * two fixed angles the nodes split the integral of ds / h(s) into equal parts.
- * @param fixed at least one angle, ascending, within one turn.
+ * Boundary nodes by their arc lengths, ascending over one turn from the first fixed one: every fixed place is a node, and between
+ * two fixed places the nodes split the integral of ds / h(s) into equal parts.
+ * @param fixed at least one arc length, ascending, within one turn.
  */
-export function boundaryAngles(fixed: readonly number[], size: SizeField): Float64Array {
-  const angles: number[] = [];
+export function boundaryPlaces(boundary: MeshBoundary, fixed: readonly number[], size: SizeField): Float64Array {
+  const places: number[] = [];
+  const sizeAt = (s: number): number => size.at(...boundary.pointAt(s));
   for (let k = 0; k < fixed.length; k++) {
     const from = fixed[k];
-    const to = k + 1 < fixed.length ? fixed[k + 1] : fixed[0] + twoPi;
-    appendArc(angles, from, to, size);
+    const to = k + 1 < fixed.length ? fixed[k + 1] : fixed[0] + boundary.length;
+    appendArc(places, from, to, sizeAt);
   }
-  return Float64Array.from(angles);
+  return Float64Array.from(places);
 }
 
-function appendArc(angles: number[], from: number, to: number, size: SizeField): void {
+function appendArc(places: number[], from: number, to: number, sizeAt: (s: number) => number): void {
   const length = to - from;
   // Cumulative ds / h at steps of an eighth of the local size, from both ends to the middle so that equal ends give a
   // symmetric split.
-  const left = march(from, length / 2, 1, size);
-  const right = march(to, length / 2, -1, size);
+  const left = march(from, length / 2, 1, sizeAt);
+  const right = march(to, length / 2, -1, sizeAt);
   const total = left.total + right.total;
   const parts = Math.max(length > 2 ? 3 : 1, Math.round(total + 0.2));
-  angles.push(from);
+  places.push(from);
   for (let i = 1; i < parts; i++) {
     const target = (total * i) / parts;
-    angles.push(target <= left.total ? from + locate(left, target) : to - locate(right, total - target));
+    places.push(target <= left.total ? from + locate(left, target) : to - locate(right, total - target));
   }
 }
 
@@ -39,16 +38,16 @@ interface March {
   readonly total: number;
 }
 
-function march(start: number, length: number, direction: 1 | -1, size: SizeField): March {
+function march(start: number, length: number, direction: 1 | -1, sizeAt: (s: number) => number): March {
   const s = [0];
   const sum = [0];
   let at = 0;
   let total = 0;
   while (at < length) {
     const here = start + direction * at;
-    const step = Math.min(length - at, 0.125 * size.at(cos(here), sin(here)));
+    const step = Math.min(length - at, 0.125 * sizeAt(here));
     const middle = start + direction * (at + step / 2);
-    total += step / size.at(cos(middle), sin(middle));
+    total += step / sizeAt(middle);
     at = length - at - step < 1e-12 * length ? length : at + step;
     s.push(at);
     sum.push(total);

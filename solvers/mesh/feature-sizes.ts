@@ -1,4 +1,5 @@
-import { circleCrossing, type MeshInterface } from './interface-graph';
+import type { MeshInterface } from './interface-graph';
+import { boundaryCrossing, type MeshBoundary } from './mesh-boundary';
 import type { SizeSource } from './size-field';
 
 export interface FeatureSpec {
@@ -31,7 +32,7 @@ const cornerCosine = 0.94;
  * Sizes wanted along interfaces: by their curvature, by the gap to the next interface or the boundary, and their corners.
  * Each interface is sampled at up to about 400 points; pairs are compared directly (cost: square of the number of samples).
  */
-export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: FeatureSpec): InterfaceFeatures {
+export function interfaceFeatures(boundary: MeshBoundary, interfaces: readonly MeshInterface[], spec: FeatureSpec): InterfaceFeatures {
   const corners: number[] = [];
   const x: number[] = [];
   const y: number[] = [];
@@ -46,7 +47,7 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
   interfaces.forEach((curve, k) => {
     if (curve.corners) {
       const vertices = curve.points(() => 1e9);
-      collectCorners(vertices, corners);
+      collectCorners(boundary, vertices, corners);
     }
     const coarse = curve.points(() => 0.1);
     let perimeter = 0;
@@ -59,8 +60,8 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
       const py = samples[2 * i + 1];
       const a = (i + n - 1) % n;
       const b = (i + 1) % n;
-      const inside = px * px + py * py < 1;
-      if (inside !== samples[2 * b] * samples[2 * b] + samples[2 * b + 1] * samples[2 * b + 1] < 1) corners.push(...leaving(curve, px, py, samples[2 * b], samples[2 * b + 1]));
+      const inside = boundary.inside(px, py);
+      if (inside !== boundary.inside(samples[2 * b], samples[2 * b + 1])) corners.push(...leaving(boundary, curve, px, py, samples[2 * b], samples[2 * b + 1]));
       if (!inside) continue;
       const tx = samples[2 * b] - samples[2 * a];
       const ty = samples[2 * b + 1] - samples[2 * a + 1];
@@ -76,7 +77,7 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
         const curvature = (2 * Math.abs(cross)) / (l1 * l2 * t);
         if (curvature > 0) h = Math.min(h, spec.curvatureShare / curvature);
       }
-      h = Math.min(h, spec.gapShare * (1 - Math.sqrt(px * px + py * py)));
+      h = Math.min(h, spec.gapShare * boundary.depth(px, py));
       x.push(px);
       y.push(py);
       nx.push(-ty / t);
@@ -111,15 +112,13 @@ export function interfaceFeatures(interfaces: readonly MeshInterface[], spec: Fe
   return { sources, corners: Float64Array.from(corners) };
 }
 
-/** Where a curve meets the unit circle between two samples on either side of it. */
-function leaving(curve: MeshInterface, ax: number, ay: number, bx: number, by: number): [number, number] {
-  let [x, y] = circleCrossing(ax, ay, bx, by);
+/** Where a curve meets the boundary between two samples on either side of it. */
+function leaving(boundary: MeshBoundary, curve: MeshInterface, ax: number, ay: number, bx: number, by: number): [number, number] {
+  let [x, y] = boundaryCrossing(boundary, ax, ay, bx, by);
   for (let i = 0; i < 3; i++) {
     const [px, py] = curve.project(x, y);
-    const r = Math.sqrt(px * px + py * py);
-    if (!(r > 0.5)) break;
-    x = px / r;
-    y = py / r;
+    if (!(boundary.depth(px, py) < 0.5)) break;
+    [x, y] = boundary.nearest(px, py);
   }
   return [x, y];
 }
@@ -137,14 +136,14 @@ function crossing(ax: number, ay: number, bx: number, by: number, cx: number, cy
   return t >= 0 && t < 1 && s >= 0 && s < 1 ? t : -1;
 }
 
-function collectCorners(vertices: Float64Array, corners: number[]): void {
+function collectCorners(boundary: MeshBoundary, vertices: Float64Array, corners: number[]): void {
   const n = vertices.length / 2;
   for (let i = 0; i < n; i++) {
     const a = (i + n - 1) % n;
     const b = (i + 1) % n;
     const px = vertices[2 * i];
     const py = vertices[2 * i + 1];
-    if (px * px + py * py >= 1) continue;
+    if (!boundary.inside(px, py)) continue;
     const ux = px - vertices[2 * a];
     const uy = py - vertices[2 * a + 1];
     const vx = vertices[2 * b] - px;

@@ -1,5 +1,6 @@
 import { cos, sin } from '../core/math';
 import { unitHash } from './hash';
+import type { MeshBoundary } from './mesh-boundary';
 import type { PointBuckets } from './point-buckets';
 import type { SizeField } from './size-field';
 
@@ -7,11 +8,11 @@ import type { SizeField } from './size-field';
 const spacing = 0.74;
 
 /**
- * Fills the unit disc with points by an advancing front: every point offers six neighbours at 60 degrees, one wanted size away,
+ * Fills the body with points by an advancing front: every point offers six neighbours at 60 degrees, one wanted size away,
  * and those with enough room are taken. First in, first out, so layers grow from the boundary and the interfaces inwards.
  * @param seeds the fixed points are `points` 0 .. count - 1; `directions[i]` is the angle of the first offer of fixed point i.
  */
-export function fillDisc(points: PointBuckets, directions: ArrayLike<number>, size: SizeField, seed: number, limit: number): void {
+export function fillBody(boundary: MeshBoundary, points: PointBuckets, directions: ArrayLike<number>, size: SizeField, seed: number, limit: number): void {
   const angle: number[] = Array.from(directions);
   const third = Math.PI / 3;
   for (let p = 0; p < points.count; p++) {
@@ -29,8 +30,7 @@ export function fillDisc(points: PointBuckets, directions: ArrayLike<number>, si
       d = 0.5 * (hp + h);
       const x = px + d * ux;
       const y = py + d * uy;
-      const r = Math.sqrt(x * x + y * y);
-      if (1 - r < 0.5 * h) continue;
+      if (boundary.depth(x, y) < 0.5 * h) continue;
       if (points.crowded(x, y, h, spacing)) continue;
       if (points.count >= limit) throw new RangeError(`The mesh would need more than ${limit} points: choose larger elements.`);
       const q = points.add(x, y, h);

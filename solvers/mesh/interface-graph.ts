@@ -1,6 +1,7 @@
+import { boundaryCrossing, type MeshBoundary } from './mesh-boundary';
 import type { SizeField } from './size-field';
 
-/** A closed curve across which the coefficient jumps, in the coordinates of the unit disc. */
+/** A closed curve across which the coefficient jumps, in the coordinates of the mesh. */
 export interface MeshInterface {
   /** True for polygons: straight between listed corners, no curved edges. */
   readonly corners: boolean;
@@ -16,9 +17,9 @@ const segmentShare = 0.22;
 const boundaryShare = 0.35;
 
 /**
- * Fixed points and constraint segments of a mesh of the unit disc: boundary nodes first, then the interfaces, cleaned so that
+ * Fixed points and constraint segments of a mesh: boundary nodes first, then the interfaces, cleaned so that
  * no two segments cross and nothing lies closer than a share of the wanted size. Points closer than that are merged, crossings
- * become points, parts outside the disc or hugging its boundary are left out: there the mesh does not conform and the
+ * become points, parts outside the body or hugging its boundary are left out: there the mesh does not conform and the
  * elements integrate the jump by quadrature.
  */
 export class InterfaceGraph {
@@ -33,16 +34,16 @@ export class InterfaceGraph {
   readonly owner: number[] = [];
   readonly boundaryCount: number;
 
+  /** @param places arc lengths of the boundary nodes */
   constructor(
-    boundaryX: ArrayLike<number>,
-    boundaryY: ArrayLike<number>,
+    private readonly boundary: MeshBoundary,
+    places: Float64Array,
     private readonly field: SizeField,
   ) {
-    this.boundaryCount = boundaryX.length;
-    for (let i = 0; i < boundaryX.length; i++) {
-      const x = boundaryX[i];
-      const y = boundaryY[i];
-      this.push(x, y, -y, x);
+    this.boundaryCount = places.length;
+    for (const s of places) {
+      const [x, y] = boundary.pointAt(s);
+      this.push(x, y, ...boundary.tangent(x, y));
     }
   }
 
@@ -68,7 +69,7 @@ export class InterfaceGraph {
       if (a === -2 && b === -2) continue;
       if (a === -1 || b === -1) continue;
       if (a === -2 || b === -2) {
-        const [cx, cy] = circleCrossing(polyline[2 * i], polyline[2 * i + 1], polyline[2 * j], polyline[2 * j + 1]);
+        const [cx, cy] = boundaryCrossing(this.boundary, polyline[2 * i], polyline[2 * i + 1], polyline[2 * j], polyline[2 * j + 1]);
         const node = this.nearestBoundaryNode(cx, cy);
         if (a === -2) a = node;
         else b = node;
@@ -82,8 +83,8 @@ export class InterfaceGraph {
 
   /** Index of the point, -1 when it hugs the boundary, -2 when it lies outside. */
   private place(x: number, y: number, tx: number, ty: number): number {
-    const r = Math.sqrt(x * x + y * y);
-    if (r >= 1) return -2;
+    const depth = this.boundary.depth(x, y);
+    if (depth <= 0) return -2;
     const h = this.field.at(x, y);
     let best = -1;
     let bestDistance = mergeShare * h;
@@ -98,7 +99,7 @@ export class InterfaceGraph {
       }
     }
     if (best >= 0) return best;
-    if (1 - r < boundaryShare * h) return -1;
+    if (depth < boundaryShare * h) return -1;
     const p = this.push(x, y, tx, ty);
     // A point almost on an earlier segment splits it.
     for (let s = 0; s < this.from.length; s++) {
@@ -234,22 +235,4 @@ export class InterfaceGraph {
     }
     return best;
   }
-}
-
-/** Where the segment from a to b (one end inside, one outside or on the unit circle) meets the circle. */
-export function circleCrossing(ax: number, ay: number, bx: number, by: number): [number, number] {
-  let low = 0;
-  let high = 1;
-  const insideStart = ax * ax + ay * ay < 1;
-  for (let i = 0; i < 50; i++) {
-    const t = 0.5 * (low + high);
-    const x = ax + t * (bx - ax);
-    const y = ay + t * (by - ay);
-    if (x * x + y * y < 1 === insideStart) low = t;
-    else high = t;
-  }
-  const x = ax + low * (bx - ax);
-  const y = ay + low * (by - ay);
-  const r = Math.sqrt(x * x + y * y);
-  return [x / r, y / r];
 }

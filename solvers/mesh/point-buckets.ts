@@ -1,7 +1,7 @@
-/** Points on the unit disc in a uniform grid of linked lists, for 'is anything nearer than r' questions. */
+/** Points within `reach` of the origin (farther ones are slower, not wrong) in a uniform grid of linked lists, for 'is anything nearer than r' questions. */
 export class PointBuckets {
   private readonly side = 128;
-  private readonly cell = 2.2 / 128;
+  private readonly cell: number;
   private readonly head = new Int32Array(128 * 128).fill(-1);
   private next = new Int32Array(4096);
   x = new Float64Array(4096);
@@ -9,6 +9,10 @@ export class PointBuckets {
   /** Wanted size at the point. */
   size = new Float64Array(4096);
   count = 0;
+
+  constructor(private readonly reach: number) {
+    this.cell = (2 * reach) / 128;
+  }
 
   add(x: number, y: number, size: number): number {
     if (this.count === this.x.length) this.grow();
@@ -44,7 +48,7 @@ export class PointBuckets {
   }
 
   private index(v: number): number {
-    const i = Math.floor((v + 1.1) / this.cell);
+    const i = Math.floor((v + this.reach) / this.cell);
     return i < 0 ? 0 : i >= this.side ? this.side - 1 : i;
   }
 

@@ -1,7 +1,7 @@
 import type { MeshInterface } from './interface-graph';
-import type { TriangleMesh } from './disc-mesh';
+import type { TriangleMesh } from './body-mesh';
 
-/** Isoparametric six-node triangles on the unit disc. */
+/** Isoparametric six-node triangles. */
 export interface QuadraticMesh {
   /** x, y per node: the vertices of the triangulation first, then one node per edge. */
   readonly nodes: Float64Array;
@@ -18,12 +18,12 @@ export interface QuadraticMesh {
 const largestBulge = 0.16;
 
 /**
- * Quadratic elements over a triangulation: nodes of boundary edges on the unit circle, nodes of interface edges on the
+ * Quadratic elements over a triangulation: nodes of boundary edges on the boundary, nodes of interface edges on the
  * interface where it is smooth, the others at the middle of their chords. An element that would fold keeps straight interface
  * edges.
  */
 export function quadraticMesh(mesh: TriangleMesh, interfaces: readonly MeshInterface[] = []): QuadraticMesh {
-  const { vertices, triangles, boundaryCount } = mesh;
+  const { boundary, vertices, triangles, boundaryCount } = mesh;
   const vertexCount = vertices.length / 2;
   const elementCount = triangles.length / 3;
   const elements = new Int32Array(6 * elementCount);
@@ -69,11 +69,7 @@ export function quadraticMesh(mesh: TriangleMesh, interfaces: readonly MeshInter
     const j = (i + 1) % boundaryCount;
     const e = edgeOf(i, j, false);
     if (e < 0) throw new RangeError('The triangulation does not hold every boundary edge.');
-    const x = chordX(e);
-    const y = chordY(e);
-    const r = Math.sqrt(x * x + y * y);
-    nodes[2 * (vertexCount + e)] = x / r;
-    nodes[2 * (vertexCount + e) + 1] = y / r;
+    nodes.set(boundary.nearest(chordX(e), chordY(e)), 2 * (vertexCount + e));
     bent[e] = 1;
     boundaryEdges[3 * i] = i;
     boundaryEdges[3 * i + 1] = j;

@@ -29,12 +29,14 @@ export interface SizeFieldSpec {
   readonly corners?: Float64Array;
   readonly cornerGrading?: number;
   readonly cornerMinimum?: number;
+  /** Half the side of the background grid, a square about the origin that holds the body. */
+  readonly reach?: number;
 }
 
 const gridSide = 160;
 
 /**
- * Wanted edge length on the unit disc. Sources are extended over a background grid by sweeps of
+ * Wanted edge length in the body. Sources are extended over a background grid by sweeps of
  * s_i = min(s_i, s_j + slope |x_i - x_j|) over the eight neighbours (a discrete Lipschitz extension), then read bilinearly;
  * grading centres and corners are too fine for the grid and are evaluated as they are.
  */
@@ -42,7 +44,8 @@ export class SizeField {
   private readonly centres: Float64Array;
   private readonly corners: Float64Array;
   private readonly grid: Float64Array | null;
-  private readonly cell = 2.2 / (gridSide - 1);
+  private readonly reach: number;
+  private readonly cell: number;
   private readonly relief: number;
   private readonly tipGrading: number;
   private readonly cornerGrading: number;
@@ -50,6 +53,8 @@ export class SizeField {
 
   constructor(private readonly spec: SizeFieldSpec) {
     this.centres = spec.centres;
+    this.reach = spec.reach ?? 1.1;
+    this.cell = (2 * this.reach) / (gridSide - 1);
     this.relief = spec.relief ?? 0;
     this.tipGrading = spec.tipGrading ?? spec.grading;
     this.corners = spec.corners ?? new Float64Array(0);
@@ -95,8 +100,8 @@ export class SizeField {
 
   private interpolate(x: number, y: number): number {
     const grid = this.grid!;
-    const u = Math.min(gridSide - 1.001, Math.max(0, (x + 1.1) / this.cell));
-    const v = Math.min(gridSide - 1.001, Math.max(0, (y + 1.1) / this.cell));
+    const u = Math.min(gridSide - 1.001, Math.max(0, (x + this.reach) / this.cell));
+    const v = Math.min(gridSide - 1.001, Math.max(0, (y + this.reach) / this.cell));
     const i = Math.floor(u);
     const j = Math.floor(v);
     const a = u - i;
@@ -109,13 +114,13 @@ export class SizeField {
     const n = gridSide;
     const grid = new Float64Array(n * n).fill(this.spec.maximum);
     for (const s of sources) {
-      const i0 = Math.floor((s.x + 1.1) / this.cell);
-      const j0 = Math.floor((s.y + 1.1) / this.cell);
+      const i0 = Math.floor((s.x + this.reach) / this.cell);
+      const j0 = Math.floor((s.y + this.reach) / this.cell);
       for (let j = j0; j <= j0 + 1; j++) {
         for (let i = i0; i <= i0 + 1; i++) {
           if (i < 0 || j < 0 || i >= n || j >= n) continue;
-          const dx = i * this.cell - 1.1 - s.x;
-          const dy = j * this.cell - 1.1 - s.y;
+          const dx = i * this.cell - this.reach - s.x;
+          const dy = j * this.cell - this.reach - s.y;
           // The corners of the source's own cell take its size with the slope only beyond half a cell, so that the
           // interpolated value at the source is close to what it asked for.
           const size = s.size + slope * Math.max(0, Math.sqrt(dx * dx + dy * dy) - this.cell);

@@ -1,4 +1,5 @@
 import type Delaunator from 'delaunator';
+import type { MeshBoundary } from './mesh-boundary';
 import type { SizeField } from './size-field';
 
 /** Share of the wanted length up to which an edge pushes, relative to the mean: Persson and Strang 2004 use 1.2. */
@@ -8,14 +9,17 @@ const step = 0.2;
 /**
  * Moves the free points of a Delaunay triangulation towards edges of the wanted length by repulsive bar forces
  * F = max(0, s h - l), s = 1.2 sqrt(sum l^2 / sum h^2) (Persson and Strang 2004, SIAM Review 46, eq. 2.6 and 2.8), with a new
- * triangulation before every step. Points stay at least 0.4 h inside the unit circle.
- * @param delaunay its `coords` are moved in place; points 0 .. fixed - 1 stay.
+ * triangulation before every step. Points stay at least 0.4 h inside the body.
+ * @param delaunay its `coords` are moved in place; points 0 .. fixed - 1 stay, of which the first `boundaryCount` lie on the boundary
  */
-export function relax(delaunay: Delaunator<Float64Array>, fixed: number, size: SizeField, iterations: number): void {
+export function relax(boundary: MeshBoundary, boundaryCount: number, delaunay: Delaunator<Float64Array>, fixed: number, size: SizeField, iterations: number): void {
   const coords = delaunay.coords as Float64Array;
   const n = coords.length / 2;
   const wanted = new Float64Array(n);
   const force = new Float64Array(2 * n);
+  /** Bars across a bay of the boundary, outside the body. */
+  const outside = (i: number, j: number): boolean =>
+    !boundary.convex && i < boundaryCount && j < boundaryCount && !boundary.inside(0.5 * (coords[2 * i] + coords[2 * j]), 0.5 * (coords[2 * i + 1] + coords[2 * j + 1]));
   for (let i = 0; i < fixed; i++) wanted[i] = size.at(coords[2 * i], coords[2 * i + 1]);
   for (let iteration = 0; iteration < iterations; iteration++) {
     if (iteration > 0) delaunay.update();
@@ -27,6 +31,7 @@ export function relax(delaunay: Delaunator<Float64Array>, fixed: number, size: S
       if (halfedges[e] > e) continue;
       const i = triangles[e];
       const j = triangles[e % 3 === 2 ? e - 2 : e + 1];
+      if (outside(i, j)) continue;
       const dx = coords[2 * i] - coords[2 * j];
       const dy = coords[2 * i + 1] - coords[2 * j + 1];
       const h = 0.5 * (wanted[i] + wanted[j]);
@@ -40,6 +45,7 @@ export function relax(delaunay: Delaunator<Float64Array>, fixed: number, size: S
       if (halfedges[e] > e) continue;
       const i = triangles[e];
       const j = triangles[e % 3 === 2 ? e - 2 : e + 1];
+      if (outside(i, j)) continue;
       const dx = coords[2 * i] - coords[2 * j];
       const dy = coords[2 * i + 1] - coords[2 * j + 1];
       const l = Math.sqrt(dx * dx + dy * dy);
@@ -61,16 +67,9 @@ export function relax(delaunay: Delaunator<Float64Array>, fixed: number, size: S
         dx *= most / d;
         dy *= most / d;
       }
-      let x = coords[2 * i] + dx;
-      let y = coords[2 * i + 1] + dy;
-      const r = Math.sqrt(x * x + y * y);
-      const inner = 1 - 0.4 * wanted[i];
-      if (r > inner) {
-        x *= inner / r;
-        y *= inner / r;
-      }
-      coords[2 * i] = x;
-      coords[2 * i + 1] = y;
+      coords[2 * i] += dx;
+      coords[2 * i + 1] += dy;
+      boundary.pullIn(coords, i, 0.4 * wanted[i]);
     }
   }
   delaunay.update();

@@ -1,5 +1,5 @@
 import type { EvaluationGrid, PenaltyKey, SparseMatrix } from '../../core/types';
-import type { TriangleMesh } from '../../mesh/disc-mesh';
+import type { TriangleMesh } from '../../mesh/body-mesh';
 import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
 import { degreeFourShapes } from './elements';
 import type { ElectrodeFrame } from './electrodes';

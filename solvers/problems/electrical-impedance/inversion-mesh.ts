@@ -1,5 +1,5 @@
 import { bisectUntil } from '../../mesh/bisection';
-import { meshDisc, type TriangleMesh } from '../../mesh/disc-mesh';
+import { meshBody, type TriangleMesh } from '../../mesh/body-mesh';
 import { quadraticMesh, type QuadraticMesh } from '../../mesh/quadratic-mesh';
 import { cos, sin } from '../../core/math';
 import type { ElectrodeFrame } from './electrodes';
@@ -34,7 +34,7 @@ export function inversionDetail(contact: number, electrodes: number): InversionD
  * triangles, bisected towards the electrode ends, are the quadratic elements of the potential.
  */
 export function inversionMesh(frame: ElectrodeFrame, detail: InversionDetail): InversionMesh {
-  const cells = meshDisc({ ends: frame.ends, grading: 0.3, hMin: detail.cellMin, hMax: detail.cellMax, seed: 11 });
+  const cells = meshBody({ ends: frame.ends, grading: 0.3, hMin: detail.cellMin, hMax: detail.cellMax, seed: 11 });
   const ex = frame.ends.map(cos);
   const ey = frame.ends.map(sin);
   const { mesh, parent } = bisectUntil(cells, (x, y) => {

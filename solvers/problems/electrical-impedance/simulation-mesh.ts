@@ -1,4 +1,4 @@
-import { meshDisc, type TriangleMesh } from '../../mesh/disc-mesh';
+import { meshBody, type TriangleMesh } from '../../mesh/body-mesh';
 import type { MeshInterface } from '../../mesh/interface-graph';
 import type { SizeSource } from '../../mesh/size-field';
 import { quadraticMesh, type QuadraticMesh } from '../../mesh/quadratic-mesh';
@@ -79,7 +79,7 @@ export function simulationMesh(truth: TruthField, frame: ElectrodeFrame, detail:
     };
     const sources = truth.piecewiseConstant ? [] : variationSources(truth, frame, detail.variation * f, detail.variationFloor * f, detail.hMax);
     try {
-      const triangles = meshDisc({ ends: frame.ends, interfaces, sources, ...sized });
+      const triangles = meshBody({ ends: frame.ends, interfaces, sources, ...sized });
       return { triangles, quadratic: quadraticMesh(triangles, interfaces) };
     } catch (error) {
       if (attempt === 3 || !(error instanceof RangeError)) throw error;

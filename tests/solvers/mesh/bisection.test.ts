@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { bisectUntil } from '../../../solvers/mesh/bisection';
-import { meshDisc, type TriangleMesh } from '../../../solvers/mesh/disc-mesh';
+import { meshBody, type TriangleMesh } from '../../../solvers/mesh/body-mesh';
 
-const coarse = meshDisc({ ends: [0, 0.4, 2, 2.6], grading: 0.5, hMin: 0.15, hMax: 0.25, seed: 3 });
+const coarse = meshBody({ ends: [0, 0.4, 2, 2.6], grading: 0.5, hMin: 0.15, hMax: 0.25, seed: 3 });
 const wanted = (x: number, y: number): number => Math.max(0.01, 0.8 * Math.hypot(x - 1, y));
 const { mesh, parent } = bisectUntil(coarse, wanted);
 

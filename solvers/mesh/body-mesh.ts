@@ -1,19 +1,22 @@
 import Constrainautor from '@kninnug/constrainautor';
 import Delaunator from 'delaunator';
-import { atan2, cos, sin } from '../core/math';
-import { boundaryAngles } from './boundary-points';
+import { atan2 } from '../core/math';
+import { boundaryPlaces } from './boundary-points';
 import { interfaceFeatures, type InterfaceFeatures } from './feature-sizes';
-import { fillDisc } from './front-points';
-import { circleCrossing, InterfaceGraph, type MeshInterface } from './interface-graph';
+import { fillBody } from './front-points';
+import { InterfaceGraph, type MeshInterface } from './interface-graph';
+import { boundaryCrossing, unitCircle, type MeshBoundary } from './mesh-boundary';
 import { PointBuckets } from './point-buckets';
 import { repair } from './repair';
 import { SizeField, type SizeSource } from './size-field';
 import { qualityOf } from './quality';
 import { relax } from './smoothing';
 
-/** Lengths in radii of the disc. */
-export interface DiscMeshSpec {
-  /** Angles (rad) that must be boundary nodes and grading centres: the ends of the electrodes. May be empty. */
+/** Lengths in radii of the body. */
+export interface BodyMeshSpec {
+  /** The unit circle when left out. */
+  readonly boundary?: MeshBoundary;
+  /** Arc lengths that must be boundary nodes and grading centres: the ends of the electrodes. May be empty. */
   readonly ends: readonly number[];
   /** Edge length over the distance to the nearest end. */
   readonly grading: number;
@@ -25,7 +28,7 @@ export interface DiscMeshSpec {
   readonly interfaces?: readonly MeshInterface[];
   /** Largest edge on an interface; `hMax` when left out. */
   readonly interfaceSize?: number;
-  /** Edge length over the radius of curvature of a smooth interface. */
+  /** Edge length over the radius of curvature of a smooth interface, and of a boundary that bends more than the unit circle. */
   readonly curvatureShare?: number;
   /** Edge length over the distance to a corner of an interface, and its lower bound. */
   readonly cornerGrading?: number;
@@ -42,9 +45,10 @@ export interface DiscMeshSpec {
   readonly maxVertices?: number;
 }
 
-/** A conforming triangulation of the unit disc. */
+/** A conforming triangulation of a body. */
 export interface TriangleMesh {
-  /** x, y per vertex; the first `boundaryCount` run counter-clockwise along the circle. */
+  readonly boundary: MeshBoundary;
+  /** x, y per vertex; the first `boundaryCount` run counter-clockwise along the boundary. */
   readonly vertices: Float64Array;
   readonly boundaryCount: number;
   /** Vertex triples, counter-clockwise. */
@@ -55,33 +59,31 @@ export interface TriangleMesh {
   readonly quality: number;
 }
 
-const twoPi = 2 * Math.PI;
 const fullyGradedCorners = 24;
 
 /**
- * Graded triangulation of the unit disc with the electrode ends as nodes and edges along the interfaces.
+ * Graded triangulation of a body with the electrode ends as nodes and edges along the interfaces.
  *
  * Boundary and interfaces are split by the size function, the inside is filled by an advancing front, smoothed by bar forces
  * (Persson and Strang 2004) and triangulated with constraints (Delaunay; Sloan 1993). Deterministic: plain arithmetic and
  * exact predicates only.
  * @throws RangeError when the sizes make no sense or the mesh would be too large
  */
-export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
+export function meshBody(spec: BodyMeshSpec): TriangleMesh {
+  const boundary = spec.boundary ?? unitCircle;
   const { hMin, hMax, grading } = spec;
   if (!(hMin >= 1e-7 && hMin <= hMax && hMax <= 1)) throw new RangeError(`Sizes must satisfy 1e-7 <= hMin <= hMax <= 1, not hMin = ${hMin}, hMax = ${hMax}.`);
   if (!(grading > 0 && grading <= 1)) throw new RangeError(`The grading must lie in (0, 1], not ${grading}.`);
-  const ends = sortedAngles(spec.ends);
+  const ends = sortedEnds(boundary, spec.ends);
   const interfaces = spec.interfaces ?? [];
   const centres = new Float64Array(2 * ends.length);
-  ends.forEach((angle, i) => {
-    centres[2 * i] = cos(angle);
-    centres[2 * i + 1] = sin(angle);
-  });
+  ends.forEach((s, i) => centres.set(boundary.pointAt(s), 2 * i));
   const interfaceSize = Math.min(hMax, spec.interfaceSize ?? hMax);
   const floor = Math.max(hMin, Math.min(0.004, 0.25 * interfaceSize));
+  const curvatureShare = spec.curvatureShare ?? 0.35;
   const features: InterfaceFeatures =
     interfaces.length > 0
-      ? interfaceFeatures(interfaces, { interfaceSize, curvatureShare: spec.curvatureShare ?? 0.35, gapShare: 0.5, floor })
+      ? interfaceFeatures(boundary, interfaces, { interfaceSize, curvatureShare, gapShare: 0.5, floor })
       : { sources: [], corners: new Float64Array(0) };
   // Hundreds of corners share the elements that a few would get.
   const crowd = Math.max(1, features.corners.length / (2 * fullyGradedCorners));
@@ -90,22 +92,22 @@ export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
     grading,
     minimum: hMin,
     maximum: hMax,
-    relief: halfGap(ends),
+    relief: halfGap(boundary, ends),
     tipGrading: Math.max(grading, spec.tipGrading ?? grading),
-    sources: [...features.sources, ...(spec.sources ?? [])],
+    sources: [...features.sources, ...(spec.sources ?? []), ...boundary.bends(curvatureShare, Math.max(0.5 * hMin, 0.004)).filter(({ size }) => size < hMax)],
     sourceSlope: spec.growth ?? 0.3,
     corners: features.corners,
+    reach: boundary.reach,
     cornerGrading: Math.min(0.7, (spec.cornerGrading ?? grading) * Math.sqrt(crowd)),
     cornerMinimum: (spec.cornerMinimum ?? 0.002) * crowd,
   });
   const polylines = interfaces.map((curve) => curve.points((x, y) => field.at(x, y)));
-  const fixed = withCrossings(ends, polylines, field);
-  const angles = boundaryAngles(fixed, field);
-  if (angles.length < 6) throw new RangeError(`The sizes leave only ${angles.length} boundary nodes: choose a smaller hMax.`);
-  const graph = new InterfaceGraph(angles.map(cos), angles.map(sin), field);
+  const places = boundaryPlaces(boundary, withCrossings(boundary, ends, polylines, field), field);
+  if (places.length < 6) throw new RangeError(`The sizes leave only ${places.length} boundary nodes: choose a smaller hMax.`);
+  const graph = new InterfaceGraph(boundary, places, field);
   polylines.forEach((polyline, k) => graph.add(polyline, k));
 
-  const points = new PointBuckets();
+  const points = new PointBuckets(boundary.reach);
   const directions: number[] = [];
   for (let i = 0; i < graph.x.length; i++) {
     points.add(graph.x[i], graph.y[i], graph.size[i]);
@@ -114,7 +116,7 @@ export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
   const fixedCount = points.count;
   const limit = spec.maxVertices ?? 60_000;
   if (fixedCount > limit) throw new RangeError(`The mesh would need more than ${limit} points: choose larger elements.`);
-  fillDisc(points, directions, field, spec.seed ?? 1, limit);
+  fillBody(boundary, points, directions, field, spec.seed ?? 1, limit);
 
   let coords = new Float64Array(2 * points.count);
   for (let i = 0; i < points.count; i++) {
@@ -122,64 +124,62 @@ export function meshDisc(spec: DiscMeshSpec): TriangleMesh {
     coords[2 * i + 1] = points.y[i];
   }
   const delaunay = new Delaunator(coords);
-  relax(delaunay, fixedCount, field, spec.smoothing ?? 8);
-  let result = constrain(delaunay, graph);
+  relax(boundary, graph.boundaryCount, delaunay, fixedCount, field, spec.smoothing ?? 8);
+  let result = constrain(boundary, delaunay, graph);
   // Vertices of flat triangles are moved or removed; a few rounds reach the wanted shape.
   for (let round = 0; round < 4; round++) {
     const repaired = repair(coords, result.triangles, fixedCount, field);
     if (!repaired) break;
     coords = repaired as Float64Array<ArrayBuffer>;
-    result = constrain(new Delaunator(coords), graph);
+    result = constrain(boundary, new Delaunator(coords), graph);
   }
-  return { vertices: coords, boundaryCount: graph.boundaryCount, ...result };
+  return { boundary, vertices: coords, boundaryCount: graph.boundaryCount, ...result };
 }
 
-function sortedAngles(angles: readonly number[]): number[] {
-  if (angles.length === 0) return [0];
-  const sorted = angles.map((a) => a - twoPi * Math.floor(a / twoPi)).sort((a, b) => a - b);
+function sortedEnds({ length }: MeshBoundary, ends: readonly number[]): number[] {
+  if (ends.length === 0) return [0];
+  const sorted = ends.map((s) => s - length * Math.floor(s / length)).sort((a, b) => a - b);
   for (let i = 0; i < sorted.length; i++) {
-    if (!Number.isFinite(sorted[i])) throw new RangeError('Angles must be finite.');
-    const gap = (i + 1 < sorted.length ? sorted[i + 1] : sorted[0] + twoPi) - sorted[i];
-    if (gap < 1e-5) throw new RangeError(`Two electrode ends lie ${gap} rad apart.`);
+    if (!Number.isFinite(sorted[i])) throw new RangeError('The ends of the electrodes must be finite.');
+    const gap = (i + 1 < sorted.length ? sorted[i + 1] : sorted[0] + length) - sorted[i];
+    if (gap < 1e-5) throw new RangeError(`Two electrode ends lie ${gap} radii apart.`);
   }
   return sorted;
 }
 
-/** Half the smallest angle between two neighbouring ends. */
-function halfGap(ends: readonly number[]): number {
-  let smallest = twoPi;
-  for (let i = 0; i < ends.length; i++) smallest = Math.min(smallest, (i + 1 < ends.length ? ends[i + 1] : ends[0] + twoPi) - ends[i]);
+/** Half the smallest distance of two neighbouring ends along the boundary. */
+function halfGap({ length }: MeshBoundary, ends: readonly number[]): number {
+  let smallest = length;
+  for (let i = 0; i < ends.length; i++) smallest = Math.min(smallest, (i + 1 < ends.length ? ends[i + 1] : ends[0] + length) - ends[i]);
   return 0.5 * smallest;
 }
 
-/** Adds the places where interfaces leave the disc to the fixed angles, unless another fixed node is near. */
-function withCrossings(ends: readonly number[], polylines: readonly Float64Array[], field: SizeField): number[] {
+/** Adds the places where interfaces leave the body to the fixed ones, unless another fixed node is near. */
+function withCrossings(boundary: MeshBoundary, ends: readonly number[], polylines: readonly Float64Array[], field: SizeField): number[] {
   const fixed = [...ends];
   for (const p of polylines) {
     const n = p.length / 2;
     for (let i = 0; i < n; i++) {
       const j = (i + 1) % n;
-      const insideI = p[2 * i] * p[2 * i] + p[2 * i + 1] * p[2 * i + 1] < 1;
-      const insideJ = p[2 * j] * p[2 * j] + p[2 * j + 1] * p[2 * j + 1] < 1;
-      if (insideI === insideJ) continue;
-      const [x, y] = circleCrossing(p[2 * i], p[2 * i + 1], p[2 * j], p[2 * j + 1]);
+      if (boundary.inside(p[2 * i], p[2 * i + 1]) === boundary.inside(p[2 * j], p[2 * j + 1])) continue;
+      const [x, y] = boundaryCrossing(boundary, p[2 * i], p[2 * i + 1], p[2 * j], p[2 * j + 1]);
       const near = 0.5 * field.at(x, y);
-      const angle = atan2(y, x);
-      const clear = fixed.every((a) => {
-        const dx = cos(a) - x;
-        const dy = sin(a) - y;
-        return dx * dx + dy * dy > near * near;
+      const clear = fixed.every((s) => {
+        const [fx, fy] = boundary.pointAt(s);
+        return (fx - x) * (fx - x) + (fy - y) * (fy - y) > near * near;
       });
-      if (clear) fixed.push(angle < 0 ? angle + twoPi : angle);
+      if (clear) fixed.push(boundary.arcLengthOf(x, y));
     }
   }
   return fixed.sort((a, b) => a - b);
 }
 
-function constrain(delaunay: Delaunator<Float64Array>, graph: InterfaceGraph): Pick<TriangleMesh, 'triangles' | 'interfaceEdges' | 'quality'> {
+function constrain(boundary: MeshBoundary, delaunay: Delaunator<Float64Array>, graph: InterfaceGraph): Pick<TriangleMesh, 'triangles' | 'interfaceEdges' | 'quality'> {
   const edges: number[] = [];
-  if (graph.from.length > 0) {
+  const n = graph.boundaryCount;
+  if (graph.from.length > 0 || !boundary.convex) {
     const constraints = new Constrainautor(delaunay);
+    if (!boundary.convex) for (let i = 0; i < n; i++) constraints.constrainOne(i, (i + 1) % n);
     for (let s = 0; s < graph.from.length; s++) {
       try {
         constraints.constrainOne(graph.from[s], graph.to[s]);
@@ -198,6 +198,7 @@ function constrain(delaunay: Delaunator<Float64Array>, graph: InterfaceGraph): P
     // Delaunator's triangles run clockwise in a frame with y upwards.
     const b = triangles[t + 2];
     const c = triangles[t + 1];
+    if (!boundary.convex && inBay(a, b, c, n)) continue;
     const q = qualityOf(coords, a, b, c);
     if (q < quality) quality = q;
     kept[count++] = a;
@@ -205,4 +206,12 @@ function constrain(delaunay: Delaunator<Float64Array>, graph: InterfaceGraph): P
     kept[count++] = c;
   }
   return { triangles: kept.subarray(0, count), interfaceEdges: Int32Array.from(edges), quality };
+}
+
+/**
+ * A triangle between boundary nodes only lies outside the body when its corners, counter-clockwise, run against the order of the
+ * boundary.
+ */
+function inBay(a: number, b: number, c: number, boundaryCount: number): boolean {
+  return a < boundaryCount && b < boundaryCount && c < boundaryCount && !((a < b && b < c) || (b < c && c < a) || (c < a && a < b));
 }

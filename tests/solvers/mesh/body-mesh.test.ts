@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { meshDisc, type TriangleMesh } from '../../../solvers/mesh/disc-mesh';
+import { meshBody, type TriangleMesh } from '../../../solvers/mesh/body-mesh';
 import { quadraticMesh } from '../../../solvers/mesh/quadratic-mesh';
 import { ellipse, shapesTruth, unitGeometry } from '../../support/impedance-case';
 import { electrodeFrame } from '../../../solvers/problems/electrical-impedance/electrodes';
@@ -44,7 +44,7 @@ function expectValid(mesh: TriangleMesh): void {
 
 describe('mesh of the disc', () => {
   it('is a triangulation with the electrode ends as nodes, graded to them', () => {
-    const mesh = meshDisc(sizes);
+    const mesh = meshBody(sizes);
     expectValid(mesh);
     for (const end of frame.ends) {
       let nearest = Infinity;
@@ -60,7 +60,7 @@ describe('mesh of the disc', () => {
 
   it('has the area of the disc once its edges are curved, to fourth order', () => {
     const area = (hMax: number): number => {
-      const q = quadraticMesh(meshDisc({ ends: [], grading: 1, hMin: hMax, hMax }));
+      const q = quadraticMesh(meshBody({ ends: [], grading: 1, hMin: hMax, hMax }));
       let sum = 0;
       // Green's formula over the quadratic boundary edges, exact by Simpson's rule for cubics.
       for (let e = 0; e < q.boundaryEdges.length; e += 3) {
@@ -86,7 +86,7 @@ describe('mesh of the disc', () => {
   it('follows interfaces with its edges', () => {
     const truth = shapesTruth([ellipse(0.3, 0.2, 0.25, 0.15, 5, 30)]);
     const interfaces = truth.interfaces.map((curve) => inFrame(curve, frame));
-    const mesh = meshDisc({ ...sizes, interfaces, interfaceSize: 0.06 });
+    const mesh = meshBody({ ...sizes, interfaces, interfaceSize: 0.06 });
     expectValid(mesh);
     expect(mesh.interfaceEdges.length / 3).toBeGreaterThan(15);
     const edges = new Set<string>();
@@ -98,11 +98,11 @@ describe('mesh of the disc', () => {
   });
 
   it('gives the same bits twice, and shares no inner vertex with a mesh of another seed', () => {
-    const a = meshDisc(sizes);
-    const b = meshDisc(sizes);
+    const a = meshBody(sizes);
+    const b = meshBody(sizes);
     expect(b.vertices).toEqual(a.vertices);
     expect(b.triangles).toEqual(a.triangles);
-    const c = meshDisc({ ...sizes, seed: 2 });
+    const c = meshBody({ ...sizes, seed: 2 });
     const places = new Set<string>();
     for (let i = a.boundaryCount; i < a.vertices.length / 2; i++) places.add(`${a.vertices[2 * i].toFixed(9)} ${a.vertices[2 * i + 1].toFixed(9)}`);
     for (let i = c.boundaryCount; i < c.vertices.length / 2; i++) expect(places.has(`${c.vertices[2 * i].toFixed(9)} ${c.vertices[2 * i + 1].toFixed(9)}`)).toBe(false);
@@ -117,7 +117,7 @@ describe('mesh of the disc', () => {
         fc.double({ min: 1e-4, max: 0.05, noNaN: true }),
         (count, coverage, grading, hMin) => {
           const ends = Array.from({ length: count }, (_, k) => [((k - coverage / 2) * 2 * Math.PI) / count, ((k + coverage / 2) * 2 * Math.PI) / count]).flat();
-          const mesh = meshDisc({ ends, grading, hMin, hMax: 0.25 });
+          const mesh = meshBody({ ends, grading, hMin, hMax: 0.25 });
           expectValid(mesh);
           expect(mesh.quality).toBeGreaterThan(0.3);
         },
@@ -127,11 +127,11 @@ describe('mesh of the disc', () => {
   });
 
   it('refuses nonsense by name', () => {
-    expect(() => meshDisc({ ...sizes, hMin: 0 })).toThrow(RangeError);
-    expect(() => meshDisc({ ...sizes, hMax: 2 })).toThrow(RangeError);
-    expect(() => meshDisc({ ...sizes, grading: 0 })).toThrow(RangeError);
-    expect(() => meshDisc({ ...sizes, ends: [0, 0] })).toThrow(/ends lie/);
-    expect(() => meshDisc({ ...sizes, ends: [NaN] })).toThrow(RangeError);
-    expect(() => meshDisc({ ...sizes, maxVertices: 100 })).toThrow(/more than 100 points/);
+    expect(() => meshBody({ ...sizes, hMin: 0 })).toThrow(RangeError);
+    expect(() => meshBody({ ...sizes, hMax: 2 })).toThrow(RangeError);
+    expect(() => meshBody({ ...sizes, grading: 0 })).toThrow(RangeError);
+    expect(() => meshBody({ ...sizes, ends: [0, 0] })).toThrow(/ends lie/);
+    expect(() => meshBody({ ...sizes, ends: [NaN] })).toThrow(RangeError);
+    expect(() => meshBody({ ...sizes, maxVertices: 100 })).toThrow(/more than 100 points/);
   });
 });
