@@ -16,7 +16,7 @@ export type SourceWire = z.infer<typeof sourceSchema>;
 
 export const parameterFieldSchema = z.object({
   name: z.string(), label: z.string(), symbol: z.string().nullable(), unit: z.string(), help: z.string(),
-  kind: z.enum(['number', 'integer', 'choice']), default: z.union([z.number(), z.string()]),
+  kind: z.enum(['number', 'integer', 'choice', 'text']), default: z.union([z.number(), z.string()]),
   minimum: z.number().nullable(), maximum: z.number().nullable(), scale: z.enum(['linear', 'log']),
   choices: z.array(z.object({ value: z.string(), label: z.string() })),
 });

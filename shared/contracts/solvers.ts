@@ -9,6 +9,7 @@ export const ruleSettingSchema = z.discriminatedUnion('key', [
   z.strictObject({ key: z.literal('gcv') }),
   z.strictObject({ key: z.literal('l-curve') }),
   z.strictObject({ key: z.literal('quasi-optimality') }),
+  z.strictObject({ key: z.literal('cumulative-periodogram') }),
 ]);
 /** A method with its parameters; the parameters are checked against the method's own schema through the registry. */
 export const configurationSchema = z.strictObject({

@@ -135,6 +135,8 @@ export interface Reconstruction {
    * for nonlinear ones.
    */
   readonly residualNorm: number;
+  /** Equally likely unknowns after the data (a thinned chain, the members of an ensemble), from methods that give a distribution. */
+  readonly samples?: readonly Float64Array[];
 }
 
 export interface ReconstructContext {
@@ -187,7 +189,7 @@ export interface ProblemFacts {
 /** Group under which the form lists a method. */
 export type MethodClass = 'baseline' | 'spectral' | 'iterative' | 'variational' | 'nonlinear' | 'direct' | 'statistical';
 
-export type RuleKey = 'fixed' | 'discrepancy' | 'gcv' | 'l-curve' | 'quasi-optimality';
+export type RuleKey = 'fixed' | 'discrepancy' | 'gcv' | 'l-curve' | 'quasi-optimality' | 'cumulative-periodogram';
 
 /** The rule that chooses the regularisation parameter, with its own settings. */
 export type RuleSetting =
@@ -195,7 +197,8 @@ export type RuleSetting =
   | { readonly key: 'discrepancy'; readonly safetyFactor: number }
   | { readonly key: 'gcv' }
   | { readonly key: 'l-curve' }
-  | { readonly key: 'quasi-optimality' };
+  | { readonly key: 'quasi-optimality' }
+  | { readonly key: 'cumulative-periodogram' };
 
 /** One field of a method's parameters, as forms and the reference page show it. */
 export interface ParameterField {
@@ -205,7 +208,7 @@ export interface ParameterField {
   /** Unit as printed; '' for a pure number. */
   readonly unit: string;
   readonly help: string;
-  readonly kind: 'number' | 'integer' | 'choice';
+  readonly kind: 'number' | 'integer' | 'choice' | 'text';
   readonly default: number | string;
   readonly minimum?: number;
   readonly maximum?: number;
@@ -256,6 +259,8 @@ export interface MetricInput {
   /** Euclidean norm of (data - model(estimate)) where the caller computed it, and of the noise drawn. */
   readonly residualNorm: number | null;
   readonly noiseNorm: number;
+  /** Ends of the pointwise credible interval on `grid.inside`, from methods that give a distribution. */
+  readonly interval?: { readonly low: Float64Array; readonly high: Float64Array; readonly probability: number };
 }
 
 /** A declared target: centroid in metres, area in m^2, contrast to the background in the unit of the unknown. */

@@ -27,11 +27,22 @@ export interface ChoiceSpec<V extends string = string> extends Common {
   readonly default: NoInfer<V>;
   readonly choices: readonly { readonly value: V; readonly label: string }[];
 }
-export type ParameterSpec = NumberSpec | IntegerSpec | ChoiceSpec;
-export type ParametersOf<D> = { [K in keyof D]: D[K] extends ChoiceSpec<infer V> ? V : number };
+/** A formula or another short text; `check` says what is wrong with it. */
+export interface TextSpec extends Common {
+  readonly kind: 'text';
+  readonly default: string;
+  readonly check?: (text: string) => string | null;
+}
+export type ParameterSpec = NumberSpec | IntegerSpec | ChoiceSpec | TextSpec;
+export type ParametersOf<D> = { [K in keyof D]: D[K] extends ChoiceSpec<infer V> ? V : D[K] extends TextSpec ? string : number };
 
 function schemaOf(spec: ParameterSpec): z.ZodType<number | string> {
   if (spec.kind === 'choice') return z.enum(spec.choices.map((choice) => choice.value)).default(spec.default);
+  if (spec.kind === 'text')
+    return z.string().trim().min(1, 'Write a formula.').max(60, 'At most 60 characters.').superRefine((text, ctx) => {
+      const fault = spec.check?.(text);
+      if (fault) ctx.addIssue({ code: 'custom', message: fault });
+    }).default(spec.default);
   const range = z.number().min(spec.minimum, `At least ${spec.minimum}.`).max(spec.maximum, `At most ${spec.maximum}.`);
   return (spec.kind === 'integer' ? range.int('A whole number.') : range).default(spec.default);
 }
@@ -40,6 +51,7 @@ function fieldOf(name: string, spec: ParameterSpec): ParameterField {
   const { label, symbol, unit = '', help } = spec;
   const base = { name, label, unit, help, ...(symbol === undefined ? {} : { symbol }) };
   if (spec.kind === 'choice') return { ...base, kind: 'choice', default: spec.default, choices: spec.choices };
+  if (spec.kind === 'text') return { ...base, kind: 'text', default: spec.default };
   return { ...base, kind: spec.kind, default: spec.default, minimum: spec.minimum, maximum: spec.maximum, scale: spec.kind === 'number' ? spec.scale ?? 'linear' : 'linear' };
 }
 

@@ -20,7 +20,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   sources: [{ short: 'Hansen 1987', full: 'P. C. Hansen: The truncated SVD as a method for regularization. BIT 27 (1987) 534-553.', fromMemory: true }],
   parameters: schema,
   fields,
-  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'gcv', 'l-curve', 'quasi-optimality', 'fixed'] },
+  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'gcv', 'l-curve', 'quasi-optimality', 'cumulative-periodogram', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Index', symbol: 'k', default: 20, minimum: 1, maximum: 2000, help: 'Number of singular values kept.' }),
   prepare(problem, parameters, rule) {

@@ -27,7 +27,7 @@ export function DefinitionFields({ definition: d }: { definition: Definition }) 
                 <th scope="row">{field.label} <span className="mono sm">{field.name}</span></th>
                 <td>{field.unit || 'none'}</td>
                 <td className="num">{typeof field.default === 'number' ? formatNumber(field.default, 3) : field.default}</td>
-                <td>{field.kind === 'choice' ? field.choices.map((c) => c.label).join(', ') : `${number(field.minimum)} to ${number(field.maximum)}${field.kind === 'integer' ? ', whole' : ''}${field.scale === 'log' ? ', log scale' : ''}`}</td>
+                <td>{field.kind === 'choice' ? field.choices.map((c) => c.label).join(', ') : field.kind === 'text' ? 'a formula of at most 60 characters' : `${number(field.minimum)} to ${number(field.maximum)}${field.kind === 'integer' ? ', whole' : ''}${field.scale === 'log' ? ', log scale' : ''}`}</td>
                 <td>{field.help}</td>
               </tr>
             ))}

@@ -1,7 +1,7 @@
 import { useQueries, useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import { Link } from 'react-router-dom';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
 import { toPicture } from '../../../components/images/pixels';
 import { Section } from '../../../components/ui/layout';
 import { Empty, SealedDisc } from '../../../components/ui/notices';
@@ -54,5 +54,5 @@ function FailurePicture({ failure }: { failure: Failure }) {
   const { detail, simulation } = usePreviewPhantom(slug, version);
   const phantom = useMemo(() => (detail.data && simulation.data ? previewPhantom(detail.data, simulation.data) : null), [detail.data, simulation.data]);
   const picture = useMemo(() => (image.data && phantom ? toPicture(image.data.image, phantom.grid) : null), [image.data, phantom]);
-  return <span style={{ display: 'block', width: 104 }}><DiscImage label={`Reconstruction of draw ${failure.draw + 1}`} picture={picture} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
+  return <span style={{ display: 'block', width: 104 }}><BodyImage label={`Reconstruction of draw ${failure.draw + 1}`} picture={picture} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
 }

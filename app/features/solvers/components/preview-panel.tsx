@@ -1,6 +1,7 @@
 import { useMemo } from 'react';
 import { ColourBar } from '../../../components/images/colour-bar';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
+import { problemElectrodes } from '../../../components/images/electrode-layout';
 import { difference, differenceLimit, largest, toPicture, type Picture } from '../../../components/images/pixels';
 import { Box } from '../../../components/ui/box';
 import { formatCount, formatError, formatNumber, formatPercent, formatSeconds } from '../../../lib/format';
@@ -33,8 +34,7 @@ export function PreviewPanel({ phantom, preview, noise, levels, others, stale }:
   const { yours, error } = usePreviewPictures(phantom, image.data?.image);
   const limit = useMemo(() => (error ? differenceLimit(largest(error).value) : 0.5), [error]);
   const [low, high] = phantom.range;
-  const geometry = phantom.problem.geometry;
-  const electrodes = { count: geometry.electrodes, coverage: geometry.electrodeCoverage, firstDeg: geometry.firstElectrodeDeg, clockwise: geometry.numbering === 'clockwise' };
+  const shared = { electrodes: problemElectrodes(phantom.problem), body: phantom.grid.body };
   const l2 = image.data?.metrics['relative-l2-error'];
   const failed = image.error ?? preview.curveError;
   const busy = image.isFetching || image.isPlaceholderData || stale;
@@ -43,9 +43,9 @@ export function PreviewPanel({ phantom, preview, noise, levels, others, stale }:
     <>
       {failed ? <div style={{ padding: '10px 16px' }}><Box tone="failure" title="The preview stopped"><p>{failed.message}</p></Box></div> : null}
       <div className={busy ? 'three stale' : 'three'}>
-        <figure><figcaption><b>Truth</b></figcaption><DiscImage label={`Ground truth of ${phantom.name}`} picture={phantom.truth} low={low} high={high} electrodes={electrodes} /></figure>
-        <figure><figcaption><b>Yours</b><span className="tn" aria-live="polite">{l2 === undefined ? (busy ? 'computing' : '') : `L2 ${formatError(l2)}`}</span></figcaption><DiscImage label={`Your reconstruction at ${formatPercent(noise)} noise`} picture={yours} low={low} high={high} electrodes={electrodes} /></figure>
-        <figure><figcaption><b>Difference</b></figcaption><DiscImage label="Reconstruction minus truth" picture={error} map="diverging" low={-limit} high={limit} electrodes={electrodes} /></figure>
+        <figure><figcaption><b>Truth</b></figcaption><BodyImage label={`Ground truth of ${phantom.name}`} picture={phantom.truth} low={low} high={high} {...shared} /></figure>
+        <figure><figcaption><b>Yours</b><span className="tn" aria-live="polite">{l2 === undefined ? (busy ? 'computing' : '') : `L2 ${formatError(l2)}`}</span></figcaption><BodyImage label={`Your reconstruction at ${formatPercent(noise)} noise`} picture={yours} under={phantom.truth} low={low} high={high} {...shared} /></figure>
+        <figure><figcaption><b>Difference</b></figcaption><BodyImage label="Reconstruction minus truth" picture={error} map="diverging" low={-limit} high={limit} {...shared} /></figure>
       </div>
       <div className="bars">
         <ColourBar labels={[formatNumber(low, 2), phantom.unit, formatNumber(high, 2)]} />

@@ -1,5 +1,5 @@
 import { useMemo, useState, type ReactNode } from 'react';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
 import { Button } from '../../../components/ui/button';
 import { Checkbox, Field, Select } from '../../../components/ui/field';
 import { Formula } from '../../../components/ui/formula';
@@ -183,7 +183,7 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
         </aside>
       </div>
       <Dock>
-        <div className="mini">{phantom ? <DiscImage label="Live reconstruction" picture={yours} low={phantom.range[0]} high={phantom.range[1]} /> : null}</div>
+        <div className="mini">{phantom ? <BodyImage label="Live reconstruction" picture={yours} low={phantom.range[0]} high={phantom.range[1]} /> : null}</div>
         <div className="sm" style={{ flex: 1 }}><b style={{ color: 'var(--ink)' }} className="tn">{l2 === undefined ? 'no preview' : `L2 ${formatError(l2)}`}</b><br />at {formatPercent(noise)}, live</div>
         <Button disabled={step === 1} onClick={() => { setStep(step - 1); window.scrollTo(0, 0); }}>Back</Button>
         {step < 6 ? <Button look="primary" onClick={() => { setStep(step + 1); window.scrollTo(0, 0); }}>Next</Button> : null}

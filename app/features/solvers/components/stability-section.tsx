@@ -2,7 +2,7 @@ import { AnnotatedStability } from '../../../components/charts/annotated-stabili
 import type { Curve } from '../../../components/charts/stability-chart';
 import { formatError, formatNumber, formatPercent, formatShortDate } from '../../../lib/format';
 import type { SolverStability } from '../../../../shared/contracts/solvers';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
 import { SealedDisc } from '../../../components/ui/notices';
 import { usePreviewPhantom } from '../api/bench-data';
 import { useMemo } from 'react';
@@ -53,5 +53,5 @@ function PhantomPicture({ item }: { item: StabilityItem }) {
 function OpenPicture({ slug, version }: { slug: string; version: number }) {
   const { detail, simulation } = usePreviewPhantom(slug, version);
   const phantom = useMemo(() => (detail.data && simulation.data ? previewPhantom(detail.data, simulation.data) : null), [detail.data, simulation.data]);
-  return <span style={{ display: 'block', width: 58 }} aria-hidden="true"><DiscImage label="" picture={phantom?.truth ?? null} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
+  return <span style={{ display: 'block', width: 58 }} aria-hidden="true"><BodyImage label="" picture={phantom?.truth ?? null} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
 }

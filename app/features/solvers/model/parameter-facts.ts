@@ -16,6 +16,7 @@ export function allowedRange(field: ParameterField): string {
 
 /** The same for the table of a solver's page. */
 export function allowedWords(field: ParameterField): string {
+  if (field.kind === 'text') return 'a formula';
   return field.kind === 'choice' ? `${field.choices?.length ?? 0} choices` : allowedRange(field).replace(/\.$/, '') || 'any';
 }
 

@@ -5,6 +5,11 @@ import type { Simulation } from '../../../../shared/contracts/simulations';
 import { toPicture, valueScale, type Picture } from '../../../components/images/pixels';
 import type { PhantomData, ProblemSpec } from '../../../workers/reconstruction-messages';
 
+/** The family and its geometry come from one definition; TypeScript loses that they belong together. */
+function descriptorOf({ version: { definition } }: PhantomDetail, { background, dataKind }: Simulation): ProblemSpec {
+  return { family: definition.family, geometry: definition.geometry, dataKind, background } as ProblemSpec;
+}
+
 /** A phantom version as the preview needs it. */
 export interface PreviewPhantom {
   readonly name: string;
@@ -20,7 +25,7 @@ export interface PreviewPhantom {
 export function previewPhantom(detail: PhantomDetail, simulation: Simulation): PreviewPhantom {
   const truth = simulation.truth ? decodeArray(simulation.truth) : null;
   return {
-    name: detail.name, problem: { geometry: detail.version.definition.geometry, background: simulation.background, dataKind: simulation.dataKind },
+    name: detail.name, problem: descriptorOf(detail, simulation),
     data: { contentHash: simulation.contentHash, clean: Float64Array.from(simulation.clean), noiseScale: simulation.noiseScale, truth, targets: simulation.targets ?? [] },
     grid: simulation.grid, truth: truth && toPicture(truth, simulation.grid), range: valueScale(simulation.truthRange ?? [simulation.background, simulation.background], simulation.background), floor: simulation.modelErrorFloor, unit: simulation.unit,
   };

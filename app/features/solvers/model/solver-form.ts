@@ -6,7 +6,7 @@ import { methods } from '../../../../solvers/methods/registry';
 import { parameterRules } from '../../../../solvers/parameter-choice/registry';
 
 const text = z.string();
-const ruleKeys = ['fixed', 'discrepancy', 'gcv', 'l-curve', 'quasi-optimality'] as const;
+const ruleKeys = ['fixed', 'discrepancy', 'gcv', 'l-curve', 'quasi-optimality', 'cumulative-periodogram'] as const;
 /** The form as it is typed; numbers stay text until they are read. */
 export const solverFormSchema = z.object({
   bench: text, group: text, name: text, description: text, whatChanged: text, method: text,
@@ -70,6 +70,7 @@ const written = (value: number): string => (value !== 0 && (Math.abs(value) < 1e
 /** The fault of one number: names the limit and a value that works. */
 export function fieldFault(field: ParameterField, typed: string): string | null {
   if (field.kind === 'choice') return field.choices?.some((c) => c.value === typed) ? null : `Choose one of ${field.choices?.map((c) => c.label).join(', ') ?? ''}.`;
+  if (field.kind === 'text') return typed.trim() ? null : `Write something, for example ${field.default}.`;
   const value = parseDecimal(typed);
   const unit = field.unit ? ` ${field.unit}` : '';
   if (Number.isNaN(value)) return `Write a number, for example ${written(Number(field.default))}.`;
@@ -107,7 +108,7 @@ export function readConfiguration(form: SolverForm): { configuration: Configurat
     const typed = form.values[field.name] ?? '';
     const fault = fieldFault(field, typed);
     if (fault) issues.push({ path: parameterPath(field.name), label: field.label, message: fault });
-    parameters[field.name] = field.kind === 'choice' ? typed : parseDecimal(typed);
+    parameters[field.name] = field.kind === 'choice' || field.kind === 'text' ? typed : parseDecimal(typed);
   }
   const rule = readRule(method, form, issues);
   if (issues.length === 0) {
