@@ -2,9 +2,11 @@
  * Dense products, row-major. Every entry is one sum over the inner index in ascending order from zero, whatever the blocking
  * and however many columns are computed together: a product with one column has the bits of the same column in a batch.
  */
+import { kernels, scratchOf } from '../kernels/kernel-memory';
+import { multiplyRows } from './product-kernel';
 
-/** Inner indices per pass: six rows of this length stay in the first-level cache. */
-const innerBlock = 512;
+/** Fewer multiply-adds than this do not repay the copies into the memory of the compiled kernel. */
+const worthCompiled = 8192;
 
 /**
  * C = A B.
@@ -15,8 +17,9 @@ const innerBlock = 512;
  * @throws RangeError when a length does not fit
  */
 export function matmul(a: Float64Array, b: Float64Array, rows: number, inner: number, cols: number, out = new Float64Array(rows * cols)): Float64Array {
-  if (b.length !== inner * cols) throw new RangeError(`The second factor has ${b.length} values, not ${inner} x ${cols}.`);
-  return matmulTransposed(a, transpose(b, inner, cols), rows, inner, cols, out);
+  requireLengths(a, b, rows, inner, cols, out, '');
+  if (!multiplyCompiled(a, inner, 1, b, cols, 1, rows, inner, cols, out)) multiplyPlain(a, transpose(b, inner, cols), rows, inner, cols, out);
+  return out;
 }
 
 /**
@@ -28,101 +31,49 @@ export function matmul(a: Float64Array, b: Float64Array, rows: number, inner: nu
  * @throws RangeError when a length does not fit
  */
 export function matmulTransposed(a: Float64Array, b: Float64Array, rows: number, inner: number, cols: number, out = new Float64Array(rows * cols)): Float64Array {
-  if (a.length !== rows * inner) throw new RangeError(`The first factor has ${a.length} values, not ${rows} x ${inner}.`);
-  if (b.length !== cols * inner) throw new RangeError(`The second factor has ${b.length} values, not ${cols} x ${inner} (transposed).`);
-  if (out.length !== rows * cols) throw new RangeError(`The product has ${out.length} values, not ${rows} x ${cols}.`);
-  out.fill(0);
-  for (let from = 0; from < inner; from += innerBlock) accumulate(a, b, rows, inner, cols, out, from, Math.min(inner, from + innerBlock));
+  requireLengths(a, b, rows, inner, cols, out, ' (transposed)');
+  if (!multiplyCompiled(a, inner, 1, b, 1, inner, rows, inner, cols, out)) multiplyPlain(a, b, rows, inner, cols, out);
   return out;
 }
 
-function accumulate(a: Float64Array, b: Float64Array, rows: number, inner: number, cols: number, out: Float64Array, from: number, to: number): void {
-  const length = to - from;
-  let j = 0;
-  for (; j + 3 < cols; j += 4) {
-    const b0 = j * inner + from;
-    const b1 = b0 + inner;
-    const b2 = b1 + inner;
-    const b3 = b2 + inner;
-    let i = 0;
-    for (; i + 1 < rows; i += 2) {
-      const a0 = i * inner + from;
-      const a1 = a0 + inner;
-      const t0 = i * cols + j;
-      const t1 = t0 + cols;
-      let s00 = out[t0], s01 = out[t0 + 1], s02 = out[t0 + 2], s03 = out[t0 + 3];
-      let s10 = out[t1], s11 = out[t1 + 1], s12 = out[t1 + 2], s13 = out[t1 + 3];
-      for (let k = 0; k < length; k++) {
-        const p0 = a[a0 + k];
-        const p1 = a[a1 + k];
-        let q = b[b0 + k];
-        s00 += p0 * q;
-        s10 += p1 * q;
-        q = b[b1 + k];
-        s01 += p0 * q;
-        s11 += p1 * q;
-        q = b[b2 + k];
-        s02 += p0 * q;
-        s12 += p1 * q;
-        q = b[b3 + k];
-        s03 += p0 * q;
-        s13 += p1 * q;
-      }
-      out[t0] = s00;
-      out[t0 + 1] = s01;
-      out[t0 + 2] = s02;
-      out[t0 + 3] = s03;
-      out[t1] = s10;
-      out[t1 + 1] = s11;
-      out[t1 + 2] = s12;
-      out[t1 + 3] = s13;
-    }
-    for (; i < rows; i++) {
-      const a0 = i * inner + from;
-      const t = i * cols + j;
-      let s0 = out[t], s1 = out[t + 1], s2 = out[t + 2], s3 = out[t + 3];
-      for (let k = 0; k < length; k++) {
-        const p = a[a0 + k];
-        s0 += p * b[b0 + k];
-        s1 += p * b[b1 + k];
-        s2 += p * b[b2 + k];
-        s3 += p * b[b3 + k];
-      }
-      out[t] = s0;
-      out[t + 1] = s1;
-      out[t + 2] = s2;
-      out[t + 3] = s3;
-    }
-  }
-  for (; j < cols; j++) {
-    const b0 = j * inner + from;
-    let i = 0;
-    for (; i + 3 < rows; i += 4) {
-      const a0 = i * inner + from;
-      const a1 = a0 + inner;
-      const a2 = a1 + inner;
-      const a3 = a2 + inner;
-      const t = i * cols + j;
-      let s0 = out[t], s1 = out[t + cols], s2 = out[t + 2 * cols], s3 = out[t + 3 * cols];
-      for (let k = 0; k < length; k++) {
-        const q = b[b0 + k];
-        s0 += a[a0 + k] * q;
-        s1 += a[a1 + k] * q;
-        s2 += a[a2 + k] * q;
-        s3 += a[a3 + k] * q;
-      }
-      out[t] = s0;
-      out[t + cols] = s1;
-      out[t + 2 * cols] = s2;
-      out[t + 3 * cols] = s3;
-    }
-    for (; i < rows; i++) {
-      const a0 = i * inner + from;
-      let s = out[i * cols + j];
-      for (let k = 0; k < length; k++) s += a[a0 + k] * b[b0 + k];
-      out[i * cols + j] = s;
-    }
-  }
+/**
+ * C = A^T B.
+ * @param a inner x rows
+ * @param b inner x cols
+ * @param out rows x cols, overwritten; must not alias an input
+ * @returns `out`
+ * @throws RangeError when a length does not fit
+ */
+export function matmulLeftTransposed(a: Float64Array, b: Float64Array, rows: number, inner: number, cols: number, out = new Float64Array(rows * cols)): Float64Array {
+  requireLengths(a, b, rows, inner, cols, out, '');
+  if (!multiplyCompiled(a, 1, rows, b, cols, 1, rows, inner, cols, out)) multiplyPlain(transpose(a, inner, rows), transpose(b, inner, cols), rows, inner, cols, out);
+  return out;
+}
+
+function requireLengths(a: Float64Array, b: Float64Array, rows: number, inner: number, cols: number, out: Float64Array, how: string): void {
+  if (a.length !== rows * inner) throw new RangeError(`The first factor has ${a.length} values, not ${rows} x ${inner}.`);
+  if (b.length !== inner * cols) throw new RangeError(`The second factor has ${b.length} values, not ${how ? `${cols} x ${inner}${how}` : `${inner} x ${cols}`}.`);
+  if (out.length !== rows * cols) throw new RangeError(`The product has ${out.length} values, not ${rows} x ${cols}.`);
+}
+
+function multiplyPlain(a: Float64Array, b: Float64Array, rows: number, inner: number, cols: number, out: Float64Array): void {
+  multiplyRows({ values: a, from: 0, stride: inner, rows }, { values: b, from: 0, stride: inner, rows: cols }, inner, out, 0, cols);
+}
+
+/** By the compiled kernel; false when the product is too small or too large for it. Strides in values. */
+function multiplyCompiled(
+  a: Float64Array, rowA: number, stepA: number, b: Float64Array, stepB: number, colB: number, rows: number, inner: number, cols: number, out: Float64Array,
+): boolean {
+  // With one row or column the product only reads its matrix once.
+  if (rows < 3 || cols < 3 || inner < 3 || rows * inner * cols < worthCompiled) return false;
+  const scratch = scratchOf(8 * a.length, 8 * b.length, 8 * out.length, kernels()?.packedBytes(cols) ?? 0);
+  if (!scratch) return false;
+  const [atA, atB, atC, pack] = scratch.addresses;
+  new Float64Array(scratch.buffer, atA, a.length).set(a);
+  new Float64Array(scratch.buffer, atB, b.length).set(b);
+  scratch.kernels.multiply(atA, 8 * rowA, 8 * stepA, atB, 8 * stepB, 8 * colB, atC, 8 * cols, rows, inner, cols, pack);
+  out.set(new Float64Array(scratch.buffer, atC, out.length));
+  return true;
 }
 
 /** The transpose of a rows x cols matrix, in tiles. */

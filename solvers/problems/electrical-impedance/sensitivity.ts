@@ -1,3 +1,5 @@
+import { scratchOf } from '../../kernels/kernel-memory';
+import { multiplyRows } from '../../linear-algebra/product-kernel';
 import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
 import { degreeFourShapes, elementStiffness, entriesPerElement, straightStiffness } from './elements';
 
@@ -32,12 +34,30 @@ export function pairSensitivities(
   const cells = start.length - 1;
   let most = 0;
   for (let c = 0; c < cells; c++) most = Math.max(most, start[c + 1] - start[c]);
+  const room = scratchOf(
+    4 * elements.length, 8 * stiffness.length, 4 * start.length, 4 * list.length, 8 * fields.length, 48 * most * L, 48 * most * L, 8 * 36, 8 * cells * L * L,
+  );
+  if (!room) return pairsInTypeScript(elements, stiffness, groups, fields, L, most, out);
+  const [atElements, atStiffness, atStart, atList, atFields, f, g, matrix, atOut] = room.addresses;
+  new Int32Array(room.buffer, atElements, elements.length).set(elements);
+  new Float64Array(room.buffer, atStiffness, stiffness.length).set(stiffness);
+  new Int32Array(room.buffer, atStart, start.length).set(start);
+  new Int32Array(room.buffer, atList, list.length).set(list);
+  new Float64Array(room.buffer, atFields, fields.length).set(fields);
+  room.kernels.pairSensitivities(atElements, atStiffness, atStart, atList, cells, atFields, L, f, g, matrix, atOut);
+  out.set(new Float64Array(room.buffer, atOut, cells * L * L));
+  return out;
+}
+
+/** The twin of the compiled kernel (../../kernels/sensitivity.as). */
+function pairsInTypeScript(elements: Int32Array, stiffness: Float64Array, groups: ElementsByCell, fields: Float64Array, L: number, most: number, out: Float64Array): Float64Array {
+  const { start, list } = groups;
   // Field j in row j, six values an element, and the element matrices times the fields in the same layout.
   const stride = 6 * most;
   const f = new Float64Array(L * stride);
   const g = new Float64Array(L * stride);
   const m = new Float64Array(36);
-  for (let c = 0; c < cells; c++) {
+  for (let c = 0; c < start.length - 1; c++) {
     const count = start[c + 1] - start[c];
     for (let e = 0; e < count; e++) {
       const t = list[start[c] + e];
@@ -55,52 +75,11 @@ export function pairSensitivities(
         for (let i = 0; i < 6; i++) g[at + i] = m[6 * i] * f0 + m[6 * i + 1] * f1 + m[6 * i + 2] * f2 + m[6 * i + 3] * f3 + m[6 * i + 4] * f4 + m[6 * i + 5] * f5;
       }
     }
-    pairProducts(f, g, stride, 6 * count, L, out, c * L * L);
+    const base = c * L * L;
+    multiplyRows({ values: f, from: 0, stride, rows: L }, { values: g, from: 0, stride, rows: L }, 6 * count, out, base, L);
+    for (let j = 1; j < L; j++) for (let k = 0; k < j; k++) out[base + j * L + k] = out[base + k * L + j];
   }
   return out;
-}
-
-/** out[base + j L + k] = sum over the first `length` values of f_j g_k for k >= j, mirrored below. */
-function pairProducts(f: Float64Array, g: Float64Array, stride: number, length: number, L: number, out: Float64Array, base: number): void {
-  for (let j = 0; j < L; j += 2) {
-    const a0 = j * stride;
-    const a1 = a0 + stride;
-    const row0 = base + j * L;
-    const row1 = row0 + L;
-    // Blocks of four columns from the one that holds the diagonal on; what lands below the diagonal is overwritten after.
-    for (let k = j & ~3; k < L; k += 4) {
-      const b0 = k * stride;
-      const b1 = b0 + stride;
-      const b2 = b1 + stride;
-      const b3 = b2 + stride;
-      let s00 = 0, s01 = 0, s02 = 0, s03 = 0, s10 = 0, s11 = 0, s12 = 0, s13 = 0;
-      for (let i = 0; i < length; i++) {
-        const p0 = f[a0 + i];
-        const p1 = f[a1 + i];
-        let q = g[b0 + i];
-        s00 += p0 * q;
-        s10 += p1 * q;
-        q = g[b1 + i];
-        s01 += p0 * q;
-        s11 += p1 * q;
-        q = g[b2 + i];
-        s02 += p0 * q;
-        s12 += p1 * q;
-        q = g[b3 + i];
-        s03 += p0 * q;
-        s13 += p1 * q;
-      }
-      out[row0 + k] = s00;
-      out[row0 + k + 1] = s01;
-      out[row0 + k + 2] = s02;
-      out[row0 + k + 3] = s03;
-      out[row1 + k] = s10;
-      out[row1 + k + 1] = s11;
-      out[row1 + k + 2] = s12;
-      out[row1 + k + 3] = s13;
-    }
-  }
-  for (let j = 1; j < L; j++) for (let k = 0; k < j; k++) out[base + j * L + k] = out[base + k * L + j];
 }
 
 /** Element matrices for unit conductivity, lower triangle row by row, as the assembly integrates them. */

@@ -1,0 +1,8 @@
+export { multiply, packedBytes } from './product';
+export { backwardFour, factorise, factorPanel, forwardFour } from './cholesky';
+export { pairSensitivities } from './sensitivity';
+
+/** The first byte that no kernel keeps for itself. */
+export function firstFree(): usize {
+  return __heap_base;
+}
