@@ -57,6 +57,19 @@ export function ellipseInterface(g: EllipseGeometry): TruthInterface {
       return [g.x + c * u - s * v, g.y + s * u + c * v];
     },
     inside: (x, y) => radius2(x, y) < 1,
+    curveAt(t, out) {
+      const turn = 2 * Math.PI;
+      const u = g.semiAxisA * cos(turn * t);
+      const v = g.semiAxisB * sin(turn * t);
+      const du = -turn * g.semiAxisA * sin(turn * t);
+      const dv = turn * g.semiAxisB * cos(turn * t);
+      out[0] = g.x + c * u - s * v;
+      out[1] = g.y + s * u + c * v;
+      out[2] = c * du - s * dv;
+      out[3] = s * du + c * dv;
+      out[4] = -turn * turn * (c * u - s * v);
+      out[5] = -turn * turn * (s * u + c * v);
+    },
   };
 }
 

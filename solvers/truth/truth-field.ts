@@ -18,6 +18,8 @@ export interface TruthInterface {
   /** Nearest point of the exact curve. */
   project(x: number, y: number): [number, number];
   inside(x: number, y: number): boolean;
+  /** Where the curve is smooth: position and its first and second derivative (x, y, x', y', x'', y'') at 0 <= t < 1, counter-clockwise, of period 1. */
+  readonly curveAt?: (t: number, out: Float64Array) => void;
 }
 
 /** A ground truth: conductivity in S/m over the plane, metres. */

@@ -1,0 +1,147 @@
+import { gaussRule } from './legendre';
+import { panelNodes, type Nodes } from './nodes';
+import type { SmoothCurve } from './smooth-curve';
+
+/**
+ * Least sum of the distances from a foreign point to the two ends of a panel, over the length of the panel. Points with one sum
+ * lie on an ellipse about the ends: fields with sources outside it are polynomials on the panel up to rho^-n,
+ * rho = A + sqrt(A^2 - 1) = 3.7, n Gauss points (Trefethen 2013, Approximation Theory and Approximation Practice, chapter 8).
+ */
+export const clearance = 2;
+/** A panel turns by at most this, rad. */
+const largestTurn = 1.7;
+/** Largest of the last two Legendre coefficients of the speed, as a share of it, and of the turn per panel, rad. */
+const shapeTail = 1e-9;
+/** Of the sampling that decides on the splits. */
+const sampleOrder = 16;
+/** A part of the same curve is foreign where the straight way is shorter than this share of the way along the curve. */
+const foldShare = 0.5;
+
+/** Two curves closer than about this, in radii (or this share of a small curve), are taken to touch; and the most panels of all curves. */
+export const shortestPanel = 1e-4;
+const shortestShare = 0.01;
+const mostPanels = 110;
+
+export class PanelError extends RangeError {}
+
+interface Sampled {
+  breaks: number[];
+  nodes: Nodes;
+  /** Ends of panels: x, y pairs, one more than panels. */
+  ends: Float64Array;
+  /** Length from the start to the end of each panel, and to every node. */
+  along: Float64Array;
+  nodeAlong: Float64Array;
+}
+
+/**
+ * Panels of every curve so that a panel is short against its distance to other curves and to parts of its own curve that
+ * fold back, and resolves the shape of its curve.
+ * @returns breaks of the parameter, ascending over one period, both ends listed
+ * @throws PanelError where curves touch or cross
+ */
+export function choosePanels(curves: readonly SmoothCurve[]): number[][] {
+  const sampled = curves.map((curve) => sample(curve, [0, 1, 2, 3, 4].map((k) => (k / 4) * curve.period)));
+  for (;;) {
+    const splits = sampled.map((_, c) => panelsToSplit(sampled, c));
+    if (splits.every((list) => list.length === 0)) return sampled.map(({ breaks }) => breaks);
+    splits.forEach((list, c) => {
+      if (list.length === 0) return;
+      const { breaks, along } = sampled[c];
+      const refined = [breaks[0]];
+      let next = 0;
+      for (let p = 0; p + 1 < breaks.length; p++) {
+        if (list[next] === p) {
+          if (along[p + 1] - along[p] < Math.min(shortestPanel, shortestShare * along[along.length - 1])) throw new PanelError('Outlines touch or cross each other or the boundary of the body.');
+          refined.push(0.5 * (breaks[p] + breaks[p + 1]));
+          next++;
+        }
+        refined.push(breaks[p + 1]);
+      }
+      sampled[c] = sample(curves[c], refined);
+    });
+    if (sampled.reduce((sum, { breaks }) => sum + breaks.length, 0) > mostPanels) throw new PanelError('The outlines would need too many panels.');
+  }
+}
+
+function sample(curve: SmoothCurve, breaks: number[]): Sampled {
+  const nodes = panelNodes(curve, breaks, sampleOrder);
+  const panels = breaks.length - 1;
+  const ends = new Float64Array(2 * breaks.length);
+  const point = new Float64Array(6);
+  breaks.forEach((t, k) => {
+    curve.at(t, point);
+    ends[2 * k] = point[0];
+    ends[2 * k + 1] = point[1];
+  });
+  const along = new Float64Array(breaks.length);
+  const nodeAlong = new Float64Array(nodes.x.length);
+  for (let p = 0; p < panels; p++) {
+    let length = 0;
+    for (let j = 0; j < sampleOrder; j++) {
+      const i = p * sampleOrder + j;
+      nodeAlong[i] = along[p] + length + 0.5 * nodes.weight[i];
+      length += nodes.weight[i];
+    }
+    along[p + 1] = along[p] + length;
+  }
+  return { breaks, nodes, ends, along, nodeAlong };
+}
+
+function panelsToSplit(sampled: readonly Sampled[], c: number): number[] {
+  const { breaks, nodes, ends } = sampled[c];
+  const list: number[] = [];
+  for (let p = 0; p + 1 < breaks.length; p++) {
+    const ax = ends[2 * p];
+    const ay = ends[2 * p + 1];
+    const bx = ends[2 * p + 2];
+    const by = ends[2 * p + 3];
+    const reach = clearance * distance(ax, ay, bx, by);
+    if (!resolvesShape(nodes, p) || sampled.some((other, o) => (o === c ? foldsBack(other, p, reach) : nearer(other.nodes, ax, ay, bx, by, reach)))) list.push(p);
+  }
+  return list;
+}
+
+const distance = (ax: number, ay: number, bx: number, by: number): number => Math.sqrt((ax - bx) * (ax - bx) + (ay - by) * (ay - by));
+
+function nearer(nodes: Nodes, ax: number, ay: number, bx: number, by: number, reach: number): boolean {
+  for (let i = 0; i < nodes.x.length; i++) if (distance(nodes.x[i], nodes.y[i], ax, ay) + distance(nodes.x[i], nodes.y[i], bx, by) < reach) return true;
+  return false;
+}
+
+function foldsBack({ nodes, ends, along, nodeAlong }: Sampled, p: number, reach: number): boolean {
+  const total = along[along.length - 1];
+  const gap = (i: number, end: number): number => {
+    const d = Math.abs(nodeAlong[i] - along[end]);
+    return Math.min(d, total - d);
+  };
+  for (let i = 0; i < nodes.x.length; i++) {
+    if (nodeAlong[i] > along[p] && nodeAlong[i] < along[p + 1]) continue;
+    const d0 = distance(nodes.x[i], nodes.y[i], ends[2 * p], ends[2 * p + 1]);
+    const d1 = distance(nodes.x[i], nodes.y[i], ends[2 * p + 2], ends[2 * p + 3]);
+    if (d0 + d1 < reach && d0 < foldShare * gap(i, p) && d1 < foldShare * gap(i, p + 1)) return true;
+  }
+  return false;
+}
+
+function resolvesShape(nodes: Nodes, p: number): boolean {
+  const { toCoefficients } = gaussRule(sampleOrder);
+  let turn = 0;
+  for (let j = 0; j < sampleOrder; j++) turn += Math.abs(nodes.curvature[p * sampleOrder + j]) * nodes.weight[p * sampleOrder + j];
+  if (turn > largestTurn) return false;
+  const tailOf = (value: (i: number) => number): [tail: number, largest: number] => {
+    let largest = 0;
+    let tail = 0;
+    for (let k = 0; k < sampleOrder; k++) {
+      let sum = 0;
+      for (let j = 0; j < sampleOrder; j++) sum += toCoefficients[k * sampleOrder + j] * value(p * sampleOrder + j);
+      largest = Math.max(largest, Math.abs(sum));
+      if (k >= sampleOrder - 2) tail = Math.max(tail, Math.abs(sum));
+    }
+    return [tail, largest];
+  };
+  const [speedTail, speed] = tailOf((i) => nodes.speed[i]);
+  const half = nodes.weight[p * sampleOrder] / (nodes.speed[p * sampleOrder] * gaussRule(sampleOrder).weights[0]);
+  const [turnTail] = tailOf((i) => nodes.curvature[i] * nodes.speed[i] * half);
+  return speedTail <= shapeTail * speed && turnTail <= shapeTail;
+}
