@@ -9,7 +9,8 @@ export function securityHeaders(env: Env): RequestHandler {
       useDefaults: false,
       directives: {
         defaultSrc: ["'self'"],
-        scriptSrc: ["'self'"],
+        // The hot kernels are WebAssembly, compiled in the page's worker; this allows that and no eval of text.
+        scriptSrc: ["'self'", "'wasm-unsafe-eval'"],
         styleSrc: ["'self'"],
         // React and the formula renderer set style attributes; style elements stay forbidden.
         styleSrcAttr: ["'unsafe-inline'"],

@@ -91,7 +91,8 @@ describe('headers', () => {
     const policy = headers.get('content-security-policy') ?? '';
     expect(policy).toContain("default-src 'self'");
     expect(policy).toContain("script-src 'self'");
-    expect(policy).not.toMatch(/script-src[^;]*unsafe|style-src [^;]*unsafe/);
+    expect(policy, 'the compiled kernels').toContain("script-src 'self' 'wasm-unsafe-eval'");
+    expect(policy).not.toMatch(/script-src[^;]*'unsafe|style-src [^;]*unsafe/);
     expect(policy).toContain("frame-ancestors 'none'");
     expect(headers.get('x-content-type-options')).toBe('nosniff');
     expect(headers.get('x-powered-by')).toBeNull();
