@@ -16,8 +16,15 @@ export { errorAgainstParameter, picardData, type Sensitivity, type PicardData, t
 
 export { errorTable, levelStatistics, type LevelStatistics } from './statistics/error-table';
 export { stabilitySheet, type StabilitySheet, type StabilityInput } from './statistics/stability-sheet';
-export { rankAtNoise, placeOnLadder, interpolateLevels, type Ranking, type RankingRow, type RankedEntry, type RankingInput } from './statistics/ranking';
+export { rankAtNoise, type Ranking, type RankingRow, type RankingInput } from './statistics/ranking';
+export { placeOnLadder, interpolateLevels } from './statistics/ladder-place';
+export { type RankedEntry } from './statistics/blocks';
+export { separate, separationWords, type Separation } from './statistics/separation';
 export { comparePairs, type PairComparison } from './statistics/pairs';
+export { pairedBootstrap, type PairedRatio } from './statistics/paired-bootstrap';
+export { performanceProfiles, profileAt, type PerformanceProfiles } from './statistics/performance-profile';
+export { paretoFront, type CostPoint, type ParetoPlace } from './statistics/pareto-front';
+export { levelMoments, type LevelMoments } from './campaign/level-moments';
 export { lossOf, type Better } from './statistics/loss';
 export { quantileOfSorted, median } from './statistics/quantiles';
 

@@ -11,3 +11,17 @@ export function averageRanks(values: ArrayLike<number>): Float64Array {
   }
   return ranks;
 }
+
+/** Sum over groups of equal ranks of (t^3 - t). */
+export function tieSum(ranks: Float64Array): number {
+  const sorted = Float64Array.from(ranks).sort();
+  let sum = 0;
+  for (let i = 0; i < sorted.length; ) {
+    let j = i;
+    while (j + 1 < sorted.length && sorted[j + 1] === sorted[i]) j++;
+    const t = j - i + 1;
+    sum += t * t * t - t;
+    i = j + 1;
+  }
+  return sum;
+}

@@ -1,6 +1,5 @@
 import { normalCdf } from '../core/normal';
-import { tieSum } from './friedman';
-import { averageRanks } from './ranks';
+import { averageRanks, tieSum } from './ranks';
 
 export interface WilcoxonResult {
   /** Rank sums of the positive and the negative differences; those of zeros are split between them (Demsar 2006; scipy's `zsplit`). */
@@ -9,54 +8,74 @@ export interface WilcoxonResult {
   /** The smaller of the two. */
   readonly statistic: number;
   readonly pTwoSided: number;
-  /** True where p counts all sign patterns (no ties, no zeros, at most 50 pairs); else the normal approximation. */
+  /** True where p counts all sign patterns (at most 50 pairs); else the normal approximation of Demsar 2006. */
   readonly exact: boolean;
 }
 
-/** Wilcoxon's signed-rank test of paired values (Wilcoxon 1945). */
+const exactUpTo = 50;
+
+/**
+ * Wilcoxon's signed-rank test of paired values (Wilcoxon 1945). Up to 50 pairs p counts the sign patterns of the differences that are
+ * not zero, on the ranks as they are, ties included; zeros keep their split ranks. Beyond, the normal approximation with the variance
+ * of all ranks, as scipy has it.
+ * @throws RangeError where the values differ in number, or there are none
+ */
 export function wilcoxonSignedRank(a: ArrayLike<number>, b: ArrayLike<number>): WilcoxonResult {
   if (a.length !== b.length) throw new RangeError(`Paired values differ in number: ${a.length} and ${b.length}.`);
   const n = a.length;
   if (n === 0) throw new RangeError('The signed-rank test needs at least one pair.');
   const difference = new Float64Array(n);
-  // Two undefined values (both worst) do not differ.
-  for (let i = 0; i < n; i++) difference[i] = a[i] === b[i] ? 0 : a[i] - b[i];
+  for (let i = 0; i < n; i++) {
+    if (Number.isNaN(a[i]) || Number.isNaN(b[i])) throw new RangeError(`Pair ${i + 1} is not a number.`);
+    // Two undefined values (both Infinity, the worst) do not differ.
+    difference[i] = a[i] === b[i] ? 0 : a[i] - b[i];
+  }
   const ranks = averageRanks(difference.map(Math.abs));
-  let positive = 0;
-  let negative = 0;
+  let above = 0;
+  let below = 0;
   let zeros = 0;
   for (let i = 0; i < n; i++) {
-    if (difference[i] > 0) positive += ranks[i];
-    else if (difference[i] < 0) negative += ranks[i];
-    else {
-      positive += ranks[i] / 2;
-      negative += ranks[i] / 2;
-      zeros++;
-    }
+    if (difference[i] > 0) above += ranks[i];
+    else if (difference[i] < 0) below += ranks[i];
+    else zeros += ranks[i];
   }
+  const positive = above + zeros / 2;
+  const negative = below + zeros / 2;
   const statistic = Math.min(positive, negative);
-  const ties = tieSum(ranks);
-  if (ties === 0 && zeros === 0 && n <= 50) return { positive, negative, statistic, pTwoSided: exactP(n, statistic), exact: true };
-  // Each rank that is not a zero's has its sign by a fair coin. With ties this is the usual corrected variance; with zeros it is smaller than
-  // scipy's, which lets the split zeros scatter.
-  let variance = 0;
-  for (let i = 0; i < n; i++) if (difference[i] !== 0) variance += 0.25 * ranks[i] * ranks[i];
-  if (variance === 0) return { positive, negative, statistic, pTwoSided: 1, exact: false };
-  const z = (statistic - 0.25 * n * (n + 1)) / Math.sqrt(variance);
-  return { positive, negative, statistic, pTwoSided: Math.min(1, 2 * normalCdf(z)), exact: false };
+  if (above + below === 0) return { positive, negative, statistic, pTwoSided: 1, exact: n <= exactUpTo };
+  if (n <= exactUpTo) {
+    const signed = ranks.filter((_, i) => difference[i] !== 0);
+    return { positive, negative, statistic, pTwoSided: signPatternP(signed, Math.min(above, below)), exact: true };
+  }
+  const variance = (n * (n + 1) * (2 * n + 1)) / 24 - tieSum(ranks) / 48;
+  return { positive, negative, statistic, pTwoSided: Math.min(1, 2 * normalCdf((statistic - 0.25 * n * (n + 1)) / Math.sqrt(variance))), exact: false };
 }
 
-/** Twice the share of sign patterns whose rank sum is at most `statistic`, by counting subsets of 1 ... n. */
-function exactP(n: number, statistic: number): number {
-  const top = (n * (n + 1)) / 2;
+/** Twice the share of sign patterns whose rank sum is at most `sum`. Ranks are multiples of one half, so doubled ones are whole. */
+function signPatternP(ranks: Float64Array, sum: number): number {
+  let top = 0;
+  for (let i = 0; i < ranks.length; i++) top += 2 * ranks[i];
   const ways = new Float64Array(top + 1);
   ways[0] = 1;
-  for (let rank = 1; rank <= n; rank++) for (let sum = top; sum >= rank; sum--) ways[sum] += ways[sum - rank];
-  let below = 0;
   let all = 1;
-  for (let sum = 0; sum <= statistic; sum++) below += ways[sum];
-  for (let rank = 0; rank < n; rank++) all *= 2;
+  for (let i = 0; i < ranks.length; i++) {
+    const rank = 2 * ranks[i];
+    for (let s = top; s >= rank; s--) ways[s] += ways[s - rank];
+    all *= 2;
+  }
+  let below = 0;
+  for (let s = 0; s <= 2 * sum; s++) below += ways[s];
   return Math.min(1, (2 * below) / all);
+}
+
+/**
+ * Fewest pairs with which the test can reach a level: all of one sign have p = 2^(1 - n), and of several comparisons Holm's correction
+ * holds the smallest p against the level over their number. One comparison at 5 % needs six.
+ */
+export function fewestPairs(comparisons = 1, alpha = 0.05): number {
+  let n = 1;
+  for (let p = 1; p * comparisons >= alpha; p /= 2) n++;
+  return n;
 }
 
 /** Holm's step-down adjustment (Holm 1979): p values that may be held against the level of the whole family, in the order given. */

@@ -1,16 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { defaultLadder } from '../../../shared/domain/ladder';
-import { deriveKey, RandomStream } from '../../../solvers/core/random';
+import { scattered } from '../../support/scattered-draws';
 import { errorTable, levelStatistics } from '../../../solvers/statistics/error-table';
-import { comparePairs } from '../../../solvers/statistics/pairs';
-import { placeOnLadder, rankAtNoise, type RankedEntry } from '../../../solvers/statistics/ranking';
 import { breakdownNoise, stabilitySheet } from '../../../solvers/statistics/stability-sheet';
 
-/** 24 draws about a law, log-normal scatter. */
-function scattered(law: (level: number) => number, scatter: number, name: string, draws = 24): number[][] {
-  const stream = new RandomStream(deriveKey('test', name));
-  return defaultLadder.map((level) => Array.from({ length: draws }, () => law(level) * Math.exp(scatter * stream.nextNormal())));
-}
 
 describe('stability sheet', () => {
   it('finds the exponent and the floor it was made with, without scatter', () => {
@@ -80,59 +73,5 @@ describe('error table', () => {
     const table = errorTable([trial(0, 2, 3), trial(0, 0, 1), trial(1, 0, null)], [0.01, 0.1], { key: 'm', better: 'lower' });
     expect(table[0]).toMatchObject({ draws: [1, null, 3], count: 2, median: 2 });
     expect(table[1]).toMatchObject({ count: 0, reason: 'r' });
-  });
-});
-
-describe('ranking', () => {
-  const entry = (id: string, law: (level: number) => number, scatter: number, phantoms: number): RankedEntry => ({
-    id, values: Array.from({ length: phantoms }, (_, p) => scattered(law, scatter, `${id} ${p}`)),
-  });
-  const good = entry('good', (d) => 0.1 + d, 0.05, 4);
-  const twin = { ...entry('twin', (d) => 0.1 + d, 0.05, 4) };
-  const bad = entry('bad', (d) => 0.3 + d, 0.05, 4);
-  it('separates what differs, ties what does not, from one ordering', () => {
-    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [bad, twin, good] });
-    expect(ranking.rows.map((row) => row.rank)).toEqual([1, 1, 3]);
-    expect(ranking.rows.map((row) => row.tieGroup)).toEqual([0, 0, 1]);
-    expect(ranking.rows[2].id).toBe('bad');
-    const meanRanks = ranking.rows.map((row) => row.meanRank!);
-    expect([...meanRanks].sort((a, b) => a - b)).toEqual(meanRanks);
-    expect(ranking.test).toMatchObject({ separable: true, blocks: 96, phantoms: 4 });
-    expect(ranking.wins[0][2]).toBe(1);
-    expect(ranking.wins[2][0]).toBe(0);
-    expect(ranking.wins[1][0]! + ranking.wins[0][1]!).toBeCloseTo(1, 14);
-    expect(ranking.wins[1][1]).toBeNull();
-  });
-  it('interpolates between levels and says so', () => {
-    const exact = [entry('a', (d) => 2 * d ** 0.5, 0, 1), entry('b', (d) => 3 * d ** 0.5, 0, 1)];
-    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.015, better: 'lower', entries: exact });
-    expect(ranking.interpolated).toBe(true);
-    // A power law is a straight line in log-log: exact up to rounding.
-    expect(ranking.rows[0].median).toBeCloseTo(2 * 0.015 ** 0.5, 12);
-    expect(rankAtNoise({ ladder: defaultLadder, noise: 0.02, better: 'lower', entries: exact }).interpolated).toBe(false);
-    expect(placeOnLadder(defaultLadder, 1e-6)).toMatchObject({ nearest: 0, interpolated: true });
-    expect(placeOnLadder(defaultLadder, 0.9)).toMatchObject({ nearest: 9, interpolated: true });
-  });
-  it('gives no winner where it cannot: few draws, or missing runs', () => {
-    const few = [good, bad].map((item) => ({ ...item, values: [item.values[0]!.map((draws) => draws.slice(0, 3))] }));
-    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: few });
-    expect(ranking.test).toMatchObject({ separable: false, statistic: null });
-    expect(ranking.test.words).toMatch(/^Not enough phantoms/);
-    expect(ranking.rows.map((row) => row.rank)).toEqual([1, 1]);
-    const missing = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [{ ...good, values: [null, ...good.values.slice(1)] }, bad, twin] });
-    expect(missing.rows[2]).toMatchObject({ id: 'good', rank: null, complete: false });
-    expect(missing.rows[0]).toMatchObject({ id: 'twin', rank: 1 });
-  });
-  it('counts an undefined value as the worst', () => {
-    const undefinedEntry: RankedEntry = { id: 'none', values: good.values.map((levels) => levels!.map((draws) => draws.map(() => null))) };
-    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [undefinedEntry, good] });
-    expect(ranking.rows[1]).toMatchObject({ id: 'none', median: null });
-    expect(ranking.wins[0][1]).toBe(1);
-  });
-  it('compares pairs with Holm', () => {
-    const losses = (item: RankedEntry) => Float64Array.from(item.values.flatMap((levels) => levels![5] as number[]));
-    const pairs = comparePairs([good, twin, bad].map((item) => ({ id: item.id, losses: losses(item) })));
-    expect(pairs.map((pair) => pair.separable)).toEqual([false, true, true]);
-    expect(pairs[1].medianRatio).toBeLessThan(0.5);
   });
 });
