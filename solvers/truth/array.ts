@@ -1,7 +1,7 @@
-import { limits } from '../../shared/domain/limits';
 import { polygonInterface } from './polygon';
 import { TruthError } from './truth-error';
 import type { TruthField } from './truth-field';
+import { conductivityRange, type ValueRange } from './value-range';
 
 export interface ArrayTruth {
   readonly background: number;
@@ -14,12 +14,12 @@ export interface ArrayTruth {
 
 /**
  * Ground truth from an array: row 0 at the largest y. Stored values belong to the pixel centres; between them the
- * conductivity is bilinear, in the outer half pixel it is that of the rim, and outside the extent it is the background.
+ * truth is bilinear, in the outer half pixel it is that of the rim, and outside the extent it is the background.
  * Where a rim value differs from the background the outline of the extent is an interface.
  * @param values rows x cols, row-major
- * @throws TruthError naming the row and column of a value that gives no admissible conductivity
+ * @throws TruthError naming the row and column of a value outside the range
  */
-export function arrayField(truth: ArrayTruth, values: Float64Array): TruthField {
+export function arrayField(truth: ArrayTruth, values: Float64Array, range: ValueRange = conductivityRange): TruthField {
   const { rows, cols, extent, scale, offset, background } = truth;
   if (values.length !== rows * cols) throw new RangeError(`The array has ${values.length} values, not rows x cols = ${rows} x ${cols}.`);
   const sigma = new Float64Array(values.length);
@@ -27,9 +27,9 @@ export function arrayField(truth: ArrayTruth, values: Float64Array): TruthField 
   for (let i = 0; i < rows; i++)
     for (let j = 0; j < cols; j++) {
       const value = offset + scale * values[i * cols + j];
-      if (!(value >= limits.conductivityMin && value <= limits.conductivityMax))
+      if (!(value >= range.min && value <= range.max))
         throw new TruthError(
-          `Row ${i + 1}, column ${j + 1} of the array gives ${value} S/m (offset + scale x ${values[i * cols + j]}): a conductivity must lie between ${limits.conductivityMin} and ${limits.conductivityMax} S/m.`,
+          `Row ${i + 1}, column ${j + 1} of the array gives ${value}${range.unit} (offset + scale x ${values[i * cols + j]}): ${range.rule}.`,
           ['truth', 'scale'],
         );
       sigma[i * cols + j] = value;

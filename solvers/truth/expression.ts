@@ -1,8 +1,8 @@
-import { limits } from '../../shared/domain/limits';
 import { atan2 } from '../core/math';
 import { compileExpression, type CompiledExpression } from '../core/expression';
 import { TruthError } from './truth-error';
 import type { TruthField } from './truth-field';
+import { conductivityRange, type ValueRange } from './value-range';
 
 const names = ['x', 'y', 'r', 'theta'] as const;
 
@@ -20,11 +20,11 @@ function compiled(expression: string): CompiledExpression {
 }
 
 /**
- * Ground truth by an expression in x, y (m), r (distance from the origin, m) and theta (rad, -pi to pi); its value is the
- * conductivity in S/m. It has no declared interfaces or targets: where it jumps, simulations integrate the jump by quadrature.
+ * Ground truth by an expression in x, y (m), r (distance from the origin, m) and theta (rad, -pi to pi); its value is that
+ * of the unknown. It has no declared interfaces or targets: where it jumps, simulations integrate the jump by quadrature.
  * @throws TruthError when the expression uses more than the safe subset
  */
-export function expressionField(expression: string, background: number): TruthField {
+export function expressionField(expression: string, background: number, range: ValueRange = conductivityRange): TruthField {
   const evaluate = compiled(expression);
   const variables = new Float64Array(names.length);
   const polar = /\b(r|theta)\b/.test(expression);
@@ -41,9 +41,9 @@ export function expressionField(expression: string, background: number): TruthFi
         variables[3] = atan2(y, x);
       }
       const value = evaluate(variables);
-      if (!(value >= limits.conductivityMin && value <= limits.conductivityMax))
+      if (!(value >= range.min && value <= range.max))
         throw new TruthError(
-          `The expression gives ${value} S/m at x = ${place(x)} m, y = ${place(y)} m: a conductivity must lie between ${limits.conductivityMin} and ${limits.conductivityMax} S/m.`,
+          `The expression gives ${value}${range.unit} at x = ${place(x)} m, y = ${place(y)} m: ${range.rule}.`,
           path,
         );
       return value;

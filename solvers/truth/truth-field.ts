@@ -7,8 +7,9 @@ import { ellipseField } from './ellipse';
 import { expressionField } from './expression';
 import { polygonField } from './polygon';
 import { TruthError } from './truth-error';
+import { conductivityRange, type ValueRange } from './value-range';
 
-/** A closed curve across which the conductivity jumps. Lengths in metres. */
+/** A closed curve across which the truth jumps. Lengths in metres. */
 export interface TruthInterface {
   readonly closed: true;
   /** True for polygons: straight between corners, which `points` always holds. */
@@ -22,7 +23,7 @@ export interface TruthInterface {
   readonly curveAt?: (t: number, out: Float64Array) => void;
 }
 
-/** A ground truth: conductivity in S/m over the plane, metres. */
+/** A ground truth: the unknown (conductivity in S/m, attenuation in 1/m) over the plane, metres. */
 export interface TruthField {
   readonly background: number;
   /** @throws RangeError naming the place where an expression has no admissible value */
@@ -63,15 +64,16 @@ function shapeField(shape: Shape): ShapeField {
  * Shapes lie one on another in their order. Where a smooth bump lies on another shape it blends what lies below with its own
  * value. A target is the shape as declared: what covers it, or lies outside the body, is not taken off its area.
  * @param arrayValues the stored array (rows x cols, row-major) where the truth is an array
+ * @param range that the values of an expression or an array are held to
  * @throws TruthError (a RangeError with the path of the field) that names the field and its limit
  */
-export function createTruthField(definition: TruthDefinition, arrayValues?: Float64Array): TruthField {
+export function createTruthField(definition: TruthDefinition, arrayValues?: Float64Array, range: ValueRange = conductivityRange): TruthField {
   switch (definition.kind) {
     case 'expression':
-      return expressionField(definition.expression, definition.background);
+      return expressionField(definition.expression, definition.background, range);
     case 'array':
       if (!arrayValues) throw new RangeError(`The values of the array ${definition.sha256} are needed for this ground truth.`);
-      return arrayField(definition, arrayValues);
+      return arrayField(definition, arrayValues, range);
     case 'standard':
       throw new RangeError('The published solution belongs to its equation: make it there.');
     case 'shapes': {
