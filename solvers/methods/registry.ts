@@ -2,10 +2,13 @@ import { findByKey } from '../core/registry';
 import type { Method } from '../core/types';
 import { cglsMethod } from './cgls';
 import { exponentialFilterMethod } from './exponential-filter';
+import { filterExpressionMethod } from './filter-expression';
 import { gaussNewtonMethod } from './gauss-newton';
+import { gaussNewtonTotalVariationMethod } from './gauss-newton-total-variation';
 import { iteratedTikhonovMethod } from './iterated-tikhonov';
 import { kaczmarzMethod } from './kaczmarz';
 import { landweberMethod } from './landweber';
+import { levenbergMarquardtMethod } from './levenberg-marquardt';
 import { lsqrMethod } from './lsqr';
 import { nuMethod } from './nu-method';
 import { sensitivityPriorMethod } from './sensitivity-prior';
@@ -22,6 +25,7 @@ export const methods: readonly Method[] = [
   tikhonovMethod,
   iteratedTikhonovMethod,
   exponentialFilterMethod,
+  filterExpressionMethod,
   sensitivityPriorMethod,
   smoothnessPriorMethod,
   cglsMethod,
@@ -32,6 +36,8 @@ export const methods: readonly Method[] = [
   sirtMethod,
   totalVariationMethod,
   gaussNewtonMethod,
+  levenbergMarquardtMethod,
+  gaussNewtonTotalVariationMethod,
 ];
 
 /** @throws RangeError for an unknown key. */
