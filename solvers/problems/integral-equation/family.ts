@@ -1,6 +1,16 @@
 import type { ProblemFamily } from '../problem-family';
+import { equationOf } from './equations';
+import { createEquationInversion, dataPoints, lineGrid } from './inversion-problem';
+import { simulateEquation } from './simulated-phantom';
 
-const refuse = (): never => {
-  throw new RangeError('This family is being built.');
+export const integralEquationFamily: ProblemFamily<'integral-equation'> = {
+  create: ({ geometry, background }) => createEquationInversion(geometry, background),
+  simulate: (definition, _arrayValues, problem) => simulateEquation(definition, problem),
+  grid: lineGrid,
+  unknowns: ({ cells }) => cells,
+  line: ({ geometry }) => `${equationOf(geometry).name}, ${geometry.points} points, ${geometry.cells} cells`,
+  layout(geometry) {
+    const points = dataPoints(equationOf(geometry), geometry.points);
+    return { unit: '', groupNames: ['right-hand side'], valueNames: [Array.from(points, (s) => `s = ${Number(s.toPrecision(4))}`)] };
+  },
 };
-export const integralEquationFamily: ProblemFamily<'integral-equation'> = { create: refuse, simulate: refuse, layout: refuse, grid: refuse, unknowns: refuse, line: refuse };
