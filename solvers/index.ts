@@ -22,6 +22,7 @@ export { type RankedEntry } from './statistics/blocks';
 export { separate, separationWords, type Separation } from './statistics/separation';
 export { comparePairs, type PairComparison } from './statistics/pairs';
 export { pairedBootstrap, type PairedRatio } from './statistics/paired-bootstrap';
+export { compareMethods, profileMethods, type Comparison } from './statistics/comparison';
 export { performanceProfiles, profileAt, type PerformanceProfiles } from './statistics/performance-profile';
 export { paretoFront, type CostPoint, type ParetoPlace } from './statistics/pareto-front';
 export { levelMoments, type LevelMoments } from './campaign/level-moments';

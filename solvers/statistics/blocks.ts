@@ -50,3 +50,14 @@ export function phantomLosses(entries: readonly RankedEntry[], levels: readonly 
     return losses;
   });
 }
+
+/** One figure a draw of a phantom: its loss at a level, or the mean of its losses over several. Null without a run. */
+export function drawFigures(entry: RankedEntry, phantom: number, levels: readonly number[], draws: number, better: Better): Float64Array | null {
+  const figures = new Float64Array(draws);
+  for (const level of levels) {
+    const losses = drawLosses(entry, phantom, level, draws, better);
+    if (!losses) return null;
+    for (let draw = 0; draw < draws; draw++) figures[draw] += losses[draw] / levels.length;
+  }
+  return figures;
+}

@@ -3,7 +3,7 @@ import { interpolateLevels, placeOnLadder, type LadderPlace } from './ladder-pla
 import { lossOf, type Better } from './loss';
 import { winShare } from './pairs';
 import { quantileOfSorted, sortedCopy } from './quantiles';
-import { separate, separationWords, type Separation } from './separation';
+import { separate, separationTest, type Separation, type SeparationTest } from './separation';
 
 export interface RankingInput {
   readonly ladder: readonly number[];
@@ -41,23 +41,8 @@ export interface Ranking {
   readonly separation: Separation | null;
   /** Places in `entries` of the methods in `separation`. */
   readonly compared: readonly number[];
-  readonly test: {
-    readonly name: string;
-    /** Blocks of the test: phantoms, one figure each. */
-    readonly phantoms: number;
-    /** Phantoms that the tests need. */
-    readonly fewest: number | null;
-    readonly enough: boolean;
-    readonly chiSquare: number | null;
-    /** Iman and Davenport's F; null where it is infinite or there is no test. */
-    readonly statistic: number | null;
-    readonly pValue: number | null;
-    /** p is counted, not approximated. */
-    readonly exact: boolean;
-    readonly criticalDifference: number | null;
-    readonly separable: boolean;
-    readonly words: string;
-  };
+  /** Blocks are phantoms, one figure each. */
+  readonly test: SeparationTest;
   /** Share of the paired draws, over all phantoms, that the row's solver wins against the column's; a tie is half a win. Null without common draws. */
   readonly wins: readonly (readonly (number | null)[])[];
 }
@@ -101,7 +86,7 @@ export function rankAtNoise(input: RankingInput): Ranking {
   const figures = entries.map((entry) => figuresAt(entry, place));
   const medianLosses = figures.map(({ median }) => lossOf(median, better));
   const compared = entries.flatMap((_, i) => (complete[i] ? [i] : []));
-  const separation = compared.length >= 2 ? separate(compared.map((i) => losses[i]), compared.map((i) => medianLosses[i]), alpha) : null;
+  const separation = compared.length >= 2 ? separate(compared.map((i) => losses[i]), alpha) : null;
   const rest = entries.flatMap((_, i) => (complete[i] ? [] : [i])).sort((i, j) => Number(medianLosses[i] > medianLosses[j]) - Number(medianLosses[i] < medianLosses[j]) || i - j);
   const order = [...(separation ? separation.order.map((at) => compared[at]) : compared), ...rest];
 
@@ -116,19 +101,7 @@ export function rankAtNoise(input: RankingInput): Ranking {
   });
   const paired = pairedLosses(entries, level, better);
   return {
-    noise, levelIndex: level, level: ladder[level], interpolated: place.interpolated, rows, separation, compared, test: testOf(separation, phantoms),
+    noise, levelIndex: level, level: ladder[level], interpolated: place.interpolated, rows, separation, compared, test: separationTest(separation, phantoms),
     wins: order.map((i) => order.map((j) => (i === j ? null : winShare(paired[i], paired[j])))),
-  };
-}
-
-function testOf(separation: Separation | null, phantoms: number): Ranking['test'] {
-  const nothing = { chiSquare: null, statistic: null, pValue: null, exact: false, criticalDifference: null, separable: false } as const;
-  if (!separation) return { ...nothing, name: 'No test', phantoms, fewest: null, enough: false, words: 'Fewer than two solvers have finished on every phantom: there is nothing to compare.' };
-  const { friedman, fewest, enough, criticalDifference, separable } = separation;
-  const words = separationWords(separation);
-  if (!friedman || !enough) return { ...nothing, name: 'No test', phantoms, fewest, enough, words };
-  return {
-    name: `Friedman with Nemenyi distance over ${phantoms} phantoms`, phantoms, fewest, enough, chiSquare: friedman.chiSquare, statistic: friedman.f === Infinity ? null : friedman.f,
-    pValue: friedman.p, exact: friedman.pExact !== null, criticalDifference, separable, words,
   };
 }

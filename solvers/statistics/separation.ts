@@ -1,9 +1,10 @@
+import { medianLoss } from './blocks';
 import { fewestBlocks, friedman, type FriedmanResult } from './friedman';
 import { averageRanks } from './ranks';
 
 /** What Friedman's and Nemenyi's tests say about some methods over blocks. Everything is in the order that it names. */
 export interface Separation {
-  /** Places of the methods in the input, best first: by mean rank, equal ones by `tieBreak`, then as given. */
+  /** Places of the methods in the input, best first: by mean rank, equal ones by the median of their losses, then as given. */
   readonly order: readonly number[];
   /** Mean rank by place in the input, 1 the best. */
   readonly meanRanks: Float64Array;
@@ -25,10 +26,9 @@ export interface Separation {
  * Ranks, tie groups and their order from one test. A group holds the methods within the critical difference of its best; without a
  * significant Friedman test there is one group.
  * @param losses one array a method, over the same blocks; small is good, Infinity is worst
- * @param tieBreak one figure a method, small is good
  * @throws RangeError below two methods or one block, or for NaN
  */
-export function separate(losses: readonly Float64Array[], tieBreak: ArrayLike<number>, alpha = 0.05): Separation {
+export function separate(losses: readonly Float64Array[], alpha = 0.05): Separation {
   const k = losses.length;
   const blocks = losses[0]?.length ?? 0;
   if (k < 2 || blocks < 1) throw new RangeError(`A comparison needs two methods and a block, not ${k} and ${blocks}.`);
@@ -36,7 +36,8 @@ export function separate(losses: readonly Float64Array[], tieBreak: ArrayLike<nu
   if (rows.some((row) => row.some(Number.isNaN))) throw new RangeError('A loss is not a number.');
   const result = blocks >= 2 ? friedman(rows, alpha) : null;
   const meanRanks = result?.meanRanks ?? averageRanks(rows[0]);
-  const order = losses.map((_, i) => i).sort((i, j) => compare(meanRanks[i], meanRanks[j]) || compare(tieBreak[i], tieBreak[j]) || i - j);
+  const medians = losses.map(medianLoss);
+  const order = losses.map((_, i) => i).sort((i, j) => compare(meanRanks[i], meanRanks[j]) || compare(medians[i], medians[j]) || i - j);
   const fewest = fewestBlocks(k, alpha);
   const enough = blocks >= fewest;
   const separable = enough && result !== null && result.p < alpha;
@@ -77,4 +78,35 @@ export function separationWords(separation: Separation, noun = 'phantom'): strin
   if (!separable) return `${capital(count(k, 'solver'))} cannot be separated over ${over}.`;
   const separated = Math.max(...groups!) + 1;
   return separated === 1 ? `The solvers differ over ${over}, but none is clear of the first.` : `${capital(count(separated, 'group'))} can be separated over ${over}.`;
+}
+
+/** A separation as it is told. */
+export interface SeparationTest {
+  readonly name: string;
+  readonly blocks: number;
+  /** Blocks that the tests need; null where there is nothing to compare. */
+  readonly fewest: number | null;
+  readonly enough: boolean;
+  readonly chiSquare: number | null;
+  /** Iman and Davenport's F; null where it is infinite or there is no test. */
+  readonly statistic: number | null;
+  readonly pValue: number | null;
+  /** p is counted, not approximated. */
+  readonly exact: boolean;
+  readonly criticalDifference: number | null;
+  readonly separable: boolean;
+  readonly words: string;
+}
+
+/** @param separation null where fewer than two methods are complete */
+export function separationTest(separation: Separation | null, blocks: number, noun = 'phantom'): SeparationTest {
+  const nothing = { chiSquare: null, statistic: null, pValue: null, exact: false, criticalDifference: null, separable: false } as const;
+  if (!separation) return { ...nothing, name: 'No test', blocks, fewest: null, enough: false, words: 'Fewer than two solvers have finished on every phantom: there is nothing to compare.' };
+  const { friedman: result, fewest, enough, criticalDifference, separable } = separation;
+  const words = separationWords(separation, noun);
+  if (!result || !enough) return { ...nothing, name: 'No test', blocks, fewest, enough, words };
+  return {
+    name: `Friedman with Nemenyi distance over ${blocks} ${noun}s`, blocks, fewest, enough, chiSquare: result.chiSquare, statistic: result.f === Infinity ? null : result.f,
+    pValue: result.p, exact: result.pExact !== null, criticalDifference, separable, words,
+  };
 }

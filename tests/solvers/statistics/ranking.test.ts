@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { defaultLadder } from '../../../shared/domain/ladder';
 import { medianLoss, phantomLosses, type RankedEntry } from '../../../solvers/statistics/blocks';
 import { placeOnLadder } from '../../../solvers/statistics/ladder-place';
+import { compareMethods, profileMethods } from '../../../solvers/statistics/comparison';
 import { comparePairs } from '../../../solvers/statistics/pairs';
 import { rankAtNoise } from '../../../solvers/statistics/ranking';
 import { scattered } from '../../support/scattered-draws';
@@ -23,7 +24,7 @@ describe('ranking', () => {
     const meanRanks = ranking.rows.map((row) => row.meanRank!);
     expect([...meanRanks].sort((a, b) => a - b)).toEqual(meanRanks);
     // 24 draws of each of eight phantoms are eight blocks.
-    expect(ranking.test).toMatchObject({ separable: true, phantoms: 8, fewest: 3, enough: true, exact: true });
+    expect(ranking.test).toMatchObject({ separable: true, blocks: 8, fewest: 3, enough: true, exact: true });
     expect(ranking.wins[0]![2]).toBe(1);
     expect(ranking.wins[2]![0]).toBe(0);
     expect(ranking.wins[1]![0]! + ranking.wins[0]![1]!).toBeCloseTo(1, 14);
@@ -32,7 +33,7 @@ describe('ranking', () => {
   it('many draws of few phantoms do not make a winner', () => {
     const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [bad, good].map((item) => first(item, 5)) });
     expect(ranking.rows.map((row) => [row.id, row.rank, row.meanRank])).toEqual([['good', null, 1], ['bad', null, 2]]);
-    expect(ranking.test).toMatchObject({ enough: false, phantoms: 5, fewest: 6, pValue: null, criticalDifference: null });
+    expect(ranking.test).toMatchObject({ enough: false, blocks: 5, fewest: 6, pValue: null, criticalDifference: null });
     expect(ranking.test.words).toBe('Not enough phantoms to separate: five phantoms, and for two solvers the tests need at least six to reach 5 %. No winner is named.');
     const six = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries: [bad, good].map((item) => first(item, 6)) });
     expect(six.test).toMatchObject({ enough: true, separable: true, pValue: 1 / 32 });
@@ -79,5 +80,40 @@ describe('ranking', () => {
     const pairs = comparePairs([good, twin, bad].map((item) => ({ id: item.id, losses: losses(item) })));
     expect(pairs.map((pair) => pair.separable)).toEqual([false, true, true]);
     expect(pairs[1]!.medianRatio).toBeLessThan(0.5);
+  });
+});
+
+describe('comparison', () => {
+  const at = defaultLadder.indexOf(0.01);
+  const entries = [bad, twin, good];
+  it('has over phantoms the order, the groups and the test of the ranking', () => {
+    const ranking = rankAtNoise({ ladder: defaultLadder, noise: 0.01, better: 'lower', entries });
+    const found = compareMethods({ better: 'lower', entries, levels: [at], seed: 'bench' });
+    expect(found.methods).toEqual(ranking.rows.map((row) => ({ id: row.id, meanRank: row.meanRank, tieGroup: row.tieGroup })));
+    expect(found.test).toEqual(ranking.test);
+    expect(found.pairs.map((pair) => [pair.first, pair.second, pair.pairs])).toEqual([[ranking.rows[0]!.id, ranking.rows[1]!.id, 8], [ranking.rows[0]!.id, 'bad', 8], [ranking.rows[1]!.id, 'bad', 8]]);
+    // Three comparisons need seven phantoms; there are eight, of one sign: p = 2 / 256, times three.
+    expect(found.fewestPairs).toBe(7);
+    expect(found.pairs[1]).toMatchObject({ pHolm: 6 / 256, separable: true, ratio: { separable: true, firstBetter: 1 } });
+    // Medians 0.11 and 0.31 but for the scatter.
+    expect(found.pairs[1]!.ratio.ratio).toBeCloseTo(0.11 / 0.31, 1);
+  });
+  it('within one phantom its draws are the blocks, and the words say so', () => {
+    const found = compareMethods({ better: 'lower', entries: entries.map((item) => first(item, 1)), levels: [at], phantom: 0, seed: 'bench' });
+    expect(found.test).toMatchObject({ blocks: 24, enough: true, separable: true });
+    expect(found.test.words).toMatch(/over 24 draws/);
+    expect(found.pairs[2]!.pairs).toBe(24);
+    expect(() => compareMethods({ better: 'lower', entries, levels: [at], phantom: 8, seed: 'bench' })).toThrow(RangeError);
+  });
+  it('leaves out what is not complete, and compares nothing with one', () => {
+    const missing = { ...good, values: [null, ...good.values.slice(1)] };
+    expect(compareMethods({ better: 'lower', entries: [missing, bad, twin], levels: [at], seed: 's' }).methods.map((own) => own.id)).toEqual(['twin', 'bad']);
+    expect(compareMethods({ better: 'lower', entries: [missing, bad], levels: [at], seed: 's' })).toMatchObject({ methods: [{ id: 'bad' }], pairs: [], test: { name: 'No test' } });
+  });
+  it('profiles take every phantom and level, and none for scores', () => {
+    const found = profileMethods({ better: 'lower', entries, levels: [0, at] })!;
+    expect(found.problems).toBe(16);
+    expect(found.items.find((item) => item.id === 'bad')!.ratios.every((ratio) => ratio > 1)).toBe(true);
+    expect(profileMethods({ better: 'higher', entries, levels: [0] })).toBeNull();
   });
 });
