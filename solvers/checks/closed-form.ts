@@ -1,9 +1,10 @@
+import { isDisc } from '../problems/electrical-impedance/body-curve';
 import { concentricEigenvalue, neumannToDirichlet, type Harmonic } from '../problems/electrical-impedance/continuum';
 import { electrodeFrame } from '../problems/electrical-impedance/electrodes';
 import { contactNumber, sampleConductivity } from '../problems/electrical-impedance/simulation';
 import { simulationDetail, simulationMesh } from '../problems/electrical-impedance/simulation-mesh';
 import { createTruthField } from '../truth/truth-field';
-import { judge, type Check } from './check';
+import { judge, notApplicable, type Check } from './check';
 import type { ImpedanceCheckContext } from './phantom-check';
 
 const orders = [1, 2, 3, 5, 8];
@@ -25,6 +26,7 @@ export const closedFormCheck: Check<ImpedanceCheckContext> = {
   source: { short: 'Isaacson 1986', full: 'D. Isaacson, Distinguishability of conductivities by electric current computed tomography, IEEE Trans. Med. Imaging MI-5 (1986) 91-95.' },
   evaluate({ definition }) {
     const { geometry, truth } = definition;
+    if (!isDisc(geometry.body)) return notApplicable(this, 'The closed form holds for a disc only.');
     const radius = geometry.body.radius;
     const own = truth.kind === 'shapes' && truth.shapes.length === 1 ? truth.shapes[0] : null;
     const concentric = own?.kind === 'ellipse' && own.x === 0 && own.y === 0 && own.semiAxisA === own.semiAxisB && own.semiAxisA < 0.95 * radius ? own : null;

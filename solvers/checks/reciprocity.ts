@@ -1,5 +1,5 @@
-import { reciprocityGap } from '../problems/electrical-impedance/reciprocity';
-import { judge, type Check } from './check';
+import { hasReciprocalPairs, reciprocityGap } from '../problems/electrical-impedance/reciprocity';
+import { judge, notApplicable, type Check } from './check';
 import type { ImpedanceCheckContext } from './phantom-check';
 
 export const reciprocityCheck: Check<ImpedanceCheckContext> = {
@@ -16,6 +16,7 @@ export const reciprocityCheck: Check<ImpedanceCheckContext> = {
     fromMemory: true,
   },
   evaluate({ definition, frame, reference }) {
+    if (!hasReciprocalPairs(definition.geometry)) return notApplicable(this, 'These patterns, measured without the driven electrodes, have no two voltages that must be equal.');
     const gap = Math.max(reciprocityGap(definition.geometry, frame), reciprocityGap(definition.geometry, reference));
     return judge(this, gap, 'Largest difference of two voltages that must be equal when drive and measurement change places, over the largest of them.');
   },

@@ -1,6 +1,5 @@
 import { adjointCheck } from '../checks/adjoint';
 import { taylorCheck } from '../checks/taylor';
-import { cos, sin } from '../core/math';
 import { matmulTransposed, transpose } from '../linear-algebra/matrix-product';
 import { electrodeIntegrals } from '../problems/electrical-impedance/electrode-integrals';
 import { electrodeModel, solveElectrodes } from '../problems/electrical-impedance/electrode-model';
@@ -9,7 +8,7 @@ import { denseMatrix } from '../core/matrix-operator';
 import { createEitInversion } from '../problems/electrical-impedance/inversion-problem';
 import { frameJacobian } from '../problems/electrical-impedance/jacobian';
 import { elementsByCell, pairSensitivities, unitStiffness } from '../problems/electrical-impedance/sensitivity';
-import { sampleConductivity } from '../problems/electrical-impedance/simulation';
+import { contactNumber, contactNumbers, sampleConductivity } from '../problems/electrical-impedance/simulation';
 import { simulationDetail, simulationMesh } from '../problems/electrical-impedance/simulation-mesh';
 import { digestOf, largestGap, type VerificationCheck } from './check';
 import { eccentricDisc, unitDisc } from './disc';
@@ -74,15 +73,15 @@ const sensitivity: VerificationCheck = {
     const L = geometry.electrodes;
     const frame = electrodeFrame(geometry);
     const truth = eccentricDisc();
-    const mesh = simulationMesh(truth, frame, simulationDetail(geometry.contactImpedance)).quadratic;
-    const model = electrodeModel(mesh, electrodeIntegrals(mesh, frame.centres.map(cos), frame.centres.map(sin), cos(frame.halfWidth)));
+    const mesh = simulationMesh(truth, frame, simulationDetail(contactNumber(geometry, 1))).quadratic;
+    const model = electrodeModel(mesh, electrodeIntegrals(mesh, frame));
     const currents = new Float64Array(L * L);
     for (let j = 0; j < L; j++) {
       currents[j * L + j] = 1;
       currents[j * L + ((j + 1) % L)] = -1;
     }
     const sigma = sampleConductivity(truth, mesh, frame);
-    const { voltages, unitPotentials } = solveElectrodes(model, sigma, geometry.contactImpedance, currents);
+    const { voltages, unitPotentials } = solveElectrodes(model, sigma, contactNumbers(geometry, 1), currents);
     const fields = matmulTransposed(transpose(unitPotentials, L, model.pattern.n), voltages, model.pattern.n, L, L);
     // Two cells: outside and inside the disc.
     const cellOf = Int32Array.from({ length: mesh.elements.length / 6 }, (_, t) => (sigma[6 * t] > 3 ? 1 : 0));

@@ -1,11 +1,10 @@
 import type { EitGeometry } from '../../shared/domain/geometry/electrical-impedance';
-import { cos, sin } from '../../solvers/core/math';
 import { analyse, factorise } from '../../solvers/linear-algebra/sparse-cholesky';
 import { meshPattern } from '../../solvers/problems/electrical-impedance/assembly';
 import { electrodeIntegrals } from '../../solvers/problems/electrical-impedance/electrode-integrals';
 import { systemValues, type ElectrodeModel } from '../../solvers/problems/electrical-impedance/electrode-model';
 import { electrodeFrame } from '../../solvers/problems/electrical-impedance/electrodes';
-import { contactNumber, sampleConductivity, simulateElectricalImpedance } from '../../solvers/problems/electrical-impedance/simulation';
+import { contactNumber, contactNumbers, sampleConductivity, simulateElectricalImpedance } from '../../solvers/problems/electrical-impedance/simulation';
 import { simulationDetail, simulationMesh } from '../../solvers/problems/electrical-impedance/simulation-mesh';
 import { createTruthField, type TruthField } from '../../solvers/truth/truth-field';
 
@@ -56,11 +55,11 @@ export function timeSimulation(repeats = 5, geometry = benchGeometry(), truth = 
     const contact = contactNumber(geometry, truth.background);
     const mesh = timed('mesh', () => simulationMesh(truth, frame, simulationDetail(contact)).quadratic);
     const sigma = timed('conductivity', () => sampleConductivity(truth, mesh, frame));
-    const electrodes = electrodeIntegrals(mesh, frame.centres.map(cos), frame.centres.map(sin), cos(frame.halfWidth));
+    const electrodes = electrodeIntegrals(mesh, frame);
     const pattern = timed('assembly', () => meshPattern(mesh));
     const analysis = timed('analysis', () => analyse(pattern));
     const model: ElectrodeModel = { mesh, pattern, analysis, electrodes };
-    const values = timed('assembly', () => systemValues(model, sigma, contact / truth.background));
+    const values = timed('assembly', () => systemValues(model, sigma, contactNumbers(geometry, truth.background).map((value) => value / truth.background)));
     const factor = timed('factorisation', () => factorise(analysis, values));
     const columns = new Float64Array(pattern.n * electrodes.length);
     electrodes.forEach((electrode, l) => electrode.nodes.forEach((node, i) => (columns[l * pattern.n + node] = electrode.moments[i])));

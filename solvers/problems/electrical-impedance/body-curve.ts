@@ -25,6 +25,8 @@ export interface BodyCurve {
   /** r(t), m. */
   radiusAt(t: number): number;
   point(t: number): CurvePoint;
+  /** The point on the ray through (x, y). */
+  pointTowards(x: number, y: number): CurvePoint;
   /** Length from t = 0 to t, m; goes on over turns in both directions. */
   arcLength(t: number): number;
   /** Inverse of `arcLength`, rad. */
@@ -48,16 +50,18 @@ export function bodyCurve(geometry: { readonly body: ImpedanceBody }): BodyCurve
 }
 
 function circle(radius: number): BodyCurve {
+  const pointOf = (c: number, s: number): CurvePoint => {
+    const x = radius * c;
+    const y = radius * s;
+    return { x, y, dx: -y, dy: x, ddx: -x, ddy: -y };
+  };
   return {
     disc: true,
     radius,
     length: twoPi * radius,
     radiusAt: () => radius,
-    point(t) {
-      const x = radius * cos(t);
-      const y = radius * sin(t);
-      return { x, y, dx: -y, dy: x, ddx: -x, ddy: -y };
-    },
+    point: (t) => pointOf(cos(t), sin(t)),
+    pointTowards: (x, y) => pointOf(...direction(x, y)),
     arcLength: (t) => radius * t,
     parameterAt: (s) => s / radius,
     inside: (x, y) => (x / radius) * (x / radius) + (y / radius) * (y / radius) < 1,
@@ -120,6 +124,18 @@ function star(radius: number, cosine: readonly number[], sine: readonly number[]
     const i = Math.min(panels - 1, Math.floor(angle / width));
     return turns * length + table[i] + between(i * width, angle);
   };
+  const pointOf = (c: number, s: number): CurvePoint => {
+    evaluate(c, s);
+    const [r0, r1, r2] = r;
+    return {
+      x: radius * r0 * c,
+      y: radius * r0 * s,
+      dx: radius * (r1 * c - r0 * s),
+      dy: radius * (r1 * s + r0 * c),
+      ddx: radius * (r2 * c - 2 * r1 * s - r0 * c),
+      ddy: radius * (r2 * s + 2 * r1 * c - r0 * s),
+    };
+  };
   return {
     disc: false,
     radius,
@@ -128,20 +144,8 @@ function star(radius: number, cosine: readonly number[], sine: readonly number[]
       evaluate(cos(t), sin(t));
       return radius * r[0];
     },
-    point(t) {
-      const c = cos(t);
-      const s = sin(t);
-      evaluate(c, s);
-      const [r0, r1, r2] = r;
-      return {
-        x: radius * r0 * c,
-        y: radius * r0 * s,
-        dx: radius * (r1 * c - r0 * s),
-        dy: radius * (r1 * s + r0 * c),
-        ddx: radius * (r2 * c - 2 * r1 * s - r0 * c),
-        ddy: radius * (r2 * s + 2 * r1 * c - r0 * s),
-      };
-    },
+    point: (t) => pointOf(cos(t), sin(t)),
+    pointTowards: (x, y) => pointOf(...direction(x, y)),
     arcLength,
     parameterAt(value) {
       const [turns, s] = reduce(value, length);
@@ -170,10 +174,16 @@ function star(radius: number, cosine: readonly number[], sine: readonly number[]
     },
     depth(x, y) {
       const rho = Math.sqrt(x * x + y * y);
-      evaluate(rho > 0 ? x / rho : 1, rho > 0 ? y / rho : 0);
+      evaluate(...direction(x, y));
       return ((radius * r[0] - rho) * r[0]) / Math.sqrt(r[0] * r[0] + r[1] * r[1]);
     },
   };
+}
+
+/** Cosine and sine of the polar angle of a point; of the origin, of angle 0. */
+function direction(x: number, y: number): [number, number] {
+  const rho = Math.sqrt(x * x + y * y);
+  return rho > 0 ? [x / rho, y / rho] : [1, 0];
 }
 
 /** Polar angle of a point, in [0, 2 pi). */

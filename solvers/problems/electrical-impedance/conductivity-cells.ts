@@ -4,7 +4,7 @@ import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
 import { degreeFourShapes } from './elements';
 import type { ElectrodeFrame } from './electrodes';
 
-/** Cells of constant conductivity: the triangles of a coarse mesh, those at the rim bounded by the circle. Metres. */
+/** Cells of constant conductivity: the triangles of a coarse mesh, those at the rim bounded by the body's boundary. Metres. */
 export interface ConductivityCells {
   readonly count: number;
   /** Area of each cell, m^2. */
@@ -17,7 +17,7 @@ export interface ConductivityCells {
 }
 
 /**
- * @param coarse the triangles of the cells, unit disc
+ * @param coarse the triangles of the cells, in radii
  * @param fine quadratic elements that fill the cells
  * @param cellOf cell of each element
  */
@@ -177,7 +177,7 @@ export function pixelShares(coarse: TriangleMesh, grid: EvaluationGrid, frame: E
     for (let k = 0; k < samples * samples; k++) {
       const row = Math.floor(k / samples);
       const [u, v] = frame.toFrame(x0 + (((k % samples) + 0.5) / samples) * dx, y0 + ((row + 0.5) / samples) * dy);
-      if (u * u + v * v >= 1) continue;
+      if (!frame.boundary.inside(u, v)) continue;
       const cell = locate(u, v, guess);
       if (cell < 0) continue;
       guess = cell;
@@ -200,8 +200,9 @@ export function pixelShares(coarse: TriangleMesh, grid: EvaluationGrid, frame: E
 }
 
 /**
- * Finds the cell of a point of the unit disc by walking from a guess across the edges that the point lies beyond. Past a
- * boundary edge the point lies between chord and circle and belongs to that cell.
+ * Finds the cell of a point of the body by walking from a guess across the edges that the point lies beyond. Past a boundary edge the
+ * point lies between chord and boundary and belongs to that cell, unless a bay of the boundary stopped the walk: then all cells are
+ * looked at, and the one that the point lies in, or least outside of, is taken.
  */
 function cellLocator(coarse: TriangleMesh): (x: number, y: number, guess: number) => number {
   const { triangles, vertices } = coarse;
@@ -220,6 +221,33 @@ function cellLocator(coarse: TriangleMesh): (x: number, y: number, guess: number
       across[other] = (k - (k % 3)) / 3;
     }
   }
+  /** How far the point lies outside cell t, over the square root of twice its area; 0 or less inside. */
+  const outside = (t: number, x: number, y: number): number => {
+    let most = -Infinity;
+    let area2 = 0;
+    for (let k = 0; k < 3; k++) {
+      const a = triangles[3 * t + k];
+      const b = triangles[3 * t + (k === 2 ? 0 : k + 1)];
+      const ux = vertices[2 * b] - vertices[2 * a];
+      const uy = vertices[2 * b + 1] - vertices[2 * a + 1];
+      const side = ux * (y - vertices[2 * a + 1]) - uy * (x - vertices[2 * a]);
+      area2 += side;
+      most = Math.max(most, -side / Math.sqrt(ux * ux + uy * uy));
+    }
+    return most / Math.sqrt(area2);
+  };
+  const search = (x: number, y: number): number => {
+    let best = 0;
+    let least = Infinity;
+    for (let t = 0; t < count && least > 0; t++) {
+      const d = outside(t, x, y);
+      if (d < least) {
+        least = d;
+        best = t;
+      }
+    }
+    return best;
+  };
   return (x, y, guess) => {
     let t = guess;
     // Straight walks in a Delaunay mesh end; the bound only guards against rounding on degenerate edges.
@@ -235,9 +263,9 @@ function cellLocator(coarse: TriangleMesh): (x: number, y: number, guess: number
           next = across[3 * t + k];
         }
       }
-      if (next < 0) return t;
+      if (next < 0) return coarse.boundary.convex || outside(t, x, y) <= 0 ? t : search(x, y);
       t = next;
     }
-    return -1;
+    return coarse.boundary.convex ? -1 : search(x, y);
   };
 }

@@ -1,7 +1,8 @@
 import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
+import { electrodeAt, type ElectrodeFrame } from './electrodes';
 import { edgeShapes, edgeSpeed, gaussPoints, gaussWeights } from './elements';
 
-/** Boundary integrals of one electrode on the unit disc. */
+/** Boundary integrals of one electrode, lengths in radii. */
 export interface ElectrodeIntegrals {
   /** Nodes under the electrode and the integrals of their shape functions. */
   readonly nodes: Int32Array;
@@ -13,14 +14,16 @@ export interface ElectrodeIntegrals {
   readonly masses: Float64Array;
 }
 
-/**
- * @param centres angles of the electrode centres in the frame of the mesh, rad
- * @param halfWidth half the angular width, rad; the ends must be boundary nodes
- */
-export function electrodeIntegrals(mesh: QuadraticMesh, centreX: ArrayLike<number>, centreY: ArrayLike<number>, cosHalfWidth: number): ElectrodeIntegrals[] {
+/** @param mesh in the frame; the ends of the electrodes must be boundary nodes */
+export function electrodeIntegrals(mesh: QuadraticMesh, frame: ElectrodeFrame): ElectrodeIntegrals[] {
   const { nodes, boundaryEdges } = mesh;
+  const owner = new Int32Array(boundaryEdges.length / 3);
+  for (let e = 0; e < owner.length; e++) {
+    const m = boundaryEdges[3 * e + 2];
+    owner[e] = electrodeAt(frame, frame.boundary.arcLengthOf(nodes[2 * m], nodes[2 * m + 1]));
+  }
   const result: ElectrodeIntegrals[] = [];
-  for (let l = 0; l < centreX.length; l++) {
+  for (let l = 0; l < frame.count; l++) {
     const edges: number[] = [];
     const masses: number[] = [];
     const moments = new Map<number, number>();
@@ -28,7 +31,7 @@ export function electrodeIntegrals(mesh: QuadraticMesh, centreX: ArrayLike<numbe
       const a = boundaryEdges[e];
       const b = boundaryEdges[e + 1];
       const m = boundaryEdges[e + 2];
-      if (nodes[2 * m] * centreX[l] + nodes[2 * m + 1] * centreY[l] <= cosHalfWidth) continue;
+      if (owner[e / 3] !== l) continue;
       edges.push(a, b, m);
       const mass = new Float64Array(9);
       const moment = [0, 0, 0];

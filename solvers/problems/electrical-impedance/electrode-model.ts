@@ -5,9 +5,9 @@ import { assembleStiffness, entryPosition, meshPattern, type MeshPattern } from 
 import type { ElectrodeIntegrals } from './electrode-integrals';
 
 /**
- * Complete electrode model (Somersalo, Cheney, Isaacson 1992, SIAM J. Appl. Math. 52, 1023-1040) on quadratic elements of the
- * unit disc. With zeta = z / R the potential solves
- *   (K + sum_l M_l / zeta) u = sum_l m_l U_l / zeta,   |e_l| U_l / zeta - m_l . u / zeta = I_l,   sum_l U_l = 0,
+ * Complete electrode model (Somersalo, Cheney, Isaacson 1992, SIAM J. Appl. Math. 52, 1023-1040) on quadratic elements of a
+ * body of radius 1. With zeta_l = z_l / R the potential solves
+ *   (K + sum_l M_l / zeta_l) u = sum_l m_l U_l / zeta_l,   |e_l| U_l / zeta_l - m_l . u / zeta_l = I_l,   sum_l U_l = 0,
  * K the stiffness, M_l and m_l the mass matrix and moments of electrode l. The potential is eliminated: T U = I with the
  * L x L Schur complement T = D - B^T S^-1 B, whose null space are the constants.
  */
@@ -23,17 +23,18 @@ export function electrodeModel(mesh: QuadraticMesh, electrodes: readonly Electro
   return { mesh, pattern, analysis: analyse(pattern), electrodes };
 }
 
-/** Values of S = K + sum_l M_l / zeta in the order of the pattern. */
-export function systemValues(model: ElectrodeModel, sigma: number | Float64Array, zeta: number): Float64Array {
+/** Values of S = K + sum_l M_l / zeta_l in the order of the pattern. */
+export function systemValues(model: ElectrodeModel, sigma: number | Float64Array, zeta: Float64Array): Float64Array {
   const { pattern, electrodes, mesh } = model;
   const values = new Float64Array(pattern.rows.length);
   assembleStiffness(mesh, pattern, sigma, values);
-  for (const electrode of electrodes) {
+  for (let l = 0; l < electrodes.length; l++) {
+    const electrode = electrodes[l];
     for (let e = 0; e < electrode.edges.length / 3; e++) {
       for (let i = 0; i < 3; i++) {
         for (let j = 0; j <= i; j++) {
           const position = entryPosition(pattern, electrode.edges[3 * e + i], electrode.edges[3 * e + j]);
-          values[position] += electrode.masses[9 * e + 3 * i + j] / zeta;
+          values[position] += electrode.masses[9 * e + 3 * i + j] / zeta[l];
         }
       }
     }
@@ -44,15 +45,16 @@ export function systemValues(model: ElectrodeModel, sigma: number | Float64Array
 export interface ElectrodeSolution {
   /** Electrode voltages, patterns x L, row-major; every row sums to zero. */
   readonly voltages: Float64Array;
-  /** S^-1 m_l / zeta, node potentials for unit voltage on electrode l, L columns of n. */
+  /** S^-1 m_l / zeta_l, node potentials for unit voltage on electrode l, L columns of n. */
   readonly unitPotentials: Float64Array;
 }
 
 /**
  * Electrode voltages for the current patterns `currents` (rows of length L, each summing to zero).
  * Cost: one sparse factorisation and L solves, whatever the number of patterns.
+ * @param zeta z_l / R, one an electrode
  */
-export function solveElectrodes(model: ElectrodeModel, sigma: number | Float64Array, zeta: number, currents: Float64Array): ElectrodeSolution {
+export function solveElectrodes(model: ElectrodeModel, sigma: number | Float64Array, zeta: Float64Array, currents: Float64Array): ElectrodeSolution {
   const { electrodes, analysis, pattern } = model;
   const n = pattern.n;
   const L = electrodes.length;
@@ -60,9 +62,10 @@ export function solveElectrodes(model: ElectrodeModel, sigma: number | Float64Ar
   const columns = new Float64Array(n * L);
   for (let l = 0; l < L; l++) {
     const { nodes, moments } = electrodes[l];
-    for (let i = 0; i < nodes.length; i++) columns[l * n + nodes[i]] = moments[i] / zeta;
+    for (let i = 0; i < nodes.length; i++) columns[l * n + nodes[i]] = moments[i] / zeta[l];
   }
   factor.solveMany(columns, L);
+  factor.release();
   const schur = new Float64Array(L * L);
   let trace = 0;
   for (let k = 0; k < L; k++) {
@@ -72,7 +75,7 @@ export function solveElectrodes(model: ElectrodeModel, sigma: number | Float64Ar
       // Summed as moments times (1 - u) on the diagonal: the differences stay accurate where zeta is small and u near 1.
       if (k === l) for (let i = 0; i < nodes.length; i++) sum += moments[i] * (1 - columns[l * n + nodes[i]]);
       else for (let i = 0; i < nodes.length; i++) sum -= moments[i] * columns[l * n + nodes[i]];
-      schur[k * L + l] = sum / zeta;
+      schur[k * L + l] = sum / zeta[k];
     }
     trace += length > 0 ? schur[k * L + k] : 0;
   }

@@ -1,7 +1,6 @@
 import { bisectUntil } from '../../mesh/bisection';
 import { meshBody, type TriangleMesh } from '../../mesh/body-mesh';
 import { quadraticMesh, type QuadraticMesh } from '../../mesh/quadratic-mesh';
-import { cos, sin } from '../../core/math';
 import type { ElectrodeFrame } from './electrodes';
 
 /** Sizes of the inversion's meshes, in radii. */
@@ -34,9 +33,10 @@ export function inversionDetail(contact: number, electrodes: number): InversionD
  * triangles, bisected towards the electrode ends, are the quadratic elements of the potential.
  */
 export function inversionMesh(frame: ElectrodeFrame, detail: InversionDetail): InversionMesh {
-  const cells = meshBody({ ends: frame.ends, grading: 0.3, hMin: detail.cellMin, hMax: detail.cellMax, seed: 11 });
-  const ex = frame.ends.map(cos);
-  const ey = frame.ends.map(sin);
+  const cells = meshBody({ boundary: frame.boundary, ends: frame.ends, grading: 0.3, hMin: detail.cellMin, hMax: detail.cellMax, seed: 11 });
+  const ends = frame.ends.map((s) => frame.boundary.pointAt(s));
+  const ex = ends.map(([x]) => x);
+  const ey = ends.map(([, y]) => y);
   const { mesh, parent } = bisectUntil(cells, (x, y) => {
     let nearest = Infinity;
     for (let i = 0; i < ex.length; i++) {

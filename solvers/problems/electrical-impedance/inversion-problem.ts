@@ -1,12 +1,11 @@
 import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
 import type { DataKind } from '../../../shared/domain/phantom-definition';
-import { createEvaluationGrid } from '../../core/grid';
-import { cos, sin } from '../../core/math';
 import { matrixOperator } from '../../core/matrix-operator';
 import { applySparse } from '../../core/sparse';
 import { requireVector } from '../../core/vector';
 import { matmul, matmulTransposed, transpose } from '../../linear-algebra/matrix-product';
 import type { InversionProblem } from '../problem-family';
+import { bodyGrid } from './body-grid';
 import { projectOnCells } from './cell-projection';
 import { cellJumps, cellPenalty, conductivityCells, pixelShares } from './conductivity-cells';
 import { electrodeIntegrals } from './electrode-integrals';
@@ -17,7 +16,7 @@ import { inversionDetail, inversionMesh, type InversionDetail } from './inversio
 import { frameJacobian, pairWeights } from './jacobian';
 import { frameSize, measure, patternCount } from './patterns';
 import { elementsByCell, pairSensitivities, unitStiffness } from './sensitivity';
-import { smallestContact } from './simulation';
+import { contactNumber, contactNumbers } from './simulation';
 
 /** The inversion model of electrical impedance, with what the floor and the checks need beyond the common contract. */
 export interface EitInversion extends InversionProblem {
@@ -50,14 +49,14 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
   const L = geometry.electrodes;
   const radius = geometry.body.radius;
   const frame = electrodeFrame(geometry);
-  const contact = Math.max(smallestContact, (geometry.contactImpedance * background) / radius);
-  const zeta = contact / background;
+  const contact = contactNumber(geometry, background);
+  const zeta = contactNumbers(geometry, background).map((value) => value / background);
   const meshes = inversionMesh(frame, detail ?? inversionDetail(contact, geometry.electrodes));
   const { elements: mesh, cellOf } = meshes;
   const cells = conductivityCells(meshes.cells, mesh, cellOf, radius);
-  const grid = createEvaluationGrid(radius);
+  const grid = bodyGrid(geometry);
   const shares = pixelShares(meshes.cells, grid, frame);
-  const electrodes = electrodeIntegrals(mesh, frame.centres.map(cos), frame.centres.map(sin), cos(frame.halfWidth));
+  const electrodes = electrodeIntegrals(mesh, frame);
   const model = electrodeModel(mesh, electrodes);
   const dataSize = frameSize(geometry);
   const unknowns = cells.count;

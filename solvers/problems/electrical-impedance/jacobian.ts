@@ -51,9 +51,17 @@ export function frameJacobian(geometry: EitGeometry, pairs: Float64Array, cells:
     return values;
   }
   const patterns = patternCount(geometry);
-  const perPattern = dataSize / patterns;
   // T[pattern, cell, k] = sum_j weights[pattern, j] pairs[cell, k, j]: the pairs are symmetric.
   const driven = matmulTransposed(pairWeights(geometry), pairs, patterns, L, cells * L);
+  if (geometry.measurement === 'adjacent-undriven') {
+    // A channel is one pair of electrodes, another set of them for each pattern.
+    for (let i = 0; i < dataSize; i++) {
+      const { pattern, plus } = list[i];
+      for (let c = 0; c < cells; c++) values[i * cells + c] = -driven[(pattern * cells + c) * L + plus];
+    }
+    return values;
+  }
+  const perPattern = dataSize / patterns;
   const measurement = measurementWeights(geometry, perPattern);
   for (let i = 0; i < measurement.length; i++) measurement[i] = -measurement[i];
   for (let p = 0; p < patterns; p++)

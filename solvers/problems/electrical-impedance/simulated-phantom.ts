@@ -1,9 +1,11 @@
 import type { DefinitionOf } from '../../../shared/domain/phantom-definition';
+import { bodyContains } from '../../core/grid';
 import { norm2 } from '../../core/vector';
-import { requireInBody } from '../../truth/check-in-body';
+import { requireInBody, requireInOutline } from '../../truth/check-in-body';
 import { createTruthField } from '../../truth/truth-field';
 import { truthOnGrid } from '../../truth/truth-on-grid';
 import type { SimulatedData } from '../problem-family';
+import { isDisc } from './body-curve';
 import type { EitInversion } from './inversion-problem';
 import { simulateElectricalImpedance, type SimulationOptions } from './simulation';
 
@@ -27,7 +29,10 @@ export function simulateImpedancePhantom(definition: DefinitionOf<'electrical-im
   const truth = createTruthField(definition.truth, arrayValues);
   if (definition.truth.kind === 'shapes') {
     const { shapes } = definition.truth;
-    requireInBody(definition.truth, definition.geometry.body.radius, (i) => createTruthField({ kind: 'shapes', background: truth.background, shapes: [shapes[i]] }));
+    const { body } = definition.geometry;
+    const fieldOf = (i: number) => createTruthField({ kind: 'shapes', background: truth.background, shapes: [shapes[i]] });
+    if (isDisc(body)) requireInBody(definition.truth, body.radius, fieldOf);
+    else requireInOutline(definition.truth, bodyContains(body), body.radius, fieldOf);
   }
   const { grid } = problem;
   const truthImage = truthOnGrid(truth, grid);

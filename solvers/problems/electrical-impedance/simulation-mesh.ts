@@ -61,7 +61,7 @@ export interface SimulationMesh {
 }
 
 /**
- * Mesh of the unit disc in the electrode frame, conforming to the interfaces of the truth. A truth that would need more
+ * Mesh of the body in the electrode frame, conforming to the interfaces of the truth. A truth that would need more
  * vertices than `maxVertices` gets larger elements, step by step.
  */
 export function simulationMesh(truth: TruthField, frame: ElectrodeFrame, detail: SimulationDetail): SimulationMesh {
@@ -79,7 +79,7 @@ export function simulationMesh(truth: TruthField, frame: ElectrodeFrame, detail:
     };
     const sources = truth.piecewiseConstant ? [] : variationSources(truth, frame, detail.variation * f, detail.variationFloor * f, detail.hMax);
     try {
-      const triangles = meshBody({ ends: frame.ends, interfaces, sources, ...sized });
+      const triangles = meshBody({ boundary: frame.boundary, ends: frame.ends, interfaces, sources, ...sized });
       return { triangles, quadratic: quadraticMesh(triangles, interfaces) };
     } catch (error) {
       if (attempt === 3 || !(error instanceof RangeError)) throw error;
@@ -92,13 +92,14 @@ const samplesPerSide = 128;
 /** Where the truth varies between interfaces: edges over which it would change by more than `variation` times its value. */
 function variationSources(truth: TruthField, frame: ElectrodeFrame, variation: number, floor: number, hMax: number): SizeSource[] {
   const n = samplesPerSide;
-  const step = 2 / n;
+  const half = frame.boundary.reach / 1.1;
+  const step = (2 * half) / n;
   const values = new Float64Array(n * n).fill(NaN);
   for (let j = 0; j < n; j++) {
     for (let i = 0; i < n; i++) {
-      const x = -1 + (i + 0.5) * step;
-      const y = -1 + (j + 0.5) * step;
-      if (x * x + y * y < 1) values[j * n + i] = truth.valueAt(...frame.toBody(x, y));
+      const x = -half + (i + 0.5) * step;
+      const y = -half + (j + 0.5) * step;
+      if (frame.boundary.inside(x, y)) values[j * n + i] = truth.valueAt(...frame.toBody(x, y));
     }
   }
   const sources: { x: number; y: number; size: number }[] = [];
@@ -107,7 +108,7 @@ function variationSources(truth: TruthField, frame: ElectrodeFrame, variation: n
       const v = values[j * n + i];
       const change = Math.max(relativeChange(v, values[j * n + i - 1]), relativeChange(v, values[(j - 1) * n + i]));
       const size = (variation * step) / change;
-      if (size < hMax) sources.push({ x: -1 + i * step, y: -1 + j * step, size });
+      if (size < hMax) sources.push({ x: -half + i * step, y: -half + j * step, size });
     }
   }
   // The smallest edge rises until the places that ask for it need no more elements than a simulation can spare.

@@ -1,5 +1,4 @@
 import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
-import { cos, sin } from '../../core/math';
 import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
 import type { TruthField } from '../../truth/truth-field';
 import { quadraturePoints } from './assembly';
@@ -15,9 +14,18 @@ import { simulationDetail, simulationMesh, type DetailLevel, type SimulationDeta
  */
 export const smallestContact = 1e-8;
 
-/** z sigma / R of the background, a pure number: the distance in radii below which an electrode end is smeared out. */
-export function contactNumber(geometry: EitGeometry, background: number): number {
-  return Math.max(smallestContact, (geometry.contactImpedance * background) / geometry.body.radius);
+/**
+ * z_l sigma / R of the background for each electrode, pure numbers: the distance in radii below which the ends of an electrode are
+ * smeared out.
+ */
+export function contactNumbers(geometry: Pick<EitGeometry, 'body' | 'electrodes' | 'contactImpedance'>, background: number): Float64Array {
+  const { contactImpedance: z, electrodes, body } = geometry;
+  return Float64Array.from({ length: electrodes }, (_, l) => Math.max(smallestContact, ((typeof z === 'number' ? z : z[l]) * background) / body.radius));
+}
+
+/** The smallest of them, which the sizes of elements follow. */
+export function contactNumber(geometry: Pick<EitGeometry, 'body' | 'electrodes' | 'contactImpedance'>, background: number): number {
+  return contactNumbers(geometry, background).reduce((smallest, value) => Math.min(smallest, value));
 }
 
 export interface SimulationOptions {
@@ -56,9 +64,9 @@ export function simulateElectricalImpedance(truth: TruthField, geometry: EitGeom
   const contact = contactNumber(geometry, truth.background);
   const detail = { ...simulationDetail(contact, options.level), ...options.detail };
   const { triangles, quadratic } = simulationMesh(truth, frame, detail);
-  const electrodes = electrodeIntegrals(quadratic, frame.centres.map(cos), frame.centres.map(sin), cos(frame.halfWidth));
+  const electrodes = electrodeIntegrals(quadratic, frame);
   const model = electrodeModel(quadratic, electrodes);
-  const zeta = contact / truth.background;
+  const zeta = contactNumbers(geometry, truth.background).map((value) => value / truth.background);
   const currents = currentPatterns(geometry);
   const sigma = sampleConductivity(truth, quadratic, frame);
   const electrodeVoltages = solveElectrodes(model, sigma, zeta, currents).voltages;

@@ -3,7 +3,6 @@ import { eitGeometrySchema, type EitGeometry } from '../../../shared/domain/geom
 import { adjointCheck } from '../../../solvers/checks/adjoint';
 import { taylorCheck } from '../../../solvers/checks/taylor';
 import { applySparse } from '../../../solvers/core/sparse';
-import { cos, sin } from '../../../solvers/core/math';
 import { norm2 } from '../../../solvers/core/vector';
 import { matmulTransposed, transpose } from '../../../solvers/linear-algebra/matrix-product';
 import { electrodeIntegrals } from '../../../solvers/problems/electrical-impedance/electrode-integrals';
@@ -12,7 +11,7 @@ import { electrodeFrame } from '../../../solvers/problems/electrical-impedance/e
 import { createEitInversion, type EitInversion } from '../../../solvers/problems/electrical-impedance/inversion-problem';
 import { frameJacobian } from '../../../solvers/problems/electrical-impedance/jacobian';
 import { elementsByCell, pairSensitivities, unitStiffness } from '../../../solvers/problems/electrical-impedance/sensitivity';
-import { sampleConductivity } from '../../../solvers/problems/electrical-impedance/simulation';
+import { contactNumber, contactNumbers, sampleConductivity } from '../../../solvers/problems/electrical-impedance/simulation';
 import { simulationDetail, simulationMesh } from '../../../solvers/problems/electrical-impedance/simulation-mesh';
 import { createTruthField } from '../../../solvers/truth/truth-field';
 import reference from '../../reference/inversion-model.json';
@@ -53,8 +52,8 @@ describe('derivative', () => {
     const g = geometry({ contactImpedance: reference.derivative.contactImpedance, measurement: 'adjacent-all' });
     const frame = electrodeFrame(g);
     const truth = circle(5);
-    const mesh = simulationMesh(truth, frame, simulationDetail(g.contactImpedance)).quadratic;
-    const model = electrodeModel(mesh, electrodeIntegrals(mesh, frame.centres.map(cos), frame.centres.map(sin), cos(frame.halfWidth)));
+    const mesh = simulationMesh(truth, frame, simulationDetail(contactNumber(g, 1))).quadratic;
+    const model = electrodeModel(mesh, electrodeIntegrals(mesh, frame));
     const L = 16;
     const currents = new Float64Array(L * L);
     for (let j = 0; j < L; j++) {
@@ -62,7 +61,7 @@ describe('derivative', () => {
       currents[j * L + ((j + 1) % L)] = -1;
     }
     const sigma = sampleConductivity(truth, mesh, frame);
-    const { voltages, unitPotentials } = solveElectrodes(model, sigma, g.contactImpedance, currents);
+    const { voltages, unitPotentials } = solveElectrodes(model, sigma, contactNumbers(g, 1), currents);
     const fields = matmulTransposed(transpose(unitPotentials, L, model.pattern.n), voltages, model.pattern.n, L, L);
     // Two cells: outside and inside the inclusion.
     const cellOf = Int32Array.from({ length: mesh.elements.length / 6 }, (_, t) => (sigma[6 * t] > 3 ? 1 : 0));
