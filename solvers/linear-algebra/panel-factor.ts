@@ -26,6 +26,7 @@ export class PanelFactor implements Resident {
   private readonly longest: number;
   /** Null while the only copy is in the memory of the kernels. */
   private panels: Float64Array | null = null;
+  private released = false;
 
   constructor(private readonly analysis: CholeskyAnalysis) {
     const { panelStart, supernodes, rowStart, layout } = analysis;
@@ -38,7 +39,13 @@ export class PanelFactor implements Resident {
   }
 
   leave(from: ArrayBuffer, address: number): void {
-    this.panels ??= new Float64Array(from, address, this.entries).slice();
+    if (!this.released) this.panels ??= new Float64Array(from, address, this.entries).slice();
+  }
+
+  /** The factor is not needed any more: nothing is copied out for it. */
+  release(): void {
+    this.released = true;
+    this.panels = null;
   }
 
   /**
@@ -67,6 +74,7 @@ export class PanelFactor implements Resident {
   /** Solves in place for k right-hand sides, n values each, one after another. */
   solve(b: Float64Array, k: number, half: SolveHalf): void {
     const { n, order } = this.analysis;
+    if (this.released) throw new Error('This factor has been released.');
     if (b.length !== n * k) throw new RangeError(`The right-hand sides have ${b.length} values, not n k = ${n} x ${k}.`);
     const room = scratchWith(this, 8 * n * blockWidth, 32 * this.longest);
     let solveBlock: (x: Float64Array, count: number) => void;
@@ -88,18 +96,13 @@ export class PanelFactor implements Resident {
       const count = Math.min(blockWidth, k - from);
       // Four are solved together: what is beyond the last must not be rubbish that slows the arithmetic down.
       if (count < blockWidth) x.fill(0);
-      for (let r = 0; r < count; r++) {
-        const offset = (from + r) * n;
-        // The factor's own coordinates are the permuted ones; half a solve reads or leaves the vector there.
-        if (half === 'backward') for (let i = 0; i < n; i++) x[i * blockWidth + r] = b[offset + i];
-        else for (let i = 0; i < n; i++) x[i * blockWidth + r] = b[offset + order[i]];
-      }
+      const base = from * n;
+      // The factor's own coordinates are the permuted ones; half a solve reads or leaves the vector there.
+      if (half === 'backward') for (let i = 0; i < n; i++) for (let r = 0, at = base + i; r < count; r++, at += n) x[8 * i + r] = b[at];
+      else for (let i = 0; i < n; i++) for (let r = 0, at = base + order[i]; r < count; r++, at += n) x[8 * i + r] = b[at];
       solveBlock(x, count);
-      for (let r = 0; r < count; r++) {
-        const offset = (from + r) * n;
-        if (half === 'forward') for (let i = 0; i < n; i++) b[offset + i] = x[i * blockWidth + r];
-        else for (let i = 0; i < n; i++) b[offset + order[i]] = x[i * blockWidth + r];
-      }
+      if (half === 'forward') for (let i = 0; i < n; i++) for (let r = 0, at = base + i; r < count; r++, at += n) b[at] = x[8 * i + r];
+      else for (let i = 0; i < n; i++) for (let r = 0, at = base + order[i]; r < count; r++, at += n) b[at] = x[8 * i + r];
     }
   }
 

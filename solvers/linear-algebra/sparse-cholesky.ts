@@ -48,6 +48,11 @@ export interface CholeskyFactor {
    * (P^T L)^{-T} b, so that a method can change to the coordinates in which A is the identity.
    */
   halfSolveMany(b: Float64Array, k: number, half: 'forward' | 'backward'): void;
+  /**
+   * Says that this factor will not be used again, so that its panels need not be saved when another takes their place: worth
+   * calling where many factors follow one another.
+   */
+  release(): void;
 }
 
 /**
@@ -117,5 +122,6 @@ export function factorise(analysis: CholeskyAnalysis, values: Float64Array): Cho
     analysis,
     solveMany: (b, k) => factor.solve(b, k, 'both'),
     halfSolveMany: (b, k, half) => factor.solve(b, k, half),
+    release: () => factor.release(),
   };
 }

@@ -23,7 +23,7 @@ export function elementsByCell(cellOf: Int32Array, cells: number): ElementsByCel
  * Sensitivities of pairs of fields, per cell: `out[(cell * L + j) * L + k]` = integral over the cell of grad f_j . grad f_k.
  * @param stiffness unit-coefficient element matrices, lower triangle row by row, 21 values an element
  * @param fields node potentials, node-major: `fields[node * L + j]`
- * @param L number of fields, a multiple of 4
+ * @param L number of fields
  * @returns `out`, cells x L x L
  */
 export function pairSensitivities(
@@ -35,7 +35,7 @@ export function pairSensitivities(
   let most = 0;
   for (let c = 0; c < cells; c++) most = Math.max(most, start[c + 1] - start[c]);
   const room = scratchOf(
-    4 * elements.length, 8 * stiffness.length, 4 * start.length, 4 * list.length, 8 * fields.length, 48 * most * L, 48 * most * L, 8 * 36, 8 * cells * L * L,
+    4 * elements.length, 8 * stiffness.length, 4 * start.length, 4 * list.length, 8 * fields.length, 48 * most * (L + 3), 48 * most * (L + 3), 8 * 36, 8 * cells * L * L,
   );
   if (!room) return pairsInTypeScript(elements, stiffness, groups, fields, L, most, out);
   const [atElements, atStiffness, atStart, atList, atFields, f, g, matrix, atOut] = room.addresses;

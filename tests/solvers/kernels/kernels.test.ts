@@ -6,6 +6,8 @@ import { kernels, useCompiledKernels } from '../../../solvers/kernels/kernel-mem
 import { denseCholesky } from '../../../solvers/linear-algebra/dense-cholesky';
 import { matmul, matmulLeftTransposed, matmulTransposed, transpose } from '../../../solvers/linear-algebra/matrix-product';
 import { analyse, factorise } from '../../../solvers/linear-algebra/sparse-cholesky';
+import type { QuadraticMesh } from '../../../solvers/mesh/quadratic-mesh';
+import { elementsByCell, pairSensitivities } from '../../../solvers/problems/electrical-impedance/sensitivity';
 import { laplacianOnGrid, randomPositiveDefinite, uniform } from '../../support/sparse-matrices';
 
 /* A compiled kernel and its TypeScript twin give the same bits (this project's own contract, no outside source). */
@@ -96,6 +98,14 @@ describe('compiled kernels', () => {
       }),
       { numRuns: 30 },
     );
+  });
+
+  it.each([8, 10, 13])('give the bits of their twins: sensitivities of pairs of %i fields', (fields) => {
+    const elements = 7;
+    const mesh = { elements: Int32Array.from({ length: 6 * elements }, (_, i) => (i * 5) % 17) } as unknown as QuadraticMesh;
+    const groups = elementsByCell(Int32Array.of(0, 2, 0, 1, 2, 2, 0), 4);
+    const [compiled, twin] = both(() => pairSensitivities(mesh, random(21 * elements, 1), groups, random(17 * fields, 2), fields));
+    expect(compiled).toEqual(twin);
   });
 
   it('keep a factor through the work of others, and through a change to the twins', () => {
