@@ -1,12 +1,17 @@
 import { findByKey } from '../core/registry';
 import type { Method } from '../core/types';
+import { boxConstrainedTikhonovMethod } from './box-constrained-tikhonov';
+import { calderonMethod } from './calderon';
 import { cglsMethod } from './cgls';
+import { crankNicolsonMethod } from './crank-nicolson';
+import { ensembleKalmanMethod } from './ensemble-kalman';
 import { exponentialFilterMethod } from './exponential-filter';
 import { filterExpressionMethod } from './filter-expression';
 import { gaussNewtonMethod } from './gauss-newton';
 import { gaussNewtonTotalVariationMethod } from './gauss-newton-total-variation';
 import { iteratedTikhonovMethod } from './iterated-tikhonov';
 import { kaczmarzMethod } from './kaczmarz';
+import { laggedDiffusivityMethod } from './lagged-diffusivity';
 import { landweberMethod } from './landweber';
 import { levenbergMarquardtMethod } from './levenberg-marquardt';
 import { lsqrMethod } from './lsqr';
@@ -16,8 +21,10 @@ import { smoothnessPriorMethod } from './smoothness-prior';
 import { sirtMethod } from './sirt';
 import { tikhonovMethod } from './tikhonov';
 import { totalVariationMethod } from './total-variation';
+import { trainedLinearMethod } from './trained-linear';
 import { trivialMethod } from './trivial';
 import { truncatedSvdMethod } from './truncated-svd';
+import { waveletSparsityMethod } from './wavelet-sparsity';
 
 export const methods: readonly Method[] = [
   trivialMethod,
@@ -35,9 +42,16 @@ export const methods: readonly Method[] = [
   kaczmarzMethod,
   sirtMethod,
   totalVariationMethod,
+  laggedDiffusivityMethod,
+  waveletSparsityMethod,
+  boxConstrainedTikhonovMethod,
   gaussNewtonMethod,
   levenbergMarquardtMethod,
   gaussNewtonTotalVariationMethod,
+  calderonMethod,
+  trainedLinearMethod,
+  ensembleKalmanMethod,
+  crankNicolsonMethod,
 ];
 
 /** @throws RangeError for an unknown key. */

@@ -5,10 +5,11 @@ import { gramLower } from './penalty';
 import { makeReconstructor } from './reconstructor';
 import { filteredResidual } from './spectral-filter';
 import { iteratedTikhonovFilter } from './iterated-tikhonov';
-import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystemOf, type SpectralSystem } from './spectral-system';
+import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystemOf, type SpectralSystem, type StandardFactor } from './spectral-system';
+import { unknownScale } from './unknown-scale';
 
 const specs = {
-  deviation: { kind: 'number', label: 'Prior deviation', symbol: 's/\\bar x_b', default: 0.5, minimum: 1e-3, maximum: 100, scale: 'log', help: 'Standard deviation of the unknown before any data, as a share of the mean background.' },
+  deviation: { kind: 'number', label: 'Prior deviation', symbol: 's/\\bar x_b', default: 0.5, minimum: 1e-3, maximum: 100, scale: 'log', help: 'Standard deviation of the unknown before any data, as a share of the mean background (of 1 where the background is zero).' },
   correlationLength: { kind: 'number', label: 'Correlation length', symbol: '\\ell/R', unit: 'body radius', default: 0.2, minimum: 0.01, maximum: 5, scale: 'log', help: 'Over this distance the values of the prior hang together, as a share of the body radius.' },
   smallestAlpha: {
     kind: 'number', label: 'Smallest alpha', symbol: '\\alpha_{\\min}/\\sigma_1', default: 1e-7, minimum: 1e-12, maximum: 1, scale: 'log',
@@ -24,27 +25,32 @@ const { schema, fields } = defineParameters(specs);
  * @throws RangeError for a deviation that is not positive
  */
 export function smoothnessSystem(problem: ForwardProblem, deviation: number, length: number): SpectralSystem {
-  if (!(deviation > 0)) throw new RangeError('The prior deviation is a share of the mean background, which is zero here.');
-  return spectralSystemOf(problem, `smoothness ${deviation} ${length}`, () => {
-    const weights = problem.unknownWeights;
-    const lower = gramLower(problem.penalty('gradient'), weights, 1 / (length * length));
-    const factor = factorise(analyse(lower), lower.values);
-    const n = problem.unknowns;
-    const tau = length / (deviation * Math.sqrt(4 * 3.141592653589793));
-    const scale = new Float64Array(n);
-    for (let j = 0; j < n; j++) scale[j] = Math.sqrt(weights[j]) / tau;
-    const multiply = (b: Float64Array, count: number): void => {
-      for (let i = 0; i < count; i++) for (let j = 0; j < n; j++) b[i * n + j] *= scale[j];
-    };
-    return {
-      // R = tau M^{-1/2} B, so R^{-T} = M^{1/2} B^{-1} / tau and R^{-1} = B^{-1} M^{1/2} / tau.
-      halfSolveMany(b, count, half) {
-        if (half === 'backward') multiply(b, count);
-        factor.solveMany(b, count);
-        if (half === 'forward') multiply(b, count);
-      },
-    };
-  });
+  return spectralSystemOf(problem, `smoothness ${deviation} ${length}`, () => smoothnessFactor(problem, deviation, length));
+}
+
+/** The factor R of the precision R^T R of that prior. @throws RangeError for a deviation that is not positive */
+export function smoothnessFactor(problem: ForwardProblem, deviation: number, length: number): StandardFactor {
+  if (!(deviation > 0)) throw new RangeError('The prior deviation must be positive.');
+  const weights = problem.unknownWeights;
+  const lower = gramLower(problem.penalty('gradient'), weights, 1 / (length * length));
+  const factor = factorise(analyse(lower), lower.values);
+  const n = problem.unknowns;
+  // Variance of the field over that of the noise: l^2 / (4 pi) in the plane, l^3 / 4 on a line (Lindgren, Rue, Lindstrom 2011, section 2.1).
+  const unitDeviation = problem.grid.body.kind === 'interval' ? length * Math.sqrt(length) * 0.5 : length / Math.sqrt(4 * 3.141592653589793);
+  const tau = unitDeviation / deviation;
+  const scale = new Float64Array(n);
+  for (let j = 0; j < n; j++) scale[j] = Math.sqrt(weights[j]) / tau;
+  const multiply = (b: Float64Array, count: number): void => {
+    for (let i = 0; i < count; i++) for (let j = 0; j < n; j++) b[i * n + j] *= scale[j];
+  };
+  return {
+    // R = tau M^{-1/2} B, so R^{-T} = M^{1/2} B^{-1} / tau and R^{-1} = B^{-1} M^{1/2} / tau.
+    halfSolveMany(b, count, half) {
+      if (half === 'backward') multiply(b, count);
+      factor.solveMany(b, count);
+      if (half === 'forward') multiply(b, count);
+    },
+  };
 }
 
 /** Maximum a posteriori estimate under a Gaussian smoothness prior. */
@@ -67,11 +73,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   prepare(problem, parameters, rule) {
     const { deviation, correlationLength, smallestAlpha } = readParameters(method.name, schema, parameters);
     if (rule) throw new RangeError(`${method.name} has no parameter-choice rule.`);
-    const background = problem.background();
-    let mean = 0;
-    for (let j = 0; j < background.length; j++) mean += Math.abs(background[j]);
-    mean /= Math.max(1, background.length);
-    const system = smoothnessSystem(problem, deviation * mean, correlationLength * problem.grid.bodyRadius);
+    const system = smoothnessSystem(problem, deviation * unknownScale(problem), correlationLength * problem.grid.bodyRadius);
     const s = system.singularValues;
     const filter = iteratedTikhonovFilter(1);
     return makeReconstructor((data, noise) => {

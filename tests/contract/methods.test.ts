@@ -1,9 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { recomputeDraw, prepareRun, runLevel } from '../../solvers/campaign/run';
 import { runHash } from '../../solvers/campaign/trial';
-import type { Method, RuleSetting } from '../../solvers/core/types';
+import type { SimulatedPhantom } from '../../solvers/campaign/trial';
+import type { ForwardProblem, Method, RuleSetting } from '../../solvers/core/types';
+import type { EitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
 import { methods } from '../../solvers/methods/registry';
 import { getParameterRule, parameterRules } from '../../solvers/parameter-choice/registry';
+import { electrodeProblem, electrodeTruth } from '../support/electrode-problem';
 import { syntheticProblem, syntheticTruth } from '../support/synthetic-problem';
 
 const linear = syntheticProblem({ side: 10, data: 20 });
@@ -12,7 +15,16 @@ const absolute = syntheticProblem({ side: 10, data: 20, curvature: 0.3, dataKind
 /** More data than unknowns. */
 const tall = syntheticProblem({ side: 4, data: 30 });
 const single = syntheticProblem({ side: 1, data: 1 });
-const problems = { linear, bent, absolute, tall };
+/** Methods that read the electrodes of a frame do not serve the synthetic problems. */
+const electrodes = electrodeProblem();
+const absoluteElectrodes = electrodeProblem('absolute');
+const readsElectrodes = (method: Method): boolean => method.unfit?.(linear) != null;
+function problemsOf(method: Method): Record<string, ForwardProblem> {
+  return readsElectrodes(method) ? { electrodes, absoluteElectrodes } : { linear, bent, absolute, tall };
+}
+function truthOf(problem: ForwardProblem, contrast?: number): SimulatedPhantom {
+  return problem === electrodes || problem === absoluteElectrodes ? electrodeTruth(problem as EitInversion, contrast).simulated : syntheticTruth(problem, contrast).simulated;
+}
 
 function rulesOf(method: Method): (RuleSetting | null)[] {
   if (method.capabilities.rules.length === 0) return [null];
@@ -21,8 +33,8 @@ function rulesOf(method: Method): (RuleSetting | null)[] {
 const cases = methods.flatMap((method) => rulesOf(method).map((rule) => [`${method.key}, ${rule?.key ?? 'no rule'}`, method, rule] as const));
 
 describe.each(cases)('%s', (_, method, rule) => {
-  it.each(Object.entries(problems))('on the %s problem: shapes, determinism, input untouched, batch equals single, replay from JSON', (__, problem) => {
-    const { simulated } = syntheticTruth(problem, 0.5);
+  it.each(Object.entries(problemsOf(method)))('on the %s problem: shapes, determinism, input untouched, batch equals single, replay from JSON', (__, problem) => {
+    const simulated = truthOf(problem, 0.5);
     const configuration = JSON.parse(JSON.stringify({ method: method.key, parameters: {}, rule }));
     const seed = { benchSeed: 11, phantomHash: 'phantom', levelIndex: 2, level: 0.01 };
     const prepared = prepareRun({ problem, ...configuration });
@@ -43,8 +55,9 @@ describe.each(cases)('%s', (_, method, rule) => {
   });
 
   it('reads its data without changing or keeping them, and gives fresh arrays', () => {
-    const reconstructor = method.prepare(linear, {}, rule);
-    const { simulated } = syntheticTruth(linear);
+    const [problem] = Object.values(problemsOf(method));
+    const reconstructor = method.prepare(problem, {}, rule);
+    const simulated = truthOf(problem);
     const data = Float64Array.from(simulated.clean);
     const noise = { norm: 0.01 * simulated.noiseScale, level: 0.01 };
     const first = reconstructor.reconstruct(data, noise);
@@ -57,7 +70,7 @@ describe.each(cases)('%s', (_, method, rule) => {
   });
 
   it('gives the background for data that equal the background\'s', () => {
-    for (const problem of [linear, absolute]) {
+    for (const problem of readsElectrodes(method) ? [electrodes, absoluteElectrodes] : [linear, absolute]) {
       const data = problem.evaluate(problem.background());
       const { x, residualNorm } = method.prepare(problem, {}, rule).reconstruct(data, { norm: 0, level: 0 });
       expect(x).toEqual(problem.background());
@@ -66,29 +79,35 @@ describe.each(cases)('%s', (_, method, rule) => {
   });
 
   it('refuses data of the wrong length, data that are not finite, and a noise that is no norm', () => {
-    const reconstructor = method.prepare(linear, {}, rule);
+    const [problem] = Object.values(problemsOf(method));
+    const m = problem.dataSize;
+    const reconstructor = method.prepare(problem, {}, rule);
     const noise = { norm: 0.1, level: 0.1 };
-    expect(() => reconstructor.reconstruct(new Float64Array(19), noise)).toThrow(/19 values, expected 20/);
-    for (const bad of [NaN, Infinity]) expect(() => reconstructor.reconstruct(new Float64Array(20).fill(1).fill(bad, 4, 5), noise)).toThrow(/not finite at index 4/);
-    expect(() => reconstructor.reconstruct(new Float64Array(20), { norm: NaN, level: 0.1 })).toThrow(RangeError);
-    expect(() => reconstructor.reconstructMany([new Float64Array(20)], [])).toThrow(RangeError);
+    expect(() => reconstructor.reconstruct(new Float64Array(m - 1), noise)).toThrow(new RegExp(`${m - 1} values, expected ${m}`));
+    for (const bad of [NaN, Infinity]) expect(() => reconstructor.reconstruct(new Float64Array(m).fill(1).fill(bad, 4, 5), noise)).toThrow(/not finite at index 4/);
+    expect(() => reconstructor.reconstruct(new Float64Array(m), { norm: NaN, level: 0.1 })).toThrow(RangeError);
+    expect(() => reconstructor.reconstructMany([new Float64Array(m)], [])).toThrow(RangeError);
   });
 
-  it('works for one datum and one unknown', () => {
+  it('works for one datum and one unknown, or says what it needs', () => {
+    if (readsElectrodes(method)) {
+      expect(() => method.prepare(single, {}, rule)).toThrow(/needs|have/);
+      return;
+    }
     const { x } = method.prepare(single, {}, rule).reconstruct(Float64Array.of(0.5), { norm: 0.05, level: 0.1 });
     expect(x).toHaveLength(1);
     expect(Number.isFinite(x[0])).toBe(true);
   });
 
   it('reports the residual of the model it uses', () => {
-    const problem = bent;
-    const { simulated } = syntheticTruth(problem, 0.5);
+    const problem = readsElectrodes(method) ? electrodes : bent;
+    const simulated = truthOf(problem, 0.5);
     const data = simulated.clean;
     const { x, residualNorm } = method.prepare(problem, {}, rule).reconstruct(data, { norm: 0.02 * simulated.noiseScale, level: 0.02 });
     let model: Float64Array;
     if (method.capabilities.nonlinear) model = problem.evaluate(x);
     else {
-      model = new Float64Array(20);
+      model = new Float64Array(problem.dataSize);
       problem.linearise(problem.background()).apply(x.map((value, j) => value - problem.background()[j]), model);
     }
     const expected = Math.sqrt(data.reduce((sum, value, i) => sum + (value - model[i]) ** 2, 0));
@@ -97,8 +116,9 @@ describe.each(cases)('%s', (_, method, rule) => {
   });
 
   it('stops when asked to', () => {
-    const reconstructor = method.prepare(linear, {}, rule);
-    const { simulated } = syntheticTruth(linear);
+    const [problem] = Object.values(problemsOf(method));
+    const reconstructor = method.prepare(problem, {}, rule);
+    const simulated = truthOf(problem);
     const noise = { norm: 1e-6, level: 1e-6 };
     let asked = 0;
     const done = reconstructor.reconstructMany([simulated.clean, simulated.clean, simulated.clean], [noise, noise, noise], { aborted: () => ++asked > 1 });
@@ -123,6 +143,8 @@ describe.each(methods.map((method) => [method.key, method] as const))('%s', (_, 
       if (field.kind === 'choice') {
         for (const choice of field.choices!) expect(accepts(choice.value)).toBe(true);
         expect(accepts('none of these')).toBe(false);
+      } else if (field.kind === 'text') {
+        expect(['', '   ', 'system(1)', 'x'.repeat(61), 3, null].map(accepts)).toEqual(new Array(6).fill(false));
       } else {
         expect([field.minimum, field.maximum].map(accepts)).toEqual([true, true]);
         expect([field.minimum! - 1, field.maximum! + 1, NaN, Infinity, 'text', null].map(accepts)).toEqual(new Array(6).fill(false));
@@ -133,7 +155,7 @@ describe.each(methods.map((method) => [method.key, method] as const))('%s', (_, 
   it('refuses unknown parameters, values out of range and rules that it does not accept', () => {
     const rule = rulesOf(method)[0];
     expect(() => method.prepare(linear, { nonsense: 1 }, rule)).toThrow(RangeError);
-    for (const field of method.fields) expect(() => method.prepare(linear, { [field.name]: -5 }, rule)).toThrow(new RegExp(field.name));
+    for (const field of method.fields) expect(() => method.prepare(linear, { [field.name]: (field.minimum ?? 0) - 5 }, rule)).toThrow(new RegExp(field.name));
     for (const { key, defaultSetting } of parameterRules) if (!method.capabilities.rules.includes(key)) expect(() => method.prepare(linear, {}, defaultSetting)).toThrow(RangeError);
     if (method.capabilities.rules.includes('discrepancy')) expect(() => method.prepare(linear, {}, { key: 'discrepancy', safetyFactor: 0.5 })).toThrow(/safety factor/);
     if (method.fixedValue) for (const value of [-1, 0, NaN, 1e9]) expect(() => method.prepare(linear, {}, { key: 'fixed', value })).toThrow(RangeError);
