@@ -5,6 +5,7 @@ import { sha256Hex } from '../core/hash';
 import { deriveDrawKey } from '../core/random';
 import type { ForwardProblem, Method, NoiseInfo, Reconstruction, Reconstructor, RuleSetting } from '../core/types';
 import { allFinite } from '../core/vector';
+import { credibleInterval, fewestSamples } from './credible-interval';
 import { getMethod } from '../methods/registry';
 import { evaluateMetrics, metrics } from '../metrics/registry';
 import type { NoiseModel } from '../noise/noise-model';
@@ -86,14 +87,15 @@ function score(problem: ForwardProblem, simulated: SimulatedPhantom, levelIndex:
   if (finite) problem.toImage(x, image);
   return {
     levelIndex, drawIndex, noiseNorm, parameter, iterations, forwardSolves, stop: finite ? reconstruction.stop : 'diverged',
-    metrics: finite ? scoreImage(problem, simulated, image, residualNorm, noiseNorm) : undefinedMetrics('The reconstruction is not finite; the background is stored in its place.'),
+    metrics: finite ? scoreImage(problem, simulated, image, residualNorm, noiseNorm, reconstruction.samples) : undefinedMetrics('The reconstruction is not finite; the background is stored in its place.'),
     image, imageHash: sha256Hex(image), seconds,
   };
 }
 
 /** Metrics of an image, also one reconstructed elsewhere (`residualNorm` null where unknown). */
-export function scoreImage(problem: ForwardProblem, simulated: SimulatedPhantom, image: Float64Array, residualNorm: number | null, noiseNorm: number): Trial['metrics'] {
-  return evaluateMetrics({ truth: simulated.truthImage, background: simulated.backgroundImage, estimate: image, grid: problem.grid, targets: simulated.targets, residualNorm, noiseNorm });
+export function scoreImage(problem: ForwardProblem, simulated: SimulatedPhantom, image: Float64Array, residualNorm: number | null, noiseNorm: number, samples?: readonly Float64Array[]): Trial['metrics'] {
+  const interval = samples && samples.length >= fewestSamples ? credibleInterval(problem, samples) : undefined;
+  return evaluateMetrics({ truth: simulated.truthImage, background: simulated.backgroundImage, estimate: image, grid: problem.grid, targets: simulated.targets, residualNorm, noiseNorm, interval });
 }
 
 /** Metrics of the background alone: the baseline of every chart. */

@@ -65,10 +65,10 @@ const method: Method<ParametersOf<typeof specs>> = {
       const target = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : 0;
       if (size === 0 || size <= target)
         return { x: Float64Array.from(background), parameter: null, iterations: 0, forwardSolves: 0, stop: target > 0 ? 'discrepancy' : 'converged', residualNorm: size };
-      let h = new Float64Array(n);
+      let h: Float64Array = new Float64Array(n);
       let at = first;
       let lambda = setting.key === 'fixed' ? setting.value * trace : 1e-3 * trace;
-      let w = new Float64Array(m);
+      let w: Float64Array = new Float64Array(m);
       let stop: StopReason = 'maxIterations';
       let iterations = 0;
       while (iterations < largestIteration) {

@@ -68,7 +68,7 @@ const method: Method<ParametersOf<typeof specs>> = {
     return makeReconstructor((data, noise, context): Reconstruction => {
       requireVector(data, m, 'The data frame');
       const target = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : 0;
-      let x = Float64Array.from(background);
+      let x: Float64Array = Float64Array.from(background);
       const residual = new Float64Array(m);
       for (let i = 0; i < m; i++) residual[i] = data[i] - firstModel[i];
       let size = norm2(residual);

@@ -54,7 +54,8 @@ export function quarterAmplitude(input: MetricInput, highest: number, lowest: nu
     const spots = whole ? [whole] : connectedSpots(input, geometry, sign, 0.25 * peak);
     for (const spot of spots) count += spot.count;
     findings.push(...match(wanted, spots));
-    falseSpots += Math.max(0, largeSpots(spots).length - wanted.length);
+    const parts = whole ? connectedSpots(input, geometry, sign, 0.25 * peak) : spots;
+    falseSpots += Math.max(0, largeSpots(parts).length - wanted.length);
   }
   if (findings.length === 0) return { findings: null, reason: 'The declared targets have no contrast to the background.', count: 0, falseSpots: 0 };
   findings.sort((a, b) => targets.indexOf(a.target) - targets.indexOf(b.target));

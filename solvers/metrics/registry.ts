@@ -2,8 +2,12 @@ import { findByKey } from '../core/registry';
 import type { MetricInput, MetricValue } from '../core/types';
 import { amplitudeResponse } from './amplitude-response';
 import { correlationScore } from './correlation-score';
+import { credibleCoverage } from './credible-coverage';
 import { dataResidualRatio } from './data-residual-ratio';
+import { diceScore } from './dice-score';
+import { falseTargetsError } from './false-targets-error';
 import { summarise, type MetricDefinition } from './metric-definition';
+import { missedTargetsError } from './missed-targets-error';
 import { positionError } from './position-error';
 import { psnrScore } from './psnr-score';
 import { radialPositionDifference } from './radial-position-difference';
@@ -20,6 +24,7 @@ import { supError } from './sup-error';
 export const metrics: readonly MetricDefinition[] = [
   relativeL2Error, supError, relativeSupError, relativeL1Error, positionError, radialPositionDifference, resolution, amplitudeResponse, dataResidualRatio,
   relativeH1Error, ssimScore, psnrScore, correlationScore, shapeDeformation, ringing,
+  diceScore, missedTargetsError, falseTargetsError, credibleCoverage,
 ];
 
 /** @throws RangeError for an unknown key. */

@@ -36,7 +36,7 @@ export function newtonReconstructor(problem: ForwardProblem, setting: RuleSettin
     requireVector(data, m, 'The data frame');
     const target = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : 0;
     const lastAlpha = setting.key === 'fixed' ? setting.value : 0;
-    let x = Float64Array.from(background);
+    let x: Float64Array = Float64Array.from(background);
     const residual = new Float64Array(m);
     for (let i = 0; i < m; i++) residual[i] = data[i] - firstModel[i];
     let size = norm2(residual);
