@@ -35,7 +35,7 @@ export const BenchEntity = defineEntity({
     openedAt: p.datetime().nullable(),
     closedAt: p.datetime().nullable(),
     phantoms: () => p.oneToMany(BenchPhantomEntity).mappedBy('bench').orderBy({ position: 'asc' }),
-    entries: () => p.oneToMany(EntryEntity).mappedBy('bench').orderBy({ glyph: 'asc' }),
+    entries: () => p.oneToMany(EntryEntity).mappedBy('bench').orderBy({ place: 'asc' }),
   },
   uniques: [{ name: 'bench_slug_unique', properties: ['slug'] }],
 });
@@ -64,13 +64,13 @@ export const EntryEntity = defineEntity({
     ...baseProperties,
     bench: () => p.manyToOne(BenchEntity).ref(),
     solverVersion: () => p.manyToOne(SolverVersionEntity).ref().index('entry_solver_version_index'),
-    /** Stable index in the bench: colour and marker follow it. */
-    glyph: p.integer(),
+    /** Order of entry, from 0; the column has the name of what it first stood for. */
+    place: p.integer().fieldName('glyph'),
     createdBy: () => p.manyToOne(UserEntity).ref(),
   },
   uniques: [
     { name: 'entry_bench_solver_unique', properties: ['bench', 'solverVersion'] },
-    { name: 'entry_bench_glyph_unique', properties: ['bench', 'glyph'] },
+    { name: 'entry_bench_glyph_unique', properties: ['bench', 'place'] },
   ],
 });
 export type Entry = InferEntity<typeof EntryEntity>;

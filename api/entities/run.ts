@@ -2,6 +2,7 @@ import { defineEntity, p, type InferEntity } from '@mikro-orm/core';
 import type { CheckResultWire } from '../../shared/contracts/common';
 import type { Configuration } from '../../shared/contracts/solvers';
 import { reviewStates, runStates } from '../../shared/domain/states';
+import type { LevelMoments } from '../../solvers/campaign/level-moments';
 import { baseProperties, timestamps } from './base.ts';
 import { EntryEntity } from './bench.ts';
 import { PhantomVersionEntity } from './phantom.ts';
@@ -53,6 +54,8 @@ export const RunEntity = defineEntity({
     checks: p.json().$type<CheckResultWire[]>().nullable(),
     /** Figures of the trivial reconstruction (the background), by metric key. */
     trivial: p.json().$type<Record<string, number | null>>().nullable(),
+    /** Bias and variance of the image by level; null for levels that are not complete, and for runs older than this. */
+    levelMoments: p.json().$type<(LevelMoments | null)[]>().nullable(),
     trials: () => p.oneToMany(TrialEntity).mappedBy('run'),
     verdicts: () => p.oneToMany(VerdictEntity).mappedBy('run').orderBy({ createdAt: 'desc' }),
   },

@@ -22,6 +22,8 @@ export const SolverEntity = defineEntity({
     name: p.string(),
     description: p.text(),
     group: () => p.manyToOne(GroupEntity).ref().index('solver_group_index'),
+    /** Names its marker and colour on every page (shared/domain/glyphs.ts). */
+    glyph: p.integer().default(0),
     versions: () => p.oneToMany(SolverVersionEntity).mappedBy('solver').orderBy({ n: 'asc' }),
   },
   uniques: [{ name: 'solver_slug_unique', properties: ['slug'] }],

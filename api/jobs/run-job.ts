@@ -1,6 +1,7 @@
 import type { EntityManager, MikroORM } from '@mikro-orm/sqlite';
 import { AppError } from '../../shared/errors.ts';
 import type { Metric } from '../../solvers/core/types';
+import type { LevelMoments } from '../../solvers/campaign/level-moments';
 import { runHash } from '../../solvers/campaign/trial';
 import { metrics } from '../../solvers/metrics/registry';
 import type { CheckResultWire } from '../../shared/contracts/common';
@@ -11,11 +12,12 @@ import { recordAudit, siteActor } from '../services/audit/record-audit.ts';
 import { announceRunEnd } from '../services/runs/announce-run-end.ts';
 import { codeVersion } from './code-version.ts';
 import type { Job } from './job.ts';
+import { changedBits, fillMoments, momentsOf } from './level-moments.ts';
 import { pickDraws } from './level-picks.ts';
 import type { RunEvents } from './run-events.ts';
 import { loadRunInput } from './run-input.ts';
 import { SliceSchedule } from './slice-schedule.ts';
-import type { RunChecksOutput, TrialOutput } from './tasks.ts';
+import type { RunChecksOutput, RunInput, TrialOutput } from './tasks.ts';
 import { WorkerFailure } from './worker-pool.ts';
 
 /** Draws recomputed at the end of a run, to show that they give the stored bits. */
@@ -41,7 +43,10 @@ export async function claimRun(context: JobContext): Promise<Job | null> {
     const next = await inner.findOne(RunEntity, { state: 'queued' }, { orderBy: { priority: 'desc', queuedAt: 'asc', id: 'asc' }, populate: ['entry.solverVersion.solver'] });
     if (!next) return null;
     // Trials of other code are not mixed with those to come.
-    if (next.codeVersion && next.codeVersion !== codeVersion) await forgetTrials(inner, next.id);
+    if (next.codeVersion && next.codeVersion !== codeVersion) {
+      await forgetTrials(inner, next.id);
+      next.levelMoments = null;
+    }
     next.state = 'running';
     next.codeVersion = codeVersion;
     next.attempts += 1;
@@ -96,7 +101,8 @@ async function openRunJob(context: JobContext, id: string): Promise<Job> {
         const row = await inner.findOneOrFail(RunEntity, { id });
         if (row.state !== 'running') return false;
         await insertTrials(inner, id, trials, seconds);
-        await closeLevels(inner, { id, metricKey, draws: row.draws, levels: new Set(trials.map((trial) => trial.level)), images });
+        const moments = await closeLevels(inner, { id, metricKey, draws: row.draws, levels: new Set(trials.map((trial) => trial.level)), images, input });
+        if (moments.size > 0) row.levelMoments = row.ladder.map((_, level) => moments.get(level) ?? row.levelMoments?.[level] ?? null);
         row.done = await inner.count(TrialEntity, { run: id });
         row.levelMedians = await leadingMedians(inner, id, row.ladder.length, row.draws, metricKey);
         row.heartbeatAt = clock();
@@ -109,6 +115,7 @@ async function openRunJob(context: JobContext, id: string): Promise<Job> {
     },
     finish: async (pool, signal) => {
       await storeMissingImages(context, { id, metricKey, input, pool, signal });
+      await fillMoments(context, { id, input, pool, signal });
       const reader = orm.em.fork();
       const trials = await reader.find(TrialEntity, { run: id }, { orderBy: { level: 'asc', draw: 'asc' } });
       const answer = await pool.run('checkRun', {
@@ -147,12 +154,13 @@ function byLevel<T extends { readonly level: number }>(rows: readonly T[]): Map<
   return groups;
 }
 
-/** Keeps the images of the median and the worst draw of each level that is complete. */
+/** Keeps the images of the median and the worst draw of each level that is complete, and gives bias and variance over all its draws. */
 async function closeLevels(
   em: EntityManager,
-  input: { readonly id: string; readonly metricKey: string; readonly draws: number; readonly levels: ReadonlySet<number>; readonly images: Map<number, Map<number, Float64Array>> },
-): Promise<void> {
+  input: { readonly id: string; readonly metricKey: string; readonly draws: number; readonly levels: ReadonlySet<number>; readonly images: Map<number, Map<number, Float64Array>>; readonly input: RunInput },
+): Promise<Map<number, LevelMoments>> {
   const { id, metricKey, draws, levels, images } = input;
+  const found = new Map<number, LevelMoments>();
   for (const level of levels) {
     const rows = await em.find(TrialEntity, { run: id, level }, { fields: ['draw', 'metrics'] });
     if (rows.length < draws) continue;
@@ -161,8 +169,11 @@ async function closeLevels(
       const image = images.get(level)?.get(draw);
       if (image) await storeImage(em, id, level, draw, image);
     }
+    const moments = momentsOf(rows, images.get(level) ?? new Map<number, Float64Array>(), input.input);
+    if (moments) found.set(level, moments);
     images.delete(level);
   }
+  return found;
 }
 
 async function storeImage(em: EntityManager, runId: string, level: number, draw: number, image: Float64Array): Promise<void> {
@@ -199,7 +210,7 @@ async function storeMissingImages(
       if (!answer.ok) throw new WorkerFailure('threw', answer.message);
       const trial = answer.trials[0];
       const expected = of.find((row) => row.draw === draw)?.imageHash;
-      if (!trial || trial.imageHash !== expected) throw new WorkerFailure('threw', `Draw ${draw + 1} of level ${level + 1} gave other bits when it was computed again. The method does not repeat itself: it must not depend on a clock, on chance or on the order of draws.`);
+      if (!trial || trial.imageHash !== expected) throw new WorkerFailure('threw', changedBits(level, draw));
       await context.orm.em.fork().transactional((inner) => storeImage(inner, id, level, draw, trial.image));
     }
   }

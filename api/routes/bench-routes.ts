@@ -1,5 +1,5 @@
 import {
-  benchCreateSchema, benchDetailSchema, benchListQuerySchema, benchListSchema, benchParamsSchema, benchUpdateSchema, citationSchema, costEstimateSchema,
+  benchCreateSchema, benchDetailSchema, benchListQuerySchema, benchListSchema, benchParamsSchema, benchUpdateSchema, citationSchema, comparisonQuerySchema, comparisonSchema, costEstimateSchema,
   costQuerySchema, entryCreateSchema, rankingQuerySchema, rankingSchema, seriesQuerySchema, seriesSchema,
 } from '../../shared/contracts/benches.ts';
 import { defineRawRoute, defineRoute, type Route } from '../http/define-route.ts';
@@ -8,6 +8,7 @@ import { rankBench } from '../services/benches/bench-ranking.ts';
 import { benchSeries } from '../services/benches/bench-series.ts';
 import { closeBench, openBench } from '../services/benches/change-bench-state.ts';
 import { citeBench } from '../services/benches/cite-bench.ts';
+import { compareBench } from '../services/benches/compare-bench.ts';
 import { createBench, editBench } from '../services/benches/create-bench.ts';
 import { createEntry } from '../services/benches/create-entry.ts';
 import { estimateCost } from '../services/benches/estimate-cost.ts';
@@ -103,7 +104,15 @@ const readRanking = defineRoute({
   permission: 'content.read', params: benchParamsSchema, query: rankingQuerySchema, response: rankingSchema,
   load: ({ em, params }) => findBenchRow(em, params.slug),
   subject: benchSubject,
-  handle: ({ em, loaded, query }) => rankBench(em, { bench: loaded, noise: query.noise, metric: query.metric ?? loaded.rankingMetric }),
+  handle: ({ em, loaded, query }) => rankBench(em, { bench: loaded, noise: query.noise, metric: query.metric ?? loaded.rankingMetric, over: query.over }),
+});
+
+const readComparison = defineRoute({
+  method: 'get', path: '/benches/:slug/comparison', tag, summary: 'Methods compared over phantoms, or over the draws of one: tests, pairs with intervals, performance profiles',
+  permission: 'content.read', params: benchParamsSchema, query: comparisonQuerySchema, response: comparisonSchema,
+  load: ({ em, params }) => findBenchRow(em, params.slug),
+  subject: benchSubject,
+  handle: ({ em, loaded, query }) => compareBench(em, { bench: loaded, noise: query.noise, metric: query.metric ?? loaded.rankingMetric, over: query.over, phantom: query.phantom }),
 });
 
 const readSeries = defineRoute({
@@ -123,7 +132,7 @@ const downloadRanking = defineRawRoute({
     kind: 'file' as const,
     contentType: 'text/csv; charset=utf-8',
     fileName: `${loaded.slug}-ranking.csv`,
-    body: await rankingCsv(em, { bench: loaded, noise: query.noise, metric: query.metric ?? loaded.rankingMetric, now: deps.clock() }),
+    body: await rankingCsv(em, { bench: loaded, noise: query.noise, metric: query.metric ?? loaded.rankingMetric, over: query.over, now: deps.clock() }),
   }),
 });
 
@@ -149,5 +158,5 @@ const readCitation = defineRoute({
 });
 
 export const benchRoutes: readonly Route[] = [
-  readBenches, addBench, readBench, updateBench, startBench, endBench, addEntry, readCost, readRanking, readSeries, downloadRanking, downloadTable, readCitation,
+  readBenches, addBench, readBench, updateBench, startBench, endBench, addEntry, readCost, readRanking, readComparison, readSeries, downloadRanking, downloadTable, readCitation,
 ];

@@ -1,6 +1,6 @@
-import { checkListSchema, methodListSchema, metricListSchema, noiseModelListSchema, ruleListSchema } from '../../shared/contracts/catalogue.ts';
+import { checkListSchema, methodListSchema, metricListSchema, noiseModelListSchema, ruleListSchema, statisticListSchema } from '../../shared/contracts/catalogue.ts';
 import { defineRoute, type Route } from '../http/define-route.ts';
-import { listChecks, listMethods, listMetrics, listNoiseModels, listRules } from '../services/catalogue/catalogue.ts';
+import { listChecks, listMethods, listMetrics, listNoiseModels, listRules, listStatistics } from '../services/catalogue/catalogue.ts';
 
 const tag = 'catalogue';
 
@@ -25,4 +25,9 @@ const readChecks = defineRoute({
   permission: 'public', response: checkListSchema, handle: () => ({ items: listChecks() }),
 });
 
-export const catalogueRoutes: readonly Route[] = [readMethods, readMetrics, readRules, readNoiseModels, readChecks];
+const readStatistics = defineRoute({
+  method: 'get', path: '/statistics', tag, summary: 'Every statistic over draws, phantoms or methods: formula, traps, sources',
+  permission: 'public', response: statisticListSchema, handle: () => ({ items: listStatistics() }),
+});
+
+export const catalogueRoutes: readonly Route[] = [readMethods, readMetrics, readRules, readNoiseModels, readChecks, readStatistics];

@@ -47,7 +47,7 @@ export const benchPhantomSchema = z.object({
   modelErrorFloor: z.number(), line: z.string(), noiseReference: z.string(), dataKind: z.string(),
 });
 export const benchEntrySchema = z.object({
-  /** Stable index of the entry in the bench: colour and marker follow it. */
+  /** Mark of the solver (shared/domain/glyphs.ts); its colour gives way where another entry of the bench has it. */
   glyph: z.int(),
   solver: z.object({ slug: slugSchema, id: idSchema, name: z.string(), version: z.int(), methodName: z.string() }), group: groupRefSchema,
   runs: z.array(z.object({ run: idSchema, phantom: slugSchema, state: z.enum(runStates), review: z.enum(reviewStates), done: z.int(), total: z.int(), failure: z.string().nullable() })),
@@ -61,15 +61,32 @@ export const benchDetailSchema = benchSummarySchema.extend({
 });
 export type BenchDetail = z.infer<typeof benchDetailSchema>;
 
-export const rankingQuerySchema = z.strictObject({ noise: z.coerce.number<string>().min(1e-8).max(1).default(0.01), metric: metricKeySchema.optional() });
-/** GET /benches/:slug/ranking?noise=&metric= */
+/** What a phantom's figure is: the median over draws at the level nearest to the noise, or the mean of the medians over the ladder above the model-error floor. */
+export const rankedOver = ['level', 'ladder'] as const;
+export const rankingQuerySchema = z.strictObject({ noise: z.coerce.number<string>().min(1e-8).max(1).default(0.01), metric: metricKeySchema.optional(), over: z.enum(rankedOver).default('level') });
+/** Friedman's test with Nemenyi's distance over blocks. */
+export const separationTestSchema = z.object({
+  /** 'Friedman with Nemenyi distance over n phantoms', or 'No test'. */
+  name: z.string(), blocks: z.int(),
+  /** Blocks with which the tests can reach 5 % at all; below it `enough` is false, and no winner is named. */
+  fewest: z.int().nullable(), enough: z.boolean(),
+  chiSquare: z.number().nullable(),
+  /** F of Iman and Davenport; null where it is infinite or there is no test. */
+  statistic: z.number().nullable(), pValue: z.number().nullable(),
+  /** p is counted over all orders, not approximated by F. */
+  exact: z.boolean(), criticalDifference: z.number().nullable(), separable: z.boolean(), words: z.string(),
+});
+export type SeparationTestWire = z.infer<typeof separationTestSchema>;
+/** GET /benches/:slug/ranking?noise=&metric=&over= */
 export const rankingSchema = z.object({
   noise: z.number(), metric: metricKeySchema, interpolated: z.boolean(),
   /** Nearest ladder level: pairs, wins and images are of this level. */
   level: z.number(), belowFloor: z.boolean(),
+  /** Ranks are over these levels; figures are at the noise. */
+  over: z.enum(rankedOver), levels: z.array(z.number()),
   rows: z.array(z.object({
     glyph: z.int(), solver: z.object({ slug: slugSchema, id: idSchema, name: z.string(), version: z.int() }), group: groupRefSchema,
-    /** Rank shared by a tie group; null below the floor or where runs are missing. */
+    /** Rank shared by a tie group; null below the floor, where runs are missing, or where the phantoms are too few for a winner. Mean ranks are over phantoms. */
     rank: z.int().nullable(), tieGroup: z.int().nullable(), meanRank: z.number().nullable(),
     /** Of the ranking metric over all phantoms and draws. */
     median: z.number().nullable(), p05: z.number().nullable(), p95: z.number().nullable(),
@@ -78,21 +95,47 @@ export const rankingSchema = z.object({
     breakdown: z.number().nullable(), breakdownNote: z.enum(['beyond', 'throughout']).nullable(),
     exponent: z.number().nullable(),
     secondsPerReconstruction: z.number().nullable(), timeRatio: z.number().nullable(),
+    /** On the front of median error and time; null where either is unknown. And the place of a row that is at least as good in both. */
+    onFront: z.boolean().nullable(), dominatedBy: z.int().nullable(),
     review: z.enum(reviewStates), reservations: z.array(z.string()),
     runs: z.array(z.object({ run: idSchema, phantom: slugSchema, state: z.enum(runStates), review: z.enum(reviewStates) })),
     complete: z.boolean(),
   })),
   /** The trivial reconstruction's figure, the baseline. */
   trivial: z.number().nullable(),
-  test: z.object({
-    /** 'Friedman with Nemenyi distance over n paired draws', or why there is none. */
-    name: z.string(), blocks: z.int(), phantoms: z.int(), statistic: z.number().nullable(), pValue: z.number().nullable(), criticalDifference: z.number().nullable(),
-    separable: z.boolean(), words: z.string(),
-  }),
-  /** Share of paired draws that the row's solver wins against the column's, rows and columns in row order. */
+  /** Blocks are phantoms. */
+  test: separationTestSchema,
+  /** Share of paired draws, over all phantoms, that the row's solver wins against the column's, rows and columns in row order. */
   wins: z.array(z.array(z.number().nullable())),
 });
 export type Ranking = z.infer<typeof rankingSchema>;
+
+/** One run a phantom is a block; with `phantom` its draws are the blocks, and the result speaks about that phantom only. */
+export const comparisonQuerySchema = rankingQuerySchema.extend({ phantom: slugSchema.optional() });
+/** GET /benches/:slug/comparison?noise=&metric=&over=&phantom= */
+export const comparisonSchema = z.object({
+  noise: z.number(), metric: metricKeySchema, over: z.enum(rankedOver), level: z.number(), levels: z.array(z.number()), belowFloor: z.boolean(),
+  blocks: z.enum(['phantoms', 'draws']), phantom: z.object({ slug: slugSchema, name: z.string() }).nullable(),
+  /** Complete entries, best first: the order of the ranking. Pairs and profiles name them by their place here. */
+  solvers: z.array(z.object({
+    glyph: z.int(), solver: z.object({ slug: slugSchema, id: idSchema, name: z.string(), version: z.int() }), meanRank: z.number().nullable(), tieGroup: z.int().nullable(),
+  })),
+  test: separationTestSchema,
+  /** Signed ranks of Wilcoxon with Holm's correction over all pairs. */
+  pairs: z.array(z.object({
+    first: z.int(), second: z.int(),
+    /** Share of the blocks that the first wins; a tie is half a win. */
+    wins: z.number(), pValue: z.number(), pHolm: z.number(), separable: z.boolean(),
+    /** First error over second, geometric mean over phantoms of the ratio of medians; 95 % by a paired bootstrap over phantoms and draws. */
+    ratio: z.object({ value: z.number(), low: z.number(), high: z.number(), firstBetter: z.number(), separable: z.boolean() }).nullable(), reason: z.string().nullable(),
+  })),
+  /** Blocks that a pair needs so that its corrected p can reach 5 %; `pairWords` says whether there are as many. */
+  fewestPairs: z.int(), pairWords: z.string(), resamples: z.int(),
+  /** Over every phantom and level above the floor; ascending ratios to the best. Null within one phantom, and for scores. */
+  profile: z.object({ problems: z.int(), unsolved: z.int(), items: z.array(z.object({ solver: z.int(), ratios: z.array(z.number()) })) }).nullable(),
+  profileWords: z.string(),
+});
+export type BenchComparison = z.infer<typeof comparisonSchema>;
 
 export const seriesQuerySchema = z.strictObject({ metric: metricKeySchema.optional(), phantom: slugSchema.optional() });
 /** GET /benches/:slug/series?metric=: the stability chart, over all phantoms or one. */

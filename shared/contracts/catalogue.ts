@@ -68,8 +68,16 @@ export const checkDescriptionSchema = z.object({
 });
 export type CheckDescription = z.infer<typeof checkDescriptionSchema>;
 
+export const statisticSchema = z.object({
+  key: z.string(), name: z.string(),
+  /** What is compared or summarised, and over what. */
+  over: z.string(), formula: z.string(), summary: z.string(), traps: z.array(z.string()), sources: z.array(sourceSchema),
+});
+export type StatisticWire = z.infer<typeof statisticSchema>;
+
 export const methodListSchema = z.object({ items: z.array(methodSchema) });
 export const metricListSchema = z.object({ items: z.array(metricSchema) });
 export const ruleListSchema = z.object({ items: z.array(ruleSchema) });
 export const noiseModelListSchema = z.object({ items: z.array(noiseModelSchema) });
 export const checkListSchema = z.object({ items: z.array(checkDescriptionSchema) });
+export const statisticListSchema = z.object({ items: z.array(statisticSchema) });

@@ -36,6 +36,12 @@ export const runSummarySchema = z.object({
 export type RunSummary = z.infer<typeof runSummarySchema>;
 export const runListSchema = z.object({ items: z.array(runSummarySchema), nextCursor: z.string().nullable() });
 
+export const levelMomentsSchema = z.object({
+  biasSquared: z.number().nullable(), variance: z.number().nullable(), meanSquaredError: z.number().nullable(),
+  /** Draws that entered: those with a finite image. */
+  draws: z.int(), reason: z.string().nullable(),
+});
+export type LevelMomentsWire = z.infer<typeof levelMomentsSchema>;
 export const runDetailSchema = runSummarySchema.extend({
   ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: z.string(),
   noiseReference: z.string(), dataKind: z.string(), unit: z.string(), background: z.number(),
@@ -47,6 +53,8 @@ export const runDetailSchema = runSummarySchema.extend({
   /** Trivial reconstruction's value by metric. */
   trivial: z.record(z.string(), z.number().nullable()),
   sheets: z.record(z.string(), stabilitySheetSchema),
+  /** By level: squared bias and variance of the image over draws, relative to ||truth - background||^2; they add up to the mean squared error. Null where not computed. */
+  moments: z.array(levelMomentsSchema.nullable()),
   checks: z.array(checkResultSchema),
   secondsPerReconstruction: z.number().nullable(), timeRatio: z.number().nullable(),
   configuration: configurationSchema,

@@ -44,6 +44,8 @@ export const solverVersionSchema = z.object({
 });
 export const solverSummarySchema = z.object({
   id: idSchema, slug: slugSchema, name: z.string(), group: groupRefSchema, methodName: z.string(), families: z.array(familyKeySchema),
+  /** Its mark (shared/domain/glyphs.ts), the same on every page but for a colour that another one there has. */
+  glyph: z.int(),
   current: solverVersionSchema,
 });
 export type SolverSummary = z.infer<typeof solverSummarySchema>;

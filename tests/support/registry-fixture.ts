@@ -118,12 +118,12 @@ export async function makeBench(app: TestApp, request: BenchRequest): Promise<Ma
   for (const [glyph, entry] of request.entries.entries()) {
     const group = await em.findOneOrFail(GroupEntity, { slug: await groupOf(entry.group ?? 'Holm Reference Methods') });
     const configuration = { method: 'tikhonov', parameters: { penalty: 'gradient', smallestAlpha: 1e-5 }, rule: { key: 'fixed' as const, value: 0.001 * (glyph + 1) } };
-    const solver = em.create(SolverEntity, { id: await nextId(em, 'solver'), slug: slugify(entry.solver), name: entry.solver, description: '', group });
+    const solver = em.create(SolverEntity, { id: await nextId(em, 'solver'), slug: slugify(entry.solver), name: entry.solver, description: '', group, glyph });
     const version = em.create(SolverVersionEntity, {
       solver, n: 1, state: 'registered', method: 'tikhonov', configuration, declaration: { notTuned: true, ownMesh: false, sourceMayBePublished: true }, contentHash: contentHash(configuration),
       createdBy: user, registeredAt: app.deps.clock(), withdrawnAt: null, withdrawnReason: null,
     });
-    const row = em.create(EntryEntity, { bench, solverVersion: version, glyph, createdBy: user });
+    const row = em.create(EntryEntity, { bench, solverVersion: version, place: glyph, createdBy: user });
     const runs: string[] = [];
     for (let p = 0; p < phantoms.length; p++) {
       const id = await nextId(em, 'run');

@@ -4,31 +4,31 @@ import { toCsv, type CsvCell } from '../../http/csv.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
 import { levelTable } from '../figures/run-tables.ts';
 import { commentLines } from '../files/comment-lines.ts';
-import { percent, rankBench } from './bench-ranking.ts';
+import { percent, rankBench, type RankedOver } from './bench-ranking.ts';
 import { loadBenchResults, requireMetric } from './bench-results.ts';
 import { caution } from './caution.ts';
 import { phantomsOf, type LoadedBench } from './find-bench.ts';
 import { noiseWords } from './noise-words.ts';
 
 /** The ranking as it stands at a noise, one row a solver. */
-export async function rankingCsv(em: EntityManager, input: { readonly bench: LoadedBench; readonly noise: number; readonly metric: string; readonly now: Date }): Promise<string> {
-  const { bench, noise } = input;
+export async function rankingCsv(em: EntityManager, input: { readonly bench: LoadedBench; readonly noise: number; readonly metric: string; readonly over: RankedOver; readonly now: Date }): Promise<string> {
+  const { bench, noise, over } = input;
   const metric = requireMetric(input.metric);
-  const ranking = await rankBench(em, { bench, noise, metric: metric.key });
+  const ranking = await rankBench(em, { bench, noise, metric: metric.key, over });
   const keys = metrics.map(({ key }) => key);
   const header = [
     'rank', 'tie_group', 'mean_rank', 'solver', 'solver_id', 'version', 'group', 'median', 'p05', 'p95', ...keys.map((key) => `median_${key}`), 'breakdown', 'breakdown_note', 'exponent',
-    'seconds_per_reconstruction', 'time_ratio_to_truncated_svd', 'review', 'reservations', 'complete',
+    'seconds_per_reconstruction', 'time_ratio_to_truncated_svd', 'on_error_time_front', 'review', 'reservations', 'complete',
   ];
   const rows = ranking.rows.map((row): CsvCell[] => [
     row.rank, row.tieGroup === null ? null : row.tieGroup + 1, row.meanRank, row.solver.name, row.solver.id, row.solver.version, row.group.name, row.median, row.p05, row.p95, ...keys.map((key) => row.medians[key] ?? null),
-    row.breakdown, row.breakdownNote, row.exponent, row.secondsPerReconstruction, row.timeRatio, row.review, row.reservations.join('; '), row.complete,
+    row.breakdown, row.breakdownNote, row.exponent, row.secondsPerReconstruction, row.timeRatio, row.onFront, row.review, row.reservations.join('; '), row.complete,
   ]);
   return (
     preamble(input.bench, input.now) +
     commentLines([
       `Ranked by ${metric.name} (${metric.key}${metric.unit === '' ? '' : `, ${metric.unit}`}) at a noise of ${percent(noise)}${ranking.interpolated ? `, interpolated in log-log; tests are of the nearest level, ${percent(ranking.level)}` : ''}`,
-      `${ranking.test.name}: ${ranking.test.words}`,
+      `${ranking.test.name}: ${ranking.test.words} A block is a phantom: ${over === 'ladder' ? `the mean over ${ranking.levels.map(percent).join(', ')} of its medians over draws` : `its median over draws at ${percent(ranking.level)}`}`,
       `The trivial reconstruction (the background alone) scores ${ranking.trivial ?? 'no figure'}`,
     ]) +
     toCsv(header, rows)

@@ -85,6 +85,6 @@ export async function benchSeries(
 }
 
 /** How rows of a ranking and of the series name an entry. */
-export function entryRefs({ entry, version, solver, group }: BenchEntry) {
-  return { glyph: entry.glyph, solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n }, group: { slug: group.slug, name: group.name } };
+export function entryRefs({ glyph, version, solver, group }: BenchEntry) {
+  return { glyph, solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n }, group: { slug: group.slug, name: group.name } };
 }

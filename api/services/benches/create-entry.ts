@@ -28,9 +28,9 @@ export async function createEntry(em: EntityManager, input: Acting & { readonly 
   await em.transactional(async (inner) => {
     const entries = await inner.find(EntryEntity, { bench: bench.id });
     if (entries.some((entry) => entry.solverVersion.id === version.id)) throw new AppError('duplicate', `'${solver.name}', version ${version.n}, is entered already.`);
-    const glyph = 1 + Math.max(-1, ...entries.map((entry) => entry.glyph));
+    const place = 1 + Math.max(-1, ...entries.map((entry) => entry.place));
     const entry = inner.create(EntryEntity, {
-      bench: inner.getReference(BenchEntity, bench.id), solverVersion: inner.getReference(SolverVersionEntity, version.id), glyph, createdBy: inner.getReference(UserEntity, actor.id),
+      bench: inner.getReference(BenchEntity, bench.id), solverVersion: inner.getReference(SolverVersionEntity, version.id), place, createdBy: inner.getReference(UserEntity, actor.id),
     });
     const row = await inner.findOneOrFail(BenchEntity, bench.id);
     row.revision += 1;
@@ -38,7 +38,7 @@ export async function createEntry(em: EntityManager, input: Acting & { readonly 
     for (const phantomVersion of phantoms) await enqueueRun(inner, { ...input, bench, entry, solverVersion: version, phantomVersion, groupId: solver.group.id });
     recordAudit(inner, {
       actor, at: now, action: 'bench.entered', subject: { type: 'bench', id: bench.id }, groupId: solver.group.id,
-      after: { solver: solver.id, version: version.n, glyph, revision: row.revision }, requestId: input.requestId,
+      after: { solver: solver.id, version: version.n, place, revision: row.revision }, requestId: input.requestId,
     });
     await inner.flush();
   });

@@ -1,4 +1,5 @@
 import type { EntityManager, Loaded } from '@mikro-orm/sqlite';
+import { distinctGlyphs } from '../../../shared/domain/glyphs';
 import type { Subject } from '../../../shared/domain/permissions.ts';
 import { AppError } from '../../../shared/errors.ts';
 import { contentHash } from '../../../solvers/core/hash';
@@ -26,14 +27,18 @@ export interface BenchEntry {
   readonly version: SolverVersion;
   readonly solver: Solver;
   readonly group: Group;
+  /** Mark of the solver on the pages of this bench. */
+  readonly glyph: number;
 }
-/** Entries of a bench in the order of their glyphs, with what was entered and by which group. */
+/** Entries of a bench in the order of entry, with what was entered and by which group. */
 export function entriesOf(bench: LoadedBench): BenchEntry[] {
-  return bench.entries.getItems().map((entry) => {
+  const entered = bench.entries.getItems().map((entry) => {
     const version = entry.solverVersion.getEntity();
     const solver = version.solver.getEntity();
     return { entry, version, solver, group: solver.group.getEntity() };
   });
+  const glyphs = distinctGlyphs(entered.map(({ solver }) => solver.glyph));
+  return entered.map((own, at) => ({ ...own, glyph: glyphs[at]! }));
 }
 
 export async function findBench(em: EntityManager, slug: string): Promise<LoadedBench> {

@@ -90,8 +90,8 @@ export async function showBench(em: EntityManager, input: { readonly bench: Load
     revision: bench.revision,
     contentHash: bench.contentHash,
     phantoms,
-    entries: entriesOf(bench).map(({ entry, version, solver, group }) => ({
-      glyph: entry.glyph,
+    entries: entriesOf(bench).map(({ entry, glyph, version, solver, group }) => ({
+      glyph,
       solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n, methodName: methodName(version.method) },
       group: { slug: group.slug, name: group.name },
       runs: runs

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire } from '../../../shared/contracts/catalogue';
+import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire, StatisticWire } from '../../../shared/contracts/catalogue';
 import { methodChecks, phantomChecks, problemChecks } from '../../../solvers/checks/registry';
 import type { Check } from '../../../solvers/checks/check';
 import type { Method, Metric, ParameterField, Source } from '../../../solvers/core/types';
@@ -7,6 +7,7 @@ import { methods } from '../../../solvers/methods/registry';
 import { metrics } from '../../../solvers/metrics/registry';
 import { noiseModels } from '../../../solvers/noise/registry';
 import { parameterRules } from '../../../solvers/parameter-choice/registry';
+import { statistics } from '../../../solvers/statistics/definitions';
 
 /** The registries in the shape of the wire. They do not change while the server runs. */
 export const listMethods = (): MethodWire[] => methods.map(toMethod);
@@ -25,6 +26,8 @@ export const listRules = (): RuleWire[] =>
     conventions: [...rule.conventions],
     methods: methods.filter((method) => method.capabilities.rules.includes(rule.key)).map((method) => method.key),
   }));
+
+export const listStatistics = (): StatisticWire[] => statistics.map((own) => ({ ...own, traps: [...own.traps], sources: own.sources.map(toSource) }));
 
 export const listChecks = (): CheckDescription[] => [
   ...new Map(Object.values(phantomChecks).flat().map((check) => [check.key, toCheck(check, 'phantom')])).values(),

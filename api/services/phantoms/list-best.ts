@@ -5,7 +5,7 @@ import { AppError } from '../../../shared/errors.ts';
 import { metrics } from '../../../solvers/metrics/registry';
 import { levelStatistics } from '../../../solvers/statistics/error-table';
 import { lossOf } from '../../../solvers/statistics/loss';
-import { interpolateLevels, placeOnLadder } from '../../../solvers/statistics/ranking';
+import { interpolateLevels, placeOnLadder } from '../../../solvers/statistics/ladder-place';
 import type { PhantomVersion } from '../../entities/phantom.ts';
 import { RunEntity } from '../../entities/run.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
@@ -50,7 +50,7 @@ export async function listBest(em: EntityManager, input: { readonly version: Pic
       run: run.id,
       solver: { slug: solver.slug, id: solver.id, name: solver.name },
       group: { slug: solver.group.$.slug, name: solver.group.$.name },
-      glyph: run.entry.$.glyph,
+      glyph: solver.glyph,
       median,
       p05,
       p95,

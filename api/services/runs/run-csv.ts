@@ -1,6 +1,6 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import { metrics } from '../../../solvers/metrics/registry';
-import { toCsv } from '../../http/csv.ts';
+import { toCsv, type CsvCell } from '../../http/csv.ts';
 import { caution } from '../benches/caution.ts';
 import { noiseWords } from '../benches/noise-words.ts';
 import { levelTable } from '../figures/run-tables.ts';
@@ -9,14 +9,22 @@ import { commentLines } from '../files/comment-lines.ts';
 import type { LoadedRun } from './find-run.ts';
 import { listTrials } from './list-trials.ts';
 
-/** The error table, one row a level and metric. */
+const momentRows = [['bias-squared', 'biasSquared'], ['variance', 'variance'], ['mean-squared-error', 'meanSquaredError']] as const;
+
+/** The error table, one row a level and metric; bias and variance after them. */
 export async function runTableCsv(em: EntityManager, run: LoadedRun): Promise<string> {
   const figures = await loadRunFigures(em, run);
   const rows = metrics.flatMap((metric) =>
-    levelTable(figures, run.ladder, metric.key).map((row) => [
+    levelTable(figures, run.ladder, metric.key).map((row): CsvCell[] => [
       metric.key, metric.unit, row.level, row.count, row.median, row.p05, row.p95, row.mean, row.sd, row.worst, row.worstDraw === null ? null : row.worstDraw + 1, run.trivial?.[metric.key] ?? null,
     ]),
   );
+  // One figure a level, not one a draw: it stands where the mean does.
+  for (const [key, of] of momentRows)
+    run.ladder.forEach((level, i) => {
+      const moments = run.levelMoments?.[i];
+      rows.push([key, '', level, moments?.draws ?? null, null, null, null, moments?.[of] ?? null, null, null, null, null]);
+    });
   return preamble(run) + toCsv(['metric', 'unit', 'noise', 'draws', 'median', 'p05', 'p95', 'mean', 'sd', 'worst', 'worst_draw', 'trivial'], rows);
 }
 

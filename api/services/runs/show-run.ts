@@ -42,6 +42,7 @@ export async function showRun(em: EntityManager, input: { readonly run: LoadedRu
     table: Object.fromEntries(metrics.map(({ key }) => [key, levelTable(figures, run.ladder, key)])),
     trivial: Object.fromEntries(metrics.map(({ key }) => [key, trivial[key] ?? null])),
     sheets: runSheets(run, figures),
+    moments: run.ladder.map((_, level) => run.levelMoments?.[level] ?? null),
     checks: run.checks ?? [],
     secondsPerReconstruction: run.secondsPerReconstruction ?? null,
     timeRatio: run.timeRatio ?? null,

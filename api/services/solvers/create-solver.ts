@@ -27,6 +27,7 @@ export async function createSolver(em: EntityManager, input: Acting & { readonly
       name: given.name,
       description: given.description,
       group: inner.getReference(GroupEntity, group.id),
+      glyph: await nextGlyph(inner),
     });
     addVersion(inner, { ...input, solver, n: 1, configuration, hash, declaration: given.declaration, whatChanged: '', register: given.register });
     recordAudit(inner, {
@@ -36,6 +37,12 @@ export async function createSolver(em: EntityManager, input: Acting & { readonly
     await inner.flush();
     return solver.slug;
   });
+}
+
+/** Marks are given in order: as long as there are no more than eight solvers, every one has a shape and a colour of its own. */
+async function nextGlyph(em: EntityManager): Promise<number> {
+  const [last] = await em.find(SolverEntity, {}, { orderBy: { glyph: 'desc' }, limit: 1 });
+  return last ? last.glyph + 1 : 0;
 }
 
 /** The next version. The one before stays as it is. */

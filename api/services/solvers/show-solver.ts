@@ -48,6 +48,7 @@ export function toSolverSummary(solver: LoadedSolver, actor: Actor | null, count
     group: { slug: solver.group.$.slug, name: solver.group.$.name },
     methodName: methodName(current.method),
     families: [...(methods.find((method) => method.key === current.method)?.capabilities.families ?? [])],
+    glyph: solver.glyph,
     current: toVersion(current, counts),
   };
 }

@@ -1,6 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { RunEntity } from '../../../api/entities/run.ts';
-import { rankingSchema, seriesSchema, type Ranking } from '../../../shared/contracts/benches.ts';
+import { comparisonSchema, rankingSchema, seriesSchema, type BenchComparison, type Ranking } from '../../../shared/contracts/benches.ts';
 import { makeBench, type MadeBench } from '../../support/registry-fixture.ts';
 import { startTestApp, type TestApp } from '../../support/test-app.ts';
 
@@ -63,19 +63,38 @@ describe('ranking', () => {
     expect(alpha.secondsPerReconstruction).toBeCloseTo(0.001, 12);
   });
 
-  it('ranks by mean ranks, with the critical difference of Nemenyi, and ties what it cannot separate', async () => {
+  it('does not take draws for phantoms: three phantoms are three blocks, whatever their draws', async () => {
     const ranking = await read('noise=0.01');
-    // Three complete solvers over 18 paired draws. Alpha wins every draw: mean rank 1. Beta beats Gamma where the draw is even: half of them.
-    const ranks = Object.fromEntries(ranking.rows.map((row) => [row.solver.name, [row.rank, row.tieGroup, row.meanRank]]));
-    expect(ranks).toEqual({ Alpha: [1, 0, 1], Beta: [2, 1, 2.5], Gamma: [2, 1, 2.5], 'Half done': [null, null, null] });
-    expect([ranking.rows[0]!.solver.name, ranking.rows.at(-1)!.solver.name]).toEqual(['Alpha', 'Half done']);
-    // Demsar 2006, table 5: q at 0.05 for three methods is 2.343; the published table is rounded, so compare to 1e-3.
-    expect(ranking.test.criticalDifference).toBeCloseTo(2.343 * Math.sqrt((3 * 4) / (6 * 18)), 3);
-    // Friedman's chi-square 12 N / (k (k + 1)) (sum R^2 - k (k + 1)^2 / 4) and the F of Iman and Davenport, as in Demsar 2006.
-    const chiSquare = ((12 * 18) / 12) * (1 + 2.5 * 2.5 * 2 - 12);
-    expect(ranking.test.statistic).toBeCloseTo((17 * chiSquare) / (18 * 2 - chiSquare), 9);
-    expect(ranking.test).toMatchObject({ blocks: 18, phantoms: 3, separable: true });
-    expect(ranking.test.words).toContain('18 paired draws on 3 phantoms');
+    // Alpha wins on each phantom, and the median draw of Beta and Gamma is decided by six draws: mean ranks over three blocks.
+    expect(ranking.test).toMatchObject({ name: 'Friedman with Nemenyi distance over 3 phantoms', blocks: 3, fewest: 3, enough: true, exact: true });
+    expect(ranking.test.words).toContain('three phantoms');
+    // Demsar 2006, table 5: q at 0.05 for three methods is 2.343; the published entry is off by 7e-4, which the root leaves below 5e-3.
+    expect(ranking.test.criticalDifference).toBeCloseTo(2.343 * Math.sqrt((3 * 4) / (6 * 3)), 2);
+    expect(ranking.rows.map((row) => row.solver.name).at(0)).toBe('Alpha');
+    expect(ranking.rows.at(-1)).toMatchObject({ solver: { name: 'Half done' }, rank: null, tieGroup: null, meanRank: null });
+    const meanRanks = Object.fromEntries(ranking.rows.map((row) => [row.solver.name, row.meanRank]));
+    expect(meanRanks['Alpha']).toBe(1);
+    expect(meanRanks['Beta']! + meanRanks['Gamma']!).toBe(5);
+    // Six orders of three: the same one in all blocks has p = 1 / 36, the only one below 5 %.
+    const same = meanRanks['Beta'] === 2 || meanRanks['Beta'] === 3;
+    expect(ranking.test.separable).toBe(same);
+    if (same) expect(ranking.test.pValue).toBeCloseTo(1 / 36, 12);
+    expect(ranking.levels).toEqual([0.01]);
+  });
+
+  it('ranks over the ladder above the floor where asked', async () => {
+    const ranking = await read('noise=0.001&over=ladder');
+    // The floor is 0.2 %: the level of 0.1 % is left out, and the noise at the cursor does not matter to the ranks.
+    expect(ranking).toMatchObject({ over: 'ladder', levels: ladder.slice(1), belowFloor: false });
+    expect(ranking.rows[0]).toMatchObject({ solver: { name: 'Alpha' }, meanRank: 1 });
+  });
+
+  it('says which rows no other beats in both error and time', async () => {
+    const ranking = await read('noise=0.01');
+    const by = (name: string) => ranking.rows.find((row) => row.solver.name === name)!;
+    // Times are 1, 2, 3, 4 ms in the order of entry; errors C = 1, 2, 2, and 0.1 for the one that lacks a run.
+    expect([by('Alpha').onFront, by('Beta').onFront, by('Half done').onFront]).toEqual([true, false, true]);
+    expect(ranking.rows[by('Beta').dominatedBy!]!.solver.name).toBe('Alpha');
   });
 
   it('counts paired wins', async () => {
@@ -165,15 +184,63 @@ describe('series', () => {
   });
 });
 
-describe('few draws', () => {
-  it('says that there is not enough to separate, and gives no winner', async () => {
+describe('one phantom', () => {
+  it('says that phantoms are too few, how many are needed, and gives no winner', async () => {
     const small = await makeBench(app, {
       title: 'Small bench', phantoms: 1, ladder, draws: 3,
       entries: [{ solver: 'First', figures: (at) => ({ 'relative-l2-error': error(1)(at) }) }, { solver: 'Second', figures: (at) => ({ 'relative-l2-error': error(3)(at) }) }],
     });
     const ranking = rankingSchema.parse((await app.visitor.get(`/api/v1/benches/${small.slug}/ranking?noise=0.01`)).body);
-    expect(ranking.test).toMatchObject({ separable: false, pValue: null });
-    expect(ranking.test.words).toMatch(/Not enough phantoms and draws to separate/);
-    expect(new Set(ranking.rows.map((row) => row.rank))).toEqual(new Set([1]));
+    expect(ranking.test).toMatchObject({ separable: false, pValue: null, enough: false, blocks: 1, fewest: 6, criticalDifference: null });
+    expect(ranking.test.words).toBe('Not enough phantoms to separate: one phantom, and for two solvers the tests need at least six to reach 5 %. No winner is named.');
+    expect(ranking.rows.map((row) => [row.solver.name, row.rank, row.tieGroup])).toEqual([['First', null, null], ['Second', null, null]]);
+  });
+});
+
+describe('comparison', () => {
+  const compare = async (query: string): Promise<BenchComparison> => {
+    const answer = await app.visitor.get(`/api/v1/benches/${bench.slug}/comparison?${query}`);
+    expect(answer.status, answer.text).toBe(200);
+    return comparisonSchema.parse(answer.body);
+  };
+  it('has the order, the groups and the test of the ranking', async () => {
+    const [ranking, found] = [await read('noise=0.01'), await compare('noise=0.01')];
+    const complete = ranking.rows.filter((row) => row.complete);
+    expect(found.solvers.map(({ solver, meanRank, tieGroup, glyph }) => [solver.name, meanRank, tieGroup, glyph])).toEqual(complete.map((row) => [row.solver.name, row.meanRank, row.tieGroup, row.glyph]));
+    expect(found.test).toEqual(ranking.test);
+    expect(found).toMatchObject({ blocks: 'phantoms', phantom: null, level: 0.01, levels: [0.01], fewestPairs: 7 });
+    expect(found.pairWords).toBe('Not enough phantoms for signed ranks: 3, and with 3 pairs corrected at least 7 are needed to reach 5 %.');
+    expect(found.pairs.every((pair) => !pair.separable)).toBe(true);
+  });
+  it('gives the ratio of errors with an interval by a paired bootstrap', async () => {
+    const found = await compare('noise=0.01');
+    const place = (name: string) => found.solvers.findIndex(({ solver }) => solver.name === name);
+    const pair = found.pairs.find(({ first, second }) => first === place('Alpha') && second === place('Beta'))!;
+    // Beta's error is twice Alpha's in every draw: so is every resampled median.
+    for (const value of [pair.ratio!.value, pair.ratio!.low, pair.ratio!.high]) expect(value).toBeCloseTo(0.5, 12);
+    expect(pair.ratio).toMatchObject({ firstBetter: 1, separable: true });
+    expect(await compare('noise=0.01')).toEqual(found);
+  });
+  it('has profiles over the phantoms and the levels above the floor', async () => {
+    const { profile, profileWords, solvers } = await compare('noise=0.01');
+    expect(profile!.problems).toBe(phantoms * (ladder.length - 1));
+    const alpha = profile!.items.find((item) => solvers[item.solver]!.solver.name === 'Alpha')!;
+    expect(alpha.ratios).toEqual(Array.from({ length: 15 }, () => 1));
+    expect(profileWords).toBe('15 problems: 3 phantoms at 5 noise levels from the model-error floor of 0.2 % up, median over draws.');
+    expect((await compare('noise=0.01&metric=ssim-score')).profile).toBeNull();
+  });
+  it('within one phantom its draws are the blocks', async () => {
+    const found = await compare(`noise=0.01&phantom=${bench.phantoms[1]}`);
+    expect(found).toMatchObject({ blocks: 'draws', phantom: { slug: bench.phantoms[1] }, profile: null, test: { blocks: draws, enough: true } });
+    // All three on the phantom that 'Half done' has finished too.
+    expect(found.solvers.map(({ solver }) => solver.name)).toContain('Half done');
+    expect(found.test.words).toMatch(/six draws/);
+    expect((await app.visitor.get(`/api/v1/benches/${bench.slug}/comparison?phantom=elsewhere`)).status).toBe(422);
+  });
+  it('compares nothing below the floor', async () => {
+    const found = await compare('noise=0.001');
+    expect(found).toMatchObject({ belowFloor: true, pairs: [] });
+    expect(found.solvers.every(({ meanRank }) => meanRank === null)).toBe(true);
+    expect(found.test.words).toContain('Below the model-error floor');
   });
 });

@@ -1,7 +1,7 @@
-import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire } from '../../../../shared/contracts/catalogue';
+import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire, StatisticWire } from '../../../../shared/contracts/catalogue';
 import { formatNumber } from '../../../lib/format';
 
-export const kinds = ['metrics', 'methods', 'rules', 'noise', 'checks'] as const;
+export const kinds = ['metrics', 'methods', 'rules', 'noise', 'checks', 'statistics'] as const;
 export type Kind = (typeof kinds)[number];
 export const kindNames: Record<Kind, { many: string; line: string }> = {
   metrics: { many: 'Metrics', line: 'figures of one reconstruction' },
@@ -9,6 +9,7 @@ export const kindNames: Record<Kind, { many: string; line: string }> = {
   rules: { many: 'Parameter-choice rules', line: 'how the regularisation parameter is found' },
   noise: { many: 'Noise models', line: 'how a draw is made from clean data' },
   checks: { many: 'Checks', line: 'validations of a problem, a phantom or a run' },
+  statistics: { many: 'Statistics', line: 'how draws are summed up and methods compared' },
 };
 
 export interface Catalogue {
@@ -17,6 +18,7 @@ export interface Catalogue {
   rules: RuleWire[];
   noise: NoiseModelWire[];
   checks: CheckDescription[];
+  statistics: StatisticWire[];
 }
 
 /** One entry of any registry in the shape that the definition page shows. */
@@ -64,6 +66,11 @@ export function definitionsOf(kind: Kind, catalogue: Catalogue): Definition[] {
       return catalogue.checks.map((c) => ({
         kind, key: c.key, name: c.name, summary: c.summary, formula: c.formula, fields: [], sources: c.sources, notes: none,
         facts: [['Applies to', subjects[c.appliesTo]], ['Bound', `${comparisons[c.comparison]} ${formatNumber(c.bound, 2)}`], ['Unit', c.unit || 'none'], ['Key', c.key]],
+      }));
+    case 'statistics':
+      return catalogue.statistics.map((s) => ({
+        kind, key: s.key, name: s.name, summary: s.summary, formula: s.formula, fields: [], sources: s.sources, notes: { title: 'Traps', items: s.traps },
+        facts: [['Over', s.over], ['Key', s.key]],
       }));
   }
 }
