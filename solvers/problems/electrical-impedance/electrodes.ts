@@ -98,6 +98,13 @@ export function placeOfElectrode(geometry: Pick<EitGeometry, 'electrodes' | 'num
   return geometry.numbering === 'clockwise' ? (geometry.electrodes - l) % geometry.electrodes : l;
 }
 
+/** Start and end of each electrode along the body's curve, radii from polar angle 0 counter-clockwise, in the order of the numbering. */
+export function electrodePlaces(geometry: ElectrodeGeometry): { readonly from: number; readonly to: number }[] {
+  const { centres, halfWidth, radius } = electrodeFrame(geometry);
+  const first = bodyCurve(geometry).arcLength((Math.PI * (geometry.electrodeAnglesDeg?.[0] ?? geometry.firstElectrodeDeg)) / 180) / radius;
+  return Array.from(centres, (centre) => ({ from: first + centre - halfWidth, to: first + centre + halfWidth }));
+}
+
 /** Index of the electrode that covers a place of the boundary (arc length, radii), -1 between electrodes. */
 export function electrodeAt(frame: ElectrodeFrame, place: number): number {
   const { centres, halfWidth, boundary } = frame;

@@ -1,5 +1,5 @@
 import { bodyCurve, type ImpedanceBody } from './body-curve';
-import { electrodeFrame, type ElectrodeGeometry } from './electrodes';
+import { electrodePlaces, type ElectrodeGeometry } from './electrodes';
 
 /** What drawings need of a body and its electrodes. Lengths in m, x, y pairs counter-clockwise. */
 export function bodyOutline(geometry: { readonly body: ImpedanceBody }, points: number): Float64Array {
@@ -32,20 +32,18 @@ export interface ElectrodeArc {
  */
 export function electrodeArcs(geometry: ElectrodeGeometry, points = 9): ElectrodeArc[] {
   if (!(Number.isInteger(points) && points >= 2)) throw new RangeError(`An arc needs at least 2 points, not ${points}.`);
-  const { centres, halfWidth, radius } = electrodeFrame(geometry);
   const curve = bodyCurve(geometry);
-  const zero = curve.arcLength((Math.PI * (geometry.electrodeAnglesDeg?.[0] ?? geometry.firstElectrodeDeg)) / 180);
-  return Array.from(centres, (centre) => {
-    const parameter = (offset: number): number => curve.parameterAt(zero + radius * (centre + offset));
+  const { radius } = geometry.body;
+  return electrodePlaces(geometry).map(({ from, to }) => {
     const arc = new Float64Array(2 * points);
     for (let i = 0; i < points; i++) {
-      const { x, y } = curve.point(parameter(((2 * i) / (points - 1) - 1) * halfWidth));
+      const { x, y } = curve.point(curve.parameterAt(radius * (from + ((to - from) * i) / (points - 1))));
       arc[2 * i] = x;
       arc[2 * i + 1] = y;
     }
-    const middle = parameter(0);
+    const middle = curve.parameterAt(0.5 * radius * (from + to));
     const { x, y, dx, dy } = curve.point(middle);
     const speed = Math.sqrt(dx * dx + dy * dy);
-    return { centre: [x, y], normal: [dy / speed, -dx / speed], points: arc, start: parameter(-halfWidth), middle, end: parameter(halfWidth) };
+    return { centre: [x, y], normal: [dy / speed, -dx / speed], points: arc, start: curve.parameterAt(radius * from), middle, end: curve.parameterAt(radius * to) };
   });
 }

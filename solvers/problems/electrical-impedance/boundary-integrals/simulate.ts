@@ -1,13 +1,14 @@
 import type { EitGeometry } from '../../../../shared/domain/geometry/electrical-impedance';
 import type { TruthField } from '../../../truth/truth-field';
 import { solveDense } from '../dense-solve';
+import { electrodePlaces } from '../electrodes';
 import { currentPatterns, measure } from '../patterns';
-import { contactNumber } from '../simulation';
+import { contactNumbers } from '../simulation';
 import { placeElectrodes, type ElectrodeArc } from './electrode-places';
 import type { ResponseDetail } from './electrode-response';
 import type { PanelledCurve } from './kernels';
 import { panelNodes } from './nodes';
-import { smoothScene, type SmoothScene } from './outlines';
+import { smoothScene } from './outlines';
 import type { SmoothCurve } from './smooth-curve';
 import { boundarySystem, type Jump } from './system';
 
@@ -25,9 +26,9 @@ interface BoundaryDetail {
 }
 
 const details: { readonly [K in BoundaryLevel]: BoundaryDetail } = {
-  coarse: { order: 10, tolerance: 1e-6, response: { order: 8, tipShare: 0.05, tipLargest: 0.02 }, parts: 1 },
-  normal: { order: 16, tolerance: 1e-9, response: { order: 12, tipShare: 0.02, tipLargest: 0.01 }, parts: 1 },
-  fine: { order: 16, tolerance: 1e-12, response: { order: 16, tipShare: 0.005, tipLargest: 0.0025 }, parts: 2 },
+  coarse: { order: 8, tolerance: 1e-5, response: { order: 8, tipShare: 0.05, tipLargest: 0.02 }, parts: 1 },
+  normal: { order: 12, tolerance: 1e-8, response: { order: 12, tipShare: 0.02, tipLargest: 0.01 }, parts: 1 },
+  fine: { order: 12, tolerance: 1e-11, response: { order: 16, tipShare: 0.005, tipLargest: 0.0025 }, parts: 2 },
 };
 
 export interface BoundarySimulation {
@@ -64,7 +65,7 @@ export function simulateByBoundaryIntegrals(truth: TruthField, geometry: EitGeom
   const jumps: Jump[] = scene.outlines.map(({ curve, inside, outside }, i) => ({ ...panelled(curve, i + 1), contrast: (inside - outside) / (inside + outside) }));
   const { body } = scene;
   const electrodes = placeElectrodes(
-    electrodeArcs(scene, geometry, truth.background),
+    electrodeArcs(geometry, truth.background),
     { curve: outer.curve, length: body.length / body.radius, parameterAt: (s) => body.parameterAt(s * body.radius), breaks: breaks[0].map((t) => body.arcLength(t) / body.radius) },
     jumps.map(({ nodes }) => nodes),
     tolerance,
@@ -90,16 +91,9 @@ function divide(breaks: readonly number[], parts: number): number[] {
   return result;
 }
 
-function electrodeArcs({ body }: SmoothScene, geometry: EitGeometry, background: number): ElectrodeArc[] {
-  const { electrodes: L, numbering, electrodeCoverage, firstElectrodeDeg } = geometry;
-  const length = body.length / body.radius;
-  const zeta = contactNumber(geometry, background);
-  const first = body.arcLength((firstElectrodeDeg * Math.PI) / 180) / body.radius;
-  const half = (0.5 * electrodeCoverage * length) / L;
-  return Array.from({ length: L }, (_, l) => {
-    const centre = first + ((numbering === 'clockwise' ? -l : l) * length) / L;
-    return { from: centre - half, to: centre + half, zeta };
-  });
+function electrodeArcs(geometry: EitGeometry, background: number): ElectrodeArc[] {
+  const contacts = contactNumbers(geometry, background);
+  return electrodePlaces(geometry).map(({ from, to }, l) => ({ from, to, zeta: contacts[l] }));
 }
 
 /** Rows of voltages with zero mean for rows of currents. @param admittance of unit conductivity, with constants as its null space */
