@@ -3,6 +3,7 @@ import { discrepancyRule } from '../../../solvers/parameter-choice/discrepancy';
 import { gcvRule } from '../../../solvers/parameter-choice/gcv';
 import { lCurveCurvature, lCurveRule } from '../../../solvers/parameter-choice/l-curve';
 import { fixedRule } from '../../../solvers/parameter-choice/fixed';
+import { cumulativePeriodogramRule } from '../../../solvers/parameter-choice/cumulative-periodogram';
 import { quasiOptimality, quasiOptimalityRule } from '../../../solvers/parameter-choice/quasi-optimality';
 import quasi from '../../reference/quasi-optimality.json';
 import { tikhonovResidual } from '../../../solvers/parameter-choice/spectral-data';
@@ -104,5 +105,30 @@ describe('rules at their edges', () => {
   });
   it('refuses the setting of another rule', () => {
     expect(() => gcvRule.chooseAlpha(data, noNoise, { key: 'l-curve' })).toThrow(RangeError);
+  });
+});
+
+// Hansen, Kilmer, Kjeldsen 2006, with the left singular vectors as frequencies: the definition evaluated directly, by brute force.
+describe.each(regularisation.cases.map((item) => [item.id, item] as const))('normalised cumulative periodogram, %s', (_, item) => {
+  const { data, r } = caseSpectrum(item);
+  const distanceOf = (residual: number[]): number => {
+    const whole = residual.reduce((sum, v) => sum + v * v, 0);
+    let partial = 0;
+    return Math.hypot(...residual.map((v, i) => (partial += v * v) / whole - (i + 1) / residual.length));
+  };
+  const at = (alpha: number): number => distanceOf(Array.from(data.singularValues, (s, i) => ((alpha * alpha) / (s * s + alpha * alpha)) * data.coefficients[i]));
+  it('has a smaller distance than every alpha of a fine grid, up to the width of the grid', () => {
+    const { alpha } = cumulativePeriodogramRule.chooseAlpha(data, noNoise, { key: 'cumulative-periodogram' });
+    const s = data.singularValues;
+    const low = Math.max(s[s.length - 1], 1e-9 * s[0]);
+    let least = Infinity;
+    for (let k = 0; k <= 2000; k++) least = Math.min(least, at(low * (s[0] / low) ** (k / 2000)));
+    expect(at(alpha!)).toBeLessThanOrEqual(least * 1.01);
+  });
+  it('takes the truncation whose remaining coefficients look whitest', () => {
+    const { index } = cumulativePeriodogramRule.chooseIndex(data, noNoise, { key: 'cumulative-periodogram' }, r);
+    const c = Array.from(data.coefficients.subarray(0, r));
+    const values = Array.from({ length: Math.max(1, Math.min(r, r - 2)) }, (__, k) => distanceOf(c.slice(k + 1)) / Math.sqrt(r - k - 1));
+    expect(index).toBe(values.indexOf(Math.min(...values)) + 1);
   });
 });
