@@ -5,6 +5,7 @@ import type { RunDetail } from '../../shared/contracts/runs';
 import { StabilityChart } from '../components/charts/stability-chart';
 import { ColourBar } from '../components/images/colour-bar';
 import { CropImage } from '../components/images/crop-image';
+import { problemElectrodes } from '../components/images/electrode-layout';
 import { difference, differenceLimit, insidePixels, largest, rangeOf, toPicture, valueScale } from '../components/images/pixels';
 import { Page } from '../components/layout/page';
 import { nearestLevel, ruleScale } from '../components/noise-rule/scale';
@@ -24,7 +25,8 @@ import { PairedDraws } from '../features/compare/components/paired-draws';
 import { disagreement, l2Key, letters, middleDraw, pairs, sharedDraws, spokenVerdict, type Contender } from '../features/compare/model/comparison';
 import { getRunQueryOptions } from '../features/runs/api/get-run';
 import { getRunImageQueryOptions, listTrialsQueryOptions } from '../features/runs/api/get-run-image';
-import { formatError, formatNumber, formatPercent, formatSigned, numberWord, plural } from '../lib/format';
+import { formatError, formatNumber, formatPercent, numberWord, plural } from '../lib/format';
+import { placeWords, withUnit } from '../lib/problem-words';
 import { paths } from '../lib/paths';
 import { useNarrow } from '../lib/use-media';
 import { useSettled } from '../lib/use-settled';
@@ -196,10 +198,10 @@ function Pictures({ runs, first, contenders, level, draw }: { runs: readonly Run
     <>
       <section className="sec" style={{ marginTop: 24 }} aria-labelledby="images-title">
         <h2 className="vh" id="images-title">Images</h2>
-        <Matrix phantom={first.phantom} truth={truth} columns={columns} draw={draw} low={low} high={high} limit={limit} radius={first.grid.bodyRadius} unit={first.unit} electrodes={{ ...first.electrodes }} start={far?.difference ? largest(far.difference) : { x: 0, y: 0 }} />
+        <Matrix phantom={first.phantom} truth={truth} columns={columns} draw={draw} low={low} high={high} limit={limit} unit={first.unit} electrodes={problemElectrodes(first.problem)} grid={first.grid} start={far?.difference ? largest(far.difference) : { x: 0, y: 0 }} />
         <div className="bars">
-          <ColourBar width={280} labels={[formatNumber(low, 2), `${formatNumber(first.background, 2)} background`, `${formatNumber(high, 2)} ${first.unit}`]} label="Scale of truth and reconstructions" />
-          {truth ? <ColourBar map="diverging" width={280} labels={[`\u2212${limit}`, '0', `+${limit} ${first.unit}`]} label="Scale of the differences" /> : null}
+          <ColourBar width={280} labels={[formatNumber(low, 2), `${formatNumber(first.background, 2)} background`, withUnit(formatNumber(high, 2), first.unit)]} label="Scale of truth and reconstructions" />
+          {truth ? <ColourBar map="diverging" width={280} labels={[`\u2212${limit}`, '0', withUnit(`+${limit}`, first.unit)]} label="Scale of the differences" /> : null}
         </div>
       </section>
       {pair && near && far ? (
@@ -218,11 +220,10 @@ type Pair = NonNullable<ReturnType<typeof disagreement>>;
 
 function spotWords(pair: Pair, far: MatrixColumn, run: RunDetail): ReactNode {
   const spot = far.difference ? largest(far.difference) : null;
-  const place = (v: number): string => `${formatSigned(v * 1000, 0).replace('+', '')} mm`;
   return (
     <p className="sm" style={{ fontSize: 13 }}>
       {pair.near.short} and {pair.far.short} differ by <b>{Math.abs(pair.l2Ratio * 100 - 100).toFixed(0)} %</b> in relative L2 and by a factor of <b>{pair.supRatio.toFixed(1)}</b> in L∞.
-      {spot ? ` The largest error of ${pair.far.letter} is ${formatError(spot.value)} ${run.unit} at x ${place(spot.x)}, y ${place(spot.y)}.` : ''}
+      {spot ? ` The largest error of ${pair.far.letter} is ${withUnit(formatError(spot.value), run.unit)} at ${placeWords(run.grid.body, spot)}.` : ''}
     </p>
   );
 }

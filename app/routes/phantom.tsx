@@ -64,7 +64,7 @@ function PhantomPage({ detail }: { detail: PhantomDetail }) {
       <PhantomNotices detail={detail} />
       <PhantomTop detail={detail} simulation={simulation.data} />
       {floor !== null && noise < floor ? <div style={{ marginTop: 16 }}><BelowFloor noise={noise} floor={floor} /></div> : null}
-      {simulation.data ? <SimulatedData simulation={simulation.data} noise={noise} /> : (
+      {simulation.data ? <SimulatedData family={detail.family} simulation={simulation.data} noise={noise} /> : (
         <Section title={`Simulated data at ${formatPercent(noise)} noise`}>{simulation.isError ? <ErrorPanel error={simulation.error} onRetry={() => void simulation.refetch()} /> : <Loading label="Fetching the simulated data" />}</Section>
       )}
       <PhantomReview detail={detail} />

@@ -1,12 +1,11 @@
 import { decodeArray } from '../../shared/domain/array-encoding';
-import { dataKinds } from '../../shared/domain/phantom-definition';
 import type { Replay } from '../../shared/contracts/runs';
 import { prepareRun, recomputeDraw, runLevel, type PreparedRun } from '../../solvers/campaign/run';
 import { errorAgainstParameter } from '../../solvers/campaign/sensitivity';
 import { runHash, type SimulatedPhantom } from '../../solvers/campaign/trial';
 import { canonicalJson } from '../../solvers/core/hash';
 import type { ForwardProblem } from '../../solvers/core/types';
-import { createEitInversion } from '../../solvers/problems/electrical-impedance/inversion-problem';
+import { createProblem } from '../../solvers/problems/registry';
 import type { Answers, ConfigurationSpec, Job, JobKind, JobProgress, PhantomData, ProblemSpec } from './reconstruction-messages';
 
 /** Set while a job is to end early; looked at between draws. */
@@ -64,9 +63,8 @@ export class ReconstructionJobs {
 
   private async recompute(replay: Replay, control: JobControl): Promise<Answers['recompute']> {
     const begin = control.now();
-    const dataKind = dataKinds.find((k) => k === replay.dataKind) ?? 'difference';
-    const ready = this.prepare({ geometry: replay.geometry, background: replay.background, dataKind }, replay.configuration);
-    const phantom = simulated(ready.problem, replay.background, {
+    const ready = this.prepare(replay.problem, replay.configuration);
+    const phantom = simulated(ready.problem, replay.problem.background, {
       contentHash: replay.phantomHash, clean: decodeArray(replay.clean), noiseScale: replay.noiseScale, truth: replay.truth ? decodeArray(replay.truth) : null, targets: replay.targets ?? [],
     });
     const stored = new Map(replay.trials.map((t) => [`${t.level} ${t.draw}`, t.imageHash]));
@@ -104,7 +102,7 @@ export class ReconstructionJobs {
     const key = canonicalJson(spec);
     let problem = this.problems.get(key);
     if (!problem) {
-      problem = createEitInversion(spec.geometry, spec.background, spec.dataKind);
+      problem = createProblem(spec);
       keepNewest(this.problems, key, problem);
     }
     return problem;

@@ -1,15 +1,9 @@
 import type { Replay } from '../../shared/contracts/runs';
-import type { EitGeometry } from '../../shared/domain/geometry/electrical-impedance';
-import type { DataKind } from '../../shared/domain/phantom-definition';
+import type { ProblemDescriptor } from '../../shared/domain/phantom-definition';
 import type { RuleSetting, StopReason, Target } from '../../solvers/core/types';
 
-/** The inversion problem; prepared once for each geometry, background and data kind. */
-export interface ProblemSpec {
-  readonly geometry: EitGeometry;
-  /** S/m. */
-  readonly background: number;
-  readonly dataKind: DataKind;
-}
+/** The inversion problem; prepared once for each family, geometry, background and data kind. */
+export type ProblemSpec = ProblemDescriptor;
 export interface ConfigurationSpec {
   readonly method: string;
   readonly parameters: Readonly<Record<string, number | string>>;
@@ -18,10 +12,10 @@ export interface ConfigurationSpec {
 /** What the independent simulation gives of one phantom version; `truth` null while it is sealed. */
 export interface PhantomData {
   readonly contentHash: string;
-  /** Clean data in the phantom's data kind, V. */
+  /** Clean data in the phantom's data kind. */
   readonly clean: Float64Array;
   readonly noiseScale: number;
-  /** On the inside pixels, S/m. */
+  /** On the inside pixels, in the unit of the unknown. */
   readonly truth: Float64Array | null;
   readonly targets: readonly Target[];
 }
@@ -55,7 +49,7 @@ export interface PreparedAnswer {
   readonly seconds: number;
 }
 export interface ReconstructionAnswer {
-  /** On the inside pixels, S/m. */
+  /** On the inside pixels, in the unit of the unknown. */
   readonly image: Float64Array;
   readonly imageHash: string;
   /** By metric key; empty while the truth is sealed. */

@@ -1,12 +1,13 @@
 import { useEffect, useRef } from 'react';
 import { useTheme } from '../../lib/theme';
 import { formatNumber } from '../../lib/format';
+import { withUnit } from '../../lib/problem-words';
 import { ColourBar } from '../images/colour-bar';
 import { colourMap, type MapName } from '../images/colour-maps';
 
 interface DataMatrixProps {
   label: string;
-  /** Row-major, `rows` patterns by `columns` values. */
+  /** Row-major, `rows` groups by `columns` values. */
   values: readonly number[];
   rows: number;
   columns: number;
@@ -14,10 +15,14 @@ interface DataMatrixProps {
   map?: MapName;
   rowName?: string;
   columnName?: string;
+  /** Width over height of the drawing; square where absent. */
+  aspect?: number;
+  /** The first row lies at the bottom. */
+  fromBelow?: boolean;
 }
 
-/** Data as a matrix, one row a drive pattern. Symmetric limits for the diverging map. */
-export function DataMatrix({ label, values, rows, columns, unit, map = 'sequential', rowName = 'drive pattern', columnName = 'measurement' }: DataMatrixProps) {
+/** Data as a picture, one row a group. Symmetric limits for the diverging map. */
+export function DataMatrix({ label, values, rows, columns, unit, map = 'sequential', rowName = 'drive pattern', columnName = 'measurement', aspect, fromBelow = false }: DataMatrixProps) {
   const canvas = useRef<HTMLCanvasElement>(null);
   const dark = useTheme() === 'dark';
   const finite = values.filter((v) => Number.isFinite(v));
@@ -37,17 +42,18 @@ export function DataMatrix({ label, values, rows, columns, unit, map = 'sequenti
     values.forEach((v, i) => {
       if (!Number.isFinite(v)) return;
       const colour = colours[Math.min(255, Math.max(0, Math.round(((v - low) / (high - low)) * 255)))] ?? [0, 0, 0];
-      image.data.set([...colour, 255], 4 * i);
+      const row = Math.floor(i / columns);
+      image.data.set([...colour, 255], 4 * ((fromBelow ? rows - 1 - row : row) * columns + (i % columns)));
     });
     context.putImageData(image, 0, 0);
-  }, [values, rows, columns, map, dark, low, high]);
+  }, [values, rows, columns, map, dark, low, high, fromBelow]);
   return (
     <div className="dmat">
-      <div role="img" aria-label={`${label}: ${rows} by ${columns}, from ${formatNumber(least)} to ${formatNumber(most)} ${unit}`}>
-        <canvas ref={canvas} aria-hidden="true" />
+      <div role="img" aria-label={`${label}: ${rows} by ${columns}, from ${formatNumber(least)} to ${formatNumber(most)}${unit ? ` ${unit}` : ''}`}>
+        <canvas ref={canvas} aria-hidden="true" style={aspect ? { aspectRatio: String(aspect) } : undefined} />
       </div>
       <p className="sm">rows: {rowName}, columns: {columnName}</p>
-      <ColourBar map={map} labels={map === 'diverging' ? [formatNumber(low, 2), '0', `${formatNumber(high, 2)} ${unit}`] : [formatNumber(low, 2), `${formatNumber(high, 2)} ${unit}`]} width={300} />
+      <ColourBar map={map} labels={map === 'diverging' ? [formatNumber(low, 2), '0', withUnit(formatNumber(high, 2), unit)] : [formatNumber(low, 2), withUnit(formatNumber(high, 2), unit)]} width={300} />
     </div>
   );
 }

@@ -1,10 +1,29 @@
 import { useEffect, useRef } from 'react';
 import { useTheme } from '../../lib/theme';
 import { colourMap, type MapName } from './colour-maps';
-import { valueAt, type Picture } from './pixels';
+import { LineImage } from './line-image';
+import { bodyOf, valueAt, type Picture } from './pixels';
 
-/** A square window into a picture, with the target mark at its place. Half-width and centre in m. */
-export function CropImage({ label, picture, map = 'sequential', low, high, centre, halfWidth, mark }: { label: string; picture: Picture; map?: MapName; low: number; high: number; centre: { x: number; y: number }; halfWidth: number; mark?: { x: number; y: number } }) {
+interface CropProps {
+  label: string;
+  picture: Picture;
+  map?: MapName;
+  low: number;
+  high: number;
+  centre: { x: number; y: number };
+  halfWidth: number;
+  mark?: { x: number; y: number };
+}
+
+/** A window into a picture, with the target mark at its place: a square, or of a curve the stretch around it. Half-width and centre in m. */
+export function CropImage(props: CropProps) {
+  const body = bodyOf(props.picture.grid);
+  if (body.kind !== 'interval') return <CropSquare {...props} />;
+  const { centre, halfWidth, ...rest } = props;
+  return <LineImage {...rest} body={body} window={[Math.max(body.from, centre.x - halfWidth), Math.min(body.to, centre.x + halfWidth)]} />;
+}
+
+function CropSquare({ label, picture, map = 'sequential', low, high, centre, halfWidth, mark }: CropProps) {
   const canvas = useRef<HTMLCanvasElement>(null);
   const dark = useTheme() === 'dark';
   const { x: cx, y: cy } = centre;

@@ -1,6 +1,8 @@
-import { createEvaluationGrid } from '../../../solvers/core/grid';
+import type { Body } from '../../../shared/domain/body';
+import { evaluationGrid } from '../../../solvers/core/grid';
+import { bodyReach } from './body-outline';
 
-/** Grid of the images: `ny` rows by `nx` columns, row 0 at the lowest y, lengths in m. */
+/** Grid of the images: `ny` rows by `nx` columns, row 0 at the lowest y, lengths in m; of a line one row, from 0 to 1. */
 export interface PixelGrid {
   readonly nx: number;
   readonly ny: number;
@@ -9,7 +11,13 @@ export interface PixelGrid {
   readonly yMin: number;
   readonly yMax: number;
   readonly bodyRadius: number;
+  /** A disc of `bodyRadius` where it is absent. */
+  readonly body?: Body | undefined;
 }
+
+export const bodyOf = (grid: Pick<PixelGrid, 'body' | 'bodyRadius'>): Body => grid.body ?? { kind: 'disc', radius: grid.bodyRadius };
+/** The unknown is a function of one variable, drawn as a curve. */
+export const isLine = (grid: Pick<PixelGrid, 'body'>): boolean => grid.body?.kind === 'interval';
 
 /** A full picture: NaN outside the body, row 0 at the lowest y. */
 export interface Picture {
@@ -18,7 +26,7 @@ export interface Picture {
 }
 
 /** Indices of the pixels whose centre lies inside the body, ascending: the order in which images are stored. */
-export const insidePixels = (grid: PixelGrid): Int32Array => createEvaluationGrid(grid.bodyRadius, grid.nx).inside;
+export const insidePixels = (grid: PixelGrid): Int32Array => evaluationGrid({ ...grid, body: bodyOf(grid) }).inside;
 
 /**
  * Values on the inside pixels (or on all pixels) as a picture.
@@ -103,11 +111,15 @@ export function differenceLimit(largestError: number): number {
   return Number((step * decade).toPrecision(3));
 }
 
-/** Values along the cut through the centre at an angle (radians) from A to B, `count` places; null outside. */
+/** Values along the cut through the centre at an angle (radians) from A to B, `count` places; null outside. Of a line, all its values. */
 export function cutThrough(picture: Picture, angle: number, count = 121): { position: number; value: number | null }[] {
-  const r = picture.grid.bodyRadius;
+  const { grid, values } = picture;
+  const body = bodyOf(grid);
+  if (body.kind === 'interval') return Array.from(values, (v, i) => ({ position: grid.xMin + ((i + 0.5) * (grid.xMax - grid.xMin)) / grid.nx, value: Number.isNaN(v) ? null : v }));
+  const from = -bodyReach(body, angle + Math.PI);
+  const to = bodyReach(body, angle);
   return Array.from({ length: count }, (_, k) => {
-    const position = -r + (2 * r * k) / (count - 1);
+    const position = from + ((to - from) * k) / (count - 1);
     const inner = position * 0.999;
     return { position, value: valueAt(picture, inner * Math.cos(angle), inner * Math.sin(angle)) };
   });

@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { parseDecimal, shiftDecimal } from '../../../app/lib/decimal';
-import { emptyForm, formFromVersion, storedForm, storeForm, type PhantomForm } from '../../../app/features/phantoms/model/phantom-form';
+import { emptyEit } from '../../../app/features/phantoms/model/form-drafts';
+import { formFromVersion } from '../../../app/features/phantoms/model/form-from-version';
+import { emptyForm, storedForm, storeForm, type PhantomForm } from '../../../app/features/phantoms/model/phantom-form';
 import { readDefinition, readForm, sealRange } from '../../../app/features/phantoms/model/form-request';
 import { frameFacts } from '../../../app/features/phantoms/model/geometry-facts';
 import { phantomDefinitionSchema, type PhantomDefinition } from '../../../shared/domain/phantom-definition';
@@ -49,7 +51,7 @@ describe('the phantom form', () => {
   });
 
   it('names the limit and a value that works, at the path of the request', () => {
-    const { issues } = readDefinition(complete({ contactImpedance: '50', radius: 'wide' }));
+    const { issues } = readDefinition(complete({ eit: { ...emptyEit, contactImpedance: '50', radius: 'wide' } }));
     expect(issues).toContainEqual({ path: 'definition.geometry.contactImpedance', label: 'Contact impedance', message: 'At most 10 Ω m². 0.0024 works.' });
     expect(issues).toContainEqual({ path: 'definition.geometry.body.radius', label: 'Body radius', message: 'Write a number, for example 150.' });
   });
@@ -84,8 +86,8 @@ describe('the phantom form', () => {
     const values = new Map<string, string>();
     const storage = { getItem: (k: string) => values.get(k) ?? null, setItem: (k: string, v: string) => void values.set(k, v), removeItem: (k: string) => void values.delete(k) };
     Object.defineProperty(window, 'sessionStorage', { value: storage, configurable: true });
-    storeForm('new', complete({ name: 'Half typed', radius: '12.' }));
-    expect(storedForm('new')).toMatchObject({ name: 'Half typed', radius: '12.' });
+    storeForm('new', complete({ name: 'Half typed', eit: { ...emptyEit, radius: '12.' } }));
+    expect(storedForm('new')).toMatchObject({ name: 'Half typed', eit: { radius: '12.' } });
     values.set('hadamark.phantom-form.new', '{"name": 3}');
     expect(storedForm('new')).toBeNull();
   });
@@ -96,9 +98,9 @@ describe('the phantom form', () => {
         for (const measurement of ['adjacent-undriven', 'adjacent-all', 'electrode-voltages'] as const) {
           if (pattern === 'trigonometric' && measurement === 'adjacent-undriven') continue;
           const geometry = { electrodes, pattern, measurement, current: 1 };
-          expect(frameFacts(electrodes, pattern, measurement)).toMatchObject({ values: frameSize(geometry), patterns: patternCount(geometry) });
+          expect(frameFacts(geometry)).toMatchObject({ values: frameSize(geometry), patterns: patternCount(geometry) });
         }
     // 16 electrodes, adjacent drive and measurement without driven electrodes: 208 values, half independent (common practice).
-    expect(frameFacts(16, 'adjacent', 'adjacent-undriven')).toMatchObject({ values: 208, independent: 104 });
+    expect(frameFacts({ electrodes: 16, pattern: 'adjacent', measurement: 'adjacent-undriven', current: 1 })).toMatchObject({ values: 208, independent: 104 });
   });
 });

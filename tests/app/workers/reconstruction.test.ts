@@ -28,7 +28,7 @@ function storedRun(): Replay {
   const ladder = [0.001, 0.01];
   const trials = ladder.flatMap((level, levelIndex) => runLevel(prepared, phantom, { benchSeed: 7, phantomHash: 'f'.repeat(64), levelIndex, level, draws: [0, 1] }));
   return {
-    run: 'RN-1', phantomHash: 'f'.repeat(64), geometry, dataKind: 'difference', background: 1, configuration, ladder, draws: 2, seed: 7, noiseScale: 1e-3,
+    run: 'RN-1', phantomHash: 'f'.repeat(64), problem: { family: 'electrical-impedance', geometry, dataKind: 'difference', background: 1 }, configuration, ladder, draws: 2, seed: 7, noiseScale: 1e-3,
     clean: encodeArray(clean), truth: encodeArray(image), targets: [], trials: trials.map((t) => ({ level: t.levelIndex, draw: t.drawIndex, imageHash: t.imageHash })), resultHash: runHash(trials.map((t) => t.imageHash)),
   };
 }
@@ -58,7 +58,7 @@ describe('the client of the worker', () => {
     const port: WorkerPort = { postMessage: (m) => void sent.push(m), terminate: () => { stopped = true; }, onmessage: null, onerror: null };
     return { port, sent, answer: (data: Response) => port.onmessage?.({ data } as MessageEvent<Response>), stopped: () => stopped };
   };
-  const job = { problem: { geometry, background: 1, dataKind: 'difference' as const }, configuration };
+  const job = { problem: { family: 'electrical-impedance' as const, geometry, background: 1, dataKind: 'difference' as const }, configuration };
 
   it('matches answers to jobs and passes progress on', async () => {
     const worker = fake();

@@ -1,4 +1,5 @@
-import { DiscImage, type ElectrodeLayout } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
+import type { ElectrodeLayout } from '../../../components/images/electrode-layout';
 import { ColourBar } from '../../../components/images/colour-bar';
 import type { Picture } from '../../../components/images/pixels';
 import { SolverGlyph } from '../../../components/ui/solver-glyph';
@@ -21,7 +22,7 @@ export function Gallery({ items, low, high, background, unit, electrodes }: { it
       <div className="gal">
         {items.map((item) => (
           <figure key={item.key}>
-            <DiscImage label={item.picture ? `${item.name}, ${item.reading}` : `${item.name}: no image`} picture={item.picture} low={low} high={high} electrodes={electrodes} />
+            <BodyImage label={item.picture ? `${item.name}, ${item.reading}` : `${item.name}: no image`} picture={item.picture} low={low} high={high} electrodes={electrodes} />
             <figcaption>
               <b>{item.glyph === null ? null : <SolverGlyph index={item.glyph} size={13} />}{item.name}</b>
               <span>{item.note ?? item.reading}</span>

@@ -1,6 +1,6 @@
 import { Link } from 'react-router-dom';
 import type { BenchDetail } from '../../../../shared/contracts/benches';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
 import { rangeOf, valueScale, type Picture } from '../../../components/images/pixels';
 import { SealedDisc } from '../../../components/ui/notices';
 import { paths } from '../../../lib/paths';
@@ -19,7 +19,7 @@ export function PhantomThumbs({ phantoms, pictures }: { phantoms: BenchDetail['p
         const [low, high] = known ? valueScale(rangeOf([known.picture]), known.background) : [0, 1];
         return (
           <Link key={p.slug} className="ph" to={paths.phantomVersion(p.slug, p.version)}>
-            {p.sealed ? <SealedDisc /> : <DiscImage label={`Ground truth of ${p.name}`} picture={known?.picture ?? null} low={low} high={high} size={62} />}
+            {p.sealed ? <SealedDisc /> : <BodyImage label={`Ground truth of ${p.name}`} picture={known?.picture ?? null} low={low} high={high} size={62} />}
             <div><b>{p.name}</b><span>{p.id}, {p.sealed ? 'sealed' : 'open'}</span></div>
           </Link>
         );

@@ -1,11 +1,13 @@
 import { useState } from 'react';
 import { Link } from 'react-router-dom';
-import { DiscImage, type ElectrodeLayout, type Place } from '../../../components/images/disc-image';
-import { valueAt, type Picture } from '../../../components/images/pixels';
+import { BodyImage, type Place } from '../../../components/images/body-image';
+import type { ElectrodeLayout } from '../../../components/images/electrode-layout';
+import { valueAt, type Picture, type PixelGrid } from '../../../components/images/pixels';
 import { SealedDisc } from '../../../components/ui/notices';
 import { SolverGlyph } from '../../../components/ui/solver-glyph';
-import { formatError, formatSigned } from '../../../lib/format';
+import { formatError, formatNumber, formatSigned } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
+import { placeWords, unitAfter } from '../../../lib/problem-words';
 import type { Contender } from '../model/comparison';
 
 export interface MatrixColumn {
@@ -27,20 +29,23 @@ export interface MatrixProps {
   high: number;
   /** Limit of the difference scale, common to all columns. */
   limit: number;
-  radius: number;
+  grid: PixelGrid;
   unit: string;
-  electrodes: ElectrodeLayout;
+  electrodes: ElectrodeLayout | null;
   /** Where the cross stands until it is moved. */
   start: Place;
 }
 
-const millimetres = (v: number): string => `${formatSigned(v * 1000, 0).replace('+', '')} mm`;
+const reading = (v: number): string => (Math.abs(v) >= 0.1 || v === 0 ? v.toFixed(2).replace('-', '\u2212') : formatNumber(v, 2));
 
 /** Truth beside the reconstructions with their differences; one cross in all images and the values under it. */
-export function Matrix({ phantom, truth, columns, draw, low, high, limit, radius, unit, electrodes, start }: MatrixProps) {
+export function Matrix({ phantom, truth, columns, draw, low, high, limit, grid, unit, electrodes, start }: MatrixProps) {
   const [moved, setCross] = useState<Place | null>(null);
   const cross = moved ?? start;
-  const disc = { low, high, electrodes, cross, onCross: setCross, crossStep: radius * 0.02 };
+  const { body } = grid;
+  const waiting = { picture: null, body, low: 0, high: 1, electrodes };
+  const move = { cross, onCross: setCross, crossStep: grid.bodyRadius * 0.02 };
+  const disc = { low, high, electrodes, ...move };
   const atTruth = truth ? valueAt(truth, cross.x, cross.y) : null;
   const values = columns.map((c) => (c.image ? valueAt(c.image, cross.x, cross.y) : null));
   const best = (pick: (c: MatrixColumn) => number | null): string | null => {
@@ -53,19 +58,19 @@ export function Matrix({ phantom, truth, columns, draw, low, high, limit, radius
     <div className="sheet mat" style={{ '--columns': columns.length }}>
       <div>
         <h3>Truth <em>{phantom.id}</em></h3>
-        {truth ? <DiscImage label={`Ground truth of ${phantom.name}`} picture={truth} {...disc} /> : phantom.sealed ? <SealedDisc size="100%" /> : <DiscImage label="The ground truth is being fetched" picture={null} low={0} high={1} electrodes={electrodes} />}
-        <p className="rowl" style={{ marginTop: 18 }}>At the mark, x {millimetres(cross.x)}, y {millimetres(cross.y)}</p>
+        {truth ? <BodyImage label={`Ground truth of ${phantom.name}`} picture={truth} {...disc} /> : phantom.sealed ? <SealedDisc size="100%" /> : <BodyImage label="The ground truth is being fetched" {...waiting} />}
+        <p className="rowl" style={{ marginTop: 18 }}>At the mark, {placeWords(body, cross)}</p>
         <table className="xh">
           <caption className="vh">Values at the mark</caption>
-          <thead><tr><th scope="col">{unit}</th><th scope="col" className="num">value</th><th scope="col" className="num">off by</th></tr></thead>
+          <thead><tr><th scope="col">{unit || <span className="vh">Of</span>}</th><th scope="col" className="num">value</th><th scope="col" className="num">off by</th></tr></thead>
           <tbody>
-            {truth ? <tr><td>Truth</td><td className="num">{atTruth === null ? '\u2013' : atTruth.toFixed(2)}</td><td /></tr> : null}
+            {truth ? <tr><td>Truth</td><td className="num">{atTruth === null ? '\u2013' : reading(atTruth)}</td><td /></tr> : null}
             {columns.map((c, i) => {
               const v = values[i] ?? null;
               return (
                 <tr key={c.contender.id}>
                   <td><span className="let">{c.contender.letter}</span> {c.contender.short}</td>
-                  <td className="num">{v === null ? '\u2013' : v.toFixed(2)}</td>
+                  <td className="num">{v === null ? '\u2013' : reading(v)}</td>
                   <td className="num"><b>{v === null || atTruth === null ? '' : formatSigned(v - atTruth)}</b></td>
                 </tr>
               );
@@ -80,20 +85,20 @@ export function Matrix({ phantom, truth, columns, draw, low, high, limit, radius
           <div className="pair">
             <div>
               <p className="rowl only-m">Reconstruction</p>
-              {c.image ? <DiscImage label={`Reconstruction by ${c.contender.name}, draw ${draw + 1}`} picture={c.image} {...disc} /> : <DiscImage label={c.note} picture={null} low={0} high={1} electrodes={electrodes} />}
+              {c.image ? <BodyImage label={`Reconstruction by ${c.contender.name}, draw ${draw + 1}`} picture={c.image} under={truth} {...disc} /> : <BodyImage label={c.note} {...waiting} />}
               {c.image ? null : <p className="sm">{c.note}</p>}
             </div>
             {c.difference ? (
               <div>
                 <p className="rowl">Difference to truth</p>
-                <DiscImage label={`Difference of ${c.contender.name} to the truth`} picture={c.difference} map="diverging" electrodes={electrodes} low={-limit} high={limit} cross={cross} onCross={setCross} crossStep={radius * 0.02} />
+                <BodyImage label={`Difference of ${c.contender.name} to the truth`} picture={c.difference} map="diverging" electrodes={electrodes} low={-limit} high={limit} {...move} />
               </div>
             ) : null}
           </div>
           <div className="rd">
             <span>relative L2<b className={c.contender.id === bestL2 ? 'w' : undefined}>{formatError(c.l2)}</b></span>
-            <span>L∞, {unit}<b className={c.contender.id === bestSup ? 'w' : undefined}>{formatError(c.sup)}</b></span>
-            <span>at the mark<b>{values[i] === null || values[i] === undefined ? '\u2013' : values[i]?.toFixed(2)}</b></span>
+            <span>L∞{unitAfter(unit)}<b className={c.contender.id === bestSup ? 'w' : undefined}>{formatError(c.sup)}</b></span>
+            <span>at the mark<b>{values[i] === null || values[i] === undefined ? '\u2013' : reading(values[i])}</b></span>
           </div>
         </div>
       ))}

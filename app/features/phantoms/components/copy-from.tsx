@@ -2,9 +2,11 @@ import { useQueryClient } from '@tanstack/react-query';
 import { useState } from 'react';
 import { Field } from '../../../components/ui/field';
 import { Empty, ErrorPanel, Loading } from '../../../components/ui/notices';
+import { familyNames } from '../../../../shared/domain/families';
 import { getPhantomQueryOptions } from '../api/get-phantom';
 import { usePhantoms } from '../api/list-phantoms';
-import { formFromVersion, type PhantomForm } from '../model/phantom-form';
+import { formFromVersion } from '../model/form-from-version';
+import type { PhantomForm } from '../model/phantom-form';
 
 /** A phantom the reader may read, taken as the start of the form. A sealed truth stays behind. */
 export function CopyFrom({ onCopy }: { onCopy: (form: PhantomForm) => void }) {
@@ -24,7 +26,7 @@ export function CopyFrom({ onCopy }: { onCopy: (form: PhantomForm) => void }) {
       ) : (
         <ul className="copylist">
           {list.data.items.map((p) => (
-            <li key={p.id}><button type="button" onClick={() => copy(p.slug)}><b>{p.name}</b><span className="sm">{p.id}, {p.line}{p.current.sealed ? ', truth sealed' : ''}</span></button></li>
+            <li key={p.id}><button type="button" onClick={() => copy(p.slug)}><b>{p.name}</b><span className="sm">{p.id}, {familyNames[p.family].name.toLowerCase()}: {p.line}{p.current.sealed ? ', truth sealed' : ''}</span></button></li>
           ))}
         </ul>
       )}

@@ -1,15 +1,19 @@
 import { ColourBar } from '../../../components/images/colour-bar';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
 import { Field } from '../../../components/ui/field';
 import { StateShape } from '../../../components/ui/state-mark';
 import { decimalText, parseDecimal } from '../../../lib/decimal';
 import { formatBytes, formatHash, formatNumber } from '../../../lib/format';
 import { useUploadArray } from '../api/upload-files';
 import { fieldId } from '../model/field-id';
-import { truthPath } from '../model/form-request';
+import { bodyHalfSize } from '../../../components/images/body-outline';
+import { familyNames } from '../../../../shared/domain/families';
+import { withUnit } from '../../../lib/problem-words';
+import type { RoundOrRectangle } from '../model/draft-shape';
+import { formBody, formElectrodes } from '../model/form-geometry';
+import { truthPath } from '../model/form-issue';
 import type { FormPart } from './form-part';
 import { UploadFault } from './frames-section';
-import { layoutOf } from './shape-editor';
 import type { TruthPicture } from './use-truth-picture';
 
 const formats = { png: 'Picture, grey values 0 to 1', npy: 'Array file, double', csv: 'Table of numbers' } as const;
@@ -18,10 +22,12 @@ const edges = [['xMin', 'Left edge'], ['xMax', 'Right edge'], ['yMin', 'Lower ed
 /** Ground truth from a picture or an array: what was found in the file, where it lies and what its values mean. */
 export function FileEditor({ form, change, issueAt, truth, backgroundField }: FormPart & { truth: TruthPicture; backgroundField: React.ReactNode }) {
   const upload = useUploadArray();
+  const body = formBody(form);
   const choose = (file: File | undefined) => {
-    if (file) upload.mutate(file, { onSuccess: (array) => change({ array, ...squareExtent(form.radius, array.rows, array.cols), ...(array.format === 'png' && form.scale === '1' && form.offset === '0' ? { scale: '1', offset: form.background } : {}) }) });
+    if (file) upload.mutate(file, { onSuccess: (array) => change({ array, ...squareExtent(body, array.rows, array.cols), ...(array.format === 'png' && form.scale === '1' && form.offset === '0' ? { scale: '1', offset: form.family === 'electrical-impedance' ? form.background : '0' } : {}) }) });
   };
   const { array } = form;
+  const { valueName, valueUnit: unit } = familyNames[form.family];
   const [low, high] = truth.scale;
   const missing = issueAt(`${truthPath}.sha256`);
   const known = array && Number.isFinite(array.min);
@@ -46,7 +52,7 @@ export function FileEditor({ form, change, issueAt, truth, backgroundField }: Fo
             <tbody>
               <tr>
                 <td className="mono">{array.format === 'png' ? 'grey' : 'values'}</td><td>{array.rows} × {array.cols}, double</td>
-                <td className="rng">{known ? `${formatNumber(array.min, 3)} to ${formatNumber(array.max, 3)}, mean ${formatNumber(array.mean, 3)}` : 'as stored'}</td><td>Ground truth</td><td>S/m after scale and offset</td>
+                <td className="rng">{known ? `${formatNumber(array.min, 3)} to ${formatNumber(array.max, 3)}, mean ${formatNumber(array.mean, 3)}` : 'as stored'}</td><td>Ground truth</td><td>{unit ? `${unit} after` : 'after'} scale and offset</td>
               </tr>
             </tbody>
           </table>
@@ -57,16 +63,16 @@ export function FileEditor({ form, change, issueAt, truth, backgroundField }: Fo
       {array ? (
         <div className="sheet gt" style={{ marginTop: 14 }}>
           <div>
-            <DiscImage label="The file in its place on the body" picture={truth.picture} low={low} high={high} electrodes={layoutOf(form)} />
-            <div style={{ marginTop: 10 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(parseDecimal(form.background), 2)} background`, `${formatNumber(high, 2)} S/m`]} /></div>
+            <BodyImage label="The file in its place on the body" picture={truth.picture} body={body ?? undefined} low={low} high={high} electrodes={formElectrodes(form)} />
+            <div style={{ marginTop: 10 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(parseDecimal(form.background), 2)} background`, withUnit(formatNumber(high, 2), unit)]} /></div>
           </div>
           <div className="gt-form">
             <div className="g2">
               {edges.map(([key, label]) => (
                 <Field key={key} id={fieldId(`${truthPath}.extent.${key}`)} label={label} unit="mm" inputMode="decimal" value={form.extent[key]} error={issueAt(`${truthPath}.extent.${key}`)} onChange={(e) => change({ extent: { ...form.extent, [key]: e.target.value } })} />
               ))}
-              <Field id={fieldId(`${truthPath}.scale`)} label="Scale" unit="S/m per unit" inputMode="decimal" value={form.scale} error={issueAt(`${truthPath}.scale`)} help="Conductivity = offset + scale × value." onChange={(e) => change({ scale: e.target.value })} />
-              <Field id={fieldId(`${truthPath}.offset`)} label="Offset" unit="S/m" inputMode="decimal" value={form.offset} error={issueAt(`${truthPath}.offset`)} help={truth.range ? `Gives ${formatNumber(truth.range[0], 3)} to ${formatNumber(truth.range[1], 3)} S/m.` : undefined} onChange={(e) => change({ offset: e.target.value })} />
+              <Field id={fieldId(`${truthPath}.scale`)} label="Scale" unit={unit ? `${unit} per unit` : undefined} inputMode="decimal" value={form.scale} error={issueAt(`${truthPath}.scale`)} help={`${valueName.charAt(0).toUpperCase()}${valueName.slice(1)} = offset + scale × value.`} onChange={(e) => change({ scale: e.target.value })} />
+              <Field id={fieldId(`${truthPath}.offset`)} label="Offset" unit={unit || undefined} inputMode="decimal" value={form.offset} error={issueAt(`${truthPath}.offset`)} help={truth.range ? `Gives ${withUnit(`${formatNumber(truth.range[0], 3)} to ${formatNumber(truth.range[1], 3)}`, unit)}.` : undefined} onChange={(e) => change({ offset: e.target.value })} />
             </div>
             {backgroundField}
             <p className="sm">The first row is the top of the picture. Outside the edges the background holds.</p>
@@ -78,9 +84,8 @@ export function FileEditor({ form, change, issueAt, truth, backgroundField }: Fo
 }
 
 /** The body's square in the file's aspect, so that pixels start square. */
-function squareExtent(radiusText: string, rows: number, cols: number): { extent: { xMin: string; xMax: string; yMin: string; yMax: string } } {
-  const radius = parseDecimal(radiusText);
-  const r = Number.isFinite(radius) && radius > 0 ? radius : 150;
+function squareExtent(body: RoundOrRectangle | null, rows: number, cols: number): { extent: { xMin: string; xMax: string; yMin: string; yMax: string } } {
+  const r = body ? Number((1000 * Math.max(...bodyHalfSize(body))).toPrecision(9)) : 150;
   const x = cols >= rows ? r : (r * cols) / rows;
   const y = rows >= cols ? r : (r * rows) / cols;
   return { extent: { xMin: decimalText(-x), xMax: decimalText(x), yMin: decimalText(-y), yMax: decimalText(y) } };

@@ -9,8 +9,9 @@ import { usePhone } from '../../../lib/use-media';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import { useSavePhantom, type SaveTarget } from '../api/change-phantom';
 import { fieldId } from '../model/field-id';
-import { stepOf, type FormIssue, type FormMode } from '../model/form-request';
-import { forgetForm, type PhantomForm } from '../model/phantom-form';
+import type { FormIssue } from '../model/form-issue';
+import { stepOf, type FormMode } from '../model/form-request';
+import { changeFamily, forgetForm, type PhantomForm } from '../model/phantom-form';
 import { CopyFrom } from './copy-from';
 import { FamilyChoice } from './family-choice';
 import { FramesSection } from './frames-section';
@@ -46,7 +47,7 @@ function targetOf(mode: FormMode, phantom: PhantomDetail | null, group: string):
 
 export function PhantomEditor(props: PhantomEditorProps) {
   const { mode, phantom, storageKey, groups, handle, noise, now, frame, onStored } = props;
-  const [step, setStep] = useState(2);
+  const [step, setStep] = useState(props.mode === 'new' ? 1 : 2);
   const [copying, setCopying] = useState(false);
   const phone = usePhone();
   const editor = usePhantomEditor({ storageKey, initial: props.initial, mode, now, maySimulate: true });
@@ -91,14 +92,14 @@ export function PhantomEditor(props: PhantomEditorProps) {
       {save.isError ? <div style={{ marginBottom: 14 }}><ErrorPanel error={save.error} what={stored ? 'The draft is stored, but' : 'Not saved'} /></div> : null}
       <div className="pn-cols">
         <form onSubmit={(e) => e.preventDefault()} onBlur={(e) => editor.touch(e.target.id)} onChange={(e) => editor.touch((e.target as HTMLElement).id)}>
-          <div {...at(1)}><section style={{ paddingBottom: 26 }}><FamilyChoice /></section></div>
+          <div {...at(1)}><section style={{ paddingBottom: 26 }}><FamilyChoice value={form.family} fixed={mode !== 'new'} onChange={(family) => change((old) => changeFamily(old, family))} /></section></div>
           <div {...at(2)}><TruthSection {...part} truth={editor.truth} /></div>
           <div {...at(3)}><GeometrySection {...part} /></div>
           <div {...at(4)}><FramesSection {...part} /></div>
           <div {...at(5)}><TermsSection {...part} mode={mode} groups={groups} now={now} /></div>
         </form>
         <aside aria-label="Live simulation" data-st={6} className={step === 6 ? 'live sheet stp-on' : 'live sheet'}>
-          <LivePanel live={live} noise={noise} settled={settled} />
+          <LivePanel family={form.family} live={live} noise={noise} settled={settled} />
           <div className="sendbox only-d">
             <Button look="primary" big disabled={!ready} onClick={() => send(true)}>{save.isPending ? 'Submitting' : 'Submit for review'}</Button>
             {reasons}

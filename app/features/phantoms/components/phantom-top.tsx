@@ -1,7 +1,8 @@
 import { useMemo, useState } from 'react';
 import { Link } from 'react-router-dom';
 import { ColourBar } from '../../../components/images/colour-bar';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
+import { problemElectrodes } from '../../../components/images/electrode-layout';
 import { toPicture } from '../../../components/images/pixels';
 import { FactList } from '../../../components/ui/layout';
 import { SealedDisc } from '../../../components/ui/notices';
@@ -10,12 +11,14 @@ import { Segmented } from '../../../components/ui/segmented';
 import { StateMark } from '../../../components/ui/state-mark';
 import { formatDate, formatHash, formatNumber } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
+import { unitAfter, withUnit } from '../../../lib/problem-words';
+import { familyNames } from '../../../../shared/domain/families';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import type { Simulation } from '../../../../shared/contracts/simulations';
 import { decodeArray } from '../../../../shared/domain/array-encoding';
 import { phantomFacts } from '../model/phantom-facts';
 import { colourRange } from '../model/truth-picture';
-import { GeometryFigure } from './geometry-figure';
+import { GeometryPanel } from './geometry-figure';
 
 const figures = [{ value: 'truth', label: 'Ground truth' }, { value: 'geometry', label: 'Geometry' }] as const;
 
@@ -23,28 +26,30 @@ const figures = [{ value: 'truth', label: 'Ground truth' }, { value: 'geometry',
 export function PhantomTop({ detail, simulation }: { detail: PhantomDetail; simulation: Simulation | undefined }) {
   const [figure, setFigure] = useState<'truth' | 'geometry'>('truth');
   const { version } = detail;
-  const { geometry, truth } = version.definition;
+  const { truth, family } = version.definition;
+  const { valueName, valueUnit } = familyNames[family];
+  const electrodes = useMemo(() => problemElectrodes(version.definition), [version.definition]);
+  const line = family === 'integral-equation';
   const picture = useMemo(() => (simulation?.truth ? toPicture(decodeArray(simulation.truth), simulation.grid) : null), [simulation]);
-  const background = truth?.background ?? simulation?.background ?? 1;
+  const background = truth?.background ?? simulation?.background ?? 0;
   const [low, high] = colourRange(simulation?.truthRange ?? null, background);
   const sealed = version.sealed && !truth;
   return (
     <>
       <div className="only-m" style={{ marginBottom: 10 }}><Segmented label="Which figure" value={figure} choices={figures} onChange={setFigure} /></div>
       <section className="sheet ph-top" data-figure={figure}>
+        <GeometryPanel definition={version.definition} />
         <div>
-          <h2>Geometry <span>{geometry.electrodes} electrodes, {geometry.pattern === 'adjacent' ? 'drive pair 1–2 shown' : 'first pattern shown'}</span></h2>
-          <GeometryFigure geometry={geometry} truth={truth} />
-          <p className="sm centre">{geometry.pattern === 'adjacent' ? 'Current lines are schematic: uniform disc, point electrodes. Beyond the outermost runs 1 % of the current, half beyond the seventh.' : 'Current lines are schematic: uniform disc, current cos θ along the edge, equal shares between them.'}</p>
-        </div>
-        <div>
-          <h2>Ground truth <span>conductivity, S/m</span></h2>
+          <h2>Ground truth <span>{valueName}{unitAfter(valueUnit)}</span></h2>
           {sealed ? (
             <div className="sealedbox"><SealedDisc size="62%" /><p className="sm">Withheld until {version.sealedUntil ? formatDate(`${version.sealedUntil}T12:00:00Z`) : 'it opens'}. Curators of its group and reviewers can see it.</p></div>
           ) : (
             <>
-              <DiscImage label={`Ground truth of ${version.name}, from ${formatNumber(simulation?.truthRange?.[0], 3)} to ${formatNumber(simulation?.truthRange?.[1], 3)} S/m`} picture={picture} low={low} high={high} numbered={geometry.electrodes <= 16} electrodes={{ count: geometry.electrodes, coverage: geometry.electrodeCoverage, firstDeg: geometry.firstElectrodeDeg, clockwise: geometry.numbering === 'clockwise' }} />
-              <div style={{ marginTop: 8 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, `${formatNumber(high, 2)} S/m`]} /></div>
+              <BodyImage
+                label={`Ground truth of ${version.name}, from ${withUnit(`${formatNumber(simulation?.truthRange?.[0], 3)} to ${formatNumber(simulation?.truthRange?.[1], 3)}`, valueUnit)}`}
+                picture={picture} body={simulation?.grid.body} low={low} high={high} numbered={electrodes !== null && electrodes.arcs.length <= 16} electrodes={electrodes}
+              />
+              {line ? null : <div style={{ marginTop: 8 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, withUnit(formatNumber(high, 2), valueUnit)]} /></div>}
             </>
           )}
         </div>

@@ -4,12 +4,15 @@ import { decimalText, parseDecimal } from '../../../lib/decimal';
 import { addVertex } from '../model/shape-drag';
 import { fieldLabel, fieldStep, numberKeys, type DraftShape, type NumberKey } from '../model/draft-shape';
 import { fieldId } from '../model/field-id';
-import { shapePath, truthPath } from '../model/form-request';
+import { truthPath } from '../model/form-issue';
+import { shapePath } from '../model/truth-request';
 
 interface Props {
   readonly shapes: readonly DraftShape[];
   readonly selected: string | null;
   readonly range: readonly [number, number];
+  /** Unit of the values; '' for pure numbers. */
+  readonly unit: string;
   readonly onSelect: (id: string) => void;
   readonly onChange: (shape: DraftShape) => void;
   readonly onRemove: (id: string) => void;
@@ -25,7 +28,7 @@ export function swatch(shape: DraftShape, range: readonly [number, number]): str
 
 /** The shapes as numbers: the same data as the disc. */
 export function ShapeTable(props: Props) {
-  const { shapes, selected, range, onSelect, onChange, onRemove, issueAt } = props;
+  const { shapes, selected, range, unit, onSelect, onChange, onRemove, issueAt } = props;
   const faults = shapes.flatMap((shape, i) => [...columns.map((k) => issueAt(shapePath(shape, i, k))), issueAt(`${truthPath}.shapes.${i}.label`), issueAt(`${truthPath}.shapes.${i}.vertices`)].filter((m) => m !== undefined).map((m) => `${shape.label || `Shape ${i + 1}`}: ${m}`));
   return (
     <>
@@ -38,7 +41,7 @@ export function ShapeTable(props: Props) {
             <th scope="col" className="num">y<span>mm</span></th>
             <th scope="colgroup" className="num" colSpan={2}>half-axes<span>mm</span></th>
             <th scope="col" className="num">angle<span>°</span></th>
-            <th scope="col" className="num">value<span>S/m</span></th>
+            <th scope="col" className="num">value{unit ? <span>{unit}</span> : null}</th>
             <th scope="col" className="num" title="Scored for position, resolution and amplitude">target</th>
             <th scope="col" style={{ width: 30 }}><span className="vh">Remove</span></th>
           </tr>
@@ -55,7 +58,7 @@ export function ShapeTable(props: Props) {
               {columns.map((key) => (
                 <td key={key}>
                   {numberKeys(shape.kind).includes(key) ? (
-                    <NumberCell shape={shape} index={i} k={key} onSelect={onSelect} onChange={onChange} fault={issueAt(shapePath(shape, i, key))} />
+                    <NumberCell shape={shape} index={i} k={key} unit={unit} onSelect={onSelect} onChange={onChange} fault={issueAt(shapePath(shape, i, key))} />
                   ) : key === 'a' && shape.kind === 'polygon' ? <span className="sm corners">{shape.vertices.length} corners</span> : null}
                 </td>
               ))}
@@ -71,10 +74,10 @@ export function ShapeTable(props: Props) {
   );
 }
 
-function NumberCell({ shape, index, k, fault, onSelect, onChange }: { shape: DraftShape; index: number; k: NumberKey; fault: string | undefined; onSelect: Props['onSelect']; onChange: Props['onChange'] }) {
+function NumberCell({ shape, index, k, unit, fault, onSelect, onChange }: { shape: DraftShape; index: number; k: NumberKey; unit: string; fault: string | undefined; onSelect: Props['onSelect']; onChange: Props['onChange'] }) {
   return (
     <input
-      id={fieldId(shapePath(shape, index, k))} inputMode="decimal" aria-label={`${shape.label}, ${fieldLabel(shape.kind, k)}`} aria-invalid={fault ? true : undefined} title={fault}
+      id={fieldId(shapePath(shape, index, k))} inputMode="decimal" aria-label={`${shape.label}, ${fieldLabel(shape.kind, k, unit)}`} aria-invalid={fault ? true : undefined} title={fault}
       value={shape[k]}
       onFocus={(e) => { onSelect(shape.id); e.currentTarget.select(); }}
       onChange={(e) => onChange({ ...shape, [k]: e.target.value })}
@@ -112,7 +115,7 @@ function Corners({ shape, onChange }: { shape: DraftShape | undefined; onChange:
 }
 
 /** On phones: one shape at a time, with plus and minus beside each number. */
-export function ShapeSteppers({ shapes, selected, range, onSelect, onChange, onRemove, issueAt }: Props) {
+export function ShapeSteppers({ shapes, selected, range, unit, onSelect, onChange, onRemove, issueAt }: Props) {
   const index = shapes.findIndex((s) => s.id === selected);
   const shape = shapes[index];
   return (
@@ -133,11 +136,11 @@ export function ShapeSteppers({ shapes, selected, range, onSelect, onChange, onR
               const fault = issueAt(shapePath(shape, index, key));
               return (
                 <div className={fault ? 'fld err' : 'fld'} key={key}>
-                  <label htmlFor={`m-${key}`}>{fieldLabel(shape.kind, key)}</label>
+                  <label htmlFor={`m-${key}`}>{fieldLabel(shape.kind, key, unit)}</label>
                   <div className="stp">
-                    <button type="button" aria-label={`${fieldLabel(shape.kind, key)}: less`} onClick={() => step(-1)}>−</button>
+                    <button type="button" aria-label={`${fieldLabel(shape.kind, key, unit)}: less`} onClick={() => step(-1)}>−</button>
                     <input className="t" id={`m-${key}`} inputMode="decimal" aria-invalid={fault ? true : undefined} value={shape[key]} onChange={(e) => onChange({ ...shape, [key]: e.target.value })} />
-                    <button type="button" aria-label={`${fieldLabel(shape.kind, key)}: more`} onClick={() => step(1)}>+</button>
+                    <button type="button" aria-label={`${fieldLabel(shape.kind, key, unit)}: more`} onClick={() => step(1)}>+</button>
                   </div>
                   {fault ? <span className="help">{fault}</span> : null}
                 </div>

@@ -2,7 +2,8 @@ import { useCallback, useDeferredValue, useEffect, useMemo, useState } from 'rea
 import { isApiError } from '../../../lib/api-client';
 import { useLiveSimulation } from '../api/simulate';
 import { fieldId } from '../model/field-id';
-import { labelOf, readDefinition, readForm, type FormIssue, type FormMode } from '../model/form-request';
+import type { FormIssue } from '../model/form-issue';
+import { fieldPath, labelOf, readDefinition, readForm, type FormMode } from '../model/form-request';
 import { storeForm, storedForm, type PhantomForm } from '../model/phantom-form';
 import type { FormPatch } from './form-part';
 import type { LiveState } from './live-panel';
@@ -47,7 +48,10 @@ export function usePhantomEditor({ storageKey, initial, mode, now, maySimulate }
   const serverIssues = useMemo<FormIssue[]>(() => {
     // What the server found holds until the input changes.
     if (!refusal || !isApiError(refusal.error) || refusal.form !== form) return [];
-    return refusal.error.issues.map((issue) => ({ path: issue.path.join('.'), label: labelOf(issue.path.join('.')), message: issue.message }));
+    return refusal.error.issues.map((issue) => {
+      const path = fieldPath(issue.path.join('.'));
+      return { path, label: labelOf(path), message: issue.message };
+    });
   }, [refusal, form]);
 
   const touch = useCallback((id: string) => {
@@ -68,8 +72,8 @@ export function usePhantomEditor({ storageKey, initial, mode, now, maySimulate }
   const definitionText = useMemo(() => (definition ? JSON.stringify(definition) : null), [definition]);
   const restedText = useRested(definitionText);
   const rested = useMemo(() => (restedText ? readRested(restedText, definitionText, definition) : null), [restedText, definitionText, definition]);
-  const { data, checks } = useLiveSimulation(rested, maySimulate);
-  const current = restedText === definitionText && rested !== null;
+  const { data, checks } = useLiveSimulation(rested, form.family, maySimulate);
+  const current = restedText === definitionText && rested?.family === form.family;
   const live: LiveState = {
     simulation: data.data ?? null,
     stale: !current || data.isPlaceholderData || data.isFetching,

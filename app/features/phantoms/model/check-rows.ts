@@ -1,4 +1,5 @@
 import type { CheckResultWire } from '../../../../shared/contracts/common';
+import type { FamilyKey } from '../../../../shared/domain/families';
 import { formatNumber, formatPercent } from '../../../lib/format';
 
 /** The reading of a check: its figure with its unit. */
@@ -21,12 +22,20 @@ export function checkLine(check: Pick<CheckResultWire, 'meaning' | 'bound' | 'co
   return bound ? `${check.meaning.replace(/\.$/, '')}; ${bound}` : check.meaning;
 }
 
+const shape = { name: 'Data finite and of the right shape', how: 'every value of both frames' };
+const gap = { name: 'Discretisations differ', how: 'simulation against inversion' };
+
 /** Checks of a phantom in the order in which they settle, for the rows shown while they are waited for. */
-export const phantomCheckNames: readonly { name: string; how: string }[] = [
-  { name: 'Data finite and of the right shape', how: 'every value of both frames' },
-  { name: 'Reciprocity', how: 'swap drive and measurement' },
-  { name: 'Mesh convergence', how: 'a finer mesh of the same truth' },
-  { name: 'Closed form of the concentric disc', how: 'where the eigenvalues are known' },
-  { name: 'Discretisations differ', how: 'simulation against inversion' },
-  { name: 'Shapes clear of the electrodes', how: 'distance of an outline to the edge' },
-];
+export const phantomCheckNames: Record<FamilyKey, readonly { name: string; how: string }[]> = {
+  'electrical-impedance': [
+    shape,
+    { name: 'Reciprocity', how: 'swap drive and measurement' },
+    { name: 'Mesh convergence', how: 'a finer mesh of the same truth' },
+    { name: 'Closed form of the concentric disc', how: 'where the eigenvalues are known' },
+    gap,
+    { name: 'Shapes clear of the electrodes', how: 'distance of an outline to the edge' },
+  ],
+  'x-ray': [shape, gap],
+  'integral-equation': [shape, gap],
+  deblurring: [shape, gap],
+};

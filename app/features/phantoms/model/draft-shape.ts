@@ -1,11 +1,15 @@
 import { decimalText, parseDecimal, shiftDecimal } from '../../../lib/decimal';
+import type { Body } from '../../../../shared/domain/body';
 import type { Shape } from '../../../../shared/domain/truth-definition';
+import { bodyReach } from '../../../components/images/body-outline';
+
+export type RoundOrRectangle = Exclude<Body, { kind: 'interval' }>;
 
 export type ShapeKind = Shape['kind'];
 export const shapeNames: Record<ShapeKind, string> = { ellipse: 'Ellipse', polygon: 'Polygon', annulus: 'Annulus', bump: 'Smooth bump' };
 
 /**
- * A shape as the editor holds it: what was typed, lengths in mm, angles in degrees, value in S/m. `a` and `b` are the
+ * A shape as the editor holds it: what was typed, lengths in mm, angles in degrees, value in the unit of the family. `a` and `b` are the
  * half-axes, or the inner and outer radius of an annulus. A polygon's vertices are relative to its anchor (x, y), before
  * the turn by `angle`.
  */
@@ -24,7 +28,7 @@ export interface DraftShape {
 }
 export type NumberKey = 'x' | 'y' | 'a' | 'b' | 'angle' | 'value';
 
-/** The numbers of a shape in mm, degrees and S/m; NaN where the text is no number. */
+/** The numbers of a shape in mm, degrees and the unit of the value; NaN where the text is no number. */
 export interface ShapeNumbers {
   readonly x: number;
   readonly y: number;
@@ -50,11 +54,12 @@ export function numberKeys(kind: ShapeKind): readonly NumberKey[] {
   return ['x', 'y', 'a', 'b', 'angle', 'value'];
 }
 
-export function fieldLabel(kind: ShapeKind, key: NumberKey): string {
+/** Name of a field with its unit; `valueUnit` is the family's, '' for a pure number. */
+export function fieldLabel(kind: ShapeKind, key: NumberKey, valueUnit: string): string {
   const annulus = kind === 'annulus';
   const names: Record<NumberKey, string> = {
     x: 'Centre x, mm', y: 'Centre y, mm', a: annulus ? 'Inner radius, mm' : 'Half-axis 1, mm', b: annulus ? 'Outer radius, mm' : 'Half-axis 2, mm',
-    angle: 'Angle, \u00b0', value: 'Value, S/m',
+    angle: 'Angle, \u00b0', value: valueUnit ? `Value, ${valueUnit}` : 'Value',
   };
   return names[key];
 }
@@ -72,7 +77,9 @@ export function newShapeId(): string {
 export function newShape(kind: ShapeKind, bodyRadiusMm: number, background: number, existing: readonly DraftShape[]): DraftShape {
   const r = Number.isFinite(bodyRadiusMm) && bodyRadiusMm > 0 ? bodyRadiusMm : 100;
   const mm = (share: number): string => decimalText(Math.max(1, Math.round(share * r)));
-  const value = Number.isFinite(background) && background > 0 ? background * 1.6 : 1.6;
+  // Apart from the background and, where there is one, in the order of size of the values there are.
+  const largest = Math.max(0, ...existing.map((shape) => Math.abs(parseDecimal(shape.value))).filter(Number.isFinite));
+  const value = Number.isFinite(background) && background > 0 ? background * 1.6 : largest || 1;
   const base = shapeNames[kind];
   const taken = new Set(existing.map((s) => s.label));
   let label = base;
@@ -125,20 +132,33 @@ export function toShape(draft: DraftShape): Shape {
   return { kind: draft.kind, ...common, ...place, semiAxisA: toMetres(n.a), semiAxisB: toMetres(n.b), angleDeg: n.angle };
 }
 
+/** Points of the outline in the body's frame, mm. */
+function outlinePoints(draft: DraftShape): [number, number][] {
+  const n = shapeNumbers(draft);
+  if (draft.kind === 'polygon') return placedVertices(n);
+  const annulus = draft.kind === 'annulus';
+  const turn = annulus ? 0 : n.angle * (Math.PI / 180);
+  return Array.from({ length: 72 }, (_, k): [number, number] => {
+    const t = (k / 72) * 2 * Math.PI;
+    const u = (annulus ? n.b : n.a) * Math.cos(t);
+    const v = n.b * Math.sin(t);
+    return [n.x + u * Math.cos(turn) - v * Math.sin(turn), n.y + u * Math.sin(turn) + v * Math.cos(turn)];
+  });
+}
+
 /** Farthest distance of the shape from the body's centre, mm. */
 export function reach(draft: DraftShape): number {
-  const n = shapeNumbers(draft);
-  if (draft.kind === 'polygon') return Math.max(...placedVertices(n).map(([x, y]) => Math.hypot(x, y)));
-  if (draft.kind === 'annulus') return Math.hypot(n.x, n.y) + n.b;
-  const turn = n.angle * (Math.PI / 180);
-  let far = 0;
-  for (let k = 0; k < 72; k++) {
-    const t = (k / 72) * 2 * Math.PI;
-    const u = n.a * Math.cos(t);
-    const v = n.b * Math.sin(t);
-    far = Math.max(far, Math.hypot(n.x + u * Math.cos(turn) - v * Math.sin(turn), n.y + u * Math.sin(turn) + v * Math.cos(turn)));
+  if (draft.kind === 'annulus') {
+    const n = shapeNumbers(draft);
+    return Math.hypot(n.x, n.y) + n.b;
   }
-  return far;
+  return Math.max(...outlinePoints(draft).map(([x, y]) => Math.hypot(x, y)));
+}
+
+/** Smallest gap between the shape and the body's edge, mm: towards the nearest side of a rectangle, along the ray from the centre of a round body. Negative where the shape reaches beyond. */
+export function gapToEdge(draft: DraftShape, body: RoundOrRectangle): number {
+  if (body.kind === 'disc') return 1000 * body.radius - reach(draft);
+  return Math.min(...outlinePoints(draft).map(([x, y]) => (body.kind === 'rectangle' ? Math.min(500 * body.width - Math.abs(x), 500 * body.height - Math.abs(y)) : 1000 * bodyReach(body, Math.atan2(y, x)) - Math.hypot(x, y))));
 }
 
 /** Moved by whole steps of mm; text that is no number stays as it is. */

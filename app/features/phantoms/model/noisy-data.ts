@@ -7,14 +7,14 @@ import { sphereQuantile } from './noise-band';
 /** The seed of the draw shown where no bench gives one. */
 export const previewSeed = 1;
 
-export type DataView = 'voltages' | 'residual';
+export type DataView = 'frame' | 'residual';
 
 export interface NoisyFrame {
-  /** Without noise, V. */
+  /** Without noise, in the unit of the data. */
   readonly clean: Float64Array;
-  /** Draw 1 at the level, V. */
+  /** Draw 1 at the level. */
   readonly noisy: Float64Array;
-  /** Half-width of the interval that holds 90 % of the draws of one value, V; exact for the Gaussian model of exact norm. */
+  /** Half-width of the interval that holds 90 % of the draws of one value; exact for the Gaussian model of exact norm. */
   readonly half: number;
 }
 
@@ -26,19 +26,20 @@ function nearestLevelIndex(level: number): number {
   return best;
 }
 
-/** The voltages of the frame, or their change from the reference, at a noise level with the phantom's own noise reference. */
+/** The data of the frame, or their change from the reference, at a noise level with the phantom's own noise reference. */
 export function noisyFrame(simulation: Simulation, view: DataView, level: number): NoisyFrame {
   const m = simulation.frame.length;
   const clean = new Float64Array(m);
-  for (let i = 0; i < m; i++) clean[i] = view === 'voltages' ? simulation.frame[i]! : simulation.frame[i]! - simulation.reference[i]!;
+  for (let i = 0; i < m; i++) clean[i] = view === 'frame' ? simulation.frame[i]! : simulation.frame[i]! - simulation.reference[i]!;
   if (!(simulation.noiseScale > 0)) return { clean, noisy: clean.slice(), half: 0 };
   const key = deriveDrawKey(previewSeed, simulation.contentHash, nearestLevelIndex(level), 0);
   return { clean, noisy: gaussianNoise.draw(clean, level, simulation.noiseScale, key).data, half: sphereQuantile(m, 0.9) * level * simulation.noiseScale };
 }
 
 const prefixes = [[1, 'V'], [1e-3, 'mV'], [1e-6, '\u00b5V'], [1e-9, 'nV'], [1e-12, 'pV']] as const;
-/** The unit in which the largest value has one to three digits before the point. */
-export function voltUnit(largest: number): { factor: number; unit: string } {
+/** The unit in which the largest voltage has one to three digits before the point; other data stay as they are. */
+export function dataUnit(largest: number, base: string): { factor: number; unit: string } {
+  if (base !== 'V') return { factor: 1, unit: base };
   const [factor, unit] = prefixes.find(([f]) => largest >= f) ?? prefixes[prefixes.length - 1]!;
   return { factor, unit };
 }
@@ -48,6 +49,6 @@ export function scaledFrame(simulation: Simulation, view: DataView, level: numbe
   const { clean, noisy, half } = noisyFrame(simulation, view, level);
   let largest = 0;
   for (let i = 0; i < clean.length; i++) largest = Math.max(largest, Math.abs(clean[i]!));
-  const { factor, unit } = voltUnit(largest);
+  const { factor, unit } = dataUnit(largest, simulation.dataUnit);
   return { values: Array.from(clean, (v) => v / factor), draw: Array.from(noisy, (v) => v / factor), band: half / factor, unit };
 }

@@ -1,25 +1,21 @@
 import { z } from 'zod';
-import { decimalText, shiftDecimal } from '../../../lib/decimal';
 import { licences } from '../../../../shared/contracts/common';
-import { arrayUploadResponseSchema, frameUploadResponseSchema } from '../../../../shared/contracts/arrays';
-import type { PhantomVersionDetail } from '../../../../shared/contracts/phantoms';
-import { measurementKeys, patternKeys } from '../../../../shared/domain/geometry/electrical-impedance';
+import { frameUploadResponseSchema } from '../../../../shared/contracts/arrays';
+import { familyKeySchema, familyKeys, type FamilyKey } from '../../../../shared/domain/families';
 import { dataKinds, noiseReferences } from '../../../../shared/domain/phantom-definition';
-import { fromShape, newShapeId } from './draft-shape';
+import {
+  deblurringDraftSchema, eitDraftSchema, emptyDeblurring, emptyEit, emptyEquation, emptyTruth, emptyXray, equationDraftSchema, truthDraftKeys, truthDraftSchema, xrayDraftSchema, type TruthDraft,
+} from './form-drafts';
 
 const text = z.string();
-const draftShapeSchema = z.object({
-  id: text, kind: z.enum(['ellipse', 'polygon', 'annulus', 'bump']), label: text, target: z.boolean(), x: text, y: text, a: text, b: text, angle: text, value: text,
-  vertices: z.array(z.tuple([text, text]).readonly()).readonly(),
-});
 
-/** The form as it is typed: numbers stay text until they are read, lengths in mm, coverage in %, current in mA per metre. */
+/** The form as it is typed. Every family keeps its own geometry and, while another is open, its own ground truth. */
 export const phantomFormSchema = z.object({
   group: text, name: text, description: text, licence: z.union([z.literal(''), z.enum(licences)]), whatChanged: text,
-  truthKind: z.enum(['shapes', 'expression', 'array']), background: text, shapes: z.array(draftShapeSchema), expression: text,
-  array: arrayUploadResponseSchema.nullable(), extent: z.object({ xMin: text, xMax: text, yMin: text, yMax: text }), scale: text, offset: text,
-  radius: text, electrodes: z.union([z.literal(8), z.literal(16), z.literal(32)]), coverage: text, firstElectrodeDeg: text, numbering: z.enum(['clockwise', 'counter-clockwise']),
-  contactImpedance: text, pattern: z.enum(patternKeys), current: text, measurement: z.enum(measurementKeys),
+  family: familyKeySchema,
+  ...truthDraftSchema.shape,
+  parked: z.partialRecord(z.enum(familyKeys), truthDraftSchema),
+  eit: eitDraftSchema, xray: xrayDraftSchema, equation: equationDraftSchema, deblurring: deblurringDraftSchema,
   dataKind: z.enum(dataKinds), noiseReference: z.enum(noiseReferences),
   framesOrigin: z.enum(['none', 'tank', 'living']), frames: frameUploadResponseSchema.nullable(), instrument: text,
   ethicsReference: text, ethicsApproved: z.boolean(), deidentified: z.boolean(), currentWithinStandard: z.boolean(),
@@ -27,49 +23,27 @@ export const phantomFormSchema = z.object({
 });
 export type PhantomForm = z.infer<typeof phantomFormSchema>;
 
-export function emptyForm(group = ''): PhantomForm {
+const dataOf = (family: FamilyKey): Pick<PhantomForm, 'dataKind' | 'noiseReference'> =>
+  family === 'electrical-impedance' ? { dataKind: 'difference', noiseReference: 'voltages' } : { dataKind: 'absolute', noiseReference: 'data' };
+
+export function emptyForm(group = '', family: FamilyKey = 'electrical-impedance'): PhantomForm {
   return {
     group, name: '', description: '', licence: '', whatChanged: '',
-    truthKind: 'shapes', background: '1',
-    shapes: [
-      { id: newShapeId(), kind: 'ellipse', label: 'Lobe', target: true, x: '-54', y: '39', a: '41', b: '30', angle: '29', value: '2', vertices: [] },
-      { id: newShapeId(), kind: 'ellipse', label: 'Rod', target: true, x: '60', y: '-39', a: '30', b: '39', angle: '-17', value: '0.38', vertices: [] },
-    ],
-    expression: '1 + 0.9*exp(-((x + 0.045)^2 + (y - 0.0375)^2)/0.0011)',
-    array: null, extent: { xMin: '-150', xMax: '150', yMin: '-150', yMax: '150' }, scale: '1', offset: '0',
-    radius: '150', electrodes: 16, coverage: '34', firstElectrodeDeg: '90', numbering: 'clockwise',
-    contactImpedance: '0.0024', pattern: 'adjacent', current: '5', measurement: 'adjacent-undriven',
-    dataKind: 'difference', noiseReference: 'voltages',
+    family, ...emptyTruth(family), parked: {},
+    eit: emptyEit, xray: emptyXray, equation: emptyEquation, deblurring: emptyDeblurring,
+    ...dataOf(family),
     framesOrigin: 'none', frames: null, instrument: '', ethicsReference: '', ethicsApproved: false, deidentified: false, currentWithinStandard: false,
     sealed: false, sealedUntil: '',
   };
 }
 
-const mm = (metres: number): string => decimalText(shiftDecimal(metres, 3));
+/** The ground truth in the form. */
+export const truthOf = (form: PhantomForm): TruthDraft => Object.fromEntries(truthDraftKeys.map((key) => [key, form[key]])) as TruthDraft;
 
-/** A stored version as the form shows it. A sealed truth that the reader may not see leaves the shapes empty. */
-export function formFromVersion(group: string, version: PhantomVersionDetail): PhantomForm {
-  const { geometry, truth } = version.definition;
-  const start: PhantomForm = {
-    ...emptyForm(group), name: version.name, description: version.description, licence: version.licence,
-    radius: mm(geometry.body.radius), electrodes: geometry.electrodes, coverage: decimalText(shiftDecimal(geometry.electrodeCoverage, 2)),
-    firstElectrodeDeg: decimalText(geometry.firstElectrodeDeg), numbering: geometry.numbering,
-    contactImpedance: decimalText(geometry.contactImpedance), pattern: geometry.pattern, current: decimalText(shiftDecimal(geometry.current, 3)), measurement: geometry.measurement,
-    dataKind: version.definition.dataKind, noiseReference: version.definition.noiseReference,
-    sealed: version.sealedUntil !== null, sealedUntil: version.sealedUntil ?? '', shapes: [],
-  };
-  const frames: Partial<PhantomForm> = version.frames
-    ? { framesOrigin: version.frames.origin, instrument: version.frames.instrument, frames: { ...version.frames, min: 0, max: 0, fileName: '', fileSize: 0, referenceNorm: 0, largestChange: 0 } }
-    : {};
-  if (!truth) return { ...start, ...frames };
-  const background = decimalText(truth.background);
-  if (truth.kind === 'shapes') return { ...start, ...frames, truthKind: 'shapes', background, shapes: truth.shapes.map(fromShape) };
-  if (truth.kind === 'expression') return { ...start, ...frames, truthKind: 'expression', background, expression: truth.expression };
-  return {
-    ...start, ...frames, truthKind: 'array', background, scale: decimalText(truth.scale), offset: decimalText(truth.offset),
-    extent: { xMin: mm(truth.extent.xMin), xMax: mm(truth.extent.xMax), yMin: mm(truth.extent.yMin), yMax: mm(truth.extent.yMax) },
-    array: { sha256: truth.sha256, rows: truth.rows, cols: truth.cols, min: Number.NaN, max: Number.NaN, mean: Number.NaN, format: 'npy', fileName: '', fileSize: 0 },
-  };
+/** Another family: its own ground truth comes back, the one of the old family is kept. Measured frames belong to the old geometry. */
+export function changeFamily(form: PhantomForm, family: FamilyKey): Partial<PhantomForm> {
+  if (family === form.family) return {};
+  return { family, ...(form.parked[family] ?? emptyTruth(family)), parked: { ...form.parked, [form.family]: truthOf(form) }, ...dataOf(family), frames: null, framesOrigin: 'none' };
 }
 
 const storageKey = (key: string): string => `hadamark.phantom-form.${key}`;

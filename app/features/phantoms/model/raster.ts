@@ -1,36 +1,43 @@
-import { placedVertices, shapeNumbers, type DraftShape } from './draft-shape';
+import { bodyReach } from '../../../components/images/body-outline';
+import type { PixelGrid } from '../../../components/images/pixels';
+import { placedVertices, shapeNumbers, type DraftShape, type RoundOrRectangle } from './draft-shape';
 
-type Inside = (x: number, y: number) => number;
+/** How a shape meets what lies below it: `replace` by its value, `add` its value. */
+export type Combine = 'replace' | 'add';
 
-/** Value of the shape at a point over what lies below it, `undefined` where it does not cover. */
-function painter(shape: DraftShape, background: number): ((x: number, y: number) => number | undefined) | null {
+/** Value of the shape at a point (mm) over the value below it. */
+type Painter = (x: number, y: number, below: number) => number;
+
+function painter(shape: DraftShape, background: number, combine: Combine): Painter | null {
   const n = shapeNumbers(shape);
   if (!Number.isFinite(n.value)) return null;
+  const paint = (below: number): number => (combine === 'add' ? below + n.value : n.value);
   if (shape.kind === 'polygon') {
     const vertices = placedVertices(n);
     if (vertices.length < 3 || vertices.some(([x, y]) => !Number.isFinite(x) || !Number.isFinite(y))) return null;
-    return (x, y) => (insidePolygon(vertices, x, y) ? n.value : undefined);
+    return (x, y, below) => (insidePolygon(vertices, x, y) ? paint(below) : below);
   }
   if (![n.x, n.y, n.a, n.b].every(Number.isFinite)) return null;
   if (shape.kind === 'annulus') {
-    return (x, y) => {
+    return (x, y, below) => {
       const r = Math.hypot(x - n.x, y - n.y);
-      return r >= n.a && r <= n.b ? n.value : undefined;
+      return r >= n.a && r <= n.b ? paint(below) : below;
     };
   }
   if (!(n.a > 0) || !(n.b > 0) || !Number.isFinite(n.angle)) return null;
   const turn = (n.angle * Math.PI) / 180;
   const c = Math.cos(turn);
   const s = Math.sin(turn);
-  const square: Inside = (x, y) => {
+  const square = (x: number, y: number): number => {
     const u = ((x - n.x) * c + (y - n.y) * s) / n.a;
     const v = (-(x - n.x) * s + (y - n.y) * c) / n.b;
     return u * u + v * v;
   };
-  if (shape.kind === 'ellipse') return (x, y) => (square(x, y) <= 1 ? n.value : undefined);
-  return (x, y) => {
+  if (shape.kind === 'ellipse') return (x, y, below) => (square(x, y) <= 1 ? paint(below) : below);
+  return (x, y, below) => {
     const q = 1 - square(x, y);
-    return q > 0 ? background + (n.value - background) * q * q : undefined;
+    if (q <= 0) return below;
+    return combine === 'add' ? below + n.value * q * q : background + (n.value - background) * q * q;
   };
 }
 
@@ -44,33 +51,24 @@ function insidePolygon(vertices: readonly (readonly [number, number])[], x: numb
   return inside;
 }
 
-/**
- * The shapes drawn on `size` x `size` pixels over the body's square, row 0 at the lowest y; NaN outside the disc. For the
- * screen only: two by two samples a pixel.
- */
-export function rasterShapes(shapes: readonly DraftShape[], background: number, radiusMm: number, size: number): Float64Array {
-  const painters = shapes.map((shape) => painter(shape, background)).filter((p) => p !== null);
-  const at = (x: number, y: number): number => {
-    for (let i = painters.length - 1; i >= 0; i--) {
-      const value = painters[i]!(x, y);
-      if (value !== undefined) return value;
-    }
-    return background;
-  };
-  return rasterFunction(at, radiusMm, size);
+/** The shapes drawn on a grid over the body, row 0 at the lowest y; NaN outside the body. For the screen only: two by two samples a pixel. */
+export function rasterShapes(shapes: readonly DraftShape[], background: number, combine: Combine, body: RoundOrRectangle, grid: PixelGrid): Float64Array {
+  const painters = shapes.map((shape) => painter(shape, background, combine)).filter((p) => p !== null);
+  return rasterFunction((x, y) => painters.reduce((below, paint) => paint(1000 * x, 1000 * y, below), background), body, grid);
 }
 
-/** Any function of mm coordinates on the same pixels. */
-export function rasterFunction(at: (x: number, y: number) => number, radius: number, size: number): Float64Array {
-  const out = new Float64Array(size * size).fill(Number.NaN);
-  const step = (2 * radius) / size;
-  const quarter = step / 4;
-  for (let j = 0; j < size; j++) {
-    const y = -radius + (j + 0.5) * step;
-    for (let i = 0; i < size; i++) {
-      const x = -radius + (i + 0.5) * step;
-      if (x * x + y * y > radius * radius * 1.004) continue;
-      out[j * size + i] = (at(x - quarter, y - quarter) + at(x + quarter, y - quarter) + at(x - quarter, y + quarter) + at(x + quarter, y + quarter)) / 4;
+/** Any function of coordinates in m on the same pixels. */
+export function rasterFunction(at: (x: number, y: number) => number, body: RoundOrRectangle, { nx, ny, xMin, xMax, yMin, yMax }: PixelGrid): Float64Array {
+  const out = new Float64Array(nx * ny).fill(Number.NaN);
+  const dx = (xMax - xMin) / nx;
+  const dy = (yMax - yMin) / ny;
+  const outside = (x: number, y: number): boolean => body.kind !== 'rectangle' && Math.hypot(x, y) > 1.002 * bodyReach(body, body.kind === 'disc' ? 0 : Math.atan2(y, x));
+  for (let j = 0; j < ny; j++) {
+    const y = yMin + (j + 0.5) * dy;
+    for (let i = 0; i < nx; i++) {
+      const x = xMin + (i + 0.5) * dx;
+      if (outside(x, y)) continue;
+      out[j * nx + i] = (at(x - dx / 4, y - dy / 4) + at(x + dx / 4, y - dy / 4) + at(x - dx / 4, y + dy / 4) + at(x + dx / 4, y + dy / 4)) / 4;
     }
   }
   return out;

@@ -3,7 +3,7 @@ import type { EvaluationGrid, MetricValue } from '../../../../solvers/core/types
 import { createEvaluationGrid } from '../../../../solvers/core/grid';
 import { evaluateMetrics, metrics } from '../../../../solvers/metrics/registry';
 import { linePath, Plot } from '../../../components/charts/plot';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
 import { toPicture } from '../../../components/images/pixels';
 import { formatError } from '../../../lib/format';
 
@@ -54,8 +54,8 @@ export function MetricTrial({ metricKey }: { metricKey: string }) {
   return (
     <div className="sheet">
       <div className="lf">
-        <div><p className="cp">Truth</p><DiscImage label="Truth" picture={picture.truth} low={0} high={2} /></div>
-        <div><p className="cp">Reconstruction</p><DiscImage label="Reconstruction" picture={picture.estimate} low={0} high={2} mark={at ? { x: at[0], y: at[1] } : null} /></div>
+        <div><p className="cp">Truth</p><BodyImage label="Truth" picture={picture.truth} low={0} high={2} /></div>
+        <div><p className="cp">Reconstruction</p><BodyImage label="Reconstruction" picture={picture.estimate} low={0} high={2} mark={at ? { x: at[0], y: at[1] } : null} /></div>
         <div>
           <p className="cp"><span>{metric.short} against the shift</span><span>this blur</span></p>
           <Plot

@@ -1,6 +1,6 @@
 import { useMemo } from 'react';
 import { SmallStability } from '../../../components/charts/stability-chart';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
 import { ButtonLink, Button } from '../../../components/ui/button';
 import { SealedDisc } from '../../../components/ui/notices';
 import { StateMark } from '../../../components/ui/state-mark';
@@ -28,9 +28,9 @@ export function RunLook({ run, noise, onSkip }: { run: WaitingRun; noise: number
         <p className="sm">{run.group.name}</p>
       </div>
       <div className="g">
-        <figure>{pictures && !pictures.truth ? <SealedDisc size="100%" /> : <DiscImage label="Truth" picture={pictures?.truth ?? null} {...scale} />}<figcaption>{pictures && !pictures.truth ? 'sealed' : 'truth'}</figcaption></figure>
-        <figure><DiscImage label="Reconstruction" picture={pictures?.image ?? null} {...scale} /><figcaption>at {formatPercent(ladder[level] ?? noise)}</figcaption></figure>
-        <figure>{pictures && !pictures.truth ? <SealedDisc size="100%" /> : <DiscImage label="Difference" picture={pictures?.difference ?? null} map="diverging" low={-(pictures?.limit ?? 1)} high={pictures?.limit ?? 1} />}<figcaption>difference</figcaption></figure>
+        <figure>{pictures && !pictures.truth ? <SealedDisc size="100%" /> : <BodyImage label="Truth" picture={pictures?.truth ?? null} {...scale} />}<figcaption>{pictures && !pictures.truth ? 'sealed' : 'truth'}</figcaption></figure>
+        <figure><BodyImage label="Reconstruction" picture={pictures?.image ?? null} {...scale} /><figcaption>at {formatPercent(ladder[level] ?? noise)}</figcaption></figure>
+        <figure>{pictures && !pictures.truth ? <SealedDisc size="100%" /> : <BodyImage label="Difference" picture={pictures?.difference ?? null} map="diverging" low={-(pictures?.limit ?? 1)} high={pictures?.limit ?? 1} />}<figcaption>difference</figcaption></figure>
       </div>
       <div className="peek-chart">
         <SmallStability

@@ -2,6 +2,7 @@ import type { LevelStatistics } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { CropImage } from '../../../components/images/crop-image';
 import { formatError, formatPercent } from '../../../lib/format';
+import { withUnit } from '../../../lib/problem-words';
 import type { RunPictures } from '../model/pictures';
 
 /** L2 against L-infinity: what they say of the same draws, and the picture at the spot where the largest error sits. */
@@ -18,7 +19,7 @@ export function Disagreement({ run, level, pictures }: { run: RunDetail; level: 
     <div className="sheet spot">
       <p className="say">
         At {formatPercent(l2.level)} the median error is <b>{formatError(l2.median)}</b> of the contrast in L2 and <b>{formatError(relative)}</b> of the trivial reconstruction's in L∞
-        {' '}({formatError(sup.median)} {run.unit}). {worse} of {sup.count} draws have a spot at least as wrong as the background alone.
+        {' '}({withUnit(formatError(sup.median), run.unit)}). {worse} of {sup.count} draws have a spot at least as wrong as the background alone.
       </p>
       <div className="crops">
         <figure><CropImage label="Truth at the largest error" picture={pictures.truth} low={pictures.low} high={pictures.high} {...crop} /><figcaption>truth</figcaption></figure>

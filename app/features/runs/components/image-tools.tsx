@@ -2,6 +2,7 @@ import type { RunDetail } from '../../../../shared/contracts/runs';
 import { Checkbox } from '../../../components/ui/field';
 import { Segmented } from '../../../components/ui/segmented';
 import { formatNumber, formatPercent } from '../../../lib/format';
+import { withUnit } from '../../../lib/problem-words';
 import type { DrawChoice } from '../api/get-run-image';
 
 interface ImageToolsProps {
@@ -36,7 +37,7 @@ export function ImageTools({ run, level, draw, onDraw, locked, onLock, limit, st
           </select>
         </label>
       ) : null}
-      <span className="check-line"><Checkbox checked={locked !== null} disabled={limit === null} onChange={(event) => onLock(event.target.checked ? limit : null)}>Keep the difference scale at ±{formatNumber(locked ?? limit, 2)} {run.unit}</Checkbox></span>
+      <span className="check-line"><Checkbox checked={locked !== null} disabled={limit === null} onChange={(event) => onLock(event.target.checked ? limit : null)}>Keep the difference scale at ±{withUnit(formatNumber(locked ?? limit, 2), run.unit)}</Checkbox></span>
       <span className="sm">{stored ? `Stored with the run, at ${formatPercent(run.ladder[level] ?? 0)}.` : `Recomputed just now from its seed, at ${formatPercent(run.ladder[level] ?? 0)}.`}</span>
     </div>
   );

@@ -1,8 +1,9 @@
 import { useMemo, useState } from 'react';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { ColourBar } from '../../../components/images/colour-bar';
-import { DiscImage } from '../../../components/images/disc-image';
-import { cutThrough } from '../../../components/images/pixels';
+import { BodyImage } from '../../../components/images/body-image';
+import { problemElectrodes } from '../../../components/images/electrode-layout';
+import { cutThrough, isLine } from '../../../components/images/pixels';
 import { CutChart } from '../../../components/charts/cut-chart';
 import { useParam } from '../../../components/noise-rule/use-noise';
 import { ButtonLink } from '../../../components/ui/button';
@@ -12,6 +13,7 @@ import { ErrorPanel, Loading } from '../../../components/ui/notices';
 import { Segmented } from '../../../components/ui/segmented';
 import { solverLook } from '../../../components/ui/solver-glyph';
 import { formatError, formatPercent } from '../../../lib/format';
+import { noiseReferenceWord, unitAfter } from '../../../lib/problem-words';
 import { usePhone } from '../../../lib/use-media';
 import { useRunImage, type DrawChoice } from '../api/get-run-image';
 import { fixedGroup, nearestLevel, standardGroups, tableGroups } from '../model/error-table';
@@ -49,6 +51,7 @@ const drawFromAddress = (text: string): DrawChoice => (text === 'worst' ? 'worst
 /** A finished run: pictures, checks, table, verdict, provenance, thread. */
 export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; me: string }) {
   const phone = usePhone();
+  const line = isLine(run.grid);
   const level = nearestLevel(run.ladder, noise);
   const [drawText, setDraw] = useParam('draw', 'median');
   const [lockText, setLock] = useParam('scale');
@@ -66,7 +69,7 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
   const drawWords = choice === 'median' ? `median of ${run.draws}` : choice === 'worst' ? `worst of ${run.draws}` : '';
   const cut = pictures ? (
     <CutChart
-      unit={run.unit}
+      unit={run.unit} line={line}
       truth={pictures.truth ? cutThrough(pictures.truth, cutAngle) : null}
       image={cutThrough(pictures.image, cutAngle)}
       colour={solverLook(run.glyph).colour}
@@ -93,7 +96,7 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
           </div>
           {phone ? <ErrorLevels {...table} /> : <ErrorTable {...table} />}
           <p className="sm" style={{ marginTop: 7 }}>
-            Relative errors are over the norm of truth minus background, so the trivial reconstruction has 1. Noise relative to {run.noiseReference === 'difference' ? 'the difference signal' : 'the raw voltages'}; {run.dataKind} data.
+            Relative errors are over the norm of truth minus background, so the trivial reconstruction has 1. Noise relative to {noiseReferenceWord(run.noiseReference)}{run.problem.family === 'electrical-impedance' ? `; ${run.dataKind} data` : ''}.
           </p>
         </section>
         {run.may.review ? (
@@ -131,24 +134,25 @@ function PhoneImage({ run, pictures, cutAngle, cut, position, l2, words }: { run
     <>
       <section className="sheet mimg" aria-label="Image">
         {pictures.truth ? <Segmented label="Which image" value={shownView} onChange={setView} choices={[{ value: 'image', label: 'Reconstruction' }, { value: 'truth', label: 'Truth' }, { value: 'difference', label: 'Difference' }]} /> : <p className="sm">The truth is sealed.</p>}
-        <DiscImage
+        <BodyImage
           label={shownView}
+          under={diverging || shownView === 'truth' ? null : pictures.truth}
           picture={shownView === 'image' ? pictures.image : shownView === 'truth' ? pictures.truth : pictures.difference}
           map={diverging ? 'diverging' : 'sequential'}
           low={diverging ? -pictures.limit : pictures.low}
           high={diverging ? pictures.limit : pictures.high}
-          electrodes={run.electrodes}
+          electrodes={problemElectrodes(run.problem)}
           cutAngle={diverging ? null : cutAngle}
           mark={diverging ? pictures.spot : null}
         />
-        <ColourBar map={diverging ? 'diverging' : 'sequential'} labels={diverging ? differenceLabels(run, pictures) : scaleLabels(run, pictures, words)} />
+        {isLine(run.grid) ? null : <ColourBar map={diverging ? 'diverging' : 'sequential'} labels={diverging ? differenceLabels(run, pictures) : scaleLabels(run, pictures, words)} />}
         <div className="mrd">
           <div><b className="tn">{formatError(l2)}</b><span>relative L2</span></div>
-          <div><b className="tn">{formatError(pictures.spot?.value)}</b><span>L∞, {run.unit}</span></div>
+          <div><b className="tn">{formatError(pictures.spot?.value)}</b><span>L∞{unitAfter(run.unit)}</span></div>
           <div><b className="tn">{position === null ? '–' : (100 * position).toFixed(1)}</b><span>position, % of radius</span></div>
         </div>
       </section>
-      <section className="sheet pad" style={{ marginTop: 14 }}><div className="sh"><h3>Cut from A to B</h3></div>{cut}</section>
+      <section className="sheet pad" style={{ marginTop: 14 }}><div className="sh"><h3>{isLine(run.grid) ? 'Truth and reconstruction' : 'Cut from A to B'}</h3></div>{cut}</section>
     </>
   );
 }

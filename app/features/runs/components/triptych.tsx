@@ -1,9 +1,12 @@
 import type { ReactNode } from 'react';
 import type { RunDetail, TrialWire } from '../../../../shared/contracts/runs';
 import { ColourBar } from '../../../components/images/colour-bar';
-import { DiscImage } from '../../../components/images/disc-image';
+import { BodyImage } from '../../../components/images/body-image';
+import { problemElectrodes } from '../../../components/images/electrode-layout';
 import { SealedDisc } from '../../../components/ui/notices';
+import { isLine } from '../../../components/images/pixels';
 import { formatDate, formatError, formatNumber } from '../../../lib/format';
+import { withUnit } from '../../../lib/problem-words';
 import type { RunPictures } from '../model/pictures';
 
 export interface TriptychProps {
@@ -16,8 +19,8 @@ export interface TriptychProps {
   cut: ReactNode;
 }
 
-export const scaleLabels = (run: RunDetail, p: RunPictures, middle: string): string[] => [formatNumber(p.low, 2), middle, `${formatNumber(p.high, 2)} ${run.unit}`];
-export const differenceLabels = (run: RunDetail, p: RunPictures): string[] => [`−${p.limit}`, '0', `+${p.limit} ${run.unit}`];
+export const scaleLabels = (run: RunDetail, p: RunPictures, middle: string): string[] => [formatNumber(p.low, 2), middle, withUnit(formatNumber(p.high, 2), run.unit)];
+export const differenceLabels = (run: RunDetail, p: RunPictures): string[] => [`−${p.limit}`, '0', withUnit(`+${p.limit}`, run.unit)];
 
 export function SealedTruth({ run }: { run: RunDetail }) {
   return (
@@ -37,34 +40,35 @@ const targetSign = (
 
 /** Truth and reconstruction on one scale, the difference on its own symmetric scale with the largest error marked, and the cut. */
 export function Triptych({ run, trial, drawWords, pictures, cutAngle, cut }: TriptychProps) {
-  const shared = { electrodes: run.electrodes, low: pictures?.low ?? 0, high: pictures?.high ?? 1 };
+  const line = isLine(run.grid);
+  const shared = { electrodes: problemElectrodes(run.problem), body: run.grid.body, low: pictures?.low ?? 0, high: pictures?.high ?? 1 };
   return (
     <section className="sheet trip only-d" aria-label="Truth, reconstruction and difference">
       <div>
         <h3>Truth <span>{run.phantom.id} v{run.phantom.version}</span></h3>
         {pictures && !pictures.truth ? <SealedTruth run={run} /> : (
           <>
-            <DiscImage label={`Truth of ${run.phantom.name}`} picture={pictures?.truth ?? null} cutAngle={pictures ? cutAngle : null} {...shared} />
-            {pictures ? <ColourBar labels={scaleLabels(run, pictures, `background ${formatNumber(run.background, 2)}`)} /> : null}
+            <BodyImage label={`Truth of ${run.phantom.name}`} picture={pictures?.truth ?? null} cutAngle={pictures ? cutAngle : null} {...shared} />
+            {pictures && !line ? <ColourBar labels={scaleLabels(run, pictures, `background ${formatNumber(run.background, 2)}`)} /> : null}
           </>
         )}
       </div>
       <div>
         <h3>Reconstruction <span>{trial ? `draw ${trial.draw + 1}${drawWords ? `, ${drawWords}` : ''}` : ''}</span></h3>
-        <DiscImage label={`Reconstruction by ${run.solver.name}`} picture={pictures?.image ?? null} cutAngle={pictures ? cutAngle : null} {...shared} />
-        {pictures ? <ColourBar labels={scaleLabels(run, pictures, pictures.truth ? 'same scale as truth' : '')} /> : null}
+        <BodyImage label={`Reconstruction by ${run.solver.name}`} picture={pictures?.image ?? null} under={pictures?.truth} cutAngle={pictures ? cutAngle : null} {...shared} />
+        {pictures && !line ? <ColourBar labels={scaleLabels(run, pictures, pictures.truth ? 'same scale as truth' : '')} /> : null}
       </div>
       <div>
         <h3>Difference <span>{trial && pictures?.spot ? <>L2 {formatError(trial.metrics['relative-l2-error'])}, largest {formatError(pictures.spot.value)} at {targetSign}</> : null}</span></h3>
         {pictures && !pictures.difference ? <SealedTruth run={run} /> : (
           <>
-            <DiscImage label="Reconstruction minus truth" picture={pictures?.difference ?? null} map="diverging" low={-(pictures?.limit ?? 1)} high={pictures?.limit ?? 1} electrodes={run.electrodes} mark={pictures?.spot ?? null} />
-            {pictures ? <ColourBar map="diverging" labels={differenceLabels(run, pictures)} /> : null}
+            <BodyImage label="Reconstruction minus truth" picture={pictures?.difference ?? null} map="diverging" body={run.grid.body} low={-(pictures?.limit ?? 1)} high={pictures?.limit ?? 1} electrodes={problemElectrodes(run.problem)} mark={pictures?.spot ?? null} />
+            {pictures && !line ? <ColourBar map="diverging" labels={differenceLabels(run, pictures)} /> : null}
           </>
         )}
       </div>
       <div>
-        <h3>Cut from A to B <span>through the centre</span></h3>
+        {line ? <h3>Both on one scale <span>truth dashed</span></h3> : <h3>Cut from A to B <span>through the centre</span></h3>}
         {cut}
       </div>
     </section>
