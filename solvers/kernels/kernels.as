@@ -1,5 +1,6 @@
 export { multiply, packedBytes } from './product';
 export { backwardFour, factorise, factorPanel, forwardFour } from './cholesky';
+export { addScaled, dot, rowsTimes, timesRows } from './vector';
 export { pairSensitivities } from './sensitivity';
 
 /** The first byte that no kernel keeps for itself. */

@@ -33,12 +33,12 @@ function packFours(from: usize, lane: usize, step: usize, lanes: i32, count: i32
 }
 
 /**
- * C = A B, or C -= A B with every product summed from zero first.
+ * C = A B, or C += A B where `keep` is not zero: then every sum starts from the entry of C.
  * A is read at a + i rowA + k stepA, B at b + k stepB + j colB (bytes); C is row-major with `rowC` bytes a row.
  */
 export function multiply(
   a: usize, rowA: usize, stepA: usize, b: usize, stepB: usize, colB: usize, c: usize, rowC: usize,
-  rows: i32, inner: i32, cols: i32, pack: usize,
+  rows: i32, inner: i32, cols: i32, pack: usize, keep: i32,
 ): void {
   const packB = pack + innerBlock * rowBlock * 8;
   for (let from = 0; from < inner; from += innerBlock) {
@@ -52,7 +52,7 @@ export function multiply(
         for (let i = 0; i < height; i += 4) {
           const at = c + <usize>(top + i) * rowC + (<usize>j << 3);
           if (i + 4 <= height && j + 4 <= cols) {
-            if (from == 0) clearTile();
+            if (from == 0 && !keep) clearTile();
             else
               for (let r: usize = 0; r < 4; r++) {
                 v128.store(tile + (r << 5), v128.load(at + r * rowC));
@@ -67,7 +67,7 @@ export function multiply(
             const deep = <usize>min(4, height - i);
             const wide = <usize>min(4, cols - j);
             clearTile();
-            if (from > 0) for (let r: usize = 0; r < deep; r++) for (let s: usize = 0; s < wide; s++) f64.store(tile + (r << 5) + (s << 3), f64.load(at + r * rowC + (s << 3)));
+            if (from > 0 || keep) for (let r: usize = 0; r < deep; r++) for (let s: usize = 0; s < wide; s++) f64.store(tile + (r << 5) + (s << 3), f64.load(at + r * rowC + (s << 3)));
             accumulate(pack + <usize>(i * count) * 8, 8, 32, right, 32, count);
             for (let r: usize = 0; r < deep; r++) for (let s: usize = 0; s < wide; s++) f64.store(at + r * rowC + (s << 3), f64.load(tile + (r << 5) + (s << 3)));
           }

@@ -7,8 +7,12 @@ export interface Kernels {
   packedBytes(cols: number): number;
   multiply(
     a: number, rowA: number, stepA: number, b: number, stepB: number, colB: number, c: number, rowC: number,
-    rows: number, inner: number, cols: number, pack: number,
+    rows: number, inner: number, cols: number, pack: number, keep: number,
   ): void;
+  dot(a: number, b: number, count: number): number;
+  addScaled(alpha: number, x: number, y: number, count: number): void;
+  rowsTimes(a: number, stride: number, rows: number, cols: number, x: number, out: number): void;
+  timesRows(a: number, stride: number, rows: number, cols: number, x: number, out: number): void;
   factorPanel(panel: number, width: number, height: number): number;
   factorise(
     panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, supernodeOf: number,

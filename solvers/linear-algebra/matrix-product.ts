@@ -71,7 +71,7 @@ function multiplyCompiled(
   const [atA, atB, atC, pack] = scratch.addresses;
   new Float64Array(scratch.buffer, atA, a.length).set(a);
   new Float64Array(scratch.buffer, atB, b.length).set(b);
-  scratch.kernels.multiply(atA, 8 * rowA, 8 * stepA, atB, 8 * stepB, 8 * colB, atC, 8 * cols, rows, inner, cols, pack);
+  scratch.kernels.multiply(atA, 8 * rowA, 8 * stepA, atB, 8 * stepB, 8 * colB, atC, 8 * cols, rows, inner, cols, pack, 0);
   out.set(new Float64Array(scratch.buffer, atC, out.length));
   return true;
 }

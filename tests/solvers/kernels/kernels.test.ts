@@ -6,6 +6,7 @@ import { kernels, useCompiledKernels } from '../../../solvers/kernels/kernel-mem
 import { denseCholesky } from '../../../solvers/linear-algebra/dense-cholesky';
 import { matmul, matmulLeftTransposed, matmulTransposed, transpose } from '../../../solvers/linear-algebra/matrix-product';
 import { analyse, factorise } from '../../../solvers/linear-algebra/sparse-cholesky';
+import { thinSvd } from '../../../solvers/linear-algebra/thin-svd';
 import type { QuadraticMesh } from '../../../solvers/mesh/quadratic-mesh';
 import { elementsByCell, pairSensitivities } from '../../../solvers/problems/electrical-impedance/sensitivity';
 import { laplacianOnGrid, randomPositiveDefinite, uniform } from '../../support/sparse-matrices';
@@ -98,6 +99,14 @@ describe('compiled kernels', () => {
       }),
       { numRuns: 30 },
     );
+  });
+
+  it('give the bits of their twins: singular value decompositions', () => {
+    for (const [rows, cols] of [[1, 4], [35, 35], [70, 131], [90, 41]]) {
+      const a = random(rows * cols, rows);
+      const [compiled, twin] = both(() => thinSvd(a, rows, cols));
+      expect(compiled).toEqual(twin);
+    }
   });
 
   it.each([8, 10, 13])('give the bits of their twins: sensitivities of pairs of %i fields', (fields) => {

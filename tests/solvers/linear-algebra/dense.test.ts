@@ -2,7 +2,7 @@ import fc from 'fast-check';
 import { CholeskyDecomposition, Matrix, SingularValueDecomposition } from 'ml-matrix';
 import { describe, expect, it } from 'vitest';
 import { denseCholesky } from '../../../solvers/linear-algebra/dense-cholesky';
-import { matmul, matmulTransposed, transpose } from '../../../solvers/linear-algebra/matrix-product';
+import { matmul, matmulLeftTransposed, matmulTransposed, transpose } from '../../../solvers/linear-algebra/matrix-product';
 import { thinSvd } from '../../../solvers/linear-algebra/thin-svd';
 import { randomPositiveDefinite, uniform } from '../../support/sparse-matrices';
 
@@ -86,6 +86,29 @@ describe('thin singular value decomposition', () => {
       const t = transpose(vectors, count, r);
       const gram = matmulTransposed(t, t, r, count, r);
       for (let i = 0; i < r; i++) for (let j = 0; j < r; j++) expect(Math.abs(gram[i * r + j] - (i === j ? 1 : 0))).toBeLessThan(1e-12);
+    }
+  });
+
+  it.each<readonly [string, number, (i: number, j: number) => number, number]>([
+    ['the identity', 50, (i, j) => (i === j ? 1 : 0), 50],
+    ['equal values in groups, some zero', 50, (i, j) => (i === j ? i % 5 : 0), 40],
+    ['a matrix of ones', 60, () => 1, 1],
+    ['a bidiagonal matrix with nearly no coupling', 70, (i, j) => (i === j ? 1 : j === i + 1 ? 1e-9 : 0), 70],
+    ['second differences', 70, (i, j) => (i === j ? 2 : Math.abs(i - j) === 1 ? -1 : 0), 70],
+    ['a Hilbert matrix', 40, (i, j) => 1 / (1 + i + j), 0],
+  ])('%s: orthonormal vectors, small residual, values of ml-matrix', (_, n, entry, rank) => {
+    const a = Float64Array.from({ length: n * n }, (__, k) => entry(Math.floor(k / n), k % n));
+    const { u, s, v } = thinSvd(a, n, n);
+    const r = s.length;
+    if (rank > 0) expect(r).toBe(rank);
+    const reference = new SingularValueDecomposition(Matrix.from1DArray(n, n, a), { autoTranspose: true }).diagonal;
+    // Backward stable on both sides; deflation gives up 8 eps s_1 at each of the log2 n joins.
+    for (let k = 0; k < r; k++) expect(Math.abs(s[k] - reference[k])).toBeLessThan(1e-13 * s[0]);
+    const back = matmulTransposed(u.map((value, k) => value * s[k % r]), v, n, r, n);
+    for (let k = 0; k < a.length; k++) expect(Math.abs(back[k] - a[k])).toBeLessThan(1e-13 * s[0]);
+    for (const vectors of [u, v]) {
+      const gram = matmulLeftTransposed(vectors, vectors, r, n, r);
+      for (let i = 0; i < r; i++) for (let j = 0; j < r; j++) expect(Math.abs(gram[i * r + j] - (i === j ? 1 : 0))).toBeLessThan(1e-13);
     }
   });
 
