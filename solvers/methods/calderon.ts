@@ -39,7 +39,7 @@ const method: Method<ParametersOf<typeof specs>> = {
     for (const cutoff of transform.cutoffs(choice)) transform.image(zero, cutoff);
     const background = problem.background();
     return makeReconstructor((data, noise) => {
-      const exponentials = transform.read(data, noise);
+      const exponentials = transform.read(data, noise, 'exponential');
       const cutoff = transform.choose(exponentials, noise, choice);
       const change = transform.image(exponentials, cutoff);
       const x = Float64Array.from(background, (value, j) => value * (1 + change[j]));

@@ -4,6 +4,7 @@ import { boxConstrainedTikhonovMethod } from './box-constrained-tikhonov';
 import { calderonMethod } from './calderon';
 import { cglsMethod } from './cgls';
 import { crankNicolsonMethod } from './crank-nicolson';
+import { dBarMethod } from './d-bar';
 import { ensembleKalmanMethod } from './ensemble-kalman';
 import { exponentialFilterMethod } from './exponential-filter';
 import { filterExpressionMethod } from './filter-expression';
@@ -49,6 +50,7 @@ export const methods: readonly Method[] = [
   levenbergMarquardtMethod,
   gaussNewtonTotalVariationMethod,
   calderonMethod,
+  dBarMethod,
   trainedLinearMethod,
   ensembleKalmanMethod,
   crankNicolsonMethod,

@@ -109,13 +109,21 @@ export function harmonicReader(data: ElectrodeData): HarmonicReader {
 const largestContrast = 20;
 
 /**
- * Matrix of the relative Dirichlet-to-Neumann map between exponentials, T_mn = integral of e^{-i m theta} (Lambda - Lambda_1) e^{i n theta},
- * m, n = 1 ... N: Hermitian. With A = D^{1/2} dR D^{1/2}, D = diag(order), the map is D^{1/2} ((1 + A)^{-1} - 1) D^{1/2}; the
- * eigenvalues of 1 + A, one over a mean conductivity, are kept above 1/20.
+ * Traces of the growing solutions that the scattering transform is made of: 'exponential' takes e^{ikz} itself (t-exp: Siltanen,
+ * Mueller, Isaacson 2000); 'single-layer' corrects it by the single layer S of the Laplace equation, (1 + S (Lambda - Lambda_1))^{-1}
+ * e^{ikz}, S = 1 / (2 n) on harmonic n (t-zero: Cornean, Knudsen, Siltanen 2006). Both from memory.
+ */
+export type Traces = 'exponential' | 'single-layer';
+
+/**
+ * Matrix of the relative Dirichlet-to-Neumann map between exponentials, T_mn = integral of e^{-i m theta} (Lambda - Lambda_1) psi_n,
+ * m, n = 1 ... N, psi_n the trace that belongs to e^{i n theta}: Hermitian. With A = D^{1/2} dR D^{1/2}, D = diag(order), the map is
+ * D^{1/2} ((1 + A)^{-1} - 1) D^{1/2} = -D^{1/2} A (1 + A)^{-1} D^{1/2}, and with the single layer -D^{1/2} A (1 + A / 2)^{-1} D^{1/2};
+ * the eigenvalues of 1 + A, one over a mean conductivity, are kept above 1/20.
  * @param relative Neumann-to-Dirichlet map, 2N x 2N, as `HarmonicReader.read` gives it
  * @returns real parts, then imaginary parts: 2 x N x N, row-major
  */
-export function exponentialMatrix(relative: Float64Array, N: number): Float64Array {
+export function exponentialMatrix(relative: Float64Array, N: number, traces: Traces = 'exponential'): Float64Array {
   const size = 2 * N;
   const root = Float64Array.from({ length: size }, (_, a) => Math.sqrt(Math.floor(a / 2) + 1));
   const scaled = new Float64Array(size * size);
@@ -124,7 +132,7 @@ export function exponentialMatrix(relative: Float64Array, N: number): Float64Arr
   const map = new Float64Array(size * size);
   for (let k = 0; k < size; k++) {
     const bounded = Math.max(values[k], 1 / largestContrast - 1);
-    const factor = -bounded / (1 + bounded);
+    const factor = -bounded / (1 + (traces === 'single-layer' ? 0.5 : 1) * bounded);
     for (let a = 0; a < size; a++) {
       const weight = factor * vectors[k * size + a] * root[a];
       for (let b = 0; b < size; b++) map[a * size + b] += weight * vectors[k * size + b] * root[b];

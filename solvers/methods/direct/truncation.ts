@@ -2,7 +2,7 @@ import type { ForwardProblem, NoiseInfo, RuleSetting } from '../../core/types';
 import { matmul } from '../../linear-algebra/matrix-product';
 import { bornImage, hermitianCoefficients } from './born-image';
 import { electrodeData, type ElectrodeData } from './electrode-data';
-import { exponentialMatrix, harmonicReader, unitCentres } from './harmonic-map';
+import { exponentialMatrix, harmonicReader, unitCentres, type Traces } from './harmonic-map';
 import { ringPowers } from './ring-powers';
 
 /** How the cutoff K of the transform is found. */
@@ -15,7 +15,7 @@ export interface TruncatedTransform {
   /** Centres of the cells on the unit disc with electrode 1 at angle 0: x, y per cell. */
   readonly centres: Float64Array;
   /** T of a frame, 2 x N x N (`exponentialMatrix`); zero for the background's frame. */
-  read(data: Float64Array, noise: NoiseInfo): Float64Array;
+  read(data: Float64Array, noise: NoiseInfo, traces: Traces): Float64Array;
   /** First-order image with the transform cut at K: relative change of conductivity in each cell. */
   image(exponentials: Float64Array, cutoff: number): Float64Array;
   /** The cutoffs among which `choose` decides. */
@@ -63,7 +63,7 @@ function compute(problem: ForwardProblem): TruncatedTransform {
     harmonics: N,
     centres,
     cutoffs,
-    read: (values, noise) => exponentialMatrix(reader.read(data.relativeMap(data.change(values), noise)), N),
+    read: (values, noise, traces) => exponentialMatrix(reader.read(data.relativeMap(data.change(values), noise)), N, traces),
     image(exponentials, cutoff) {
       let matrix = images.get(cutoff);
       if (!matrix) images.set(cutoff, (matrix = bornImage(centres, N, cutoff)));
