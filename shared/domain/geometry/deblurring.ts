@@ -17,10 +17,12 @@ export const deblurringGeometrySchema = z.strictObject({
   /** Direction of a motion, degrees counter-clockwise from x. */
   motionDeg: z.number().min(-360).max(360).optional(),
   /** Pixels along the longer side of the data and of the unknowns. */
-  cells: z.int().min(8).max(96).default(48),
+  cells: z.int().min(8).max(96).default(32),
   edge: z.enum(edgeKeys),
 }).superRefine((g, ctx) => {
   if (g.motionDeg !== undefined && g.pointSpread !== 'motion') ctx.addIssue({ code: 'custom', path: ['motionDeg'], message: 'Only a motion has a direction.' });
-  if (2 * g.spread > Math.min(g.body.width, g.body.height)) ctx.addIssue({ code: 'custom', path: ['spread'], message: 'The point-spread function must be smaller than half the picture.' });
+  const across = g.pointSpread === 'gaussian' ? 6 * g.spread : 2 * g.spread;
+  if (across > Math.min(g.body.width, g.body.height))
+    ctx.addIssue({ code: 'custom', path: ['spread'], message: 'The point-spread function (six deviations of a Gaussian, the diameter of a disc, the length of a motion) must not be wider than the picture.' });
 });
 export type DeblurringGeometry = z.infer<typeof deblurringGeometrySchema>;
