@@ -1,5 +1,6 @@
 import { ln } from '../../../core/math';
 import { solveAugmented } from '../../../linear-algebra/dense-lu';
+import { matmulLeftTransposed } from '../../../linear-algebra/matrix-product';
 import { gaussRule, interpolationWeights, logarithmWeights, nearLimit } from './legendre';
 
 /** Pieces of an electrode on which fields from elsewhere are polynomials; the electrode is -1 <= t <= 1 along its length. */
@@ -65,14 +66,9 @@ export function electrodeResponse(pieces: ElectrodePieces, contact: number, deta
     for (let k = 0; k < n; k++) a[row + N + k] = interpolation[i * n + k];
   }
   solveAugmented(a, N, cols);
-  const response = new Float64Array(n * n);
-  for (let i = 0; i < N; i++) {
-    for (let k = 0; k < n; k++) {
-      const factor = w[i] * interpolation[i * n + k];
-      if (factor !== 0) for (let l = 0; l < n; l++) response[k * n + l] += factor * a[i * cols + N + l];
-    }
-  }
-  return response;
+  const densities = new Float64Array(N * n);
+  for (let i = 0; i < N; i++) for (let k = 0; k < n; k++) densities[i * n + k] = w[i] * a[i * cols + N + k];
+  return matmulLeftTransposed(interpolation, densities, n, N, n);
 }
 
 /** Halves the pieces until a panel is no longer than its distance to the ends, or than `tip` where it touches one. */

@@ -3,11 +3,14 @@ import { panelNodes, type Nodes } from './nodes';
 import type { SmoothCurve } from './smooth-curve';
 
 /**
- * Least sum of the distances from a foreign point to the two ends of a panel, over the length of the panel. Points with one sum
- * lie on an ellipse about the ends: fields with sources outside it are polynomials on the panel up to rho^-n,
- * rho = A + sqrt(A^2 - 1) = 3.7, n Gauss points (Trefethen 2013, Approximation Theory and Approximation Practice, chapter 8).
+ * Least sum of the distances from a foreign point to the two ends of a panel, over the length A of the panel. Points with one sum
+ * lie on an ellipse about the ends: with sources outside it polynomials of degree n follow a field up to rho^-n and n Gauss points
+ * integrate it up to rho^-2n, rho = A + sqrt(A^2 - 1) = 2.3 (Trefethen 2013, Approximation Theory and Approximation Practice,
+ * chapters 8 and 19). Most foreign charges are images far behind the curve, so densities are smoother than that.
  */
-export const clearance = 2;
+const clearance = 1.35;
+/** The same for a point across the middle, as panels are not straight: its distance over the length. */
+const middleClearance = 0.5 * Math.sqrt(clearance * clearance - 1);
 /** A panel turns by at most this, rad. */
 const largestTurn = 1.7;
 /** Largest of the last two Legendre coefficients of the speed, as a share of it, and of the turn per panel, rad. */
@@ -20,15 +23,16 @@ const foldShare = 0.5;
 /** Two curves closer than about this, in radii (or this share of a small curve), are taken to touch; and the most panels of all curves. */
 export const shortestPanel = 1e-4;
 const shortestShare = 0.01;
-const mostPanels = 110;
+const mostPanels = 180;
 
 export class PanelError extends RangeError {}
 
 interface Sampled {
   breaks: number[];
   nodes: Nodes;
-  /** Ends of panels: x, y pairs, one more than panels. */
+  /** Ends of panels (one more than panels) and their middles: x, y pairs. */
   ends: Float64Array;
+  middles: Float64Array;
   /** Length from the start to the end of each panel, and to every node. */
   along: Float64Array;
   nodeAlong: Float64Array;
@@ -68,12 +72,17 @@ function sample(curve: SmoothCurve, breaks: number[]): Sampled {
   const nodes = panelNodes(curve, breaks, sampleOrder);
   const panels = breaks.length - 1;
   const ends = new Float64Array(2 * breaks.length);
+  const middles = new Float64Array(2 * panels);
   const point = new Float64Array(6);
-  breaks.forEach((t, k) => {
-    curve.at(t, point);
+  for (let k = 0; k <= panels; k++) {
+    curve.at(breaks[k], point);
     ends[2 * k] = point[0];
     ends[2 * k + 1] = point[1];
-  });
+    if (k === panels) break;
+    curve.at(0.5 * (breaks[k] + breaks[k + 1]), point);
+    middles[2 * k] = point[0];
+    middles[2 * k + 1] = point[1];
+  }
   const along = new Float64Array(breaks.length);
   const nodeAlong = new Float64Array(nodes.x.length);
   for (let p = 0; p < panels; p++) {
@@ -85,32 +94,34 @@ function sample(curve: SmoothCurve, breaks: number[]): Sampled {
     }
     along[p + 1] = along[p] + length;
   }
-  return { breaks, nodes, ends, along, nodeAlong };
+  return { breaks, nodes, ends, middles, along, nodeAlong };
 }
 
 function panelsToSplit(sampled: readonly Sampled[], c: number): number[] {
-  const { breaks, nodes, ends } = sampled[c];
+  const own = sampled[c];
   const list: number[] = [];
-  for (let p = 0; p + 1 < breaks.length; p++) {
-    const ax = ends[2 * p];
-    const ay = ends[2 * p + 1];
-    const bx = ends[2 * p + 2];
-    const by = ends[2 * p + 3];
-    const reach = clearance * distance(ax, ay, bx, by);
-    if (!resolvesShape(nodes, p) || sampled.some((other, o) => (o === c ? foldsBack(other, p, reach) : nearer(other.nodes, ax, ay, bx, by, reach)))) list.push(p);
+  for (let p = 0; p + 1 < own.breaks.length; p++) {
+    if (!resolvesShape(own.nodes, p) || sampled.some((other, o) => (o === c ? foldsBack(own, p) : nearer(other.nodes, own, p)))) list.push(p);
   }
   return list;
 }
 
 const distance = (ax: number, ay: number, bx: number, by: number): number => Math.sqrt((ax - bx) * (ax - bx) + (ay - by) * (ay - by));
 
-function nearer(nodes: Nodes, ax: number, ay: number, bx: number, by: number, reach: number): boolean {
-  for (let i = 0; i < nodes.x.length; i++) if (distance(nodes.x[i], nodes.y[i], ax, ay) + distance(nodes.x[i], nodes.y[i], bx, by) < reach) return true;
+function nearer(nodes: Nodes, { ends, middles }: Sampled, p: number): boolean {
+  const [ax, ay, bx, by] = ends.subarray(2 * p, 2 * p + 4);
+  const length = distance(ax, ay, bx, by);
+  for (let i = 0; i < nodes.x.length; i++) {
+    const x = nodes.x[i];
+    const y = nodes.y[i];
+    if (distance(x, y, ax, ay) + distance(x, y, bx, by) < clearance * length || distance(x, y, middles[2 * p], middles[2 * p + 1]) < middleClearance * length) return true;
+  }
   return false;
 }
 
-function foldsBack({ nodes, ends, along, nodeAlong }: Sampled, p: number, reach: number): boolean {
+function foldsBack({ nodes, ends, along, nodeAlong }: Sampled, p: number): boolean {
   const total = along[along.length - 1];
+  const reach = clearance * distance(ends[2 * p], ends[2 * p + 1], ends[2 * p + 2], ends[2 * p + 3]);
   const gap = (i: number, end: number): number => {
     const d = Math.abs(nodeAlong[i] - along[end]);
     return Math.min(d, total - d);

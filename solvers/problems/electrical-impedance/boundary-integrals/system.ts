@@ -1,4 +1,5 @@
 import { solveAugmented } from '../../../linear-algebra/dense-lu';
+import { matmul } from '../../../linear-algebra/matrix-product';
 import type { ElectrodePlace } from './electrode-places';
 import { addOwnPotential, curvedPotential, flux, potential, type PanelledCurve } from './kernels';
 import type { Nodes } from './nodes';
@@ -72,25 +73,18 @@ export function boundarySystem(electrodes: readonly ElectrodePlace[], outer: Pan
   if (rest === 0) return { admittance: reference, reference, unknowns: count + L };
 
   // (A22 - A21 A11^-1 A12) y = -A21 A11^-1 B
-  const schur = new Float64Array(rest * width);
-  for (let i = 0; i < rest; i++) {
-    for (let j = 0; j < rest; j++) schur[i * width + j] = tail[i * count + first + j];
-    for (let k = 0; k < first; k++) {
-      const f = tail[i * count + k];
-      const row = k * cols + first;
-      for (let j = 0; j < width; j++) schur[i * width + j] -= f * head[row + j];
-    }
-  }
+  const schur = matmul(columns(tail, count, rest, 0, first), columns(head, cols, first, first, cols), rest, first, width);
+  for (let i = 0; i < rest; i++) for (let j = 0; j < width; j++) schur[i * width + j] = (j < rest ? tail[i * count + first + j] : 0) - schur[i * width + j];
   solveAugmented(schur, rest, width);
-  const total = new Float64Array(onElectrodes * L);
-  for (let i = 0; i < onElectrodes; i++) {
-    for (let l = 0; l < L; l++) total[i * L + l] = unit(i, l);
-    for (let j = 0; j < rest; j++) {
-      const f = head[i * cols + first + j];
-      for (let l = 0; l < L; l++) total[i * L + l] -= f * schur[j * width + rest + l];
-    }
-  }
+  const total = matmul(columns(head, cols, onElectrodes, first, count), columns(schur, width, rest, rest, width), onElectrodes, rest, L);
+  for (let i = 0; i < onElectrodes; i++) for (let l = 0; l < L; l++) total[i * L + l] = unit(i, l) - total[i * L + l];
   return { admittance: admittances(electrodes, starts, L, (row, l) => total[row * L + l]), reference, unknowns: count + L };
+}
+
+function columns(a: Float64Array, cols: number, rows: number, from: number, to: number): Float64Array {
+  const part = new Float64Array(rows * (to - from));
+  for (let i = 0; i < rows; i++) part.set(a.subarray(i * cols + from, i * cols + to), i * (to - from));
+  return part;
 }
 
 /** Currents for unit voltages, with the constant c that makes the total current zero. */
@@ -130,15 +124,8 @@ function fillElectrodeRows(a: Float64Array, cols: number, electrodes: readonly E
         for (let k = 0; k < x.length; k++) field[row + jumpStarts[j] + k] = weight[k] * potential(nodes.x[i], nodes.y[i], x[k], y[k]);
       });
     }
-    const end = cols - electrodes.length;
-    for (let i = 0; i < n; i++) {
-      const row = (starts[l] + i) * cols;
-      for (let k = 0; k < n; k++) {
-        const f = response[i * n + k];
-        for (let j = 0; j < end; j++) a[row + j] += f * field[k * cols + j];
-      }
-      a[row + starts[l] + i] += 1;
-    }
+    a.set(matmul(response, field, n, n, cols), starts[l] * cols);
+    for (let i = 0; i < n; i++) a[(starts[l] + i) * cols + starts[l] + i] += 1;
   });
 }
 
