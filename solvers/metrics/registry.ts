@@ -8,6 +8,8 @@ import { diceScore } from './dice-score';
 import { falseTargetsError } from './false-targets-error';
 import { summarise, type MetricDefinition } from './metric-definition';
 import { missedTargetsError } from './missed-targets-error';
+import { fullWidthHalfMaximum } from './full-width-half-maximum';
+import { peakPositionError } from './peak-position-error';
 import { positionError } from './position-error';
 import { psnrScore } from './psnr-score';
 import { radialPositionDifference } from './radial-position-difference';
@@ -24,6 +26,7 @@ import { supError } from './sup-error';
 export const metrics: readonly MetricDefinition[] = [
   relativeL2Error, supError, relativeSupError, relativeL1Error, positionError, radialPositionDifference, resolution, amplitudeResponse, dataResidualRatio,
   relativeH1Error, ssimScore, psnrScore, correlationScore, shapeDeformation, ringing,
+  peakPositionError, fullWidthHalfMaximum,
   diceScore, missedTargetsError, falseTargetsError, credibleCoverage,
 ];
 
