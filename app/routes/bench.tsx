@@ -3,8 +3,6 @@ import { useParams } from 'react-router-dom';
 import type { BenchDetail, Ranking } from '../../shared/contracts/benches';
 import { decodeArray } from '../../shared/domain/array-encoding';
 import { familyNames } from '../../shared/domain/families';
-import { MeanRankStrip } from '../components/charts/mean-rank-strip';
-import { PairedTable } from '../components/charts/paired-table';
 import { StabilityChart } from '../components/charts/stability-chart';
 import { toPicture, valueScale } from '../components/images/pixels';
 import { Page } from '../components/layout/page';
@@ -15,7 +13,7 @@ import { InlineSelect } from '../components/ui/chooser';
 import { ColumnChooser } from '../components/ui/column-chooser';
 import { Section, Tag } from '../components/ui/layout';
 import { Markdown } from '../components/ui/markdown';
-import { BelowFloor, Empty, ErrorPanel, Loading } from '../components/ui/notices';
+import { Empty, ErrorPanel, Loading } from '../components/ui/notices';
 import { StateMark } from '../components/ui/state-mark';
 import { getCitationQueryOptions, getRankingQueryOptions, getSeriesQueryOptions, useBench } from '../features/benches/api/get-bench';
 import { BenchActions } from '../features/benches/components/bench-actions';
@@ -23,6 +21,8 @@ import { CiteBench } from '../features/benches/components/cite-bench';
 import { Gallery, type GalleryItem } from '../features/benches/components/gallery';
 import { PhantomThumbs, type PhantomPicture } from '../features/benches/components/phantom-thumbs';
 import { RankingPanel } from '../features/benches/components/ranking-panel';
+import { TradeOffs } from '../features/benches/components/trade-offs';
+import { WhoBeatsWhom } from '../features/benches/components/who-beats-whom';
 import { toCurves } from '../features/benches/model/curves';
 import { metricView } from '../features/benches/model/metric-view';
 import { shortNames } from '../features/benches/model/names';
@@ -35,6 +35,8 @@ import { paths } from '../lib/paths';
 import { useNarrow } from '../lib/use-media';
 import { useSettled } from '../lib/use-settled';
 import '../styles/pages/bench.css';
+import '../styles/pages/bench-comparison.css';
+import '../styles/pages/bench-ranking.css';
 import NotFound from './not-found';
 
 export default function BenchRoute() {
@@ -54,7 +56,8 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
   const [metric, setMetric] = useParam('metric', bench.rankingMetric);
   const [focus, setFocus] = useParam('focus');
   const [chosen, setChosen] = useParam('solvers');
-  const ranking = useQuery(getRankingQueryOptions(bench.slug, settled, metric));
+  const [overText, setOver] = useParam('over');
+  const ranking = useQuery(getRankingQueryOptions(bench.slug, settled, metric, overText === 'ladder' ? 'ladder' : 'level'));
   const series = useQuery(getSeriesQueryOptions(bench.slug, metric));
   const citation = useQuery(getCitationQueryOptions(bench.slug));
   const pictures = usePhantomPictures(bench);
@@ -104,7 +107,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
             {ranking.isError ? (
               <ErrorPanel error={ranking.error} what="The ranking" onRetry={() => void ranking.refetch()} />
             ) : ranking.data ? (
-              <RankingPanel bench={bench} ranking={ranking.data} noise={noise} stale={ranking.isPlaceholderData} onMetric={setMetric} focus={focus || null} onFocus={setFocus} rowPath={rowPath} />
+              <RankingPanel bench={bench} ranking={ranking.data} noise={noise} stale={ranking.isPlaceholderData} onMetric={setMetric} onOver={(over) => setOver(over === 'level' ? null : over)} focus={focus || null} onFocus={setFocus} rowPath={rowPath} />
             ) : (
               <Loading label="Ranking the runs" />
             )}
@@ -131,19 +134,20 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
             </section>
           </div>
           {ranking.data ? <SeenAt bench={bench} ranking={ranking.data} noise={settled} pictures={pictures} /> : null}
-          {ranking.data ? <WhoBeatsWhom ranking={ranking.data} noise={noise} floor={bench.modelErrorFloor} /> : null}
+          {ranking.data ? <WhoBeatsWhom bench={bench} ranking={ranking.data} noise={noise} /> : null}
+          {ranking.data ? <TradeOffs bench={bench} ranking={ranking.data} noise={settled} focus={focus || null} onFocus={setFocus} /> : null}
         </>
       )}
       <h2 className="vh">About this bench</h2>
       <section className="sec notes">
         <div>
           <h3>How the table is made</h3>
-          <p>Every solver configuration runs on every phantom at {numberWord(bench.ladder.length)} noise levels, {plural(bench.draws, 'seeded draw')} each (seed {bench.seed}). Parameters stay fixed across the ladder unless the configuration's own rule changes them.</p>
+          <p>Every solver configuration runs on every phantom at {numberWord(bench.ladder.length)} noise levels, {plural(bench.draws, 'seeded draw')} each (seed {bench.seed}). Parameters stay fixed across the ladder unless the configuration's own rule changes them. Ranks compare phantoms, not draws: a phantom counts once, with its median over draws.</p>
           {bench.description ? <Markdown source={bench.description} /> : null}
         </div>
         <div>
           <h3>What breakdown means</h3>
-          <p>The noise at which the median error, once below that of answering with the plain background, rises to it again. A method that is worse at less noise, because it fits the error of its model, is not counted as broken down there: read its curve. At the other end, noise below the model-error floor (dotted) is smaller than the gap between the two meshes.</p>
+          <p>The noise at which the median error, once below that of answering with the plain background, rises to it again. A method that is worse at less noise, because it fits the error of its model, is not counted as broken down there: read its curve. At the other end, noise below the model-error floor (dotted) is smaller than the gap between the simulating and the inverting model.</p>
         </div>
         <CiteBench
           slug={bench.slug} noise={settled} metric={metric} citation={citation.data}
@@ -201,37 +205,11 @@ function SeenAt({ bench, ranking, noise, pictures }: { bench: BenchDetail; ranki
           {open.length > 1 ? (
             <InlineSelect label="Phantom in view" value={phantom.slug} onChange={setSeen}>{open.map((p) => <option key={p.slug} value={p.slug}>{p.name}</option>)}</InlineSelect>
           ) : <em>{phantom.name}</em>}
-          . All images share one colour scale.
+          . {data?.grid.body?.kind === 'interval' ? 'All curves share one scale.' : 'All images share one colour scale.'}
         </>
       }
     >
-      <Gallery items={items} low={low} high={high} background={data?.background ?? 0} unit={data?.unit ?? ''} />
-    </Section>
-  );
-}
-
-function WhoBeatsWhom({ ranking, noise, floor }: { ranking: Ranking; noise: number; floor: number }) {
-  const { test } = ranking;
-  const order = ranking.rows;
-  const shortName = shortNames(order.map((r) => r.solver.name));
-  const ranked = order.filter((r): r is RankingRow & { meanRank: number } => r.meanRank !== null);
-  if (ranking.belowFloor) return <Section title={<>Who beats whom at {formatPercent(noise)} noise</>}><BelowFloor noise={noise} floor={floor} /></Section>;
-  return (
-    <Section title={<>Who beats whom at {formatPercent(ranking.level)} noise</>} note={test.words}>
-      {ranked.length < 2 ? (
-        <Empty title="Nothing to compare yet">Two finished entries are needed for paired draws.</Empty>
-      ) : (
-        <div className="cmp">
-          <div className="sheet pad">
-            <div className="sh"><h3>Mean rank</h3><p>{test.criticalDifference === null ? 'no test is possible here' : `bar width is the critical difference, ${test.criticalDifference.toFixed(2)}`}</p></div>
-            <MeanRankStrip items={ranked.map((r) => ({ id: r.solver.slug, glyph: r.glyph, name: shortName(r.solver.name), meanRank: r.meanRank }))} criticalDifference={test.criticalDifference} />
-          </div>
-          <div className="sheet pad">
-            <div className="sh"><h3>Paired draws won, %</h3><p>row against column</p></div>
-            <PairedTable items={order.map((r) => ({ id: r.solver.slug, glyph: r.glyph, name: shortName(r.solver.name) }))} wins={ranking.wins} />
-          </div>
-        </div>
-      )}
+      <Gallery items={items} low={low} high={high} background={data?.background ?? 0} unit={data?.unit ?? ''} body={data?.grid.body} />
     </Section>
   );
 }

@@ -24,9 +24,6 @@ import { paths } from '../lib/paths';
 import { useSettled } from '../lib/use-settled';
 import type { SolverDetail } from '../../shared/contracts/solvers';
 
-/** Marker of the focused solver on its own page. */
-const glyph = 6;
-
 export default function SolverRoute() {
   const { slug = '' } = useParams();
   const solver = useSolver(slug);
@@ -59,7 +56,7 @@ function SolverPage({ solver }: { solver: SolverDetail }) {
   return (
     <Page
       title={`${solver.id} ${solver.name}`} className="page-solver"
-      rule={{ levels: levels.length ? levels : undefined, floor: chosen?.modelErrorFloor ?? null, focus: chosen?.sheet.breakdown ? { glyph, breakdown: chosen.sheet.breakdown.value } : null }}
+      rule={{ levels: levels.length ? levels : undefined, floor: chosen?.modelErrorFloor ?? null, focus: chosen?.sheet.breakdown ? { glyph: solver.glyph, breakdown: chosen.sheet.breakdown.value } : null }}
     >
       <PageHead crumbs={<><span>Solver configuration <span className="mono">{solver.id}</span>, version {version.n}</span><span>{solver.group.name}</span>{state}</>} title={solver.name}>
         <SolverActions solver={solver} version={version} runs={items.map((i) => i.run)} onTry={() => setTrying(!trying)} />
@@ -70,7 +67,7 @@ function SolverPage({ solver }: { solver: SolverDetail }) {
       {trying ? <TryHere items={items} configuration={version.configuration} noise={settled} onClose={() => setTrying(false)} /> : null}
       <Section title="Stability sheet" note={`relative L2, medians of ${chosen?.levels[0]?.count ?? 24} draws; intervals are 90 % over draws`}>
         {stability.isPending ? <Loading label="Fetching the finished runs" /> : stability.isError ? <ErrorPanel error={stability.error} onRetry={() => void stability.refetch()} /> : chosen ? (
-          <StabilitySection items={items} chosen={chosen} onChoose={setPhantom} noise={noise} glyph={glyph} />
+          <StabilitySection items={items} chosen={chosen} onChoose={setPhantom} noise={noise} glyph={solver.glyph} />
         ) : <Empty title="No finished run yet">The sheet appears when a run of this version ends.{solver.may.enter ? ' Enter it in a bench to start.' : ''}</Empty>}
       </Section>
       {chosen ? <SensitivitySection item={chosen} level={level} levelNoise={levels[level] ?? settled} /> : null}

@@ -7,6 +7,9 @@ export const glyphColour = (index: number): number => whole(index) % glyphColour
 /** From the ninth on the pairing of colour and shape shifts, so that 64 differ. */
 export const glyphShape = (index: number): number => (whole(index) + 3 * Math.floor(whole(index) / glyphColours)) % glyphColours;
 
+/** Colours 1 and 6 of the palette are both blue: on a page with few solvers one of them gives way too. */
+const hueOf = (colour: number): number => (colour === 5 ? 0 : colour);
+
 /** The index with this shape and colour: colour c and shift b give the shape c + 3 b, and 3 b takes every value modulo 8. */
 function glyphWith(shape: number, colour: number): number {
   for (let shift = 0; shift < glyphColours; shift++) if (glyphShape(glyphColours * shift + colour) === shape) return glyphColours * shift + colour;
@@ -22,17 +25,18 @@ export function distinctGlyphs(stored: readonly number[]): number[] {
   const order = stored.map((_, at) => at).sort((a, b) => stored[a]! - stored[b]! || a - b);
   const given = new Array<number>(stored.length).fill(0);
   const uses = new Array<number>(glyphColours).fill(0);
+  const hues = new Array<number>(glyphColours).fill(0);
   const taken = new Set<number>();
   for (const at of order) {
     const own = whole(stored[at]!);
     const shape = glyphShape(own);
-    const least = Math.min(...uses);
-    // In order of distance from its own colour; first one that is used no more than needed, then any whose mark is free.
-    const colours = Array.from({ length: glyphColours }, (_, step) => (glyphColour(own) + step) % glyphColours);
-    const free = colours.filter((colour) => !taken.has(glyphWith(shape, colour)));
-    const colour = free.find((candidate) => uses[candidate] === least) ?? free[0] ?? glyphColour(own);
+    // Its own colour first, then onwards from it: the least used one whose mark is free, of these one of the least used hue.
+    const free = Array.from({ length: glyphColours }, (_, step) => (glyphColour(own) + step) % glyphColours).filter((colour) => !taken.has(glyphWith(shape, colour)));
+    const cost = (colour: number): number => uses[colour]! * stored.length + hues[hueOf(colour)]!;
+    const colour = free.reduce((best, candidate) => (cost(candidate) < cost(best) ? candidate : best), free[0] ?? glyphColour(own));
     given[at] = glyphWith(shape, colour);
     uses[colour] = uses[colour]! + 1;
+    hues[hueOf(colour)] = hues[hueOf(colour)]! + 1;
     taken.add(given[at]!);
   }
   return given;

@@ -9,7 +9,7 @@ describe('marks of solvers', () => {
     expect(look(64)).toBe(look(0));
   });
   it('stay as they are where nothing collides, in any order', () => {
-    expect(distinctGlyphs([3, 0, 5])).toEqual([3, 0, 5]);
+    expect(distinctGlyphs([3, 0, 6])).toEqual([3, 0, 6]);
     expect(distinctGlyphs([])).toEqual([]);
   });
   it('Compare shows A and C in two colours, though their solvers were given the same one', () => {
@@ -17,6 +17,12 @@ describe('marks of solvers', () => {
     expect([a, b]).toEqual([2, 5]);
     expect(glyphShape(c!)).toBe(glyphShape(10));
     expect(new Set([a, b, c].map((index) => glyphColour(index!))).size).toBe(3);
+  });
+  it('two blues are one too many for a few solvers, and there for eight', () => {
+    const [blue, other] = distinctGlyphs([0, 5]);
+    expect([blue, glyphShape(other!)]).toEqual([0, glyphShape(5)]);
+    expect(glyphColour(other!)).toBe(6);
+    expect(new Set(distinctGlyphs([0, 1, 2, 3, 4, 5, 6, 7]).map(glyphColour)).size).toBe(8);
   });
   it('the one with the smaller index keeps its colour, whoever stands first', () => {
     const [late, early] = distinctGlyphs([10, 2]);

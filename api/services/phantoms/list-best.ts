@@ -1,6 +1,7 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import { z } from 'zod';
 import type { phantomBestSchema } from '../../../shared/contracts/phantoms';
+import { distinctGlyphs } from '../../../shared/domain/glyphs';
 import { AppError } from '../../../shared/errors.ts';
 import { metrics } from '../../../solvers/metrics/registry';
 import { levelStatistics } from '../../../solvers/statistics/error-table';
@@ -59,5 +60,7 @@ export async function listBest(em: EntityManager, input: { readonly version: Pic
     });
   }
   items.sort((a, b) => lossOf(a.median, metric.better) - lossOf(b.median, metric.better) || (a.run < b.run ? -1 : 1));
-  return { noise, metric: key, interpolated, items: items.slice(0, shownRuns) };
+  const shown = items.slice(0, shownRuns);
+  const glyphs = distinctGlyphs(shown.map((item) => item.glyph));
+  return { noise, metric: key, interpolated, items: shown.map((item, i) => ({ ...item, glyph: glyphs[i]! })) };
 }

@@ -1,3 +1,5 @@
+import { glyphColour, glyphShape } from '../../../shared/domain/glyphs';
+
 /** Shapes and colours of the solvers: colour repeats what the shape says. */
 export const markerShapes = ['circle', 'square', 'triangle', 'diamond', 'triangle-down', 'hexagon', 'cross', 'plus'] as const;
 export type MarkerShape = (typeof markerShapes)[number];
@@ -8,12 +10,9 @@ export interface SolverLook {
   colour: string;
 }
 
-/** Look of the entry with this stable index. From the ninth on the pairing of colour and shape shifts, so that 64 differ. */
+/** Look of the solver with this mark. */
 export function solverLook(index: number): SolverLook {
-  const i = ((index % 64) + 64) % 64;
-  const colour = (i % 8) + 1;
-  const shape = markerShapes[(i + 3 * Math.floor(i / 8)) % 8] ?? 'circle';
-  return { shape, colour: `var(--s${colour})` };
+  return { shape: markerShapes[glyphShape(index)] ?? 'circle', colour: `var(--s${glyphColour(index) + 1})` };
 }
 
 interface MarkerProps {

@@ -95,6 +95,15 @@ it('a server killed in the middle of a run goes on at the next start, without a 
   const images = await orm.em.fork().find(RunImageEntity, { run: id });
   expect(new Set(images.map((image) => image.level)).size).toBe(ladder.length);
   expect(run.checks?.find((check) => check.key === 'recomputation')).toMatchObject({ state: 'pass', figure: 0 });
+  // Bias and variance of each level, whose images the kill partly lost: their sum is the mean of the squared errors of the stored draws.
+  ladder.forEach((_, level) => {
+    const own = trials.filter((trial) => trial.level === level).map((trial) => trial.metrics['relative-l2-error']! ** 2);
+    const moments = run.levelMoments?.[level];
+    expect(moments).toMatchObject({ draws, reason: null });
+    // Rounding of sums over 120 images of some thousand pixels.
+    expect(moments!.meanSquaredError! / (own.reduce((sum, value) => sum + value, 0) / draws)).toBeCloseTo(1, 10);
+    expect(moments!.variance).toBeGreaterThan(0);
+  });
 
   // The main thread of another process gives the bits that the worker stored, for a draw of before and of after the kill.
   const input = await loadRunInput(orm.em.fork(), run, run.phantomVersion.$);

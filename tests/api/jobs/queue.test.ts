@@ -64,6 +64,8 @@ describe('the queue', () => {
     const images = await app.orm.em.fork().find(RunImageEntity, { run: id }, { orderBy: { level: 'asc', draw: 'asc' } });
     // The largest error is that of draw 2; draws 1 (0.02) and 3 (0.01) are equally close to the median 0.015, the first is kept.
     expect(images.map((image) => [image.level, image.draw])).toEqual([[0, 1], [0, 2], [1, 1], [1, 2], [2, 1], [2, 2]]);
+    // All images of a level are held until it is complete, and bias and variance are taken from them.
+    expect(run.levelMoments?.map((moments) => moments?.draws)).toEqual([draws, draws, draws]);
     const em = app.orm.em.fork();
     expect(await em.count(AuditEntryEntity, { action: 'run.finished', subjectId: id })).toBe(1);
     const mails = await em.find(OutboxMessageEntity, { subject: { $like: `${id} is finished%` } });

@@ -16,11 +16,11 @@ type Row = Ranking['rows'][number];
 const row = (slug: string, rank: number | null, tieGroup: number | null, median: number, extra: Partial<Row> = {}): Row => ({
   glyph: 0, solver: { slug, id: `SV-${slug}`, name: `Solver ${slug}`, version: 1 }, group: { slug: 'holm', name: 'Holm' }, rank, tieGroup, meanRank: rank,
   median, p05: median * 0.8, p95: median * 1.2, medians: { 'relative-l2-error': median, 'sup-error': 0.3, 'position-error': 0.02 }, breakdown: null, breakdownNote: 'beyond', exponent: 0.5,
-  secondsPerReconstruction: 0.012, timeRatio: 1.2, review: 'signed-off', reservations: [], runs: [{ run: `RN-${slug}`, phantom: 'lobes', state: 'finished', review: 'signed-off' }], complete: true, ...extra,
+  secondsPerReconstruction: 0.012, timeRatio: 1.2, onFront: true, dominatedBy: null, review: 'signed-off', reservations: [], runs: [{ run: `RN-${slug}`, phantom: 'lobes', state: 'finished', review: 'signed-off' }], complete: true, ...extra,
 });
 const ranking = (rows: Row[], extra: Partial<Ranking> = {}): Ranking => ({
-  noise: 0.01, metric: 'relative-l2-error', interpolated: false, level: 0.01, belowFloor: false, rows, trivial: 1,
-  test: { name: 'Friedman', blocks: 24, phantoms: 1, statistic: 1, pValue: 0.01, criticalDifference: 1, separable: true, words: '' }, wins: [], ...extra,
+  noise: 0.01, metric: 'relative-l2-error', interpolated: false, level: 0.01, belowFloor: false, over: 'level', levels: [0.01], rows, trivial: 1,
+  test: { name: 'Friedman', blocks: 6, fewest: 3, enough: true, chiSquare: 8, statistic: 1, pValue: 0.01, exact: true, criticalDifference: 1, separable: true, words: '' }, wins: [], ...extra,
 });
 const three = [row('a', 1, 1, 0.146), row('b', 1, 1, 0.153), row('c', 3, 2, 0.264, { breakdown: 0.074, breakdownNote: null, review: 'signed-off-with-reservation', reservations: ['Above 2 % not trained.'] })];
 

@@ -1,5 +1,5 @@
 import { keepPreviousData, queryOptions, useQuery } from '@tanstack/react-query';
-import { benchDetailSchema, benchListSchema, citationSchema, rankingSchema, seriesSchema } from '../../../../shared/contracts/benches';
+import { benchDetailSchema, benchListSchema, citationSchema, comparisonSchema, rankingSchema, seriesSchema, type Ranking } from '../../../../shared/contracts/benches';
 import { api } from '../../../lib/api-client';
 import { benchKeys } from './keys';
 
@@ -18,10 +18,25 @@ export const getBenchQueryOptions = (slug: string) =>
 export const useBench = (slug: string) => useQuery(getBenchQueryOptions(slug));
 
 /** While the cursor moves the ranking before stays on screen. */
-export const getRankingQueryOptions = (slug: string, noise: number, metric?: string) =>
+export const getRankingQueryOptions = (slug: string, noise: number, metric?: string, over?: Ranking['over']) =>
   queryOptions({
-    queryKey: benchKeys.ranking(slug, noise, metric),
-    queryFn: ({ signal }) => api.get(`/benches/${e(slug)}/ranking`, rankingSchema, { query: { noise, metric }, signal }),
+    queryKey: benchKeys.ranking(slug, noise, metric, over),
+    queryFn: ({ signal }) => api.get(`/benches/${e(slug)}/ranking`, rankingSchema, { query: { noise, metric, over }, signal }),
+    placeholderData: keepPreviousData,
+  });
+
+export interface ComparisonFilters {
+  noise: number;
+  metric: string;
+  over: Ranking['over'];
+  /** Slug of the phantom whose draws are compared; all phantoms without it. */
+  phantom?: string | undefined;
+}
+
+export const getComparisonQueryOptions = (slug: string, filters: ComparisonFilters) =>
+  queryOptions({
+    queryKey: benchKeys.comparison(slug, filters),
+    queryFn: ({ signal }) => api.get(`/benches/${e(slug)}/comparison`, comparisonSchema, { query: { ...filters }, signal }),
     placeholderData: keepPreviousData,
   });
 

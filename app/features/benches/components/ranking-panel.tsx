@@ -3,7 +3,7 @@ import type { BenchDetail, Ranking } from '../../../../shared/contracts/benches'
 import { barAxis } from '../../../components/charts/interval-bar';
 import { InlineSelect } from '../../../components/ui/chooser';
 import { ColumnChooser } from '../../../components/ui/column-chooser';
-import { formatPercent, plural } from '../../../lib/format';
+import { formatPercent, numberWord, plural } from '../../../lib/format';
 import { metricViews } from '../model/metric-view';
 import { RankingCards, rankingColumns, RankingTable, standardColumns, type RankingProps } from './ranking-table';
 
@@ -14,9 +14,10 @@ interface PanelProps extends Pick<RankingProps, 'focus' | 'onFocus' | 'rowPath'>
   noise: number;
   stale: boolean;
   onMetric: (metric: string) => void;
+  onOver: (over: Ranking['over']) => void;
 }
 
-export function RankingPanel({ bench, ranking, noise, stale, onMetric, ...rest }: PanelProps) {
+export function RankingPanel({ bench, ranking, noise, stale, onMetric, onOver, ...rest }: PanelProps) {
   const [shown, setShown] = useState<ReadonlySet<string>>(standardColumns);
   const ladderEnd = bench.ladder[bench.ladder.length - 1] ?? 0.3;
   const columns = rankingColumns(ranking.metric, ladderEnd, ranking);
@@ -31,6 +32,10 @@ export function RankingPanel({ bench, ranking, noise, stale, onMetric, ...rest }
             Rank by{' '}
             <InlineSelect label="Rank by" value={ranking.metric} onChange={onMetric}>
               {metricViews.filter((m) => m.ranked).map((m) => <option key={m.key} value={m.key}>{m.words}</option>)}
+            </InlineSelect>{' '}
+            <InlineSelect label="Rank over" value={ranking.over} onChange={(value) => onOver(value === 'ladder' ? 'ladder' : 'level')}>
+              <option value="level">at this noise</option>
+              <option value="ladder">over the ladder</option>
             </InlineSelect>
           </p>
           <ColumnChooser columns={columns.map((c) => ({ key: c.key, name: c.name }))} shown={shown} onChange={setShown} />
@@ -39,10 +44,18 @@ export function RankingPanel({ bench, ranking, noise, stale, onMetric, ...rest }
       <RankingTable {...common} columns={columns.filter((c) => shown.has(c.key))} />
       <RankingCards {...common} />
       <p className="sm note">
-        {ranking.belowFloor
-          ? `${formatPercent(ranking.noise)} is below the model-error floor${bench.floorPhantom ? ` of ${bench.floorPhantom}` : ''}: the gap between the two meshes is larger than this noise, so no ranks are given.`
-          : `Median of ${plural(ranking.test.phantoms, 'phantom')} × ${plural(bench.draws, 'draw')}${ranking.interpolated ? `, interpolated; ties are tested at ${formatPercent(ranking.level)}` : ''}. Brackets mark statistical ties. Select a row to follow it in the charts.`}
+        {rankingWords(bench, ranking)}
       </p>
     </section>
   );
+}
+
+/** What the figures are of, what the ranks are of, and why there is none. */
+export function rankingWords(bench: Pick<BenchDetail, 'draws' | 'floorPhantom'>, ranking: Ranking): string {
+  const { test } = ranking;
+  if (ranking.belowFloor && ranking.over === 'level') return `${formatPercent(ranking.noise)} is below the model-error floor${bench.floorPhantom ? ` of ${bench.floorPhantom}` : ''}: the gap between the two meshes is larger than this noise, so no ranks are given.`;
+  const figures = `Median of ${plural(test.blocks, 'phantom')} × ${plural(bench.draws, 'draw')}${ranking.interpolated ? ', interpolated' : ''}.`;
+  const ranks = ranking.over === 'ladder' ? ` Ranks are of the mean over ${numberWord(ranking.levels.length)} levels.` : ranking.interpolated ? ` Ranks are of ${formatPercent(ranking.level)}.` : '';
+  const outcome = test.enough ? ' Brackets mark statistical ties over phantoms.' : ` ${test.words}`;
+  return `${figures}${ranks}${outcome} Select a row to follow it in the charts.`;
 }

@@ -1,4 +1,5 @@
 import type { Ranking } from '../../../../shared/contracts/benches';
+import type { FamilyKey } from '../../../../shared/domain/families';
 import { formatPercent } from '../../../lib/format';
 import type { RankingRow } from './ranking-groups';
 
@@ -6,14 +7,17 @@ import type { RankingRow } from './ranking-groups';
 export const cares = [
   { key: 'overall', words: 'overall error', metric: 'relative-l2-error', by: 'by relative L2' },
   { key: 'largest', words: 'the largest error', metric: 'sup-error', by: 'by L∞' },
-  { key: 'position', words: 'position of inclusions', metric: 'position-error', by: 'by position error' },
+  { key: 'position', words: 'position of targets', metric: 'position-error', by: 'by position error' },
   { key: 'worse-noise', words: 'surviving worse noise', metric: 'relative-l2-error', by: 'by breakdown noise' },
-  { key: 'time', words: 'time per image', metric: 'relative-l2-error', by: 'by time' },
+  { key: 'time', words: 'time per reconstruction', metric: 'relative-l2-error', by: 'by time' },
 ] as const;
 export type Care = (typeof cares)[number]['key'];
 export const careOf = (key: string): (typeof cares)[number] => cares.find((c) => c.key === key) ?? cares[0];
 
-/** Seconds that a reader can wait for an image. */
+/** A function of one variable has no targets. */
+export const caresFor = (family: FamilyKey): readonly (typeof cares)[number][] => cares.filter((c) => !(c.key === 'position' && family === 'integral-equation'));
+
+/** Seconds that a reader can wait for a reconstruction. */
 export const budgets = [
   { key: 'any', words: 'any time', seconds: Infinity },
   { key: '1s', words: 'one second', seconds: 1 },
@@ -46,7 +50,9 @@ export function marginWords(row: Pick<RankingRow, 'breakdown' | 'breakdownNote'>
 
 /** How sure the reading is: who else the test cannot tell from it. */
 export function tieWords(row: RankingRow, ranking: Ranking): string {
-  if (ranking.belowFloor || row.tieGroup === null) return '';
+  if (ranking.belowFloor) return '';
+  if (row.complete && ranking.test.fewest !== null && !ranking.test.enough) return `${ranking.test.blocks === 1 ? 'One phantom is' : `${ranking.test.blocks} phantoms are`} too few to separate it from others.`;
+  if (row.tieGroup === null) return '';
   const others = ranking.rows.filter((r) => r.tieGroup === row.tieGroup && r.solver.slug !== row.solver.slug).length;
   if (others === 0) return '';
   return `Cannot be separated from ${others === 1 ? 'one other' : `${others} others`}.`;

@@ -21,7 +21,7 @@ const perRadius = (value: number | null | undefined): string => (value === null 
 const standing: Record<string, Partial<MetricView>> = {
   'relative-l2-error': { head: 'Relative L2', words: 'relative L2' },
   'relative-l1-error': { words: 'relative L1' },
-  'sup-error': { name: 'L∞', words: 'L∞' },
+  'sup-error': { name: 'L∞', words: 'L∞', unit: '' },
   'relative-sup-error': { words: 'relative L∞' },
   'position-error': { unit: '% radius', words: 'position error', format: perRadius },
   resolution: { head: 'Resol.', unit: '% radius', words: 'resolution', format: perRadius },

@@ -3,10 +3,20 @@ import type { LevelStatistics } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { solverLook } from '../../../components/ui/solver-glyph';
 import { formatError, formatPercent } from '../../../lib/format';
-import { fixedGroup, outlier, shade, tableGroups, type TableGroup } from '../model/error-table';
+import { fixedGroup, isMoment, outlier, shade, tableGroups, type TableGroup } from '../model/error-table';
 import { DrawDots } from './draw-dots';
 
-const columnNames = { mean: 'mean', sd: 'sd', p05: '5 %', p95: '95 %', worst: 'worst' } as const;
+const columnNames = { mean: 'mean', sd: 'sd', p05: '5 %', p95: '95 %', worst: 'worst', biasSquared: 'bias²', variance: 'variance', meanSquaredError: 'sum' } as const;
+
+/** Value of a cell, and why there is none. */
+function cellValue(run: RunDetail, group: TableGroup, column: TableGroup['columns'][number], level: number): { value: number | null; reason: string | null } {
+  if (isMoment(column)) {
+    const moments = run.moments[level];
+    return { value: moments?.[column] ?? null, reason: moments ? moments.reason : 'Not computed: the level is not complete, or the run is older than this figure.' };
+  }
+  const row = run.table[group.key]?.[level];
+  return { value: row?.[column] ?? null, reason: row?.reason ?? null };
+}
 
 export interface ErrorTableProps {
   run: RunDetail;
@@ -75,28 +85,27 @@ function DotsHead({ low, high }: { low: number; high: number }) {
 
 function levelCells({ run, group, i, colour, onCell }: { run: RunDetail; group: TableGroup; i: number; colour: string; onCell?: (anchor: string) => void }) {
   const row = run.table[group.key]?.[i];
-  if (!row) return group.columns.map((column) => <td key={`${group.key}-${column}`} className="num">–</td>);
   const trivial = run.trivial[group.key] ?? null;
-  const flagged = outlier(row);
+  const flagged = row ? outlier(row) : null;
   const shaded = group.key === fixedGroup;
   const cells = group.columns.map((column, k) => {
-    const value = row[column];
+    const { value, reason } = cellValue(run, group, column, i);
     const past = trivial !== null && value !== null && column !== 'sd' && trivial > 0 && value >= trivial && group.key.endsWith('-error');
     const flag = shaded && column === 'worst' && flagged;
-    const anchor = `${formatPercent(row.level)}, ${group.name}, ${columnNames[column]}`;
+    const anchor = `${formatPercent(run.ladder[i] ?? 0)}, ${group.name}, ${columnNames[column]}`;
     return (
       <td
         key={`${group.key}-${column}`}
         className={clsx('num', k === 0 && 'sep', flag && 'flag', past && shaded && 'past', past && !shaded && 'over')}
         style={shaded && !past && column !== 'sd' ? { background: `rgba(var(--heat), ${shade(value, trivial).toFixed(3)})` } : undefined}
-        title={value === null ? (row.reason ?? 'not defined') : undefined}
+        title={value === null ? (reason ?? 'not defined') : (isMoment(column) ? reason : null) ?? undefined}
       >
         {onCell ? <button type="button" className="lnk quiet" onClick={() => onCell(anchor)} aria-label={`${print(value, group)}, note on ${anchor}`}>{print(value, group)}</button> : print(value, group)}
         {flag ? <span className="vh">, draw {flag.draw + 1} lies {flag.deviations.toFixed(1)} standard deviations out</span> : null}
       </td>
     );
   });
-  if (group.draws)
+  if (group.draws && row)
     cells.push(
       <td key={`${group.key}-draws`} className="dots">
         <DrawDots draws={row.draws} median={row.median} trivial={trivial} colour={colour} ring={flagged?.draw ?? null} {...dotRange(run.table[group.key]!, trivial)} />
@@ -127,11 +136,9 @@ export function ErrorLevels({ run, shown, current, onLevel }: ErrorTableProps) {
             </summary>
             <div className="in">
               {groups.map((group) => {
-                const cell = run.table[group.key]?.[i];
-                if (!cell) return null;
                 return [
                   <div className="g" key={group.key}>{group.name}{group.unit ? `, ${group.unit}` : ''}{group.key === fixedGroup && flagged ? `, draw ${flagged.draw + 1} beyond 3 sd` : ''}</div>,
-                  ...group.columns.map((column) => <div key={`${group.key}-${column}`}><span>{columnNames[column]}</span>{print(cell[column], group)}</div>),
+                  ...group.columns.map((column) => <div key={`${group.key}-${column}`}><span>{columnNames[column]}</span>{print(cellValue(run, group, column, i).value, group)}</div>),
                 ];
               })}
             </div>

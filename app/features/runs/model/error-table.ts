@@ -2,14 +2,19 @@ import type { LevelStatistics } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { metrics } from '../../../../solvers/metrics/registry';
 
-/** Figures shown for a metric in the error table. */
+/** Of the images of a level, not of the figures of its draws. */
+export const momentColumns = ['biasSquared', 'variance', 'meanSquaredError'] as const;
+export type MomentColumn = (typeof momentColumns)[number];
+export const isMoment = (column: string): column is MomentColumn => momentColumns.some((own) => own === column);
+
+/** Figures shown for a metric in the error table, or bias and variance of the image. */
 export interface TableGroup {
   key: string;
   name: string;
   unit: string;
   /** Factor from the stored value to the printed one (shares are printed in per cent). */
   scale: number;
-  columns: readonly ('mean' | 'sd' | 'p05' | 'p95' | 'worst')[];
+  columns: readonly ('mean' | 'sd' | 'p05' | 'p95' | 'worst' | MomentColumn)[];
   /** The dot strip of all draws follows. */
   draws: boolean;
   digits: 'error' | 'one';
@@ -23,15 +28,19 @@ const standing: Record<string, Partial<TableGroup>> = {
 };
 /** Groups shown before the reader chooses; relative L2 is always first and always there. */
 export const fixedGroup = 'relative-l2-error';
-export const standardGroups: ReadonlySet<string> = new Set(['sup-error', 'position-error']);
+export const standardGroups: ReadonlySet<string> = new Set(['sup-error', 'position-error', 'bias-variance']);
 
-/** Every metric that the run has a table for, in registry order. */
-export function tableGroups(run: Pick<RunDetail, 'table'>): TableGroup[] {
-  return metrics
+export const momentsGroup = 'bias-variance';
+
+/** Every metric that the run has a table for, in registry order; then bias and variance, where the run has them. */
+export function tableGroups(run: Pick<RunDetail, 'table' | 'moments'>): TableGroup[] {
+  const ofMetrics = metrics
     .filter((metric) => run.table[metric.key])
     .map((metric) => ({
       key: metric.key, name: metric.short, unit: metric.unit, scale: 1, columns: ['mean', 'worst'] as const, draws: false, digits: 'error' as const, ...standing[metric.key],
     }));
+  if (run.moments.every((own) => own === null)) return ofMetrics;
+  return [...ofMetrics, { key: momentsGroup, name: 'Bias and variance of the image', unit: 'squares', scale: 1, columns: momentColumns, draws: false, digits: 'error' }];
 }
 
 /** How many standard deviations the worst draw lies beyond the mean; null when it does not pass three. */
