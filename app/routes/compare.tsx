@@ -2,6 +2,8 @@ import { useQueries } from '@tanstack/react-query';
 import { useState, type ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import type { RunDetail } from '../../shared/contracts/runs';
+import { distinctGlyphs } from '../../shared/domain/glyphs';
+import { fewestPairs } from '../../solvers/statistics/wilcoxon';
 import { StabilityChart } from '../components/charts/stability-chart';
 import { ColourBar } from '../components/images/colour-bar';
 import { CropImage } from '../components/images/crop-image';
@@ -82,13 +84,14 @@ function ComparePage({ runs, setIds }: { runs: readonly RunDetail[]; setIds: (id
 function Picked({ runs, setIds }: { runs: readonly RunDetail[]; setIds: (ids: readonly string[]) => void }) {
   const [adding, setAdding] = useState(false);
   const short = shortNames(runs.map((r) => r.solver.name));
+  const glyphs = distinctGlyphs(runs.map((r) => r.glyph));
   const ids = runs.map((r) => r.id);
   return (
     <div className="pick">
       {runs.map((r, i) => (
         <span className="chip" key={r.id}>
           <span className="let">{letters[i]}</span>
-          <SolverGlyph index={r.glyph} size={15} />
+          <SolverGlyph index={glyphs[i] ?? 0} size={15} />
           {short(r.solver.name)}
           <IconButton label={`Remove ${r.solver.name}`} onClick={() => setIds(ids.filter((id) => id !== r.id))}>×</IconButton>
         </span>
@@ -124,12 +127,14 @@ function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDet
   const levelNoise = first.ladder[level] ?? noise;
   const trials = useQueries({ queries: runs.map((r) => listTrialsQueryOptions(r.id, level)) });
   const short = shortNames(runs.map((r) => r.solver.name));
-  const contenders: Contender[] = runs.map((r, i) => ({ id: r.id, letter: letters[i] ?? '', glyph: r.glyph, name: r.solver.name, short: short(r.solver.name), trials: trials[i]?.data ?? [] }));
+  const glyphs = distinctGlyphs(runs.map((r) => r.glyph));
+  const contenders: Contender[] = runs.map((r, i) => ({ id: r.id, letter: letters[i] ?? '', glyph: glyphs[i] ?? 0, name: r.solver.name, short: short(r.solver.name), trials: trials[i]?.data ?? [] }));
   const ready = trials.every((t) => t.data);
   const draws = sharedDraws(contenders);
   const wanted = Number(drawText) - 1;
   const draw = drawText !== '' && draws.includes(wanted) ? wanted : middleDraw(contenders[0]);
   const comparisons = ready ? pairs(contenders, l2Key) : [];
+  const needed = fewestPairs(Math.max(1, (contenders.length * (contenders.length - 1)) / 2));
   const failed = trials.find((t) => t.isError);
   return (
     <>
@@ -141,9 +146,10 @@ function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDet
         </div>
         <div>
           <FactList facts={[
-            ['Draws', `${plural(draws.length, 'shared seed')}, paired`],
-            ['Test', "signed ranks, Holm's correction"],
-            ['Separable', 'corrected p below 0.05'],
+            ['Blocks', `${plural(draws.length, 'draw')} of this phantom, paired by seed`],
+            ['Test', <Link key="test" to={paths.referenceEntry('statistics', 'wilcoxon-holm')}>signed ranks, Holm's correction</Link>],
+            ['Separable', draws.length < needed ? `needs at least ${needed} draws` : 'corrected p below 0.05'],
+            ['Holds for', <span key="holds">this phantom; <Link to={`${paths.bench(first.bench.slug)}#who-beats-whom`}>over phantoms</Link></span>],
             ['Draw shown', draw === null ? '\u2013' : <InlineSelect key="draw" label="Draw shown" value={String(draw + 1)} onChange={setDraw}>{draws.map((d) => <option key={d} value={d + 1}>{d + 1}</option>)}</InlineSelect>],
           ]} />
         </div>
@@ -151,7 +157,7 @@ function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDet
       {draw === null ? null : <Pictures runs={runs} first={first} contenders={contenders} level={level} draw={draw} />}
       <section className="sec two" aria-label="Paired draws and stability">
         <div className="sheet">
-          <div className="sh cap"><h2 style={{ fontSize: 18 }}>Paired draws</h2><p>ratio of relative L2, same seed</p></div>
+          <div className="sh cap"><h2 style={{ fontSize: 18 }}>Paired draws, within this phantom</h2><p>ratio of relative L2, same seed</p></div>
           <div style={{ padding: '6px 16px 12px' }}>{comparisons.length ? <PairedDraws contenders={contenders} comparisons={comparisons} metric={l2Key} /> : <p className="sm">Two runs with shared draws are needed.</p>}</div>
         </div>
         <div className="sheet">
@@ -159,8 +165,8 @@ function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDet
           <div style={{ padding: '6px 14px 8px 6px' }}>
             <StabilityChart
               label="Relative L2 error against noise, one curve for each run" levels={first.ladder} noise={noise} floor={first.modelErrorFloor} trivial={first.trivial[l2Key] ?? 1} height={narrow ? 300 : 316} labelRoom={narrow ? 140 : 152} terse
-              curves={runs.map((r) => ({
-                id: r.id, glyph: r.glyph, name: r.solver.name, short: short(r.solver.name), breakdown: r.sheets[l2Key]?.breakdown?.value ?? null,
+              curves={runs.map((r, i) => ({
+                id: r.id, glyph: glyphs[i] ?? 0, name: r.solver.name, short: short(r.solver.name), breakdown: r.sheets[l2Key]?.breakdown?.value ?? null,
                 points: (r.table[l2Key] ?? []).map((row) => ({ level: row.level, median: row.median, low: row.p05, high: row.p95 })),
               }))}
             />

@@ -1,4 +1,5 @@
 import { useMemo, useState } from 'react';
+import { Link } from 'react-router-dom';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { ColourBar } from '../../../components/images/colour-bar';
 import { BodyImage } from '../../../components/images/body-image';
@@ -14,9 +15,10 @@ import { Segmented } from '../../../components/ui/segmented';
 import { solverLook } from '../../../components/ui/solver-glyph';
 import { formatError, formatPercent } from '../../../lib/format';
 import { noiseReferenceWord, unitAfter } from '../../../lib/problem-words';
+import { paths } from '../../../lib/paths';
 import { usePhone } from '../../../lib/use-media';
 import { useRunImage, type DrawChoice } from '../api/get-run-image';
-import { fixedGroup, nearestLevel, standardGroups, tableGroups } from '../model/error-table';
+import { fixedGroup, nearestLevel, openGroups, tableGroups } from '../model/error-table';
 import { runPictures, type RunPictures } from '../model/pictures';
 import { Disagreement } from './disagreement';
 import { ErrorLevels, ErrorTable } from './error-table';
@@ -61,7 +63,7 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
   const image = useRunImage(run.id, level, choice);
   const pictures = useMemo(() => (image.data ? runPictures(image.data.image, image.data.truth, run.grid, run.background, locked) : null), [image.data, run.grid, run.background, locked]);
   const cutAngle = useMemo(() => cutThroughContrast(pictures, run.background), [pictures, run.background]);
-  const [shown, setShown] = useState<ReadonlySet<string>>(standardGroups);
+  const [shown, setShown] = useState<ReadonlySet<string>>(() => openGroups(run));
   const [anchor, setAnchor] = useState('');
   const [inspected, setInspected] = useState<ReadonlySet<InspectedPart>>(new Set());
   const inspect = (part: InspectedPart, seen: boolean) => setInspected((old) => { const next = new Set(old); if (seen) next.add(part); else next.delete(part); return next; });
@@ -89,14 +91,14 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
         <section>
           <div className="sh">
             <h2>Error table</h2>
-            <p>
-              <span className="only-d">{run.draws} draws a level. Corner mark: worst draw beyond 3 sd. <span className="kd" />below the model-error floor. </span>
+            <div className="et-head">
+              <p className="only-d">{run.draws} draws a level. Corner mark: worst draw beyond 3 sd. <span className="kd" />below the model-error floor.</p>
               <ColumnChooser columns={tableGroups(run).filter((group) => group.key !== fixedGroup).map((group) => ({ key: group.key, name: group.name }))} shown={shown} onChange={setShown} />
-            </p>
+            </div>
           </div>
           {phone ? <ErrorLevels {...table} /> : <ErrorTable {...table} />}
           <p className="sm" style={{ marginTop: 7 }}>
-            Relative errors are over the norm of truth minus background, so the trivial reconstruction has 1. Noise relative to {noiseReferenceWord(run.noiseReference)}{run.problem.family === 'electrical-impedance' ? `; ${run.dataKind} data` : ''}.
+            Relative errors are over the norm of truth minus background, so the trivial reconstruction has 1. Bias and variance are of the image over the draws of a level, squared over the same norm; their sum is the mean squared relative L2 (<Link to={paths.referenceEntry('statistics', 'bias-variance')}>definition</Link>). Noise relative to {noiseReferenceWord(run.noiseReference)}{run.problem.family === 'electrical-impedance' ? `; ${run.dataKind} data` : ''}.
           </p>
         </section>
         {run.may.review ? (
