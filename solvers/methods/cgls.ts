@@ -1,4 +1,7 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { Method, StopReason } from '../core/types';
+import { sumOfSquares } from '../core/vector';
+import { goesByAction, operatorSystem, stoppedByAction, type ActionIteration, type OperatorSystem } from './operator-system';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
 import { makeReconstructor } from './reconstructor';
@@ -69,6 +72,35 @@ export function cglsInCoefficients(s: Float64Array, c: Float64Array, outside: nu
   return { z, iterations: limit, stop: 'maxIterations', residual };
 }
 
+/** The same by the action of A on data y. */
+export function cglsByAction(system: OperatorSystem, y: Float64Array): ActionIteration {
+  const z = new Float64Array(system.unknowns);
+  const residual = Float64Array.from(y);
+  const product = new Float64Array(y.length);
+  const gradient = new Float64Array(z.length);
+  system.applyAdjoint(residual, gradient);
+  const direction = Float64Array.from(gradient);
+  let gamma = sumOfSquares(gradient);
+  const start = gamma;
+  return {
+    z,
+    residual,
+    advance() {
+      if (gamma === 0) return false;
+      system.apply(direction, product);
+      const step = gamma / sumOfSquares(product);
+      for (let j = 0; j < z.length; j++) z[j] += step * direction[j];
+      for (let i = 0; i < y.length; i++) residual[i] -= step * product[i];
+      system.applyAdjoint(residual, gradient);
+      const nextGamma = sumOfSquares(gradient);
+      const ratio = nextGamma / gamma;
+      for (let j = 0; j < z.length; j++) direction[j] = gradient[j] + ratio * direction[j];
+      gamma = nextGamma;
+      return nextGamma > 1e-28 * start;
+    },
+  };
+}
+
 /** Conjugate gradients for least squares, regularised by stopping early. */
 const method: Method<ParametersOf<typeof specs>> = {
   key: 'cgls',
@@ -82,12 +114,16 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
+  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Steps', symbol: 'k', default: 8, minimum: 1, maximum: 1000, help: 'Number of steps.' }),
   prepare(problem, parameters, rule) {
     const { penalty, largestIteration } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
+    if (goesByAction(problem)) {
+      const byAction = operatorSystem(problem, penalty);
+      return stoppedByAction(byAction, setting, largestIteration, (y) => cglsByAction(byAction, y));
+    }
     const system = spectralSystem(problem, penalty);
     return makeReconstructor((data, noise, context) => {
       const frame = frameSpectrum(system, data);

@@ -1,5 +1,7 @@
+import { familyKeys } from '../../shared/domain/families';
 import { exp, expm1 } from '../core/math';
 import type { Method } from '../core/types';
+import { explicitLimit } from './explicit-limit';
 import { filterReconstructor } from './filter-reconstructor';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
@@ -34,9 +36,10 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: filterRules },
+  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: filterRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'number', label: 'Alpha', symbol: '\\alpha/\\sigma_1', default: 0.003, minimum: 1e-10, maximum: 10, scale: 'log', help: 'As a share of the largest singular value of the problem in standard form.' }),
+  unfit: explicitLimit,
   prepare(problem, parameters, rule) {
     const { penalty, smallestAlpha } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);

@@ -1,5 +1,7 @@
+import { familyKeys } from '../../shared/domain/families';
 import { compileExpression, type CompiledExpression } from '../core/expression';
 import type { Method } from '../core/types';
+import { explicitLimit } from './explicit-limit';
 import { filterReconstructor } from './filter-reconstructor';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
@@ -62,9 +64,10 @@ const method: Method<ParametersOf<typeof specs>> = {
   sources: [{ short: 'Engl, Hanke, Neubauer 1996', full: 'H. W. Engl, M. Hanke, A. Neubauer: Regularization of Inverse Problems. Kluwer, 1996 (section 4.1: what a filter must satisfy).', fromMemory: true }],
   parameters: schema,
   fields,
-  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: filterRules },
+  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: filterRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'number', label: 'Alpha', symbol: '\\alpha/\\sigma_1', default: 0.001, minimum: 1e-10, maximum: 10, scale: 'log', help: 'The a of the formula: a share of the largest singular value.' }),
+  unfit: explicitLimit,
   prepare(problem, parameters, rule) {
     const { filter, penalty, smallestAlpha } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);

@@ -1,4 +1,6 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { Method } from '../core/types';
+import { goesByAction, largestSingularValue, operatorSystem, stoppedByAction, type ActionIteration, type OperatorSystem } from './operator-system';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
 import { spectralSystem } from './spectral-system';
@@ -11,7 +13,33 @@ const specs = {
 } as const;
 const { schema, fields } = defineParameters(specs);
 
-/** Richardson iteration on the normal equations, in the coordinates of the singular vectors. */
+/** By the action of A on data y. */
+export function landweberByAction(system: OperatorSystem, relaxation: number, y: Float64Array): ActionIteration {
+  const sigma = largestSingularValue(system);
+  const step = relaxation / (sigma * sigma);
+  const z = new Float64Array(system.unknowns);
+  const residual = Float64Array.from(y);
+  const gradient = new Float64Array(z.length);
+  const model = new Float64Array(y.length);
+  return {
+    z,
+    residual,
+    advance() {
+      let moved = false;
+      system.applyAdjoint(residual, gradient);
+      for (let j = 0; j < z.length; j++) {
+        const next = z[j] + step * gradient[j];
+        if (next !== z[j]) moved = true;
+        z[j] = next;
+      }
+      system.apply(z, model);
+      for (let i = 0; i < y.length; i++) residual[i] = y[i] - model[i];
+      return moved;
+    },
+  };
+}
+
+/** Richardson iteration on the normal equations, in the coordinates of the singular vectors or by the action of the derivative. */
 const method: Method<ParametersOf<typeof specs>> = {
   key: 'landweber',
   name: 'Landweber iteration',
@@ -24,12 +52,16 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: stoppingRules },
+  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: stoppingRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Steps', symbol: 'k', default: 500, minimum: 1, maximum: 20000, help: 'Number of steps.' }),
   prepare(problem, parameters, rule) {
     const { penalty, relaxation, largestIteration } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
+    if (goesByAction(problem)) {
+      const byAction = operatorSystem(problem, penalty);
+      return stoppedByAction(byAction, setting, largestIteration, (y) => landweberByAction(byAction, relaxation, y));
+    }
     const system = spectralSystem(problem, penalty);
     const s = system.singularValues;
     const step = relaxation / (s[0] * s[0]);

@@ -1,5 +1,7 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { Method } from '../core/types';
 import { norm2 } from '../core/vector';
+import { goesByAction, operatorSystem, stoppedByAction, type ActionIteration, type OperatorSystem } from './operator-system';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
 import { spectralSystem } from './spectral-system';
@@ -52,6 +54,57 @@ function bidiagonalisation(s: Float64Array, c: Float64Array, outside: number): C
   };
 }
 
+/** The same by the action of A on data y; the residual is that of the recursion. */
+export function lsqrByAction(system: OperatorSystem, y: Float64Array): ActionIteration {
+  const { dataSize: m, unknowns: n } = system;
+  const z = new Float64Array(n);
+  const u = Float64Array.from(y);
+  const v = new Float64Array(n);
+  const product = new Float64Array(m);
+  const back = new Float64Array(n);
+  const residual = Float64Array.from(y);
+  // A w, so that the residual follows every step of z.
+  const image = new Float64Array(m);
+  let beta = normalise(u);
+  system.applyAdjoint(u, v);
+  let alpha = normalise(v);
+  const w = Float64Array.from(v);
+  const first = alpha * beta;
+  let phi = beta;
+  let rho = alpha;
+  system.apply(v, product);
+  image.set(product);
+  return {
+    z,
+    residual,
+    advance() {
+      if (alpha === 0) return false;
+      for (let i = 0; i < m; i++) u[i] = product[i] - alpha * u[i];
+      beta = normalise(u);
+      system.applyAdjoint(u, back);
+      for (let j = 0; j < n; j++) v[j] = back[j] - beta * v[j];
+      alpha = normalise(v);
+      const whole = Math.sqrt(rho * rho + beta * beta);
+      const cosine = rho / whole;
+      const sine = beta / whole;
+      const theta = sine * alpha;
+      const step = (cosine * phi) / whole;
+      system.apply(v, product);
+      for (let j = 0; j < n; j++) {
+        z[j] += step * w[j];
+        w[j] = v[j] - (theta / whole) * w[j];
+      }
+      for (let i = 0; i < m; i++) {
+        residual[i] -= step * image[i];
+        image[i] = product[i] - (theta / whole) * image[i];
+      }
+      rho = -cosine * alpha;
+      phi *= sine;
+      return phi * alpha * Math.abs(cosine) > 1e-14 * first;
+    },
+  };
+}
+
 /** Scales to norm 1 in place and returns the norm; a zero vector stays. */
 function normalise(a: Float64Array): number {
   const size = norm2(a);
@@ -71,12 +124,16 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: stoppingRules },
+  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: stoppingRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Steps', symbol: 'k', default: 8, minimum: 1, maximum: 20000, help: 'Number of steps.' }),
   prepare(problem, parameters, rule) {
     const { penalty, largestIteration } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
+    if (goesByAction(problem)) {
+      const byAction = operatorSystem(problem, penalty);
+      return stoppedByAction(byAction, setting, largestIteration, (y) => lsqrByAction(byAction, y));
+    }
     const system = spectralSystem(problem, penalty);
     return stoppedReconstructor(system, setting, largestIteration, (frame) => bidiagonalisation(system.singularValues, frame.coefficients, frame.outside));
   },

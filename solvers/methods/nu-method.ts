@@ -1,4 +1,6 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { Method } from '../core/types';
+import { goesByAction, largestSingularValue, operatorSystem, stoppedByAction, type ActionIteration, type OperatorSystem } from './operator-system';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
 import { spectralSystem } from './spectral-system';
@@ -11,7 +13,45 @@ const specs = {
 } as const;
 const { schema, fields } = defineParameters(specs);
 
-/** Semi-iterative method whose residual polynomials are Jacobi polynomials, in the coordinates of the singular vectors. */
+/** Factors of step k: of the last change, and of the gradient, with `scale` = 1 / sigma_1^2. At k = 1 the memory term vanishes, and omega is (4 nu + 2) / (4 nu + 1). */
+function stepFactors(k: number, nu: number, scale: number): { memory: number; step: number } {
+  const common = (k + 2 * nu - 1) * (2 * k + 4 * nu - 1);
+  return {
+    memory: k === 1 ? 0 : ((k - 1) * (2 * k - 3) * (2 * k + 2 * nu - 1)) / (common * (2 * k + 2 * nu - 3)),
+    step: (scale * 4 * (2 * k + 2 * nu - 1) * (k + nu - 1)) / common,
+  };
+}
+
+/** By the action of A on data y. */
+export function nuMethodByAction(system: OperatorSystem, nu: number, y: Float64Array): ActionIteration {
+  const sigma = largestSingularValue(system);
+  const scale = 1 / (sigma * sigma);
+  const z = new Float64Array(system.unknowns);
+  const last = new Float64Array(z.length);
+  const residual = Float64Array.from(y);
+  const gradient = new Float64Array(z.length);
+  const model = new Float64Array(y.length);
+  return {
+    z,
+    residual,
+    advance(k) {
+      const { memory, step } = stepFactors(k, nu, scale);
+      let moved = false;
+      system.applyAdjoint(residual, gradient);
+      for (let j = 0; j < z.length; j++) {
+        const next = z[j] + memory * (z[j] - last[j]) + step * gradient[j];
+        if (next !== z[j]) moved = true;
+        last[j] = z[j];
+        z[j] = next;
+      }
+      system.apply(z, model);
+      for (let i = 0; i < y.length; i++) residual[i] = y[i] - model[i];
+      return moved;
+    },
+  };
+}
+
+/** Semi-iterative method whose residual polynomials are Jacobi polynomials, in the coordinates of the singular vectors or by the action of the derivative. */
 const method: Method<ParametersOf<typeof specs>> = {
   key: 'nu-method',
   name: 'Nu-method',
@@ -24,12 +64,16 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: stoppingRules },
+  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: stoppingRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Steps', symbol: 'k', default: 40, minimum: 1, maximum: 20000, help: 'Number of steps.' }),
   prepare(problem, parameters, rule) {
     const { penalty, nu, largestIteration } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
+    if (goesByAction(problem)) {
+      const byAction = operatorSystem(problem, penalty);
+      return stoppedByAction(byAction, setting, largestIteration, (y) => nuMethodByAction(byAction, nu, y));
+    }
     const system = spectralSystem(problem, penalty);
     const s = system.singularValues;
     const scale = 1 / (s[0] * s[0]);
@@ -39,10 +83,7 @@ const method: Method<ParametersOf<typeof specs>> = {
       return {
         z,
         advance(k) {
-          // At k = 1 the memory term vanishes, and omega is (4 nu + 2) / (4 nu + 1).
-          const common = (k + 2 * nu - 1) * (2 * k + 4 * nu - 1);
-          const memory = k === 1 ? 0 : ((k - 1) * (2 * k - 3) * (2 * k + 2 * nu - 1)) / (common * (2 * k + 2 * nu - 3));
-          const step = (scale * 4 * (2 * k + 2 * nu - 1) * (k + nu - 1)) / common;
+          const { memory, step } = stepFactors(k, nu, scale);
           let moved = false;
           for (let i = 0; i < s.length; i++) {
             const next = z[i] + memory * (z[i] - last[i]) + step * s[i] * (c[i] - s[i] * z[i]);

@@ -1,4 +1,8 @@
-import type { Method, StopReason } from '../core/types';
+import { familyKeys } from '../../shared/domain/families';
+import type { ForwardProblem, Method, Reconstructor, RuleSetting, StopReason } from '../core/types';
+import { constraintChoices, lowestChange, type ConstraintKey } from './constraint';
+import { goesByAction, operatorSystem, stoppedByAction } from './operator-system';
+import { absoluteSums } from './row-action';
 import { requireVector, sumOfSquares } from '../core/vector';
 import { matmulTransposed } from '../linear-algebra/matrix-product';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
@@ -7,9 +11,42 @@ import { derivativeAtBackground, stoppingRules } from './stopped-iteration';
 
 const specs = {
   relaxation: { kind: 'number', label: 'Relaxation', symbol: '\\omega', default: 1, minimum: 0.01, maximum: 1.99, scale: 'linear', help: 'Multiple of the weighted step. It converges below 2.' },
+  constraint: { kind: 'choice', label: 'Constraint', default: 'none', choices: constraintChoices, help: 'What is known of the values: raised to 0 after every step where they are not to be negative.' },
   largestIteration: { kind: 'integer', label: 'Most iterations', default: 2000, minimum: 1, maximum: 20000, help: 'The iteration ends here even if the discrepancy is not reached.' },
 } as const;
 const { schema, fields } = defineParameters(specs);
+
+/** Steps in the unknowns, by the action of the derivative. */
+function sirtByAction(problem: ForwardProblem, options: { relaxation: number; constraint: ConstraintKey; largestIteration: number }, setting: RuleSetting): Reconstructor {
+  const system = operatorSystem(problem, 'none');
+  const { row, column } = absoluteSums(system.derivative);
+  const lowest = lowestChange(problem, options.constraint);
+  const n = problem.unknowns;
+  return stoppedByAction(system, setting, options.largestIteration, (y) => {
+    const z = new Float64Array(n);
+    const residual = Float64Array.from(y);
+    const weighted = new Float64Array(y.length);
+    const back = new Float64Array(n);
+    return {
+      z,
+      residual,
+      advance() {
+        for (let i = 0; i < y.length; i++) weighted[i] = row[i] > 0 ? (options.relaxation * residual[i]) / row[i] : 0;
+        system.applyAdjoint(weighted, back);
+        let moved = false;
+        for (let j = 0; j < n; j++) {
+          let next = column[j] > 0 ? z[j] + back[j] / column[j] : z[j];
+          if (lowest && next < lowest[j]) next = lowest[j];
+          if (next !== z[j]) moved = true;
+          z[j] = next;
+        }
+        system.apply(z, weighted);
+        for (let i = 0; i < y.length; i++) residual[i] = y[i] - weighted[i];
+        return moved;
+      },
+    };
+  });
+}
 
 /** Simultaneous iterative reconstruction with weights by row and column sums. */
 const method: Method<ParametersOf<typeof specs>> = {
@@ -24,12 +61,13 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: stoppingRules },
+  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: stoppingRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Steps', symbol: 'k', default: 100, minimum: 1, maximum: 20000, help: 'Number of steps.' }),
   prepare(problem, parameters, rule) {
-    const { relaxation, largestIteration } = readParameters(method.name, schema, parameters);
+    const { relaxation, constraint, largestIteration } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
+    if (constraint !== 'none' || goesByAction(problem)) return sirtByAction(problem, { relaxation, constraint, largestIteration }, setting);
     const { dataSize: m, unknowns: n } = problem;
     const background = problem.background();
     const jacobian = derivativeAtBackground(problem);

@@ -1,5 +1,7 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { ForwardProblem, Method } from '../core/types';
 import { analyse, factorise } from '../linear-algebra/sparse-cholesky';
+import { explicitLimit } from './explicit-limit';
 import { defineMethod, defineParameters, readParameters, type ParametersOf } from './parameters';
 import { gramLower } from './penalty';
 import { makeReconstructor } from './reconstructor';
@@ -67,9 +69,10 @@ const method: Method<ParametersOf<typeof specs>> = {
   parameters: schema,
   fields,
   // Linear in the data at a given noise, but not homogeneous: it is told the noise, and doubling both changes the weight of the prior.
-  capabilities: { linear: false, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: [] },
+  capabilities: { linear: false, nonlinear: false, direct: true, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: [] },
   defaultRule: null,
   fixedValue: null,
+  unfit: explicitLimit,
   prepare(problem, parameters, rule) {
     const { deviation, correlationLength, smallestAlpha } = readParameters(method.name, schema, parameters);
     if (rule) throw new RangeError(`${method.name} has no parameter-choice rule.`);

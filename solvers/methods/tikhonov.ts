@@ -1,6 +1,8 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { Method } from '../core/types';
 import { getParameterRule } from '../parameter-choice/registry';
 import { tikhonovResidual } from '../parameter-choice/spectral-data';
+import { explicitLimit } from './explicit-limit';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
 import { makeReconstructor } from './reconstructor';
@@ -28,9 +30,10 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'gcv', 'l-curve', 'quasi-optimality', 'cumulative-periodogram', 'fixed'] },
+  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'gcv', 'l-curve', 'quasi-optimality', 'cumulative-periodogram', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'number', label: 'Alpha', symbol: '\\alpha/\\sigma_1', default: 0.001, minimum: 1e-10, maximum: 10, scale: 'log', help: 'As a share of the largest singular value of the problem in standard form.' }),
+  unfit: explicitLimit,
   prepare(problem, parameters, rule) {
     const { penalty, smallestAlpha } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);

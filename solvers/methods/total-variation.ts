@@ -1,12 +1,18 @@
-import type { ForwardProblem, Method, StopReason } from '../core/types';
-import { norm2 } from '../core/vector';
+import { familyKeys } from '../../shared/domain/families';
+import type { ForwardProblem, Method, Reconstructor, RuleSetting, StopReason } from '../core/types';
+import { norm2, requireVector } from '../core/vector';
+import { constraintChoices, lowestChange, type ConstraintKey } from './constraint';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { ballMultiplier, coordinatesIn, addExpansion } from './data-term';
+import { goesByAction, largestSingularValue, operatorSystem } from './operator-system';
 import { makeReconstructor } from './reconstructor';
 import { frameSpectrum, isZeroFrame, spectralSystem, type SpectralSystem } from './spectral-system';
+import { changeShare, primalDualByAction, type Jumps } from './total-variation-by-action';
+import { unknownScale } from './unknown-scale';
 
 const specs = {
   largestIteration: { kind: 'integer', label: 'Iterations', default: 250, minimum: 10, maximum: 5000, help: 'Primal-dual steps. The iteration ends earlier when the image no longer changes.' },
+  constraint: { kind: 'choice', label: 'Constraint', default: 'none', choices: constraintChoices, help: 'What is known of the values in advance.' },
   smallestLambda: {
     kind: 'number', label: 'Smallest lambda', symbol: '\\lambda_{\\min}', default: 1e-10, minimum: 1e-14, maximum: 1, scale: 'log',
     help: 'The discrepancy principle does not go below this weight (same scale as a fixed lambda). It guards against a model error that no image can fit.',
@@ -16,16 +22,6 @@ const { schema, fields } = defineParameters(specs);
 
 /** Share of sigma_1 below which the data term does not act: those components are noise at every level of a ladder. */
 const spectrumShare = 1e-5;
-/** The iteration ends when a step changes the image by less than this share of it. */
-const changeShare = 2e-5;
-
-interface Jumps {
-  readonly plus: Int32Array;
-  readonly minus: Int32Array;
-  readonly lengths: Float64Array;
-  /** Bound of ||D||^2: twice the largest number of interfaces of a cell (Gershgorin). */
-  readonly normSquare: number;
-}
 
 function readJumps(problem: ForwardProblem): Jumps {
   const { matrix, lengths } = problem.jumps();
@@ -131,6 +127,27 @@ function primalDual(system: SpectralSystem, jumps: Jumps, task: Task): Outcome {
   return { h, lambda: mu > 0 ? tau / mu : null, iterations, stop, residual };
 }
 
+/** The same minimiser by the action of the derivative. */
+function reconstructorByAction(problem: ForwardProblem, options: { largestIteration: number; constraint: ConstraintKey; smallestLambda: number }, setting: RuleSetting): Reconstructor {
+  const system = operatorSystem(problem, 'none');
+  const { dataSize, offset, background } = system;
+  const jumps = readJumps(problem);
+  const unit = lambdaUnit(problem, largestSingularValue(operatorSystem(problem, 'identity')));
+  const lowest = lowestChange(problem, options.constraint);
+  return makeReconstructor((data, noise, context) => {
+    requireVector(data, dataSize, 'The data frame');
+    const y = data.map((value, i) => value - offset[i]);
+    const whole = norm2(y);
+    const radius = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : 0;
+    if (whole === 0 || whole <= radius)
+      return { x: Float64Array.from(background), parameter: null, iterations: 0, forwardSolves: 0, stop: radius > 0 ? 'discrepancy' : 'converged', residualNorm: whole };
+    const goal = setting.key === 'fixed' ? { lambda: setting.value * unit } : { radius, lambdaMin: options.smallestLambda * unit };
+    const { h, lambda, iterations, stop, residualNorm } = primalDualByAction(system, jumps, { y, goal, lowest, limit: options.largestIteration, aborted: context?.aborted });
+    for (let j = 0; j < h.length; j++) h[j] += background[j];
+    return { x: h, parameter: lambda === null ? null : lambda / unit, iterations, forwardSolves: 0, stop, residualNorm };
+  });
+}
+
 /** Total variation of the change, on the linearised problem. */
 const method: Method<ParametersOf<typeof specs>> = {
   key: 'total-variation',
@@ -144,21 +161,22 @@ const method: Method<ParametersOf<typeof specs>> = {
   ],
   parameters: schema,
   fields,
-  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
+  capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', {
     kind: 'number', label: 'Lambda', symbol: '\\lambda', default: 1e-6, minimum: 1e-14, maximum: 100, scale: 'log',
     help: 'Weight of the total variation, as a share of the squared largest singular value (unknowns weighted by area) times the mean background times the body radius.',
   }),
   prepare(problem, parameters, rule) {
-    const { largestIteration, smallestLambda } = readParameters(method.name, schema, parameters);
+    const { largestIteration, constraint, smallestLambda } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
+    if (constraint !== 'none' || goesByAction(problem)) return reconstructorByAction(problem, { largestIteration, constraint, smallestLambda }, setting);
     const system = spectralSystem(problem, 'none');
     const jumps = readJumps(problem);
     const s = system.singularValues;
     let used = 0;
     while (used < s.length && s[used] >= spectrumShare * s[0]) used++;
-    const unit = lambdaUnit(problem);
+    const unit = lambdaUnit(problem, spectralSystem(problem, 'identity').singularValues[0]);
     return makeReconstructor((data, noise, context) => {
       const frame = frameSpectrum(system, data);
       let outside = frame.outside;
@@ -177,12 +195,8 @@ const method: Method<ParametersOf<typeof specs>> = {
 };
 
 /** sigma_1^2 (area-weighted) x mean |background| x body radius: makes lambda a pure number, the same for every current and size. */
-function lambdaUnit(problem: ForwardProblem): number {
-  const largest = spectralSystem(problem, 'identity').singularValues[0];
-  const background = problem.background();
-  let sum = 0;
-  for (let j = 0; j < background.length; j++) sum += Math.abs(background[j]);
-  return largest * largest * (sum > 0 ? sum / background.length : 1) * problem.grid.bodyRadius;
+function lambdaUnit(problem: ForwardProblem, largest: number): number {
+  return largest * largest * unknownScale(problem) * problem.grid.bodyRadius;
 }
 
 export const totalVariationMethod = defineMethod(method);

@@ -1,3 +1,4 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { Method } from '../core/types';
 import { requireVector } from '../core/vector';
 import { defineMethod, defineParameters, readParameters } from './parameters';
@@ -15,7 +16,7 @@ const method: Method<Record<string, never>> = {
   sources: [{ short: 'Definition of this registry', full: 'The baseline of every chart here: the background alone.' }],
   parameters: schema,
   fields,
-  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: [] },
+  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: [] },
   defaultRule: null,
   fixedValue: null,
   prepare(problem, parameters, rule) {

@@ -1,6 +1,8 @@
+import { familyKeys } from '../../shared/domain/families';
 import type { Method } from '../core/types';
 import { getParameterRule } from '../parameter-choice/registry';
 import { truncationResiduals } from '../parameter-choice/spectral-data';
+import { explicitLimit } from './explicit-limit';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { makeReconstructor } from './reconstructor';
 import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystem } from './spectral-system';
@@ -20,9 +22,10 @@ const method: Method<ParametersOf<typeof specs>> = {
   sources: [{ short: 'Hansen 1987', full: 'P. C. Hansen: The truncated SVD as a method for regularization. BIT 27 (1987) 534-553.', fromMemory: true }],
   parameters: schema,
   fields,
-  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'gcv', 'l-curve', 'quasi-optimality', 'cumulative-periodogram', 'fixed'] },
+  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'gcv', 'l-curve', 'quasi-optimality', 'cumulative-periodogram', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Index', symbol: 'k', default: 20, minimum: 1, maximum: 2000, help: 'Number of singular values kept.' }),
+  unfit: explicitLimit,
   prepare(problem, parameters, rule) {
     const { largestIndex } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);
