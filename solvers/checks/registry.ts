@@ -3,29 +3,38 @@ import type { ForwardProblem } from '../core/types';
 import { adjointCheck } from './adjoint';
 import { batchEqualsSingleCheck } from './batch-equals-single';
 import { beatsTrivialCheck } from './beats-trivial';
+import { blurredEdgeCheck } from './blurred-edge';
 import type { Check } from './check';
 import { closedFormCheck } from './closed-form';
+import { constantKeptCheck } from './constant-kept';
 import { dataShapeCheck } from './data-shape';
 import { discretisationsDifferCheck } from './discretisations-differ';
+import { equationClosedFormCheck } from './equation-closed-form';
 import { homogeneityCheck, type HomogeneityInput } from './homogeneity';
+import { kernelSizeCheck } from './kernel-size';
 import { meshConvergenceCheck } from './mesh-convergence';
+import { equationNodesDifferCheck, pictureNodesDifferCheck } from './nodes-differ';
 import { noiseCalibrationCheck } from './noise-calibration';
 import { noiseNormalityCheck } from './noise-normality';
 import type { FamilyKey } from '../../shared/domain/families';
 import type { DefinitionOf } from '../../shared/domain/phantom-definition';
 import type { PhantomCheckContext } from './phantom-check';
+import { quadratureConvergenceCheck } from './quadrature-convergence';
 import { recomputationCheck } from './recomputation';
 import { reciprocityCheck } from './reciprocity';
 import type { RunCheckContext } from './run-check';
+import { samplingConvergenceCheck } from './sampling-convergence';
 import { shapesInBodyCheck } from './shapes-in-body';
+import { simulatorsAgreeCheck } from './simulators-agree';
+import { singularValueDecayCheck } from './singular-value-decay';
 import { taylorCheck } from './taylor';
 
 /** Of a simulated phantom, by its family. */
 export const phantomChecks: { readonly [F in FamilyKey]: readonly Check<PhantomCheckContext<DefinitionOf<F>>>[] } = {
-  'electrical-impedance': [dataShapeCheck, reciprocityCheck, meshConvergenceCheck, closedFormCheck, discretisationsDifferCheck, shapesInBodyCheck],
+  'electrical-impedance': [dataShapeCheck, reciprocityCheck, meshConvergenceCheck, simulatorsAgreeCheck, closedFormCheck, discretisationsDifferCheck, shapesInBodyCheck],
   'x-ray': [dataShapeCheck],
-  'integral-equation': [dataShapeCheck],
-  deblurring: [dataShapeCheck],
+  'integral-equation': [dataShapeCheck, equationClosedFormCheck, quadratureConvergenceCheck, equationNodesDifferCheck, kernelSizeCheck, singularValueDecayCheck],
+  deblurring: [dataShapeCheck, constantKeptCheck, blurredEdgeCheck, samplingConvergenceCheck, pictureNodesDifferCheck],
 };
 
 /** Of the model that inverts. */

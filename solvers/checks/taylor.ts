@@ -22,7 +22,8 @@ export const taylorCheck: Check<ForwardProblem> = {
     const x = problem.background();
     const direction = new Float64Array(x.length);
     for (let i = 0; i < x.length; i++) {
-      x[i] *= 0.8 + 0.4 * random.nextUniform();
+      // A background of zero has no scale: any will do.
+      x[i] = (x[i] === 0 ? 1 : x[i]) * (0.8 + 0.4 * random.nextUniform());
       direction[i] = x[i] * (2 * random.nextUniform() - 1);
     }
     const data = problem.evaluate(x);
