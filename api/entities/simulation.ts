@@ -21,7 +21,7 @@ export const SimulationEntity = defineEntity({
     /** Null until the slower checks ran. */
     checks: p.json().$type<CheckResultWire[]>().nullable(),
     seconds: p.float().$type<number>(),
-    /** Little-endian Float64: voltages with the target, of the background, and the clean data in the phantom's data kind. */
+    /** Little-endian Float64: data with the target, of the background, and the clean data in the phantom's data kind. */
     frame: p.blob().lazy().hidden(),
     reference: p.blob().lazy().hidden(),
     clean: p.blob().lazy().hidden(),

@@ -88,7 +88,8 @@ function summarise(definition: PhantomDefinition, problem: InversionProblem, sim
     noiseReference,
     dataUnit: layout.unit,
     patterns,
-    valuesPerPattern: frame.length / patterns,
+    // Listed currents may leave other pairs undriven in every pattern: the longest then.
+    valuesPerPattern: layout.valueNames.reduce((most, names) => Math.max(most, names.length), 0),
     patternNames: [...layout.groupNames],
     channelNames: layout.valueNames.map((names) => [...names]),
     noiseScale: simulated.noiseScale,

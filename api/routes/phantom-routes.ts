@@ -134,7 +134,7 @@ const readSimulation = defineRoute({
 
 const readFile = defineRawRoute({
   method: 'get', path: '/phantoms/:slug/versions/:n/files/:name', tag,
-  summary: 'A file of a version: definition.json, truth.npy, voltages.csv, noisy-frames.npy, frames.csv or README.txt',
+  summary: 'A file of a version: definition.json, truth.npy, voltages.csv (data.csv outside electrical impedance), noisy-frames.npy, frames.csv or README.txt',
   permission: 'content.read', params: fileParamsSchema,
   produces: ['application/json', 'application/octet-stream', 'text/csv', 'text/plain'],
   load: ({ em, params }) => findPhantomVersion(em, params.slug, params.n),

@@ -15,7 +15,7 @@ import { useToast } from '../components/ui/toast';
 import { getCitationQueryOptions, getRankingQueryOptions, getSeriesQueryOptions, listBenchesQueryOptions } from '../features/benches/api/get-bench';
 import { AnswerList } from '../features/benches/components/answer-list';
 import { BenchTile } from '../features/benches/components/bench-tile';
-import { advise, budgetOf, budgets, careOf, cares } from '../features/benches/model/advice';
+import { advise, budgetOf, budgets, careOf, caresFor } from '../features/benches/model/advice';
 import { toCurves } from '../features/benches/model/curves';
 import { metricView } from '../features/benches/model/metric-view';
 import { recentVerdictsQueryOptions } from '../features/site/api/search';
@@ -73,7 +73,8 @@ function FindAMethod({ bench, open, onBench }: { bench: BenchSummary; open: read
   const settled = Number(useSettled(noise).toPrecision(4));
   const [careKey, setCare] = useParam('care', 'overall');
   const [budgetKey, setBudget] = useParam('within', 'any');
-  const care = careOf(careKey);
+  const offered = caresFor(bench.family);
+  const care = offered.find((c) => c.key === careKey) ?? careOf('overall');
   const budget = budgetOf(budgetKey);
   const view = metricView(care.metric);
   const ranking = useQuery(getRankingQueryOptions(bench.slug, settled, care.metric));
@@ -98,10 +99,10 @@ function FindAMethod({ bench, open, onBench }: { bench: BenchSummary; open: read
           </select>{' '}
           at about <output>{formatPercent(noise)}</output> noise, care most about{' '}
           <select aria-label="What matters" value={care.key} onChange={(e) => setCare(e.target.value)}>
-            {cares.map((c) => <option key={c.key} value={c.key}>{c.words}</option>)}
+            {offered.map((c) => <option key={c.key} value={c.key}>{c.words}</option>)}
           </select>{' '}
           and can wait{' '}
-          <select aria-label="Time for one image" value={budget.key} onChange={(e) => setBudget(e.target.value)}>
+          <select aria-label="Time for one reconstruction" value={budget.key} onChange={(e) => setBudget(e.target.value)}>
             {budgets.map((b) => <option key={b.key} value={b.key}>{b.words}</option>)}
           </select>
           .
@@ -119,7 +120,7 @@ function FindAMethod({ bench, open, onBench }: { bench: BenchSummary; open: read
         <div className="sh" style={{ marginBottom: 4 }}><h2 style={{ fontSize: 18 }}>Read at {formatPercent(noise)}</h2><p>{care.by}</p></div>
         {ranking.isError ? <ErrorPanel error={ranking.error} what="The reading" onRetry={() => void ranking.refetch()} /> : null}
         {ranking.data && rows.length ? <AnswerList rows={rows} ranking={ranking.data} care={care.key} noise={settled} ladderEnd={ladderEnd} /> : null}
-        {ranking.data?.belowFloor ? <p className="sm"><span className="kd" />Below the model-error floor no ranks are given: the gap between the two meshes is larger than this noise.</p> : null}
+        {ranking.data?.belowFloor ? <p className="sm"><span className="kd" />Below the model-error floor no ranks are given: the gap between the simulating and the inverting model is larger than this noise.</p> : null}
         {ranking.data && rows.length === 0 ? (
           <p className="sm" style={{ padding: '12px 0' }}>{ranking.data.rows.length === 0 ? 'No run of this bench has finished yet.' : 'No method here meets this at your noise. Allow more time, or lower the noise by averaging frames.'}</p>
         ) : null}

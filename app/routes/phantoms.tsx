@@ -12,19 +12,22 @@ import { useSession } from '../features/session/api/session';
 import { plural } from '../lib/format';
 import { paths } from '../lib/paths';
 import { useSettled } from '../lib/use-settled';
+import { familyKeys, familyNames } from '../../shared/domain/families';
 import { phantomStates } from '../../shared/domain/states';
 
 export default function PhantomsRoute() {
   const [q, setQ] = useParam('q');
+  const [family, setFamily] = useParam('family');
   const [state, setState] = useParam('state');
   const [group, setGroup] = useParam('group');
   const [sort, setSort] = useParam('sort', '-date');
   const known = phantomStates.find((s) => s === state);
+  const kind = familyKeys.find((f) => f === family);
   const session = useSession();
-  const list = usePhantoms({ q: useSettled(q.trim(), 250) || undefined, state: known, group: group || undefined });
+  const list = usePhantoms({ q: useSettled(q.trim(), 250) || undefined, family: kind, state: known, group: group || undefined });
   const groups = [...new Map((list.data?.items ?? []).map((p) => [p.group.slug, p.group])).values()];
-  const filtered = q !== '' || known !== undefined || group !== '';
-  const clear = () => { setQ(null); setState(null); setGroup(null); };
+  const filtered = q !== '' || kind !== undefined || known !== undefined || group !== '';
+  const clear = () => { setQ(null); setFamily(null); setState(null); setGroup(null); };
   const sorted = phantomSorts.includes(sort.replace(/^-/, '')) ? sort : '-date';
   return (
     <Page title="Phantoms" className="page-list">
@@ -33,6 +36,10 @@ export default function PhantomsRoute() {
       </PageHead>
       <form className="filters" role="search" aria-label="Filter phantoms" onSubmit={(e) => e.preventDefault()}>
         <Field label="Name or identifier" type="search" maxLength={100} value={q} onChange={(e) => setQ(e.target.value)} />
+        <Select label="Problem family" value={kind ?? ''} onChange={(e) => setFamily(e.target.value)}>
+          <option value="">all families</option>
+          {familyKeys.map((f) => <option key={f} value={f}>{familyNames[f].name}</option>)}
+        </Select>
         <Select label="State" value={known ?? ''} onChange={(e) => setState(e.target.value)}>
           <option value="">any that you may read</option>
           {phantomStates.map((s) => <option key={s} value={s}>{stateWord(s).toLowerCase()}</option>)}

@@ -4,7 +4,7 @@ export const supError = defineMetric({
   key: 'sup-error',
   name: 'Sup error (L∞) and its place',
   short: 'L∞',
-  unit: 'S/m',
+  unit: 'that of the unknown',
   better: 'lower',
   formula: 'E_\\infty = \\max_i |\\hat x_i - x_i|',
   summary: 'The largest error at any pixel, in the unit of the unknown, with the place where it is attained.',

@@ -262,7 +262,7 @@ describe.sequential('the main job', () => {
       await page.getByRole('textbox', { name: 'Name in the table' }).fill(name);
       await page.getByRole('radiogroup', { name: 'Method family' }).getByRole('radio', { name: family }).check({ force: true });
       await fill();
-      await page.getByLabel('The forward model uses a mesh of its own, not that of the data').check();
+      await page.getByLabel('The forward model uses a discretisation of its own, not that of the data').check();
       await button(page, 'Submit for validation').click();
       await page.waitForURL(/\/runs\//);
       runs[name] = pathOf(page);

@@ -2,6 +2,7 @@ import type { EntityManager } from '@mikro-orm/sqlite';
 import { metrics } from '../../../solvers/metrics/registry';
 import { toCsv, type CsvCell } from '../../http/csv.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
+import { metricUnit } from '../figures/metric-unit.ts';
 import { levelTable } from '../figures/run-tables.ts';
 import { commentLines } from '../files/comment-lines.ts';
 import { percent, rankBench, type RankedOver } from './bench-ranking.ts';
@@ -15,6 +16,7 @@ export async function rankingCsv(em: EntityManager, input: { readonly bench: Loa
   const { bench, noise, over } = input;
   const metric = requireMetric(input.metric);
   const ranking = await rankBench(em, { bench, noise, metric: metric.key, over });
+  const unit = metricUnit(metric, bench.family);
   const keys = metrics.map(({ key }) => key);
   const header = [
     'rank', 'tie_group', 'mean_rank', 'solver', 'solver_id', 'version', 'group', 'median', 'p05', 'p95', ...keys.map((key) => `median_${key}`), 'breakdown', 'breakdown_note', 'exponent',
@@ -27,7 +29,7 @@ export async function rankingCsv(em: EntityManager, input: { readonly bench: Loa
   return (
     preamble(input.bench, input.now) +
     commentLines([
-      `Ranked by ${metric.name} (${metric.key}${metric.unit === '' ? '' : `, ${metric.unit}`}) at a noise of ${percent(noise)}${ranking.interpolated ? `, interpolated in log-log; tests are of the nearest level, ${percent(ranking.level)}` : ''}`,
+      `Ranked by ${metric.name} (${metric.key}${unit === '' ? '' : `, ${unit}`}) at a noise of ${percent(noise)}${ranking.interpolated ? `, interpolated in log-log; tests are of the nearest level, ${percent(ranking.level)}` : ''}`,
       `${ranking.test.name}: ${ranking.test.words} A block is a phantom: ${over === 'ladder' ? `the mean over ${ranking.levels.map(percent).join(', ')} of its medians over draws` : `its median over draws at ${percent(ranking.level)}`}`,
       `The trivial reconstruction (the background alone) scores ${ranking.trivial ?? 'no figure'}`,
     ]) +
@@ -47,7 +49,9 @@ export async function tableCsv(em: EntityManager, input: { readonly bench: Loade
       const on = phantoms[index];
       if (!run || !on || run.state !== 'finished') continue;
       const figures = await loadRunFigures(em, run);
-      for (const { key, unit } of metrics) {
+      for (const metric of metrics) {
+        const { key } = metric;
+        const unit = metricUnit(metric, bench.family);
         for (const level of levelTable(figures, bench.ladder, key)) {
           rows.push([
             solver.name, solver.id, version.n, on.version.name, on.phantom.id, on.version.n, run.id, run.review, run.reservation ?? null, key, unit, level.level, level.count, level.median, level.p05, level.p95, level.mean,

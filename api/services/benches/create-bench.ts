@@ -93,7 +93,7 @@ async function checkTerms(em: EntityManager, terms: Terms, groupIds: readonly st
   if (families.size > 1) issues.push({ path: ['phantoms'], message: 'All phantoms of a bench belong to one problem family.' });
   const references = new Set(versions.map((version) => version.definition.noiseReference));
   if (references.size > 1) {
-    issues.push({ path: ['phantoms'], message: 'All phantoms of a bench state their noise relative to the same thing: the voltages or the difference signal.' });
+    issues.push({ path: ['phantoms'], message: 'All phantoms of a bench state their noise relative to the same thing: the voltages, the difference signal or the data.' });
   }
   if (issues.length > 0) throw new AppError('validation-failed', 'Correct the fields named in issues.', issues);
   return versions;

@@ -83,7 +83,8 @@ async function toVersionDetail(em: EntityManager, phantom: LoadedPhantom, versio
     name,
     description,
     licence,
-    definition: { ...definition, truth: maySeeTruth(reader.actor, phantom, version, reader.now) ? definition.truth : null },
+    // Family, geometry and truth stay together; the spread loses that.
+    definition: { ...definition, truth: maySeeTruth(reader.actor, phantom, version, reader.now) ? definition.truth : null } as PhantomVersionDetail['definition'],
     frames: frames ? { sha256: frames.sha256, frames: frames.frames, valuesPerFrame: frames.valuesPerFrame, origin: frames.origin, instrument: frames.instrument } : null,
     checks: simulation?.checks ?? [],
     modelErrorFloor: simulation?.modelErrorFloor ?? null,

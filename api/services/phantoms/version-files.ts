@@ -4,6 +4,7 @@ import { defaultDraws, defaultLadder } from '../../../shared/domain/ladder';
 import type { Actor } from '../../../shared/domain/permissions.ts';
 import { AppError } from '../../../shared/errors.ts';
 import { slugSchema } from '../../../shared/contracts/common';
+import { familyNames } from '../../../shared/domain/families';
 import { problemGrid } from '../../../solvers/problems/registry';
 import { deriveDrawKey } from '../../../solvers/core/random';
 import { gaussianNoise } from '../../../solvers/noise/gaussian';
@@ -18,10 +19,9 @@ import { loadSimulationArrays } from '../simulations/show-simulation.ts';
 import { simulate } from '../simulations/simulate.ts';
 import type { PhantomAt } from './find-phantom.ts';
 import { maySeeTruth } from './phantom-access.ts';
+import { dataFileName, versionFileNames, type VersionFileName } from './version-file-names.ts';
 import { versionReadme } from './version-readme.ts';
 
-export const versionFileNames = ['definition.json', 'truth.npy', 'voltages.csv', 'noisy-frames.npy', 'frames.csv', 'README.txt'] as const;
-export type VersionFileName = (typeof versionFileNames)[number];
 export const fileParamsSchema = z.strictObject({
   slug: slugSchema,
   n: z.coerce.number<string>().int().min(1).max(9999),
@@ -56,7 +56,9 @@ export async function versionFile(em: EntityManager, jobs: Jobs, request: FileRe
     case 'README.txt':
       return reply('text/plain; charset=utf-8', versionReadme({ ...request, simulation, seeTruth, seed: downloadSeed }));
     case 'voltages.csv':
-      return reply('text/csv; charset=utf-8', await voltagesCsv(request, simulation));
+    case 'data.csv':
+      if (name !== dataFileName(version.definition.family)) throw new AppError('not-found', `The clean data of this version are in ${dataFileName(version.definition.family)}.`);
+      return reply('text/csv; charset=utf-8', await dataCsv(request, simulation));
     case 'noisy-frames.npy':
       return reply('application/octet-stream', await noisyFrames(request, simulation));
     case 'truth.npy':
@@ -70,9 +72,12 @@ const heading = ({ phantom, version }: PhantomAt): string[] => [
   ...caution,
 ];
 
-async function voltagesCsv(at: PhantomAt, simulation: Simulation): Promise<string> {
+async function dataCsv(at: PhantomAt, simulation: Simulation): Promise<string> {
   const { frame, reference, clean } = await loadSimulationArrays(simulation);
   const { patternNames, channelNames, dataUnit, dataKind } = simulation.summary;
+  const { family } = at.version.definition;
+  const impedance = family === 'electrical-impedance';
+  const behind = dataUnit ? `_${dataUnit}` : '';
   const rows: (string | number)[][] = [];
   patternNames.forEach((pattern, p) =>
     (channelNames[p] ?? []).forEach((channel) => {
@@ -81,18 +86,19 @@ async function voltagesCsv(at: PhantomAt, simulation: Simulation): Promise<strin
     }),
   );
   return withComments(
-    [...heading(at), `Values in ${dataUnit}, without noise. 'clean' is what a run adds noise to: ${dataKind} data.`],
-    toCsv(['pattern', 'drive', 'measure', `reference_${dataUnit}`, `frame_${dataUnit}`, `clean_${dataUnit}`], rows),
+    [...heading(at), `${dataUnit ? `Values in ${dataUnit}` : `Values of the ${familyNames[family].dataName}`}, without noise. 'clean' is what a run adds noise to${impedance ? `: ${dataKind} data` : ''}.`],
+    toCsv([...(impedance ? ['pattern', 'drive', 'measure'] : ['number', familyNames[family].groupNoun, 'value']), `reference${behind}`, `frame${behind}`, `clean${behind}`], rows),
   );
 }
 
 async function framesCsv(em: EntityManager, at: PhantomAt): Promise<string> {
   const { frames } = at.version;
+  const unit = familyNames[at.version.definition.family].dataUnit;
   if (!frames) throw new AppError('not-found', 'This version has no measured frames.');
   const values = await loadArrayValues(em, { kind: 'frames', sha256: frames.sha256, rows: frames.frames, cols: frames.valuesPerFrame });
   const lines: string[] = [];
   for (let i = 0; i < frames.frames; i++) lines.push(values.subarray(i * frames.valuesPerFrame, (i + 1) * frames.valuesPerFrame).join(','));
-  return withComments([...heading(at), 'One row a frame, the reference frame first; V.'], `${lines.join('\r\n')}\r\n`);
+  return withComments([...heading(at), `One row a frame, the reference frame first${unit ? `; ${unit}` : ''}.`], `${lines.join('\r\n')}\r\n`);
 }
 
 /** Levels x draws x values: the draws that a bench with the seed 0 and the default ladder would use. */

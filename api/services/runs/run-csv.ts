@@ -3,6 +3,7 @@ import { metrics } from '../../../solvers/metrics/registry';
 import { toCsv, type CsvCell } from '../../http/csv.ts';
 import { caution } from '../benches/caution.ts';
 import { noiseWords } from '../benches/noise-words.ts';
+import { metricUnit } from '../figures/metric-unit.ts';
 import { levelTable } from '../figures/run-tables.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
 import { commentLines } from '../files/comment-lines.ts';
@@ -14,9 +15,10 @@ const momentRows = [['bias-squared', 'biasSquared'], ['variance', 'variance'], [
 /** The error table, one row a level and metric; bias and variance after them. */
 export async function runTableCsv(em: EntityManager, run: LoadedRun): Promise<string> {
   const figures = await loadRunFigures(em, run);
+  const { family } = run.phantomVersion.$.definition;
   const rows = metrics.flatMap((metric) =>
     levelTable(figures, run.ladder, metric.key).map((row): CsvCell[] => [
-      metric.key, metric.unit, row.level, row.count, row.median, row.p05, row.p95, row.mean, row.sd, row.worst, row.worstDraw === null ? null : row.worstDraw + 1, run.trivial?.[metric.key] ?? null,
+      metric.key, metricUnit(metric, family), row.level, row.count, row.median, row.p05, row.p95, row.mean, row.sd, row.worst, row.worstDraw === null ? null : row.worstDraw + 1, run.trivial?.[metric.key] ?? null,
     ]),
   );
   // One figure a level, not one a draw: it stands where the mean does.

@@ -25,6 +25,10 @@ const links = [
   { to: paths.reference(), name: 'Reference' },
 ] as const;
 
+const isUnder = (to: string, pathname: string): boolean => pathname === to || (to !== '/' && pathname.startsWith(`${to}/`));
+/** The checks and the interface are part of the reference, at addresses of their own. */
+const isHere = (to: string, pathname: string): boolean => (to === paths.reference() ? [to, paths.verification(), paths.apiReference()] : [to]).some((p) => isUnder(p, pathname));
+
 export function Masthead(props: MastheadProps) {
   const { handle, reviewCount, search } = props;
   const location = useLocation();
@@ -35,10 +39,10 @@ export function Masthead(props: MastheadProps) {
   const noise = new URLSearchParams(location.search).get('noise');
   const keep = (to: string): string => (noise ? `${to}?noise=${encodeURIComponent(noise)}` : to);
   const nav = links.map((l) => (
-    <NavLink key={l.to} to={keep(l.to)} end={l.to === '/'}>
+    <Link key={l.to} to={keep(l.to)} aria-current={isHere(l.to, location.pathname) ? 'page' : undefined}>
       {l.name}
       {l.name === 'Reviews' && reviewCount ? <span className="ct"><span className="vh">, waiting: </span>{reviewCount}</span> : null}
-    </NavLink>
+    </Link>
   ));
   const account = handle === null
     ? <Link className="who" to={paths.signIn(location.pathname + location.search)}>Sign in</Link>

@@ -81,7 +81,7 @@ export function BelowFloor({ noise, floor }: { noise: number; floor: number }) {
   return (
     <div className="sheet pad" style={{ fontSize: 13.5 }}>
       <span className="kd" />
-      <b>{formatPercent(noise)} is below the model-error floor of {formatPercent(floor)}.</b> The gap between the two meshes is larger than this noise, so the errors here say little about it.
+      <b>{formatPercent(noise)} is below the model-error floor of {formatPercent(floor)}.</b> The gap between the simulating and the inverting model is larger than this noise, so the errors here say little about it.
     </div>
   );
 }

@@ -1,6 +1,7 @@
 import { Plot } from '../../../components/charts/plot';
 import { Marker, solverLook } from '../../../components/ui/solver-glyph';
 import { formatError } from '../../../lib/format';
+import { unitAfter } from '../../../lib/problem-words';
 import { usePhone } from '../../../lib/use-media';
 import { l2Key, supKey, type Contender } from '../model/comparison';
 
@@ -36,8 +37,8 @@ export function NormScatter({ contenders, readings, pair, unit }: ScatterProps) 
     <Plot
       label="L-infinity against relative L2, all draws of each method" height={phone ? 300 : 330} margin={{ left: 44, right: 12, top: 12, bottom: 38 }}
       x={{ low: Math.min(...l2s) * 0.8, high: Math.max(...l2s) * 1.7, log: true, label: 'relative L2', ticks: ticksIn(Math.min(...l2s) * 0.8, Math.max(...l2s) * 1.7) }}
-      y={{ low: Math.min(...sups) * 0.8, high: Math.max(...sups) * 2, log: true, label: `L∞, ${unit}`, ticks: ticksIn(Math.min(...sups) * 0.8, Math.max(...sups) * 2) }}
-      table={{ caption: 'Both norms by draw', columns: ['Method, draw', 'Relative L2', `L∞, ${unit}`], rows: points.map((p) => [`${p.c.name}, draw ${p.draw + 1}`, formatError(p.l2), formatError(p.sup)]) }}
+      y={{ low: Math.min(...sups) * 0.8, high: Math.max(...sups) * 2, log: true, label: `L∞${unitAfter(unit)}`, ticks: ticksIn(Math.min(...sups) * 0.8, Math.max(...sups) * 2) }}
+      table={{ caption: 'Both norms by draw', columns: ['Method, draw', 'Relative L2', `L∞${unitAfter(unit)}`], rows: points.map((p) => [`${p.c.name}, draw ${p.draw + 1}`, formatError(p.l2), formatError(p.sup)]) }}
     >
       {(a) => {
         const bracket = near && far ? Math.min(a.right - 112, Math.max(...readings.map((r) => a.x(r.l2))) + 44) : 0;

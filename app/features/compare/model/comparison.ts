@@ -3,6 +3,7 @@ import { lossOf } from '../../../../solvers/statistics/loss';
 import { comparePairs, type PairComparison } from '../../../../solvers/statistics/pairs';
 import { median, quantileOfSorted, sortedCopy } from '../../../../solvers/statistics/quantiles';
 import { formatError, formatPercent } from '../../../lib/format';
+import { withUnit } from '../../../lib/problem-words';
 
 /** One run in the comparison. */
 export interface Contender {
@@ -104,8 +105,8 @@ export function spokenVerdict(contenders: readonly Contender[], noise: number, f
   if (least && most && before && least !== most && least.sup > 0) {
     sentences.push(
       most.sup / before.sup > 1.4
-        ? `In L∞ ${most.c.name} stands apart: its median largest error is ${formatError(most.sup)} ${unit}, ${(most.sup / least.sup).toFixed(1)} times that of ${least.c.name}.`
-        : `In L∞ they stay together, ${formatError(least.sup)} to ${formatError(most.sup)} ${unit}.`,
+        ? `In L∞ ${most.c.name} stands apart: its median largest error is ${withUnit(formatError(most.sup), unit)}, ${(most.sup / least.sup).toFixed(1)} times that of ${least.c.name}.`
+        : `In L∞ they stay together, ${formatError(least.sup)} to ${withUnit(formatError(most.sup), unit)}.`,
     );
   }
   if (floor !== null && noise < floor) sentences.push(`This noise is below the model-error floor of ${formatPercent(floor)}, so the gap between the meshes decides.`);

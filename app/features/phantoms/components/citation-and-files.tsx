@@ -3,6 +3,7 @@ import { useToast } from '../../../components/ui/toast';
 import { apiUrl } from '../../../lib/api-client';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import type { Simulation } from '../../../../shared/contracts/simulations';
+import { familyNames } from '../../../../shared/domain/families';
 import { defaultDraws, defaultLadder } from '../../../../shared/domain/ladder';
 import { versionPath } from '../api/get-phantom';
 import { licenceNames } from '../model/licences';
@@ -34,11 +35,13 @@ interface VersionFile {
 
 /** What the server makes of a version; the truth only where the reader may see it. */
 function versionFiles(detail: PhantomDetail, simulation: Simulation | undefined): VersionFile[] {
+  const impedance = detail.family === 'electrical-impedance';
+  const { dataName, valueName, valueUnit } = familyNames[detail.family];
   const rows = simulation ? `${simulation.frame.length} rows` : 'one row a value';
   return [
-    ...(detail.version.definition.truth ? [{ file: 'truth.npy', name: simulation ? `Ground truth on a ${simulation.grid.nx} grid` : 'Ground truth', line: 'array file, double' }] : []),
-    { file: 'definition.json', name: 'Definition with electrodes', line: 'text, lengths in m, conductivity in S/m' },
-    { file: 'voltages.csv', name: 'Noise-free voltages', line: `table, ${rows}` },
+    ...(detail.version.definition.truth ? [{ file: 'truth.npy', name: simulation ? simulation.grid.ny === 1 ? `Ground truth on ${simulation.grid.nx} cells` : `Ground truth on a ${simulation.grid.nx} grid` : 'Ground truth', line: 'array file, double' }] : []),
+    { file: 'definition.json', name: impedance ? 'Definition with electrodes' : 'Definition', line: `text, lengths in m${valueUnit ? `, ${valueName} in ${valueUnit}` : ''}` },
+    { file: impedance ? 'voltages.csv' : 'data.csv', name: `Noise-free ${dataName}`, line: `table, ${rows}` },
     { file: 'noisy-frames.npy', name: `All ${defaultLadder.length * defaultDraws} noisy frames`, line: 'array file, double; level, draw, value' },
     ...(detail.version.frames ? [{ file: 'frames.csv', name: 'Measured frames', line: `table, ${detail.version.frames.frames} rows` }] : []),
     { file: 'README.txt', name: 'Read me', line: 'how to read the files, licence, caution' },

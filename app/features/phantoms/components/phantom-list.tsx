@@ -4,12 +4,13 @@ import { StateMark } from '../../../components/ui/state-mark';
 import { formatCount, formatShortDate } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
 import type { PhantomSummary } from '../../../../shared/contracts/phantoms';
+import { familyNames } from '../../../../shared/domain/families';
 import { TruthThumbnail } from './truth-thumbnail';
 
 const columns: readonly DataColumn<PhantomSummary>[] = [
   { key: 'truth', head: <span className="vh">Truth</span>, width: 64, cell: (p) => <TruthThumbnail slug={p.slug} version={p.current.n} sealed={p.current.sealed} label={`Truth of ${p.name}`} /> },
   { key: 'name', head: 'Phantom', sortBy: (p) => p.name.toLowerCase(), cell: (p) => <span className="nm2"><Link to={paths.phantom(p.slug)}>{p.name}</Link><em><span className="mono">{p.id}</span>, version {p.current.n}</em></span> },
-  { key: 'line', head: 'Measured with', sortBy: (p) => p.line, cell: (p) => p.line },
+  { key: 'line', head: 'Problem', sortBy: (p) => `${familyNames[p.family].name} ${p.line}`, cell: (p) => <span className="nm2 pl">{familyNames[p.family].name}<em>{p.line}</em></span> },
   { key: 'group', head: 'Group', sortBy: (p) => p.group.name.toLowerCase(), cell: (p) => <Link to={paths.group(p.group.slug)}>{p.group.name}</Link> },
   { key: 'runs', head: 'Runs', numeric: true, sortBy: (p) => p.current.runs, cell: (p) => formatCount(p.current.runs) },
   { key: 'date', head: 'Published', numeric: true, sortBy: (p) => p.current.publishedAt ?? p.current.createdAt, cell: (p) => formatShortDate(p.current.publishedAt ?? p.current.createdAt) },

@@ -15,5 +15,5 @@ function OpenTruth({ slug, version, size, label }: { slug: string; version: numb
   const { data } = usePhantomSimulation(slug, version);
   const picture = useMemo(() => (data?.truth ? toPicture(decodeArray(data.truth), data.grid) : null), [data]);
   const [low, high] = valueScale(data?.truthRange ?? [0, 1], data?.background ?? 0.5);
-  return <span className="thumb" style={{ width: size, display: 'block' }}><BodyImage label={label} picture={picture} low={low} high={high} /></span>;
+  return <span className="thumb" style={{ width: size, display: 'block' }}><BodyImage label={label} picture={picture} body={data?.grid.body} low={low} high={high} /></span>;
 }

@@ -3,6 +3,7 @@ import { useMemo } from 'react';
 import type { Picture } from '../../../components/images/pixels';
 import { parseDecimal, shiftDecimal } from '../../../lib/decimal';
 import { decodeArray } from '../../../../shared/domain/array-encoding';
+import type { compileExpression } from '../../../../solvers/core/expression';
 import { equationOf } from '../../../../solvers/problems/integral-equation/equations';
 import type { FamilyKey } from '../../../../shared/domain/families';
 import { getArrayQueryOptions } from '../api/get-phantom';
@@ -27,7 +28,7 @@ interface LineText {
   readonly interval: readonly [number, number];
   readonly solution: EquationSetting;
 }
-type Compile = (typeof import('../../../../solvers/core/expression'))['compileExpression'];
+type Compile = typeof compileExpression;
 
 /** The expression in x and y, refusing values that the family does not admit. */
 function planeExpression(compile: Compile, expression: string, family: FamilyKey): (x: number, y: number) => number {

@@ -19,7 +19,8 @@ export function RunLook({ run, noise, onSkip }: { run: WaitingRun; noise: number
   const level = nearestLevel(ladder, noise);
   const image = useRunImage(run.id, level, 'median');
   const pictures = useMemo(() => (image.data && detail.data ? runPictures(image.data.image, image.data.truth, detail.data.grid, detail.data.background, null) : null), [image.data, detail.data]);
-  const scale = { low: pictures?.low ?? 0, high: pictures?.high ?? 1 };
+  const body = detail.data?.grid.body;
+  const scale = { low: pictures?.low ?? 0, high: pictures?.high ?? 1, body };
   return (
     <div className="peek-in">
       <div className="peek-head">
@@ -29,8 +30,8 @@ export function RunLook({ run, noise, onSkip }: { run: WaitingRun; noise: number
       </div>
       <div className="g">
         <figure>{pictures && !pictures.truth ? <SealedDisc size="100%" /> : <BodyImage label="Truth" picture={pictures?.truth ?? null} {...scale} />}<figcaption>{pictures && !pictures.truth ? 'sealed' : 'truth'}</figcaption></figure>
-        <figure><BodyImage label="Reconstruction" picture={pictures?.image ?? null} {...scale} /><figcaption>at {formatPercent(ladder[level] ?? noise)}</figcaption></figure>
-        <figure>{pictures && !pictures.truth ? <SealedDisc size="100%" /> : <BodyImage label="Difference" picture={pictures?.difference ?? null} map="diverging" low={-(pictures?.limit ?? 1)} high={pictures?.limit ?? 1} />}<figcaption>difference</figcaption></figure>
+        <figure><BodyImage label="Reconstruction" picture={pictures?.image ?? null} under={pictures?.truth} {...scale} /><figcaption>at {formatPercent(ladder[level] ?? noise)}</figcaption></figure>
+        <figure>{pictures && !pictures.truth ? <SealedDisc size="100%" /> : <BodyImage label="Difference" picture={pictures?.difference ?? null} map="diverging" body={body} low={-(pictures?.limit ?? 1)} high={pictures?.limit ?? 1} />}<figcaption>difference</figcaption></figure>
       </div>
       <div className="peek-chart">
         <SmallStability

@@ -14,7 +14,7 @@ export function RecomputePanel({ run }: { run: RunDetail }) {
   const server = newest.data;
   const busy = server?.state === 'queued' || server?.state === 'running';
   return (
-    <div className="sheet" style={{ marginTop: 14 }}>
+    <div className="sheet recompute" style={{ marginTop: 14 }}>
       <div className="pad">
         <h3>Recompute</h3>
         <p className="sm">The same code, seed and data give the same bits on every machine. No account is needed here.</p>

@@ -84,7 +84,7 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
     <>
       <h2 className="vh">Images</h2>
       {image.isError ? <ErrorPanel error={image.error} what="This image" onRetry={() => void image.refetch()} /> : null}
-      {image.isPending ? <Loading label="Fetching the images" disc /> : phone ? <PhoneImage run={run} pictures={pictures} cutAngle={cutAngle} cut={cut} position={trial?.metrics['position-error'] ?? null} l2={trial?.metrics['relative-l2-error'] ?? null} words={trial ? `draw ${trial.draw + 1}${drawWords ? `, ${drawWords}` : ''}` : ''} /> : <Triptych run={run} trial={trial} drawWords={drawWords} pictures={pictures} cutAngle={cutAngle} cut={cut} />}
+      {image.isPending ? <Loading label="Fetching the images" disc /> : phone ? <PhoneImage run={run} pictures={pictures} cutAngle={cutAngle} cut={cut} position={trial?.metrics[line ? 'peak-position-error' : 'position-error'] ?? null} l2={trial?.metrics['relative-l2-error'] ?? null} words={trial ? `draw ${trial.draw + 1}${drawWords ? `, ${drawWords}` : ''}` : ''} /> : <Triptych run={run} trial={trial} drawWords={drawWords} pictures={pictures} cutAngle={cutAngle} cut={cut} />}
       <ImageTools run={run} level={level} draw={choice} onDraw={(value) => setDraw(value === 'median' || value === 'worst' ? value : String(value + 1))} locked={locked} onLock={(value) => setLock(value === null ? null : String(value))} limit={pictures?.limit ?? null} stored={image.data?.stored ?? true} />
       <RunCertificate run={run} />
       <div className={run.may.review ? 'sec run-columns' : 'sec'}>
@@ -151,7 +151,7 @@ function PhoneImage({ run, pictures, cutAngle, cut, position, l2, words }: { run
         <div className="mrd">
           <div><b className="tn">{formatError(l2)}</b><span>relative L2</span></div>
           <div><b className="tn">{formatError(pictures.spot?.value)}</b><span>L∞{unitAfter(run.unit)}</span></div>
-          <div><b className="tn">{position === null ? '–' : (100 * position).toFixed(1)}</b><span>position, % of radius</span></div>
+          <div><b className="tn">{position === null ? '–' : (100 * position).toFixed(1)}</b><span>{isLine(run.grid) ? 'peak, % of half length' : 'position, % of radius'}</span></div>
         </div>
       </section>
       <section className="sheet pad" style={{ marginTop: 14 }}><div className="sh"><h3>{isLine(run.grid) ? 'Truth and reconstruction' : 'Cut from A to B'}</h3></div>{cut}</section>

@@ -2,6 +2,7 @@ import type { StabilitySheetWire } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { metrics } from '../../../../solvers/metrics/registry';
 import { formatError, formatPercent, formatSeconds } from '../../../lib/format';
+import { unitAfter } from '../../../lib/problem-words';
 
 const interval = (v: { low: number; high: number } | null, print: (x: number) => string): string => (v ? `${print(v.low)} to ${print(v.high)}` : '');
 
@@ -33,7 +34,7 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
         <tbody>
           {rows.map(({ metric, sheet }) => (
             <tr key={metric.key}>
-              <th scope="row" className="row-name">{metric.short}{metric.unit ? `, ${metric.unit}` : ''}</th>
+              <th scope="row" className="row-name">{metric.short}{unitAfter(metric.key === 'sup-error' ? run.unit : metric.unit)}</th>
               <td>{sheet.model === 'power' ? <>b + C δ<sup>ν</sup></> : sheet.model === 'logarithmic' ? <>C |ln δ|<sup>−κ</sup></> : '–'}</td>
               <td className="num">{formatError(sheet.exponent?.value)}<span className="iv">{interval(sheet.exponent, formatError)}</span></td>
               <td className="num">{formatError(sheet.floor?.value)}<span className="iv">{interval(sheet.floor, formatError)}</span></td>

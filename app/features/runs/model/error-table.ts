@@ -32,12 +32,20 @@ export const standardGroups: ReadonlySet<string> = new Set(['sup-error', 'positi
 
 export const momentsGroup = 'bias-variance';
 
+/** The standard groups that have a value somewhere: a function of one variable has no position error but that of its peak. */
+export function openGroups(run: Pick<RunDetail, 'table'>): ReadonlySet<string> {
+  const known = (key: string): boolean => key === momentsGroup || (run.table[key] ?? []).some((row) => row.median !== null);
+  return new Set([...standardGroups, ...(known('position-error') ? [] : ['peak-position-error'])].filter(known));
+}
+
 /** Every metric that the run has a table for, in registry order; then bias and variance, where the run has them. */
-export function tableGroups(run: Pick<RunDetail, 'table' | 'moments'>): TableGroup[] {
+export function tableGroups(run: Pick<RunDetail, 'table' | 'moments'> & { readonly unit?: string }): TableGroup[] {
   const ofMetrics = metrics
     .filter((metric) => run.table[metric.key])
     .map((metric) => ({
       key: metric.key, name: metric.short, unit: metric.unit, scale: 1, columns: ['mean', 'worst'] as const, draws: false, digits: 'error' as const, ...standing[metric.key],
+      // In the unit of what is reconstructed.
+      ...(metric.key === 'sup-error' ? { unit: run.unit ?? '' } : {}),
     }));
   if (run.moments.every((own) => own === null)) return ofMetrics;
   return [...ofMetrics, { key: momentsGroup, name: 'Bias and variance of the image', unit: 'squares', scale: 1, columns: momentColumns, draws: false, digits: 'error' }];

@@ -1,6 +1,7 @@
 import { keepPreviousData, queryOptions, useQuery } from '@tanstack/react-query';
 import { benchDetailSchema, benchListSchema, costEstimateSchema, rankingSchema, seriesSchema } from '../../../../shared/contracts/benches';
-import { phantomDetailSchema } from '../../../../shared/contracts/phantoms';
+import { phantomDetailSchema, phantomListSchema } from '../../../../shared/contracts/phantoms';
+import type { FamilyKey } from '../../../../shared/domain/families';
 import { simulationSchema } from '../../../../shared/contracts/simulations';
 import { api } from '../../../lib/api-client';
 
@@ -30,6 +31,13 @@ export const benchRankingQueryOptions = (bench: string, noise: number) =>
   queryOptions({
     queryKey: ['benches', 'detail', bench, 'ranking', noise, 'standing'], placeholderData: keepPreviousData,
     queryFn: ({ signal }) => api.get(`/benches/${e(bench)}/ranking`, rankingSchema, { query: { noise }, signal }),
+  });
+
+/** Published phantoms of a family, newest first, for a preview without a bench. */
+export const usePublishedPhantoms = (family: FamilyKey | null) =>
+  useQuery({
+    queryKey: ['phantoms', 'list', { family, state: 'published' }], enabled: family !== null,
+    queryFn: ({ signal }) => api.get('/phantoms', phantomListSchema, { query: { family: family ?? undefined, state: 'published', limit: 100 }, signal }),
   });
 
 const versionPath = (slug: string, n: number): string => `/phantoms/${e(slug)}/versions/${n}`;

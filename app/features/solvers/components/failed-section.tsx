@@ -54,5 +54,5 @@ function FailurePicture({ failure }: { failure: Failure }) {
   const { detail, simulation } = usePreviewPhantom(slug, version);
   const phantom = useMemo(() => (detail.data && simulation.data ? previewPhantom(detail.data, simulation.data) : null), [detail.data, simulation.data]);
   const picture = useMemo(() => (image.data && phantom ? toPicture(image.data.image, phantom.grid) : null), [image.data, phantom]);
-  return <span style={{ display: 'block', width: 104 }}><BodyImage label={`Reconstruction of draw ${failure.draw + 1}`} picture={picture} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
+  return <span style={{ display: 'block', width: 104 }}><BodyImage label={`Reconstruction of draw ${failure.draw + 1}`} picture={picture} body={phantom?.grid.body} under={phantom?.truth} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
 }

@@ -33,7 +33,7 @@ export function ParameterFields({ fields, pathOf, valueOf, onChange, issueAt }: 
           );
         }
         if (field.kind === 'text') return <Field key={path} {...common} spellCheck={false} help={field.help} onChange={(e) => onChange(field.name, e.target.value)} />;
-        return <Field key={path} {...common} unit={field.unit || 'none'} inputMode="decimal" help={`${field.help} ${allowedRange(field)}`} onChange={(e) => onChange(field.name, e.target.value)} />;
+        return <Field key={path} {...common} unit={field.unit || undefined} inputMode="decimal" help={`${field.help} ${allowedRange(field)}`} onChange={(e) => onChange(field.name, e.target.value)} />;
       })}
     </>
   );

@@ -12,15 +12,18 @@ import { useSettled } from '../../../lib/use-settled';
 import { defaultLadder } from '../../../../shared/domain/ladder';
 import type { SolverDetail } from '../../../../shared/contracts/solvers';
 import { methods } from '../../../../solvers/methods/registry';
-import { useBenchChoice, useCost, useOpenBenches, useOthers, usePreviewPhantom } from '../api/bench-data';
+import { familyNames } from '../../../../shared/domain/families';
+import { useBenchChoice, useCost, useOpenBenches, useOthers } from '../api/bench-data';
 import { useSubmitSolver, type Submitted } from '../api/change-solver';
 import { capabilityWords, classesOf, methodClassNames } from '../model/method-classes';
-import { previewPhantom } from '../model/preview-data';
 import { fieldId, findMethod, forgetSolverForm, parameterPath, stepOf, type FormIssue, type SolverForm, type SolverMode } from '../model/solver-form';
 import { ParameterFields } from './parameter-fields';
 import { CostRow, PreviewPanel, usePreviewPictures } from './preview-panel';
 import { RuleChoice } from './rule-choice';
+import { PreviewOn } from './preview-on';
+import { useFit } from './use-fit';
 import { usePreview } from './use-preview';
+import { usePreviewTarget } from './use-preview-target';
 import { useSolverEditor } from './use-solver-editor';
 
 export interface SolverEditorProps {
@@ -47,17 +50,18 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
 
   const benches = useOpenBenches();
   const bench = useBenchChoice(form.bench);
-  const open = (bench.data?.phantoms ?? []).filter((p) => !p.sealed);
-  const [chosen, setChosen] = useState('');
-  const target = open.find((p) => p.slug === chosen) ?? open[0];
-  const { detail, simulation } = usePreviewPhantom(target?.slug ?? '', target?.version ?? 0);
-  const phantom = useMemo(() => (detail.data && simulation.data ? previewPhantom(detail.data, simulation.data) : null), [detail.data, simulation.data]);
+  const { families } = method.capabilities;
+  const open = useMemo(() => (form.bench ? (bench.data?.phantoms ?? []).filter((p) => !p.sealed) : null), [form.bench, bench.data]);
+  const on = usePreviewTarget(open, families);
+  const { target, phantom } = on;
   const cost = useCost(form.bench, form.method);
   const series = useOthers(form.bench, target?.slug ?? '');
   const others = useMemo(() => (series.data?.items ?? []).map((item) => item.levels.map((l) => ({ level: l.level, error: l.median }))), [series.data]);
   const levels = bench.data?.ladder ?? defaultLadder;
   const settledNoise = useSettled(noise, 160);
-  const fits = phantom === null || method.capabilities.dataKinds.includes(phantom.problem.dataKind);
+  const fit = useFit(form.bench ? (bench.data?.family ?? null) : null, form.bench ? phantom : null);
+  const unfit = fit.reasonOf(method);
+  const fits = unfit === null;
   const preview = usePreview({ phantom: fits ? phantom : null, configuration: editor.rested, noise: settledNoise, levels, seed: bench.data?.seed ?? 1 });
   const { yours } = usePreviewPictures(phantom, preview.image.data?.image);
   const l2 = preview.image.data?.metrics['relative-l2-error'];
@@ -87,8 +91,10 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
   const disabled = issues.length > 0 || !fits || submit.isPending;
   const groupName = groups.find((g) => g.slug === form.group)?.name ?? solver?.group.name;
   const at = (n: number) => ({ 'data-st': n, className: step === n ? 'stp-on' : undefined });
-  const reason = !fits ? <span style={{ color: 'var(--brick)' }}>{method.name} does not serve {phantom?.problem.dataKind} data; choose another method or bench.</span> : <Reason issues={issues} onGo={go} />;
-  const firstMethodOf = (key: string) => methods.find((m) => m.class === key)?.key ?? form.method;
+  const reason = !fits ? <span style={{ color: 'var(--brick)' }}>{unfit} Choose another method or bench.</span> : <Reason issues={issues} onGo={go} />;
+  const firstMethodOf = (key: string) => (fit.offered.find((m) => m.class === key) ?? methods.find((m) => m.class === key))?.key ?? form.method;
+  const offeredClasses = classesOf(fit.offered.includes(method) ? fit.offered : [...fit.offered, method]);
+  const algorithms = methods.filter((m) => m.class === method.class && (m === method || fit.offered.includes(m)));
 
   return frame(
     { floor: phantom?.floor ?? (bench.data ? bench.data.modelErrorFloor : null), levels },
@@ -106,9 +112,9 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
           <section {...at(1)}>
             <div><h2>Bench</h2><p>The configuration runs unchanged on every phantom of it.</p></div>
             <div className="g2">
-              <Select id={fieldId('bench')} label="Runs on" value={form.bench} help={bench.data ? `${plural(bench.data.phantomCount, 'phantom')}, ${bench.data.draws} draws at ${bench.data.ladder.length} levels.` : benches.isError ? 'Benches cannot be fetched; try again later.' : 'Or register it first and enter it later.'} onChange={(e) => change({ bench: e.target.value })}>
+              <Select id={fieldId('bench')} label="Runs on" value={form.bench} help={bench.data ? `${familyNames[bench.data.family].name}: ${plural(bench.data.phantomCount, 'phantom')}, ${bench.data.draws} draws at ${bench.data.ladder.length} levels.` : benches.isError ? 'Benches cannot be fetched; try again later.' : 'Or register it first and enter it later.'} onChange={(e) => change({ bench: e.target.value })}>
                 <option value="">no bench yet</option>
-                {(benches.data?.items ?? []).map((b) => <option key={b.slug} value={b.slug}>{b.id} {b.title}</option>)}
+                {(benches.data?.items ?? []).map((b) => <option key={b.slug} value={b.slug}>{b.id} {b.title}, {familyNames[b.family].name.toLowerCase().replace('x-ray', 'X-ray')}</option>)}
               </Select>
               {mode === 'new' ? (
                 <Field id={fieldId('name')} label="Name in the table" maxLength={80} value={form.name} error={issueAt('name')} placeholder={`${method.name}, first try`} onChange={(e) => change({ name: e.target.value })} />
@@ -127,7 +133,7 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
             <div><h2>Method</h2><p>Decides which parameters and rules apply.</p></div>
             <div>
               <div className="fam" role="radiogroup" aria-label="Method family">
-                {classesOf(methods).map((key) => (
+                {offeredClasses.map((key) => (
                   <label key={key}>
                     <input type="radio" name="class" checked={method.class === key} onChange={() => editor.chooseMethod(firstMethodOf(key))} />
                     <span><b>{methodClassNames[key].name}</b><span>{methodClassNames[key].line}</span></span>
@@ -135,9 +141,15 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
                 ))}
               </div>
               <div style={{ marginTop: 14 }}>
-                <Select id={fieldId('configuration.method')} label="Algorithm" value={form.method} error={issueAt('configuration.method')} help={`${method.summary} (${capabilityWords(method)}; ${method.sources.map((s) => s.short).join('; ')})`} onChange={(e) => editor.chooseMethod(e.target.value)}>
-                  {methods.filter((m) => m.class === method.class).map((m) => <option key={m.key} value={m.key}>{m.name}</option>)}
+                <Select id={fieldId('configuration.method')} label="Algorithm" value={form.method} error={unfit ?? issueAt('configuration.method')} help={`${method.summary} (${capabilityWords(method)}; ${method.sources.map((s) => s.short).join('; ')})`} onChange={(e) => editor.chooseMethod(e.target.value)}>
+                  {algorithms.map((m) => <option key={m.key} value={m.key}>{m.name}</option>)}
                 </Select>
+                {fit.refused.length ? (
+                  <details className="helpmore">
+                    <summary>{plural(fit.refused.length, 'method does', 'methods do')} not serve this bench</summary>
+                    <ul className="refused">{fit.refused.map(({ method: m, reason: why }) => <li key={m.key} className="sm">{why}</li>)}</ul>
+                  </details>
+                ) : null}
                 <div className="fline" tabIndex={0} role="region" aria-label="Formula of the method"><Formula tex={method.formula} label={`Formula of ${method.name}`} /></div>
               </div>
             </div>
@@ -156,22 +168,20 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
             <div><h2>Declaration</h2><p>Shown on the certificate.</p></div>
             <div className="dec">
               <Checkbox checked={form.notTuned} onChange={(e) => change({ notTuned: e.target.checked })}>No parameter was tuned on the phantoms of this bench</Checkbox>
-              <Checkbox checked={form.ownMesh} onChange={(e) => change({ ownMesh: e.target.checked })}>The forward model uses a mesh of its own, not that of the data</Checkbox>
+              <Checkbox checked={form.ownMesh} onChange={(e) => change({ ownMesh: e.target.checked })}>The forward model uses a discretisation of its own, not that of the data</Checkbox>
               <Checkbox checked={form.sourceMayBePublished} onChange={(e) => change({ sourceMayBePublished: e.target.checked })}>The source may be published with the run</Checkbox>
             </div>
           </section>
         </form>
         <aside aria-label="Live preview" data-st={6} className={step === 6 ? 'sn-pv sheet stp-on' : 'sn-pv sheet'}>
           <div className="sh"><h2 style={{ fontSize: 18 }}>Preview at {formatPercent(noise)}</h2><p>draw 1, runs in your browser</p></div>
-          {open.length > 1 ? (
-            <div className="pvon"><label className="sm" htmlFor="preview-phantom">on</label><select className="t" id="preview-phantom" value={target?.slug ?? ''} onChange={(e) => setChosen(e.target.value)}>{open.map((p) => <option key={p.slug} value={p.slug}>{p.name}</option>)}</select></div>
-          ) : null}
+          <PreviewOn id="preview" target={on} families={families} />
           {phantom && fits ? (
             <PreviewPanel phantom={phantom} preview={preview} noise={settledNoise} levels={levels} others={others} stale={editor.stale || noise !== settledNoise} />
           ) : (
             <div className="pad">
-              {simulation.isError || detail.isError ? <ErrorPanel error={simulation.error ?? detail.error} onRetry={() => void simulation.refetch()} /> : target && fits ? <Loading label="Fetching the phantom" disc /> : (
-                <p className="sm">{!fits ? `${method.name} does not serve ${phantom?.problem.dataKind} data.` : form.bench ? (bench.isPending ? 'Fetching the bench.' : 'Every phantom of this bench is sealed: there is no truth to compare with.') : 'Choose a bench: the preview reconstructs one of its phantoms.'}</p>
+              {on.error ? <ErrorPanel error={on.error} onRetry={on.retry} /> : target && fits ? <Loading label="Fetching the phantom" disc /> : (
+                <p className="sm">{unfit ?? (form.bench ? (bench.isPending ? 'Fetching the bench.' : 'Every phantom of this bench is sealed: there is no truth to compare with.') : on.family?.pending ? 'Fetching phantoms of this family.' : 'No phantom of this family is published yet. Choose a bench: the preview reconstructs one of its phantoms.')}</p>
               )}
             </div>
           )}
@@ -183,7 +193,7 @@ export function SolverEditor({ mode, solver, storageKey, initial, groups, handle
         </aside>
       </div>
       <Dock>
-        <div className="mini">{phantom ? <BodyImage label="Live reconstruction" picture={yours} low={phantom.range[0]} high={phantom.range[1]} /> : null}</div>
+        <div className="mini">{phantom ? <BodyImage label="Live reconstruction" picture={yours} body={phantom.grid.body} low={phantom.range[0]} high={phantom.range[1]} /> : null}</div>
         <div className="sm" style={{ flex: 1 }}><b style={{ color: 'var(--ink)' }} className="tn">{l2 === undefined ? 'no preview' : `L2 ${formatError(l2)}`}</b><br />at {formatPercent(noise)}, live</div>
         <Button disabled={step === 1} onClick={() => { setStep(step - 1); window.scrollTo(0, 0); }}>Back</Button>
         {step < 6 ? <Button look="primary" onClick={() => { setStep(step + 1); window.scrollTo(0, 0); }}>Next</Button> : null}

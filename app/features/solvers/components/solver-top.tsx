@@ -40,7 +40,7 @@ export function SolverTop({ solver, version, stability }: { solver: SolverDetail
             <thead><tr><th scope="col">Name</th><th scope="col" className="num">Value</th><th scope="col">Unit</th><th scope="col" className="num">Allowed</th></tr></thead>
             <tbody>
               {method.fields.map((field) => (
-                <tr key={field.name}><td title={field.help}>{field.label}</td><td className="num">{valueWords(field, version.configuration.parameters[field.name] ?? field.default)}</td><td>{field.kind === 'choice' ? '' : field.unit || 'none'}</td><td className="num mu">{allowedWords(field)}</td></tr>
+                <tr key={field.name}><td title={field.help}>{field.label}</td><td className="num">{valueWords(field, version.configuration.parameters[field.name] ?? field.default)}</td><td>{field.kind === 'choice' ? '' : field.unit}</td><td className="num mu">{allowedWords(field)}</td></tr>
               ))}
             </tbody>
           </table>
@@ -55,7 +55,7 @@ export function SolverTop({ solver, version, stability }: { solver: SolverDetail
             ['Source', method?.sources.map((s) => s.short).join('; ') ?? '–'],
             ['Capabilities', method ? capabilityWords(method) : '–'],
             ['Time each', time === undefined ? 'not measured yet' : `${formatSeconds(time)}${ratio === undefined ? '' : `, ${formatNumber(ratio, 2)} × truncated SVD`}`],
-            ['Declared', [declaration.notTuned ? 'not tuned on the phantoms' : 'tuning not excluded', declaration.ownMesh ? 'own mesh' : 'mesh not declared'].join(', ')],
+            ['Declared', [declaration.notTuned ? 'not tuned on the phantoms' : 'tuning not excluded', declaration.ownMesh ? 'own discretisation' : 'discretisation not declared'].join(', ')],
           ]}
         />
       </div>

@@ -53,5 +53,5 @@ function PhantomPicture({ item }: { item: StabilityItem }) {
 function OpenPicture({ slug, version }: { slug: string; version: number }) {
   const { detail, simulation } = usePreviewPhantom(slug, version);
   const phantom = useMemo(() => (detail.data && simulation.data ? previewPhantom(detail.data, simulation.data) : null), [detail.data, simulation.data]);
-  return <span style={{ display: 'block', width: 58 }} aria-hidden="true"><BodyImage label="" picture={phantom?.truth ?? null} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
+  return <span style={{ display: 'block', width: 58 }} aria-hidden="true"><BodyImage label="" picture={phantom?.truth ?? null} body={phantom?.grid.body} low={phantom?.range[0] ?? 0} high={phantom?.range[1] ?? 1} /></span>;
 }
