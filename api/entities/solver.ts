@@ -22,7 +22,7 @@ export const SolverEntity = defineEntity({
     name: p.string(),
     description: p.text(),
     group: () => p.manyToOne(GroupEntity).ref().index('solver_group_index'),
-    /** Names its marker and colour on every page (shared/domain/glyphs.ts). */
+    /** Number in the order in which solvers were made: its mark on every page follows it (shared/domain/glyphs.ts). */
     glyph: p.integer().default(0),
     versions: () => p.oneToMany(SolverVersionEntity).mappedBy('solver').orderBy({ n: 'asc' }),
   },

@@ -1,43 +1,43 @@
-/** Marks of solvers: 8 shapes by 8 colours. A solver keeps the index it was given; only the colour gives way where a page would show one twice. */
-export const glyphColours = 8;
-export const glyphCount = glyphColours * glyphColours;
+/** Marks of solvers: 8 shapes by 8 colours, as one number from 0 to 63. Colour repeats what the shape says. */
+const shapes = 8;
+const colours = 8;
+export const glyphCount = shapes * colours;
 
-const whole = (index: number): number => ((index % glyphCount) + glyphCount) % glyphCount;
-export const glyphColour = (index: number): number => whole(index) % glyphColours;
-/** From the ninth on the pairing of colour and shape shifts, so that 64 differ. */
-export const glyphShape = (index: number): number => (whole(index) + 3 * Math.floor(whole(index) / glyphColours)) % glyphColours;
+const whole = (value: number, count: number): number => ((value % count) + count) % count;
+export const glyphShape = (glyph: number): number => Math.floor(whole(glyph, glyphCount) / colours);
+export const glyphColour = (glyph: number): number => whole(glyph, glyphCount) % colours;
+const glyphWith = (shape: number, colour: number): number => shape * colours + colour;
 
-/** Colours 1 and 6 of the palette are both blue: on a page with few solvers one of them gives way too. */
-const hueOf = (colour: number): number => (colour === 5 ? 0 : colour);
+/** Colours 0 and 5 of the palette are both blue, so the second stands by for pages that run out of the others. */
+const ownColours = [0, 1, 2, 3, 4, 6, 7] as const;
+const spareColour = 5;
 
-/** The index with this shape and colour: colour c and shift b give the shape c + 3 b, and 3 b takes every value modulo 8. */
-function glyphWith(shape: number, colour: number): number {
-  for (let shift = 0; shift < glyphColours; shift++) if (glyphShape(glyphColours * shift + colour) === shape) return glyphColours * shift + colour;
-  throw new RangeError(`There is no mark of shape ${shape} and colour ${colour}.`);
-}
+/** The mark of the solver that was made as number n, from 0: the first 56 differ, and any seven in a row have seven colours. */
+export const solverGlyph = (n: number): number => glyphWith(whole(n, shapes), ownColours[whole(n, ownColours.length)]!);
 
 /**
- * Marks for solvers that stand on one page, by place. Each keeps its shape, and its colour unless one before it (by its own index,
- * then by place) has it; it then takes the next free colour. With more than eight solvers colours repeat, marks do not before the
- * 65th.
+ * Marks for solvers that stand on one page, by place. Each keeps its shape, and its colour unless another one has it: the one with the
+ * smaller mark keeps it, and the other takes the next free colour, the spare one last. With more than eight solvers colours repeat,
+ * marks do not as long as a colour is left for the shape.
  */
-export function distinctGlyphs(stored: readonly number[]): number[] {
-  const order = stored.map((_, at) => at).sort((a, b) => stored[a]! - stored[b]! || a - b);
-  const given = new Array<number>(stored.length).fill(0);
-  const uses = new Array<number>(glyphColours).fill(0);
-  const hues = new Array<number>(glyphColours).fill(0);
+export function distinctGlyphs(own: readonly number[]): number[] {
+  const byMark = own.map((_, at) => at).sort((a, b) => own[a]! - own[b]! || a - b);
+  const keeps = byMark.filter((at, i) => byMark.findIndex((other) => glyphColour(own[other]!) === glyphColour(own[at]!)) === i);
+  const given = own.map((glyph) => glyphWith(glyphShape(glyph), glyphColour(glyph)));
+  const uses = new Array<number>(colours).fill(0);
   const taken = new Set<number>();
-  for (const at of order) {
-    const own = whole(stored[at]!);
-    const shape = glyphShape(own);
-    // Its own colour first, then onwards from it: the least used one whose mark is free, of these one of the least used hue.
-    const free = Array.from({ length: glyphColours }, (_, step) => (glyphColour(own) + step) % glyphColours).filter((colour) => !taken.has(glyphWith(shape, colour)));
-    const cost = (colour: number): number => uses[colour]! * stored.length + hues[hueOf(colour)]!;
-    const colour = free.reduce((best, candidate) => (cost(candidate) < cost(best) ? candidate : best), free[0] ?? glyphColour(own));
-    given[at] = glyphWith(shape, colour);
+  const take = (at: number, colour: number): void => {
+    given[at] = glyphWith(glyphShape(own[at]!), colour);
     uses[colour] = uses[colour]! + 1;
-    hues[hueOf(colour)] = hues[hueOf(colour)]! + 1;
     taken.add(given[at]!);
+  };
+  for (const at of keeps) take(at, glyphColour(own[at]!));
+  for (const at of byMark.filter((other) => !keeps.includes(other))) {
+    const colour = glyphColour(own[at]!);
+    const from = Math.max(0, ownColours.findIndex((candidate) => candidate === colour));
+    const onwards = [...ownColours.map((_, step) => ownColours[(from + step) % ownColours.length]!), spareColour];
+    const free = onwards.filter((candidate) => !taken.has(glyphWith(glyphShape(own[at]!), candidate)));
+    take(at, free.reduce((best, candidate) => (uses[candidate]! < uses[best]! ? candidate : best), free[0] ?? colour));
   }
   return given;
 }

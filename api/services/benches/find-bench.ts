@@ -1,5 +1,5 @@
 import type { EntityManager, Loaded } from '@mikro-orm/sqlite';
-import { distinctGlyphs } from '../../../shared/domain/glyphs';
+import { distinctGlyphs, solverGlyph } from '../../../shared/domain/glyphs';
 import type { Subject } from '../../../shared/domain/permissions.ts';
 import { AppError } from '../../../shared/errors.ts';
 import { contentHash } from '../../../solvers/core/hash';
@@ -37,7 +37,7 @@ export function entriesOf(bench: LoadedBench): BenchEntry[] {
     const solver = version.solver.getEntity();
     return { entry, version, solver, group: solver.group.getEntity() };
   });
-  const glyphs = distinctGlyphs(entered.map(({ solver }) => solver.glyph));
+  const glyphs = distinctGlyphs(entered.map(({ solver }) => solverGlyph(solver.glyph)));
   return entered.map((own, at) => ({ ...own, glyph: glyphs[at]! }));
 }
 

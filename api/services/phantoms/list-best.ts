@@ -1,7 +1,7 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import { z } from 'zod';
 import type { phantomBestSchema } from '../../../shared/contracts/phantoms';
-import { distinctGlyphs } from '../../../shared/domain/glyphs';
+import { distinctGlyphs, solverGlyph } from '../../../shared/domain/glyphs';
 import { AppError } from '../../../shared/errors.ts';
 import { metrics } from '../../../solvers/metrics/registry';
 import { levelStatistics } from '../../../solvers/statistics/error-table';
@@ -51,7 +51,7 @@ export async function listBest(em: EntityManager, input: { readonly version: Pic
       run: run.id,
       solver: { slug: solver.slug, id: solver.id, name: solver.name },
       group: { slug: solver.group.$.slug, name: solver.group.$.name },
-      glyph: solver.glyph,
+      glyph: solverGlyph(solver.glyph),
       median,
       p05,
       p95,

@@ -1,4 +1,5 @@
 import type { Progress, RunSummary } from '../../../shared/contracts/runs';
+import { solverGlyph } from '../../../shared/domain/glyphs';
 import { isSealed } from '../phantoms/phantom-access.ts';
 import { methodName } from '../solvers/check-configuration.ts';
 import type { Run } from '../../entities/run.ts';
@@ -35,7 +36,7 @@ export function toRunSummary(run: LoadedRun, now: Date, secondsLeft?: number | n
     bench: { slug: entry.bench.$.slug, id: entry.bench.id, title: entry.bench.$.title },
     solver: { slug: solver.slug, id: solver.id, name: solver.name, version: version.n, methodName: methodName(version.method) },
     group: { slug: group.slug, name: group.name },
-    glyph: solver.glyph,
+    glyph: solverGlyph(solver.glyph),
     phantom: {
       slug: phantom.phantom.$.slug, id: phantom.phantom.id, name: phantom.name, version: phantom.n, sealed: isSealed(phantom, now), sealedUntil: phantom.sealedUntil ?? null,
     },

@@ -1,5 +1,6 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import type { SolverDetail, SolverSummary } from '../../../shared/contracts/solvers';
+import { solverGlyph } from '../../../shared/domain/glyphs';
 import { can, type Actor } from '../../../shared/domain/permissions.ts';
 import { EntryEntity } from '../../entities/bench.ts';
 import { RunEntity } from '../../entities/run.ts';
@@ -48,7 +49,7 @@ export function toSolverSummary(solver: LoadedSolver, actor: Actor | null, count
     group: { slug: solver.group.$.slug, name: solver.group.$.name },
     methodName: methodName(current.method),
     families: [...(methods.find((method) => method.key === current.method)?.capabilities.families ?? [])],
-    glyph: solver.glyph,
+    glyph: solverGlyph(solver.glyph),
     current: toVersion(current, counts),
   };
 }
