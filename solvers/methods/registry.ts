@@ -1,5 +1,6 @@
 import { findByKey } from '../core/registry';
 import type { Method } from '../core/types';
+import { backProjectionMethod } from './back-projection';
 import { boxConstrainedTikhonovMethod } from './box-constrained-tikhonov';
 import { calderonMethod } from './calderon';
 import { cglsMethod } from './cgls';
@@ -7,7 +8,9 @@ import { crankNicolsonMethod } from './crank-nicolson';
 import { dBarMethod } from './d-bar';
 import { ensembleKalmanMethod } from './ensemble-kalman';
 import { exponentialFilterMethod } from './exponential-filter';
+import { factorisationMethod } from './factorisation';
 import { filterExpressionMethod } from './filter-expression';
+import { filteredBackProjectionMethod } from './filtered-back-projection';
 import { gaussNewtonMethod } from './gauss-newton';
 import { gaussNewtonTotalVariationMethod } from './gauss-newton-total-variation';
 import { iteratedTikhonovMethod } from './iterated-tikhonov';
@@ -16,7 +19,9 @@ import { laggedDiffusivityMethod } from './lagged-diffusivity';
 import { landweberMethod } from './landweber';
 import { levenbergMarquardtMethod } from './levenberg-marquardt';
 import { lsqrMethod } from './lsqr';
+import { monotonicityMethod } from './monotonicity';
 import { nuMethod } from './nu-method';
+import { sartMethod } from './sart';
 import { sensitivityPriorMethod } from './sensitivity-prior';
 import { smoothnessPriorMethod } from './smoothness-prior';
 import { sirtMethod } from './sirt';
@@ -42,6 +47,7 @@ export const methods: readonly Method[] = [
   nuMethod,
   kaczmarzMethod,
   sirtMethod,
+  sartMethod,
   totalVariationMethod,
   laggedDiffusivityMethod,
   waveletSparsityMethod,
@@ -49,8 +55,12 @@ export const methods: readonly Method[] = [
   gaussNewtonMethod,
   levenbergMarquardtMethod,
   gaussNewtonTotalVariationMethod,
+  backProjectionMethod,
+  filteredBackProjectionMethod,
   calderonMethod,
   dBarMethod,
+  monotonicityMethod,
+  factorisationMethod,
   trainedLinearMethod,
   ensembleKalmanMethod,
   crankNicolsonMethod,

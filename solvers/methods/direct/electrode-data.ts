@@ -2,8 +2,9 @@ import type { EitGeometry } from '../../../shared/domain/geometry/electrical-imp
 import { denseMatrix } from '../../core/matrix-operator';
 import type { ForwardProblem, NoiseInfo, ProblemFacts } from '../../core/types';
 import { requireVector } from '../../core/vector';
+import { symmetricEigen } from '../../linear-algebra/symmetric-eigen';
 import { createEitInversion, type EitInversion } from '../../problems/electrical-impedance/inversion-problem';
-import { frameSize } from '../../problems/electrical-impedance/patterns';
+import { frameSize, patternCount } from '../../problems/electrical-impedance/patterns';
 import { drivenChannels, type DrivenChannels } from './driven-channels';
 import { currentRank, electrodeMatrixReader } from './electrode-matrix';
 
@@ -16,8 +17,12 @@ export interface ElectrodeData {
   change(data: Float64Array): Float64Array;
   /** The relative map R(sigma) - R(background), V per A/m, size x size; zero for the background's frame. */
   relativeMap(change: Float64Array, noise: NoiseInfo): Float64Array;
-  /** Expected spectral norm of the noise in the relative map, V per A/m. */
-  noiseOf(noise: NoiseInfo): number;
+  /**
+   * What the eigenvalues of a relative map may be off by, V per A/m: the expected spectral norm of the noise times the safety factor, at
+   * least `share` of the spectral norm of the map; at least a hundredth of it where the channels at driven electrodes are predicted, about
+   * what these predictions are off by.
+   */
+  uncertainty(relative: Float64Array, noise: NoiseInfo, safetyFactor: number, share: number): number;
   /** Expected squares of the entries of the noise in the relative map, symmetric, size x size, for noise of norm 1. */
   readonly entryVariances: Float64Array;
   /** Minus the derivative of the map for each cell, size x size x cells: positive semidefinite in every cell. V per A/m per S/m. */
@@ -34,8 +39,12 @@ export function mapUnfit(facts: ProblemFacts): string | null {
   const rank = currentRank(geometry);
   if (rank < geometry.electrodes - 1)
     return `it needs the voltages of ${geometry.electrodes - 1} independent currents; these patterns hold ${rank}.`;
+  if (2 * facts.dataSize < patternCount(geometry) * geometry.electrodes) return 'it predicts the voltages at driven electrodes from the others, and fewer than half of the channels are measured.';
   return null;
 }
+
+/** Share of the largest eigenvalue that predicted channels may put the others off by; measured 0.2 to 4 % (`driven-channels.ts`). */
+const predictedShare = 0.01;
 
 const cache = new WeakMap<ForwardProblem, ElectrodeData>();
 
@@ -89,7 +98,12 @@ function compute(given: ForwardProblem): ElectrodeData {
       return change;
     },
     relativeMap: (change, noise) => reader.read(completion ? completion.complete(change, noise) : change, 1),
-    noiseOf: (noise) => (reader.noiseNorm * noise.norm) / Math.sqrt(dataSize),
+    uncertainty(relative, noise, safetyFactor, share) {
+      const { values } = symmetricEigen(relative, size);
+      const largest = Math.max(Math.abs(values[0]), Math.abs(values[size - 1]));
+      const ofNoise = (safetyFactor * reader.noiseNorm * noise.norm) / Math.sqrt(dataSize);
+      return Math.max(ofNoise, Math.max(share, completion ? predictedShare : 0) * largest);
+    },
     sensitivities() {
       if (!sensitivities) {
         sensitivities = reader.read(fullJacobian, unknowns);
