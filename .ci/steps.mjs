@@ -69,19 +69,23 @@ export function buildIfNeeded() {
   writeFileSync(mark, wanted);
 }
 
-export const chromiumPath = () => ['/usr/bin/chromium', '/usr/bin/chromium-browser', '/usr/bin/google-chrome'].find((path) => existsSync(path));
+const found = (paths) => paths.find((path) => existsSync(path));
+export const chromiumPath = () => found(['/usr/bin/chromium', '/usr/bin/chromium-browser', '/usr/bin/google-chrome']);
+export const firefoxPath = () => found(['/usr/bin/firefox-esr', '/usr/bin/firefox']);
 
-/** The browser tests drive Debian's Chromium; as root on Debian it is installed when missing. */
-export function browserIfNeeded() {
-  const named = process.env.CHROMIUM_PATH;
-  if (named ? existsSync(named) : chromiumPath()) return;
+/** The browser tests drive Debian's Chromium and open Debian's Firefox; as root on Debian they are installed when missing. */
+export function browsersIfNeeded() {
+  const wanted = [['CHROMIUM_PATH', chromiumPath, 'chromium'], ['FIREFOX_PATH', firefoxPath, 'firefox-esr']];
+  const missing = () => wanted.filter(([name, find]) => !(process.env[name] ? existsSync(process.env[name]) : find()));
+  if (missing().length === 0) return;
   if (process.getuid?.() === 0 && existsSync('/usr/bin/apt-get')) {
-    console.log('Installing Chromium for the browser tests ...');
+    const packages = missing().map(([, , name]) => name);
+    console.log(`Installing ${packages.join(' and ')} for the browser tests ...`);
     must('apt-get', ['update', '-qq']);
-    must('apt-get', ['install', '-y', '-qq', '--no-install-recommends', 'chromium', 'fonts-liberation'], { env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' } });
-    if (chromiumPath()) return;
+    must('apt-get', ['install', '-y', '-qq', '--no-install-recommends', ...packages, 'fonts-liberation'], { env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' } });
+    if (missing().length === 0) return;
   }
-  console.error('The browser tests need Chromium: install your system\'s package, or set CHROMIUM_PATH.');
+  console.error(`The browser tests need ${missing().map(([name, , browser]) => `${browser} (or ${name})`).join(' and ')}: install your system's package.`);
   process.exit(1);
 }
 

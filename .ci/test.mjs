@@ -2,10 +2,10 @@
 import { spawnSync } from 'node:child_process';
 import { mkdirSync, readFileSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
-import { bin, browserIfNeeded, buildIfNeeded, installIfNeeded, must, root } from './steps.mjs';
+import { bin, browsersIfNeeded, buildIfNeeded, installIfNeeded, must, root } from './steps.mjs';
 
 installIfNeeded();
-browserIfNeeded();
+browsersIfNeeded();
 
 const step = (title) => console.log(`\n== ${title}`);
 step('Types');

@@ -36,6 +36,8 @@ export interface ProximalGoal {
 
 /** A stage ends when a step changes z by less than this share of it. */
 const changeShare = 1e-4;
+/** Two stages in a row that lower the residual by less than this share of it: no weight reaches the target. */
+const stalledShare = 0.01;
 
 /**
  * min over z of ||A z - y||^2 / 2 + weight (smooth penalty + R(z)), from z = 0, with the restart of O'Donoghue and Candes 2015 where the momentum
@@ -46,7 +48,7 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
   const n = operator.cols;
   const m = operator.rows;
   const z = new Float64Array(n);
-  const before = new Float64Array(n);
+  const last = new Float64Array(n);
   const ahead = new Float64Array(n);
   const gradient = new Float64Array(n);
   const residual = new Float64Array(m);
@@ -58,6 +60,7 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
   let size = norm2(y);
   let weight = goal.weight;
   let iterations = 0;
+  let stalled = 0;
   if (size === 0 || (goal.target !== null && size <= goal.target))
     return { z, weight, iterations, stop: goal.target !== null && goal.target > 0 ? 'discrepancy' : 'converged', residualNorm: size };
   for (;;) {
@@ -69,7 +72,7 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
       residualOf(ahead);
       operator.applyAdjoint(residual, gradient);
       problem.addPenaltyGradient?.(ahead, weight, gradient);
-      before.set(z);
+      last.set(z);
       for (let j = 0; j < n; j++) z[j] = ahead[j] - step * gradient[j];
       problem.prox(z, step * weight);
       iterations++;
@@ -77,22 +80,24 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
       let change = 0;
       let whole = 0;
       for (let j = 0; j < n; j++) {
-        const d = z[j] - before[j];
+        const d = z[j] - last[j];
         uphill += (ahead[j] - z[j]) * d;
         change += d * d;
         whole += z[j] * z[j];
       }
       const next = uphill > 0 ? 1 : 0.5 * (1 + Math.sqrt(1 + 4 * t * t));
       const momentum = uphill > 0 ? 0 : (t - 1) / next;
-      for (let j = 0; j < n; j++) ahead[j] = z[j] + momentum * (z[j] - before[j]);
+      for (let j = 0; j < n; j++) ahead[j] = z[j] + momentum * (z[j] - last[j]);
       t = next;
       converged = change <= changeShare * changeShare * whole;
       if (aborted?.()) return { z, weight, iterations, stop: 'maxIterations', residualNorm: residualOf(z) };
     }
+    const before = size;
     size = residualOf(z);
+    stalled = size > (1 - stalledShare) * before ? stalled + 1 : 0;
     if (goal.target === null) return { z, weight, iterations, stop: converged ? 'converged' : 'maxIterations', residualNorm: size };
     if (size <= goal.target) return { z, weight, iterations, stop: 'discrepancy', residualNorm: size };
-    if (weight <= goal.smallestWeight) return { z, weight, iterations, stop: 'converged', residualNorm: size };
+    if (weight <= goal.smallestWeight || stalled === 2) return { z, weight, iterations, stop: 'converged', residualNorm: size };
     weight = Math.max(goal.smallestWeight, goal.decay * weight);
   }
 }
