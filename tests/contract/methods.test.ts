@@ -7,6 +7,7 @@ import type { EitInversion } from '../../solvers/problems/electrical-impedance/i
 import { methods } from '../../solvers/methods/registry';
 import { getParameterRule, parameterRules } from '../../solvers/parameter-choice/registry';
 import { electrodeProblem, electrodeTruth } from '../support/electrode-problem';
+import { rayProblem, rayTruth } from '../support/ray-problem';
 import { syntheticProblem, syntheticTruth } from '../support/synthetic-problem';
 
 const linear = syntheticProblem({ side: 10, data: 20 });
@@ -19,10 +20,15 @@ const single = syntheticProblem({ side: 1, data: 1 });
 const electrodes = electrodeProblem();
 const absoluteElectrodes = electrodeProblem('absolute');
 const readsElectrodes = (method: Method): boolean => method.unfit?.(linear) != null;
+/** Nor do those that read the views of X-ray data. */
+const parallelRays = rayProblem('parallel');
+const fanRays = rayProblem('fan');
+const readsRays = (method: Method): boolean => !method.capabilities.families.includes('electrical-impedance');
 function problemsOf(method: Method): Record<string, ForwardProblem> {
-  return readsElectrodes(method) ? { electrodes, absoluteElectrodes } : { linear, bent, absolute, tall };
+  return readsRays(method) ? { parallelRays, fanRays } : readsElectrodes(method) ? { electrodes, absoluteElectrodes } : { linear, bent, absolute, tall };
 }
 function truthOf(problem: ForwardProblem, contrast?: number): SimulatedPhantom {
+  if (problem === parallelRays || problem === fanRays) return rayTruth(problem, contrast).simulated;
   return problem === electrodes || problem === absoluteElectrodes ? electrodeTruth(problem as EitInversion, contrast).simulated : syntheticTruth(problem, contrast).simulated;
 }
 
@@ -70,7 +76,7 @@ describe.each(cases)('%s', (_, method, rule) => {
   });
 
   it('gives the background for data that equal the background\'s', () => {
-    for (const problem of readsElectrodes(method) ? [electrodes, absoluteElectrodes] : [linear, absolute]) {
+    for (const problem of Object.values(problemsOf(method)).filter((one) => one !== bent && one !== tall)) {
       const data = problem.evaluate(problem.background());
       const { x, residualNorm } = method.prepare(problem, {}, rule).reconstruct(data, { norm: 0, level: 0 });
       expect(x).toEqual(problem.background());
@@ -90,7 +96,7 @@ describe.each(cases)('%s', (_, method, rule) => {
   });
 
   it('works for one datum and one unknown, or says what it needs', () => {
-    if (readsElectrodes(method)) {
+    if (readsElectrodes(method) || readsRays(method)) {
       expect(() => method.prepare(single, {}, rule)).toThrow(/needs|have/);
       return;
     }
@@ -100,12 +106,12 @@ describe.each(cases)('%s', (_, method, rule) => {
   });
 
   it('reports the residual of the model it uses', () => {
-    const problem = readsElectrodes(method) ? electrodes : bent;
+    const problem = readsRays(method) ? fanRays : readsElectrodes(method) ? electrodes : bent;
     const simulated = truthOf(problem, 0.5);
     const data = simulated.clean;
     const { x, residualNorm } = method.prepare(problem, {}, rule).reconstruct(data, { norm: 0.02 * simulated.noiseScale, level: 0.02 });
     let model: Float64Array;
-    if (method.capabilities.nonlinear) model = problem.evaluate(x);
+    if (method.capabilities.nonlinear || problem.linear) model = problem.evaluate(x);
     else {
       model = new Float64Array(problem.dataSize);
       problem.linearise(problem.background()).apply(x.map((value, j) => value - problem.background()[j]), model);
