@@ -1,6 +1,6 @@
-import { checkListSchema, methodListSchema, metricListSchema, noiseModelListSchema, ruleListSchema, statisticListSchema } from '../../shared/contracts/catalogue.ts';
+import { axisListSchema, checkListSchema, conventionListSchema, methodListSchema, metricListSchema, noiseModelListSchema, problemListSchema, ruleListSchema, statisticListSchema } from '../../shared/contracts/catalogue.ts';
 import { defineRoute, type Route } from '../http/define-route.ts';
-import { listChecks, listMethods, listMetrics, listNoiseModels, listRules, listStatistics } from '../services/catalogue/catalogue.ts';
+import { listAxes, listChecks, listConventions, listMethods, listMetrics, listNoiseModels, listProblems, listRules, listStatistics } from '../services/catalogue/catalogue.ts';
 
 const tag = 'catalogue';
 
@@ -30,4 +30,17 @@ const readStatistics = defineRoute({
   permission: 'public', response: statisticListSchema, handle: () => ({ items: listStatistics() }),
 });
 
-export const catalogueRoutes: readonly Route[] = [readMethods, readMetrics, readRules, readNoiseModels, readChecks, readStatistics];
+const readProblems = defineRoute({
+  method: 'get', path: '/problems', tag, summary: 'Every family of problems and every equation: model, units, how data are made and inverted',
+  permission: 'public', response: problemListSchema, handle: () => ({ items: listProblems() }),
+});
+const readAxes = defineRoute({
+  method: 'get', path: '/axes', tag, summary: 'Every axis that a run can vary: meaning, range, default levels',
+  permission: 'public', response: axisListSchema, handle: () => ({ items: listAxes() }),
+});
+const readConventions = defineRoute({
+  method: 'get', path: '/conventions', tag, summary: 'Conventions that differ between sources, as they are settled here',
+  permission: 'public', response: conventionListSchema, handle: () => ({ items: listConventions() }),
+});
+
+export const catalogueRoutes: readonly Route[] = [readMethods, readMetrics, readRules, readNoiseModels, readChecks, readStatistics, readProblems, readAxes, readConventions];

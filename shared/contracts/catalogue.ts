@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { familyKeySchema } from './common';
+import { axisKeySchema } from '../domain/axes';
 import { dataKinds } from '../domain/phantom-definition';
 
 /**
@@ -62,8 +63,8 @@ export type NoiseModelWire = z.infer<typeof noiseModelSchema>;
 
 export const checkDescriptionSchema = z.object({
   key: z.string(), name: z.string(),
-  /** What it looks at: a simulated phantom, the model that inverts, a prepared method. */
-  appliesTo: z.enum(['phantom', 'problem', 'method']),
+  /** What it looks at: a simulated phantom, the model that inverts, a prepared method, a finished run. */
+  appliesTo: z.enum(['phantom', 'problem', 'method', 'run']),
   unit: z.string(), bound: z.number(), comparison: z.enum(['at-most', 'at-least', 'equal']), formula: z.string(), summary: z.string(), sources: z.array(sourceSchema),
 });
 export type CheckDescription = z.infer<typeof checkDescriptionSchema>;
@@ -75,6 +76,24 @@ export const statisticSchema = z.object({
 });
 export type StatisticWire = z.infer<typeof statisticSchema>;
 
+export const problemDefinitionSchema = z.object({
+  key: z.string(), name: z.string(), family: familyKeySchema, summary: z.string(), formula: z.string(),
+  facts: z.array(z.tuple([z.string(), z.string()])), conventions: z.array(z.string()), sources: z.array(sourceSchema),
+});
+export type ProblemDefinitionWire = z.infer<typeof problemDefinitionSchema>;
+
+export const axisDescriptionSchema = z.object({
+  key: axisKeySchema, name: z.string(), line: z.string(), print: z.enum(['share', 'factor']), minimum: z.number(), maximum: z.number(),
+  defaultLevels: z.array(z.number()), families: z.array(familyKeySchema),
+});
+export type AxisDescription = z.infer<typeof axisDescriptionSchema>;
+
+export const conventionSchema = z.object({ key: z.string(), name: z.string(), text: z.string() });
+export type ConventionWire = z.infer<typeof conventionSchema>;
+
+export const problemListSchema = z.object({ items: z.array(problemDefinitionSchema) });
+export const axisListSchema = z.object({ items: z.array(axisDescriptionSchema) });
+export const conventionListSchema = z.object({ items: z.array(conventionSchema) });
 export const methodListSchema = z.object({ items: z.array(methodSchema) });
 export const metricListSchema = z.object({ items: z.array(metricSchema) });
 export const ruleListSchema = z.object({ items: z.array(ruleSchema) });

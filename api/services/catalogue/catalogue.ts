@@ -1,12 +1,15 @@
 import { z } from 'zod';
-import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire, StatisticWire } from '../../../shared/contracts/catalogue';
-import { methodChecks, phantomChecks, problemChecks } from '../../../solvers/checks/registry';
+import { axisKeys, axisWords } from '../../../shared/domain/axes';
+import type { AxisDescription, CheckDescription, ConventionWire, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, ProblemDefinitionWire, RuleWire, SourceWire, StatisticWire } from '../../../shared/contracts/catalogue';
+import { methodChecks, phantomChecks, problemChecks, runChecks } from '../../../solvers/checks/registry';
 import type { Check } from '../../../solvers/checks/check';
+import { conventions } from '../../../solvers/core/conventions';
 import type { Method, Metric, ParameterField, Source } from '../../../solvers/core/types';
 import { methods } from '../../../solvers/methods/registry';
 import { metrics } from '../../../solvers/metrics/registry';
 import { noiseModels } from '../../../solvers/noise/registry';
 import { parameterRules } from '../../../solvers/parameter-choice/registry';
+import { problemDefinitions } from '../../../solvers/problems/definitions';
 import { statistics } from '../../../solvers/statistics/definitions';
 
 /** The registries in the shape of the wire. They do not change while the server runs. */
@@ -33,7 +36,13 @@ export const listChecks = (): CheckDescription[] => [
   ...new Map(Object.values(phantomChecks).flat().map((check) => [check.key, toCheck(check, 'phantom')])).values(),
   ...problemChecks.map((check) => toCheck(check, 'problem')),
   ...methodChecks.map((check) => toCheck(check, 'method')),
+  ...runChecks.map((check) => toCheck(check, 'run')),
 ];
+
+export const listProblems = (): ProblemDefinitionWire[] =>
+  problemDefinitions().map((own) => ({ ...own, facts: own.facts.map(([label, text]): [string, string] => [label, text]), conventions: [...own.conventions], sources: own.sources.map(toSource) }));
+export const listAxes = (): AxisDescription[] => axisKeys.map((key) => ({ key, ...axisWords[key], defaultLevels: [...axisWords[key].defaultLevels], families: [...axisWords[key].families] }));
+export const listConventions = (): ConventionWire[] => conventions.map((own) => ({ ...own }));
 
 const toCheck = ({ key, name, unit, bound, comparison, formula, summary, source }: Check<never>, appliesTo: CheckDescription['appliesTo']): CheckDescription => ({
   key, name, appliesTo, unit, bound, comparison, formula, summary, sources: [toSource(source)],

@@ -58,7 +58,7 @@ export function DefinitionAside({ definition: d }: { definition: Definition }) {
   return (
     <aside>
       <div className="sheet pad"><FactList facts={d.facts} /></div>
-      <div className="sh" style={{ marginTop: 24 }}><h3>{d.sources.length === 1 ? 'Source' : 'Sources'}</h3></div>
+      {d.sources.length > 0 ? <div className="sh" style={{ marginTop: 24 }}><h3>{d.sources.length === 1 ? 'Source' : 'Sources'}</h3></div> : null}
       {d.sources.map((source) => <p className="sm src" key={source.full}><b>{source.short}.</b> {source.full}{source.fromMemory ? ' (Reference written from memory.)' : ''}</p>)}
     </aside>
   );

@@ -1,7 +1,7 @@
-import type { CheckDescription, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, RuleWire, SourceWire, StatisticWire } from '../../../../shared/contracts/catalogue';
+import type { AxisDescription, CheckDescription, ConventionWire, MethodWire, MetricWire, NoiseModelWire, ParameterFieldWire, ProblemDefinitionWire, RuleWire, SourceWire, StatisticWire } from '../../../../shared/contracts/catalogue';
 import { formatNumber } from '../../../lib/format';
 
-export const kinds = ['metrics', 'methods', 'rules', 'noise', 'checks', 'statistics'] as const;
+export const kinds = ['metrics', 'methods', 'rules', 'noise', 'checks', 'statistics', 'problems', 'axes', 'conventions'] as const;
 export type Kind = (typeof kinds)[number];
 export const kindNames: Record<Kind, { many: string; line: string }> = {
   metrics: { many: 'Metrics', line: 'figures of one reconstruction' },
@@ -10,6 +10,9 @@ export const kindNames: Record<Kind, { many: string; line: string }> = {
   noise: { many: 'Noise models', line: 'how a draw is made from clean data' },
   checks: { many: 'Checks', line: 'validations of a problem, a phantom or a run' },
   statistics: { many: 'Statistics', line: 'how draws are summed up and methods compared' },
+  problems: { many: 'Problems', line: 'families and equations: what is simulated and what is inverted' },
+  axes: { many: 'Axes', line: 'what a run can vary from level to level' },
+  conventions: { many: 'Conventions', line: 'where sources differ, settled here' },
 };
 
 export interface Catalogue {
@@ -19,6 +22,9 @@ export interface Catalogue {
   noise: NoiseModelWire[];
   checks: CheckDescription[];
   statistics: StatisticWire[];
+  problems: ProblemDefinitionWire[];
+  axes: AxisDescription[];
+  conventions: ConventionWire[];
 }
 
 /** One entry of any registry in the shape that the definition page shows. */
@@ -36,7 +42,8 @@ export interface Definition {
 
 const better = { lower: 'lower', higher: 'higher', one: 'near 1', zero: 'near 0' } as const;
 const comparisons = { 'at-most': 'at most', 'at-least': 'at least', equal: 'equal to' } as const;
-const subjects = { phantom: 'a simulated phantom', problem: 'the model that inverts', method: 'a prepared method' } as const;
+const subjects = { phantom: 'a simulated phantom', problem: 'the model that inverts', method: 'a prepared method', run: 'a finished run' } as const;
+const level = (print: AxisDescription['print'], value: number): string => (print === 'share' ? `${formatNumber(100 * value, 2)} %` : formatNumber(value, 2));
 const none = { title: '', items: [] };
 const capabilityWords = (method: MethodWire): string => (['linear', 'nonlinear', 'direct', 'statistical'] as const).filter((word) => method.capabilities[word]).join(', ');
 
@@ -72,6 +79,18 @@ export function definitionsOf(kind: Kind, catalogue: Catalogue): Definition[] {
         kind, key: s.key, name: s.name, summary: s.summary, formula: s.formula, fields: [], sources: s.sources, notes: { title: 'Traps', items: s.traps },
         facts: [['Over', s.over], ['Key', s.key]],
       }));
+    case 'problems':
+      return catalogue.problems.map((p) => ({
+        kind, key: p.key, name: p.name, summary: p.summary, formula: p.formula, fields: [], sources: p.sources, notes: { title: 'Conventions', items: p.conventions },
+        facts: [...p.facts, ['Family', p.family], ['Key', p.key]],
+      }));
+    case 'axes':
+      return catalogue.axes.map((a) => ({
+        kind, key: a.key, name: a.name, summary: a.line, formula: null, fields: [], sources: [], notes: none,
+        facts: [['Range', `${level(a.print, a.minimum)} to ${level(a.print, a.maximum)}`], ['Levels offered', a.defaultLevels.map((value) => level(a.print, value)).join(', ')], ['Families', a.families.join(', ')], ['Key', a.key]],
+      }));
+    case 'conventions':
+      return catalogue.conventions.map((c) => ({ kind, key: c.key, name: c.name, summary: c.text, formula: null, fields: [], sources: [], notes: none, facts: [['Key', c.key]] }));
   }
 }
 
