@@ -1,5 +1,6 @@
 export { multiply, packedBytes } from './product';
 export { backwardFour, factorise, factorPanel, forwardFour } from './cholesky';
+export { backwardEight, forwardEight } from './solve-eight';
 export { addScaled, dot, rowsTimes, timesRows } from './vector';
 export { pairSensitivities } from './sensitivity';
 

@@ -20,6 +20,8 @@ export interface Kernels {
   ): number;
   forwardFour(panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, x: number): void;
   backwardFour(panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, x: number, below: number): void;
+  forwardEight(panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, x: number): void;
+  backwardEight(panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, x: number): void;
   pairSensitivities(
     elements: number, stiffness: number, start: number, list: number, cells: number, fields: number, fieldCount: number,
     f: number, g: number, matrix: number, out: number,

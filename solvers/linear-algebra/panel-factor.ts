@@ -98,19 +98,21 @@ export class PanelFactor implements Resident {
       if (count < blockWidth) x.fill(0);
       const base = from * n;
       // The factor's own coordinates are the permuted ones; half a solve reads or leaves the vector there.
-      if (half === 'backward') for (let i = 0; i < n; i++) for (let r = 0, at = base + i; r < count; r++, at += n) x[8 * i + r] = b[at];
-      else for (let i = 0; i < n; i++) for (let r = 0, at = base + order[i]; r < count; r++, at += n) x[8 * i + r] = b[at];
+      interleave(b, base, n, count, half === 'backward' ? null : order, x);
       solveBlock(x, count);
-      if (half === 'forward') for (let i = 0; i < n; i++) for (let r = 0, at = base + i; r < count; r++, at += n) b[at] = x[8 * i + r];
-      else for (let i = 0; i < n; i++) for (let r = 0, at = base + order[i]; r < count; r++, at += n) b[at] = x[8 * i + r];
+      separate(x, b, base, n, count, half === 'forward' ? null : order);
     }
   }
 
   private solveCompiled(kernels: Kernels, panels: number, at: Layout, x: number, below: number, count: number, half: SolveHalf): void {
     const { supernodes } = this.analysis;
-    for (let r = 0; r < count; r += 4) {
-      if (half !== 'backward') kernels.forwardFour(panels, supernodes, at.first, at.rowStart, at.rowIndex, at.panelStart, x + 8 * r);
-      if (half !== 'forward') kernels.backwardFour(panels, supernodes, at.first, at.rowStart, at.rowIndex, at.panelStart, x + 8 * r, below);
+    const { first, rowStart, rowIndex, panelStart } = at;
+    if (count > 4) {
+      if (half !== 'backward') kernels.forwardEight(panels, supernodes, first, rowStart, rowIndex, panelStart, x);
+      if (half !== 'forward') kernels.backwardEight(panels, supernodes, first, rowStart, rowIndex, panelStart, x);
+    } else {
+      if (half !== 'backward') kernels.forwardFour(panels, supernodes, first, rowStart, rowIndex, panelStart, x);
+      if (half !== 'forward') kernels.backwardFour(panels, supernodes, first, rowStart, rowIndex, panelStart, x, below);
     }
   }
 
@@ -131,6 +133,42 @@ export class PanelFactor implements Resident {
     const panelStart = rowStart + 4 * (supernodes + 1);
     const supernodeOf = panelStart + 4 * (supernodes + 1);
     return { first, rowStart, panelStart, supernodeOf, rowIndex: supernodeOf + 4 * n };
+  }
+}
+
+/** x[8 i + r] = entry `order[i]` (or i) of right-hand side r. */
+function interleave(b: Float64Array, base: number, n: number, count: number, order: Int32Array | null, x: Float64Array): void {
+  for (let i = 0; i < n; i++) {
+    let from = base + (order ? order[i] : i);
+    const at = blockWidth * i;
+    if (count === blockWidth) {
+      x[at] = b[from];
+      x[at + 1] = b[(from += n)];
+      x[at + 2] = b[(from += n)];
+      x[at + 3] = b[(from += n)];
+      x[at + 4] = b[(from += n)];
+      x[at + 5] = b[(from += n)];
+      x[at + 6] = b[(from += n)];
+      x[at + 7] = b[from + n];
+    } else for (let r = 0; r < count; r++, from += n) x[at + r] = b[from];
+  }
+}
+
+/** The way back. */
+function separate(x: Float64Array, b: Float64Array, base: number, n: number, count: number, order: Int32Array | null): void {
+  for (let i = 0; i < n; i++) {
+    let to = base + (order ? order[i] : i);
+    const at = blockWidth * i;
+    if (count === blockWidth) {
+      b[to] = x[at];
+      b[(to += n)] = x[at + 1];
+      b[(to += n)] = x[at + 2];
+      b[(to += n)] = x[at + 3];
+      b[(to += n)] = x[at + 4];
+      b[(to += n)] = x[at + 5];
+      b[(to += n)] = x[at + 6];
+      b[to + n] = x[at + 7];
+    } else for (let r = 0; r < count; r++, to += n) b[to] = x[at + r];
   }
 }
 

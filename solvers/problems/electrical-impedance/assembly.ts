@@ -109,6 +109,19 @@ export function assembleStiffness(mesh: QuadraticMesh, pattern: MeshPattern, sig
   }
 }
 
+/**
+ * The same for one conductivity an element, from the element matrices for unit conductivity (lower triangles, row by row).
+ * @param values overwritten, length `pattern.rows.length`
+ */
+export function assembleScaled(pattern: MeshPattern, stiffness: Float64Array, sigma: Float64Array, values: Float64Array): void {
+  const { positions } = pattern;
+  values.fill(0);
+  for (let t = 0, k = 0; t < sigma.length; t++) {
+    const value = sigma[t];
+    for (const end = k + entriesPerElement; k < end; k++) values[positions[k]] += value * stiffness[k];
+  }
+}
+
 /** Points of the degree-four rule in every element, x, y pairs, six an element. */
 export function quadraturePoints(mesh: QuadraticMesh): Float64Array {
   const { nodes, elements } = mesh;

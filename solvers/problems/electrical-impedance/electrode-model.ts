@@ -1,7 +1,7 @@
 import { analyse, factorise, type CholeskyAnalysis } from '../../linear-algebra/sparse-cholesky';
 import type { QuadraticMesh } from '../../mesh/quadratic-mesh';
 import { solveDense } from './dense-solve';
-import { assembleStiffness, entryPosition, meshPattern, type MeshPattern } from './assembly';
+import { assembleScaled, assembleStiffness, entryPosition, meshPattern, type MeshPattern } from './assembly';
 import type { ElectrodeIntegrals } from './electrode-integrals';
 
 /**
@@ -23,11 +23,18 @@ export function electrodeModel(mesh: QuadraticMesh, electrodes: readonly Electro
   return { mesh, pattern, analysis: analyse(pattern), electrodes };
 }
 
+/** One conductivity an element, with the element matrices for unit conductivity (`unitStiffness`). */
+export interface ElementConductivity {
+  readonly stiffness: Float64Array;
+  readonly perElement: Float64Array;
+}
+
 /** Values of S = K + sum_l M_l / zeta_l in the order of the pattern. */
-export function systemValues(model: ElectrodeModel, sigma: number | Float64Array, zeta: Float64Array): Float64Array {
+export function systemValues(model: ElectrodeModel, sigma: number | Float64Array | ElementConductivity, zeta: Float64Array): Float64Array {
   const { pattern, electrodes, mesh } = model;
   const values = new Float64Array(pattern.rows.length);
-  assembleStiffness(mesh, pattern, sigma, values);
+  if (typeof sigma === 'object' && 'perElement' in sigma) assembleScaled(pattern, sigma.stiffness, sigma.perElement, values);
+  else assembleStiffness(mesh, pattern, sigma, values);
   for (let l = 0; l < electrodes.length; l++) {
     const electrode = electrodes[l];
     for (let e = 0; e < electrode.edges.length / 3; e++) {
@@ -54,7 +61,7 @@ export interface ElectrodeSolution {
  * Cost: one sparse factorisation and L solves, whatever the number of patterns.
  * @param zeta z_l / R, one an electrode
  */
-export function solveElectrodes(model: ElectrodeModel, sigma: number | Float64Array, zeta: Float64Array, currents: Float64Array): ElectrodeSolution {
+export function solveElectrodes(model: ElectrodeModel, sigma: number | Float64Array | ElementConductivity, zeta: Float64Array, currents: Float64Array): ElectrodeSolution {
   const { electrodes, analysis, pattern } = model;
   const n = pattern.n;
   const L = electrodes.length;

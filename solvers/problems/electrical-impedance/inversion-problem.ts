@@ -11,10 +11,10 @@ import { cellJumps, cellPenalty, conductivityCells, pixelShares } from './conduc
 import { electrodeIntegrals } from './electrode-integrals';
 import { electrodeModel, solveElectrodes } from './electrode-model';
 import { electrodeFrame, type ElectrodeFrame } from './electrodes';
-import { degreeFourShapes } from './elements';
 import { inversionDetail, inversionMesh, type InversionDetail } from './inversion-mesh';
 import { frameJacobian, pairWeights } from './jacobian';
 import { frameSize, measure, patternCount } from './patterns';
+import { reciprocalBasis } from './reciprocal-basis';
 import { elementsByCell, pairSensitivities, unitStiffness } from './sensitivity';
 import { contactNumber, contactNumbers } from './simulation';
 
@@ -70,8 +70,7 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
   }
   const patterns = patternCount(geometry);
   const drive = pairWeights(geometry);
-  const points = degreeFourShapes.points;
-  const sigma = new Float64Array(points * cellOf.length);
+  const sigma = { stiffness, perElement: new Float64Array(cellOf.length) };
 
   let latest: Solved | null = null;
   const solve = (x: Float64Array): Solved => {
@@ -80,7 +79,7 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
     for (let t = 0; t < cellOf.length; t++) {
       const value = x[cellOf[t]];
       if (!(value > 0)) throw new RangeError(`Cell ${cellOf[t]} has the conductivity ${value} S/m: it must be positive.`);
-      sigma.fill(value, points * t, points * (t + 1));
+      sigma.perElement[t] = value;
     }
     const { voltages, unitPotentials } = solveElectrodes(model, sigma, zeta, pairCurrents);
     // voltages: row j for pair current j. Fields: sum over electrodes of U_l times the potential of unit voltage on l.
@@ -113,6 +112,7 @@ export function createEitInversion(geometry: EitGeometry, background: number, da
       return data;
     },
     linear: false,
+    dataBasis: reciprocalBasis(geometry),
     linearise(x) {
       const pairs = pairSensitivities(mesh, stiffness, groups, solve(x).fields, L, pairScratch);
       return matrixOperator(frameJacobian(geometry, pairs, unknowns), dataSize, unknowns);

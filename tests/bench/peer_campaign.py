@@ -1,0 +1,2 @@
+def campaign(array, timed, o):
+    return {}, {}
