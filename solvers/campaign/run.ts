@@ -37,11 +37,13 @@ export function prepareRun(request: { problem: ForwardProblem; noiseModel?: stri
   const method = getMethod(request.method);
   if (!method.capabilities.families.includes(problem.family)) throw new RangeError(`${method.name} does not serve the family '${problem.family}'.`);
   if (!method.capabilities.dataKinds.includes(problem.dataKind)) throw new RangeError(`${method.name} does not serve ${problem.dataKind} data.`);
+  const noiseModel = getNoiseModel(request.noiseModel ?? 'gaussian');
+  if (!noiseModel.families.includes(problem.family)) throw new RangeError(`The noise '${noiseModel.name}' does not occur in the family '${problem.family}'.`);
   const reason = method.unfit?.(problem);
   if (reason) throw new RangeError(`${method.name} does not serve this phantom: ${reason}`);
   return {
     problem, method, configuration: { method: request.method, parameters, rule },
-    noiseModel: getNoiseModel(request.noiseModel ?? 'gaussian'), reconstructor: method.prepare(problem, { ...parameters }, rule),
+    noiseModel, reconstructor: method.prepare(problem, { ...parameters }, rule),
   };
 }
 

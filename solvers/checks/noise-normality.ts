@@ -1,4 +1,4 @@
-import { judge, type Check } from './check';
+import { judge, notApplicable, type Check } from './check';
 import { realisedNoise } from './noise-calibration';
 import type { RunCheckContext } from './run-check';
 import { chiSquareSurvival } from '../statistics/distributions';
@@ -14,6 +14,7 @@ export const noiseNormalityCheck: Check<RunCheckContext> = {
   summary: 'Skewness S and kurtosis K of all noise values of the run, each draw scaled to unit variance, against a normal distribution. K_0 = 3 m / (m + 2) for m values of fixed norm.',
   source: { short: 'Jarque and Bera 1987', full: 'C. M. Jarque, A. K. Bera: A test for normality of observations and regression residuals. International Statistical Review 55 (1987) 163-172.', fromMemory: true },
   evaluate(context) {
+    if (!context.prepared.noiseModel.normal) return notApplicable(this, 'The noise of this run is of another kind.');
     const m = context.simulated.clean.length;
     let count = 0;
     let third = 0;

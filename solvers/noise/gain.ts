@@ -1,3 +1,4 @@
+import { familyKeys } from '../../shared/domain/families';
 import { RandomStream } from '../core/random';
 import { norm2 } from '../core/vector';
 import { requireNoiseInput, type NoiseModel } from './noise-model';
@@ -10,6 +11,8 @@ export const gainNoise: NoiseModel = {
   formula: 'y^\\delta_i = (1 + c\\,g_i)\\,y_i, \\quad g \\sim \\mathcal{N}(0, I), \\; c = \\delta\\,\\frac{\\|y_{\\mathrm{ref}}\\|}{\\|g \\odot y\\|}',
   sources: [{ short: 'common practice', full: 'Multiplicative noise of independent channels. Common practice, no source.' }],
   exact: true,
+  normal: false,
+  families: familyKeys,
   draw(clean, level, noiseScale, key) {
     requireNoiseInput(clean, level, noiseScale);
     const data = new Float64Array(clean.length);

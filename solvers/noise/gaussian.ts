@@ -1,3 +1,4 @@
+import { familyKeys } from '../../shared/domain/families';
 import { RandomStream, type DrawKey } from '../core/random';
 import { norm2 } from '../core/vector';
 import { requireNoiseInput, type NoiseModel, type NoisyData } from './noise-model';
@@ -25,6 +26,8 @@ export const gaussianNoise: NoiseModel = {
   formula: 'y^\\delta = y + \\delta\\,\\|y_{\\mathrm{ref}}\\|\\,\\frac{g}{\\|g\\|}, \\quad g \\sim \\mathcal{N}(0, I)',
   sources: [philox, quantile],
   exact: true,
+  normal: true,
+  families: familyKeys,
   draw: (clean, level, noiseScale, key) => drawGaussian(true, clean, level, noiseScale, key),
 };
 
@@ -36,5 +39,7 @@ export const gaussianExpectedNoise: NoiseModel = {
   formula: 'y^\\delta = y + \\delta\\,\\frac{\\|y_{\\mathrm{ref}}\\|}{\\sqrt{m}}\\,g, \\quad g \\sim \\mathcal{N}(0, I)',
   sources: [philox, quantile],
   exact: false,
+  normal: true,
+  families: familyKeys,
   draw: (clean, level, noiseScale, key) => drawGaussian(false, clean, level, noiseScale, key),
 };

@@ -1,3 +1,4 @@
+import type { FamilyKey } from '../../shared/domain/families';
 import type { DrawKey } from '../core/random';
 import type { Source } from '../core/types';
 
@@ -19,6 +20,10 @@ export interface NoiseModel {
   readonly sources: readonly Source[];
   /** True where ||e|| equals level * noiseScale in every draw, not only on average. */
   readonly exact: boolean;
+  /** True where the noise values are normal. */
+  readonly normal: boolean;
+  /** Families whose data have such noise. */
+  readonly families: readonly FamilyKey[];
   /**
    * @param clean data without noise; not changed
    * @param level relative level, a fraction >= 0

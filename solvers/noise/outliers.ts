@@ -1,3 +1,4 @@
+import { familyKeys } from '../../shared/domain/families';
 import { RandomStream } from '../core/random';
 import { norm2 } from '../core/vector';
 import { requireNoiseInput, type NoiseModel } from './noise-model';
@@ -13,6 +14,8 @@ export const outlierNoise: NoiseModel = {
   formula: 'y^\\delta_i = y_i + \\delta\\,\\|y_{\\mathrm{ref}}\\|\\,\\frac{g_i}{\\|g\\|} \\; (i \\in S), \\quad y^\\delta_i = y_i \\; (i \\notin S), \\quad \\# S = \\lceil 0.05\\,m \\rceil',
   sources: [{ short: 'Huber 1964', full: 'P. J. Huber. Annals of Mathematical Statistics 35 (1964) 73-101 (contaminated data; the share of 5 % and the exact level are choices of this registry).', fromMemory: true }],
   exact: true,
+  normal: false,
+  families: familyKeys,
   draw(clean, level, noiseScale, key) {
     requireNoiseInput(clean, level, noiseScale);
     const m = clean.length;
