@@ -102,7 +102,7 @@ function scatteringOver(exponentials: Float64Array, N: number, kr: Float64Array,
 
 /** Rings of points z: radial nodes of the disc, on each a power of two of angles for the modes up to 2 R r + 4 that reach it. */
 function zRings(R: number, angles: number): Ring[] {
-  return Array.from(radialNodes(4 + Math.ceil(R)), (radius) => {
+  return Array.from(radialNodes(5 + Math.ceil(R)), (radius) => {
     let count = 8;
     while (count < angles && count < 2 * (2 * R * radius + 4)) count *= 2;
     return { radius, count };
