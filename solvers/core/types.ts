@@ -95,6 +95,11 @@ export interface ForwardProblem {
    * makes it explicit where that is affordable.
    */
   linearise(x: Float64Array): Derivative;
+  /**
+   * Orthonormal rows, fewer than `dataSize`, whose span holds every column of every derivative (voltages that reciprocity makes equal):
+   * decompositions work in it. Absent where the data have no such structure.
+   */
+  readonly dataBasis?: SparseMatrix;
   /** Values of `x` on the pixels `grid.inside` (cell averages), length `grid.inside.length`. */
   toImage(x: Float64Array, out: Float64Array): void;
   /**

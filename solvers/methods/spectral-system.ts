@@ -6,6 +6,7 @@
  */
 import type { ForwardProblem, PenaltyKey } from '../core/types';
 import { denseMatrix } from '../core/matrix-operator';
+import { sparseTimesDense, sparseTransposedTimesDense } from '../core/sparse';
 import { requireVector } from '../core/vector';
 import { thinSvd } from '../linear-algebra/thin-svd';
 import type { SpectralData } from '../parameter-choice/spectral-data';
@@ -41,7 +42,7 @@ const cache = new WeakMap<ForwardProblem, Map<string, SpectralSystem>>();
 
 /**
  * The system of a problem, computed once a problem object and form.
- * Cost: one derivative, one sparse factorisation, m half solves, one SVD of m x n; memory (m + r) n doubles.
+ * Cost: one derivative, one sparse factorisation, m half solves, one SVD of m x n, m the data or the rows of their basis; memory (m + r) n doubles.
  * @throws RangeError where the derivative is zero or not finite, or shapes do not fit
  */
 export function spectralSystem(problem: ForwardProblem, form: StandardForm): SpectralSystem {
@@ -67,12 +68,16 @@ function computeSystem(problem: ForwardProblem, makeFactor: (jacobian: Float64Ar
   const jacobian = problem.linearise(background);
   if (jacobian.rows !== dataSize || jacobian.cols !== unknowns)
     throw new RangeError(`The derivative is ${jacobian.rows} x ${jacobian.cols}, the problem ${dataSize} x ${unknowns}.`);
-  const matrix = Float64Array.from(denseMatrix(jacobian));
-  requireVector(matrix, dataSize * unknowns, 'The derivative');
-  const factor = makeFactor(denseMatrix(jacobian));
-  // The rows of J are the right-hand sides of R^{-T}.
-  factor?.halfSolveMany(matrix, dataSize, 'forward');
-  const { u, s, v } = thinSvd(matrix, dataSize, unknowns);
+  const values = denseMatrix(jacobian);
+  requireVector(values, dataSize * unknowns, 'The derivative');
+  const factor = makeFactor(values);
+  // In a basis B of all data the problem can give, J = B^T (B J): the singular vectors of B J, brought back, are those of J.
+  const { dataBasis } = problem;
+  const rows = dataBasis ? dataBasis.rows : dataSize;
+  const matrix = dataBasis ? sparseTimesDense(dataBasis, values, unknowns) : Float64Array.from(values);
+  // The rows of the matrix are the right-hand sides of R^{-T}.
+  factor?.halfSolveMany(matrix, rows, 'forward');
+  const { u, s, v } = thinSvd(matrix, rows, unknowns);
   const leftColumns = s.length;
   const floor = Math.max(dataSize, unknowns) * 2.220446049250313e-16 * s[0];
   let rank = 0;
@@ -82,7 +87,7 @@ function computeSystem(problem: ForwardProblem, makeFactor: (jacobian: Float64Ar
   for (let k = 0; k < rank; k++) for (let j = 0; j < unknowns; j++) basis[k * unknowns + j] = v[j * leftColumns + k];
   factor?.halfSolveMany(basis, rank, 'backward');
   const offset = problem.dataKind === 'difference' ? new Float64Array(dataSize) : problem.evaluate(background);
-  return { dataSize, unknowns, rank, singularValues: s.slice(0, rank), left: u, leftColumns, basis, background, offset };
+  return { dataSize, unknowns, rank, singularValues: s.slice(0, rank), left: dataBasis ? sparseTransposedTimesDense(dataBasis, u, leftColumns) : u, leftColumns, basis, background, offset };
 }
 
 /**
@@ -91,25 +96,47 @@ function computeSystem(problem: ForwardProblem, makeFactor: (jacobian: Float64Ar
  */
 export function frameSpectrum(system: SpectralSystem, data: Float64Array): SpectralData {
   const { dataSize, left, leftColumns, offset, rank } = system;
-  requireVector(data, dataSize, 'The data frame');
+  requireFrame(system, data);
   const c = new Float64Array(leftColumns);
+  const centred = new Float64Array(dataSize);
   for (let i = 0; i < dataSize; i++) {
     const y = data[i] - offset[i];
     const row = i * leftColumns;
+    centred[i] = y;
     for (let k = 0; k < leftColumns; k++) c[k] += left[row + k] * y;
   }
-  let outside = 0;
-  for (let k = rank; k < leftColumns; k++) outside += c[k] * c[k];
+  let fitted: Float64Array | null = null;
   if (leftColumns < dataSize) {
-    // More data than unknowns: what U does not span is found entry by entry, without cancellation of two large norms.
+    fitted = new Float64Array(dataSize);
     for (let i = 0; i < dataSize; i++) {
-      let r = data[i] - offset[i];
+      let sum = 0;
       const row = i * leftColumns;
-      for (let k = 0; k < leftColumns; k++) r -= left[row + k] * c[k];
-      outside += r * r;
+      for (let k = 0; k < leftColumns; k++) sum += left[row + k] * c[k];
+      fitted[i] = sum;
     }
   }
-  return { singularValues: system.singularValues, coefficients: c, outside, dataSize };
+  return { singularValues: system.singularValues, coefficients: c, outside: outsideOf(c, rank, centred, fitted), dataSize };
+}
+
+/** @throws RangeError for a wrong length or a value that is not finite */
+export function requireFrame(system: SpectralSystem, data: Float64Array): void {
+  requireVector(data, system.dataSize, 'The data frame');
+}
+
+/**
+ * Squared norm of a frame outside the first r coefficients. What U does not span is found entry by entry, without cancellation
+ * of two large norms.
+ * @param fitted U c, null where U spans all data
+ */
+export function outsideOf(c: Float64Array, rank: number, centred: Float64Array, fitted: Float64Array | null): number {
+  let outside = 0;
+  for (let k = rank; k < c.length; k++) outside += c[k] * c[k];
+  if (fitted)
+    for (let i = 0; i < centred.length; i++) {
+      const r = centred[i] - fitted[i];
+      outside += r * r;
+    }
+  return outside;
 }
 
 /** True where the frame equals the background's: there is nothing to reconstruct. */
