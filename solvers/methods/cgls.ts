@@ -4,8 +4,8 @@ import { sumOfSquares } from '../core/vector';
 import { goesByAction, operatorSystem, stoppedByAction, type ActionIteration, type OperatorSystem } from './operator-system';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
-import { makeReconstructor } from './reconstructor';
-import { expandCoefficients, frameSpectrum, spectralSystem } from './spectral-system';
+import { makeSpectralReconstructor } from './spectral-batch';
+import { spectralSystem } from './spectral-system';
 
 const specs = {
   penalty: { kind: 'choice', label: 'Smoothing norm', symbol: 'L', default: 'identity', choices: penaltyChoices, help: 'The inner product of the iteration: the size of the change, its gradient, or its Laplacian.' },
@@ -125,16 +125,12 @@ const method: Method<ParametersOf<typeof specs>> = {
       return stoppedByAction(byAction, setting, largestIteration, (y) => cglsByAction(byAction, y));
     }
     const system = spectralSystem(problem, penalty);
-    return makeReconstructor((data, noise, context) => {
-      const frame = frameSpectrum(system, data);
+    return makeSpectralReconstructor(system, (frame, noise, _data, context) => {
       const bound = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : 0;
       const limit = setting.key === 'fixed' ? setting.value : largestIteration;
       const { z, iterations, stop, residual } = cglsInCoefficients(system.singularValues, frame.coefficients, frame.outside, bound * bound, limit, context?.aborted);
-      return {
-        x: expandCoefficients(system, z, system.rank), parameter: iterations, iterations, forwardSolves: 0,
-        stop, residualNorm: Math.sqrt(residual),
-      };
-    }, system.singularValues);
+      return { d: z, count: system.rank, report: { parameter: iterations, iterations, forwardSolves: 0, stop, residualNorm: Math.sqrt(residual) } };
+    });
   },
 };
 export const cglsMethod = defineMethod(method);

@@ -8,7 +8,7 @@ type ReconstructOne = (data: Float64Array, noise: NoiseInfo, context?: Reconstru
  */
 export function makeReconstructor(one: ReconstructOne, spectrum?: Float64Array): Reconstructor {
   const checked: ReconstructOne = (data, noise, context) => {
-    if (!(noise.norm >= 0) || !Number.isFinite(noise.norm)) throw new RangeError(`The norm of the noise must be a number from 0, not ${noise.norm}.`);
+    requireNoise(noise);
     return one(data, noise, context);
   };
   return {
@@ -24,4 +24,9 @@ export function makeReconstructor(one: ReconstructOne, spectrum?: Float64Array):
     },
     ...(spectrum ? { spectrum } : {}),
   };
+}
+
+/** @throws RangeError for a norm of the noise that is negative or not finite */
+export function requireNoise({ norm }: NoiseInfo): void {
+  if (!(norm >= 0) || !Number.isFinite(norm)) throw new RangeError(`The norm of the noise must be a number from 0, not ${norm}.`);
 }

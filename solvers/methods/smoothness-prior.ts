@@ -4,10 +4,10 @@ import { analyse, factorise } from '../linear-algebra/sparse-cholesky';
 import { explicitLimit } from './explicit-limit';
 import { defineMethod, defineParameters, readParameters, type ParametersOf } from './parameters';
 import { gramLower } from './penalty';
-import { makeReconstructor } from './reconstructor';
+import { makeSpectralReconstructor } from './spectral-batch';
 import { filteredResidual } from './spectral-filter';
 import { iteratedTikhonovFilter } from './iterated-tikhonov';
-import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystemOf, type SpectralSystem, type StandardFactor } from './spectral-system';
+import { isZeroFrame, spectralSystemOf, type SpectralSystem, type StandardFactor } from './spectral-system';
 import { unknownScale } from './unknown-scale';
 
 const specs = {
@@ -79,17 +79,16 @@ const method: Method<ParametersOf<typeof specs>> = {
     const system = smoothnessSystem(problem, deviation * unknownScale(problem), correlationLength * problem.grid.bodyRadius);
     const s = system.singularValues;
     const filter = iteratedTikhonovFilter(1);
-    return makeReconstructor((data, noise) => {
-      const frame = frameSpectrum(system, data);
+    return makeSpectralReconstructor(system, (frame, noise) => {
       const zero = isZeroFrame(frame);
       const alpha = Math.max(noise.norm / Math.sqrt(system.dataSize), smallestAlpha * s[0]);
       const d = new Float64Array(s.length);
       for (let k = 0; k < s.length; k++) d[k] = (s[k] / (s[k] * s[k] + alpha * alpha)) * frame.coefficients[k];
       return {
-        x: expandCoefficients(system, d, zero ? 0 : s.length), parameter: null, iterations: 0, forwardSolves: 0, stop: 'direct',
-        residualNorm: Math.sqrt(filteredResidual(frame, filter, alpha)),
+        d, count: zero ? 0 : s.length,
+        report: { parameter: null, iterations: 0, forwardSolves: 0, stop: 'direct', residualNorm: Math.sqrt(filteredResidual(frame, filter, alpha)) },
       };
-    }, s);
+    });
   },
 };
 export const smoothnessPriorMethod = defineMethod(method);

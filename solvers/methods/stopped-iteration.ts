@@ -2,8 +2,8 @@
 import type { ForwardProblem, Method, ReconstructContext, Reconstructor, RuleSetting, StopReason } from '../core/types';
 import { denseMatrix } from '../core/matrix-operator';
 import type { SpectralData } from '../parameter-choice/spectral-data';
-import { makeReconstructor } from './reconstructor';
-import { expandCoefficients, frameSpectrum, type SpectralSystem } from './spectral-system';
+import { makeSpectralReconstructor } from './spectral-batch';
+import type { SpectralSystem } from './spectral-system';
 
 /** One iteration on S z = c, started at z = 0. */
 export interface CoefficientIteration {
@@ -53,16 +53,15 @@ export function stoppedReconstructor(
   begin: (frame: SpectralData, data: Float64Array) => CoefficientIteration,
 ): Reconstructor {
   const limit = setting.key === 'fixed' ? setting.value : largestIteration;
-  return makeReconstructor((data, noise, context) => {
-    const frame = frameSpectrum(system, data);
+  return makeSpectralReconstructor(system, (frame, noise, data, context) => {
     const bound = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : 0;
     const iteration = begin(frame, data);
     const { iterations, stop, residual } = runStopped(frame, iteration, bound * bound, limit, context);
     return {
-      x: expandCoefficients(system, iteration.z, iterations === 0 ? 0 : system.rank), parameter: iterations, iterations, forwardSolves: 0,
-      stop, residualNorm: Math.sqrt(residual),
+      d: iteration.z, count: iterations === 0 ? 0 : system.rank,
+      report: { parameter: iterations, iterations, forwardSolves: 0, stop, residualNorm: Math.sqrt(residual) },
     };
-  }, system.singularValues);
+  });
 }
 
 /** Refuses a derivative of the wrong shape. */

@@ -5,8 +5,8 @@ import { tikhonovResidual } from '../parameter-choice/spectral-data';
 import { explicitLimit } from './explicit-limit';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { penaltyChoices } from './penalty';
-import { makeReconstructor } from './reconstructor';
-import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystem } from './spectral-system';
+import { makeSpectralReconstructor } from './spectral-batch';
+import { isZeroFrame, spectralSystem } from './spectral-system';
 
 const specs = {
   penalty: { kind: 'choice', label: 'Penalty', symbol: 'L', default: 'gradient', choices: penaltyChoices, help: 'What is kept small: the size of the change, its gradient, or its Laplacian.' },
@@ -41,8 +41,7 @@ const method: Method<ParametersOf<typeof specs>> = {
     const system = spectralSystem(problem, penalty);
     const s = system.singularValues;
     const floor = setting.key === 'fixed' ? 0 : smallestAlpha * s[0];
-    return makeReconstructor((data, noise) => {
-      const frame = frameSpectrum(system, data);
+    return makeSpectralReconstructor(system, (frame, noise) => {
       const d = new Float64Array(system.rank);
       const chosen = isZeroFrame(frame) ? null : chooser.chooseAlpha(frame, noise, setting).alpha;
       let residual = frame.outside;
@@ -54,10 +53,10 @@ const method: Method<ParametersOf<typeof specs>> = {
         residual = tikhonovResidual(frame, alpha);
       }
       return {
-        x: expandCoefficients(system, d, alpha === null ? 0 : s.length), parameter: alpha === null ? null : alpha / s[0],
-        iterations: 0, forwardSolves: 0, stop: 'direct', residualNorm: Math.sqrt(residual),
+        d, count: alpha === null ? 0 : s.length,
+        report: { parameter: alpha === null ? null : alpha / s[0], iterations: 0, forwardSolves: 0, stop: 'direct', residualNorm: Math.sqrt(residual) },
       };
-    }, s);
+    });
   },
 };
 export const tikhonovMethod = defineMethod(method);

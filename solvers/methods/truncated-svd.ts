@@ -4,8 +4,8 @@ import { getParameterRule } from '../parameter-choice/registry';
 import { truncationResiduals } from '../parameter-choice/spectral-data';
 import { explicitLimit } from './explicit-limit';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
-import { makeReconstructor } from './reconstructor';
-import { expandCoefficients, frameSpectrum, isZeroFrame, spectralSystem } from './spectral-system';
+import { makeSpectralReconstructor } from './spectral-batch';
+import { isZeroFrame, spectralSystem } from './spectral-system';
 
 const specs = {
   largestIndex: { kind: 'integer', label: 'Largest index', symbol: 'k_{\\max}', default: 200, minimum: 1, maximum: 2000, help: 'No rule keeps more singular values than this, nor more than the numerical rank.' },
@@ -33,16 +33,15 @@ const method: Method<ParametersOf<typeof specs>> = {
     const system = spectralSystem(problem, 'identity');
     const s = system.singularValues;
     const limit = setting.key === 'fixed' ? system.rank : Math.min(largestIndex, system.rank);
-    return makeReconstructor((data, noise) => {
-      const frame = frameSpectrum(system, data);
+    return makeSpectralReconstructor(system, (frame, noise) => {
       const index = isZeroFrame(frame) ? 0 : chooser.chooseIndex(frame, noise, setting, limit).index;
       const d = new Float64Array(index);
       for (let k = 0; k < index; k++) d[k] = frame.coefficients[k] / s[k];
       return {
-        x: expandCoefficients(system, d, index), parameter: index, iterations: 0, forwardSolves: 0, stop: 'direct',
-        residualNorm: Math.sqrt(truncationResiduals(frame, index)[index]),
+        d, count: index,
+        report: { parameter: index, iterations: 0, forwardSolves: 0, stop: 'direct', residualNorm: Math.sqrt(truncationResiduals(frame, index)[index]) },
       };
-    }, s);
+    });
   },
 };
 export const truncatedSvdMethod = defineMethod(method);
