@@ -20,6 +20,7 @@ import type { FamilyKey } from '../../shared/domain/families';
 import type { DefinitionOf } from '../../shared/domain/phantom-definition';
 import type { PhantomCheckContext } from './phantom-check';
 import { quadratureConvergenceCheck } from './quadrature-convergence';
+import { modelsDifferCheck, projectorConvergenceCheck, rayClosedFormCheck, rayConvergenceCheck } from './ray-simulation';
 import { recomputationCheck } from './recomputation';
 import { reciprocityCheck } from './reciprocity';
 import type { RunCheckContext } from './run-check';
@@ -28,11 +29,12 @@ import { shapesInBodyCheck } from './shapes-in-body';
 import { simulatorsAgreeCheck } from './simulators-agree';
 import { singularValueDecayCheck } from './singular-value-decay';
 import { taylorCheck } from './taylor';
+import { totalMassCheck, viewMomentsCheck } from './view-moments';
 
 /** Of a simulated phantom, by its family. */
 export const phantomChecks: { readonly [F in FamilyKey]: readonly Check<PhantomCheckContext<DefinitionOf<F>>>[] } = {
   'electrical-impedance': [dataShapeCheck, reciprocityCheck, meshConvergenceCheck, simulatorsAgreeCheck, closedFormCheck, discretisationsDifferCheck, shapesInBodyCheck],
-  'x-ray': [dataShapeCheck],
+  'x-ray': [dataShapeCheck, rayClosedFormCheck, totalMassCheck, viewMomentsCheck, rayConvergenceCheck, projectorConvergenceCheck, modelsDifferCheck],
   'integral-equation': [dataShapeCheck, equationClosedFormCheck, quadratureConvergenceCheck, equationNodesDifferCheck, kernelSizeCheck, singularValueDecayCheck],
   deblurring: [dataShapeCheck, constantKeptCheck, blurredEdgeCheck, samplingConvergenceCheck, pictureNodesDifferCheck],
 };

@@ -10,7 +10,7 @@ import { halfChord } from './siddon';
 const exactLines = 8;
 const quadratureLines = 4;
 /** Pieces of the rule for expressions to a cell of the inversion, and its points. */
-const piecesPerCell = 4;
+export const piecesPerCell = 4;
 const expressionPoints = 3;
 
 export interface RayIntegrals {
@@ -18,6 +18,8 @@ export interface RayIntegrals {
   integral(ray: Ray): number;
   /** Lines averaged over each detector cell. */
   readonly lines: number;
+  /** False where pieces of a rule stand for the integral. */
+  readonly exact: boolean;
   /** 'closed form', for a reader. */
   readonly kind: string;
 }
@@ -26,15 +28,17 @@ export interface RayIntegrals {
  * Line integrals of a ground truth. Between the sorted crossings with every outline the truth is constant (ellipses, annuli, polygons:
  * Kak and Slaney 1988, section 3.1), a polynomial (bumps, bilinear arrays) and integrated exactly up to rounding, in whatever order shapes
  * lie on one another. An expression is integrated by three-point Gauss-Legendre rules on pieces of a quarter of a cell of the inversion.
+ * @param pieces to a cell, for expressions
  */
-export function rayIntegrals(truth: TruthField, definition: TruthDefinition, { body, cells }: XrayGeometry): RayIntegrals {
+export function rayIntegrals(truth: TruthField, definition: TruthDefinition, { body, cells }: XrayGeometry, pieces = piecesPerCell): RayIntegrals {
   const { crossings, points } = rayBreaks(definition);
   const exact = points > 0;
   const { nodes, weights } = gaussLegendre(exact ? points : expressionPoints);
-  const piece = (2 * body.radius) / (piecesPerCell * cells);
+  const piece = (2 * body.radius) / (pieces * cells);
   let breaks = new Float64Array(256);
   let count = 0;
   return {
+    exact,
     lines: exact ? exactLines : quadratureLines,
     kind: definition.kind === 'expression' ? 'Gauss-Legendre quadrature along each ray' : definition.kind === 'array' ? 'exact integrals of the bilinear image along each ray' : 'closed form along each ray',
     integral(ray) {
