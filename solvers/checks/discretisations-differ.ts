@@ -1,4 +1,5 @@
 import type { QuadraticMesh } from '../mesh/quadratic-mesh';
+import { simulatorFor } from '../problems/electrical-impedance/data-simulation';
 import { electrodeFrame } from '../problems/electrical-impedance/electrodes';
 import { inversionDetail, inversionMesh } from '../problems/electrical-impedance/inversion-mesh';
 import { contactNumber } from '../problems/electrical-impedance/simulation';
@@ -16,10 +17,12 @@ export const discretisationsDifferCheck: Check<ImpedanceCheckContext> = {
   bound: 0,
   comparison: 'equal',
   formula: '\\#(V_{\\mathrm{simulation}} \\cap V_{\\mathrm{inversion}}) \\text{ inside the body}',
-  summary: 'Data must not be inverted on the mesh that made them (an inverse crime): the two meshes share no vertex inside the body.',
+  summary: 'Data must not be inverted on the mesh that made them (an inverse crime): the two meshes share no vertex inside the body. Boundary integrals have no mesh.',
   source: { short: 'Kaipio and Somersalo 2005', full: 'J. Kaipio, E. Somersalo, Statistical and Computational Inverse Problems, Springer 2005 (inverse crimes).', fromMemory: true },
   evaluate({ definition, truth }) {
     const { geometry } = definition;
+    if (simulatorFor(truth, geometry) === 'boundary-integrals')
+      return judge(this, 0, 'Vertices inside the body that simulation and inversion have in common: boundary integrals have unknowns on curves only, and no mesh.');
     const frame = electrodeFrame(geometry);
     const contact = contactNumber(geometry, truth.background);
     const simulated = simulationMesh(truth, frame, simulationDetail(contact)).quadratic;

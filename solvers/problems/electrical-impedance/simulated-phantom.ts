@@ -6,8 +6,9 @@ import { createTruthField } from '../../truth/truth-field';
 import { truthOnGrid } from '../../truth/truth-on-grid';
 import type { SimulatedData } from '../problem-family';
 import { isDisc } from './body-curve';
+import { simulateImpedanceData } from './data-simulation';
 import type { EitInversion } from './inversion-problem';
-import { simulateElectricalImpedance, type SimulationOptions } from './simulation';
+import type { SimulationOptions } from './simulation';
 
 /** ||F_inv(background) - reference|| / ||reference||, the raw gap of the two models on the background. */
 export function backgroundGap(problem: EitInversion, reference: Float64Array): number {
@@ -21,7 +22,7 @@ function gap(a: Float64Array, b: Float64Array): number {
 }
 
 /**
- * Simulates a phantom and measures the gap to the model that will invert.
+ * Simulates a phantom, by boundary integrals where its outlines are smooth and by finite elements elsewhere, and measures the gap to the model that will invert.
  * @param problem the inversion's model of the same geometry and background
  * @throws RangeError (TruthError where a field of the truth is at fault) for what cannot be simulated
  */
@@ -36,7 +37,7 @@ export function simulateImpedancePhantom(definition: DefinitionOf<'electrical-im
   }
   const { grid } = problem;
   const truthImage = truthOnGrid(truth, grid);
-  const simulation = simulateElectricalImpedance(truth, definition.geometry, options);
+  const simulation = simulateImpedanceData(truth, definition.geometry, options);
   const { data: frame, reference } = simulation;
   const difference = new Float64Array(frame.length);
   for (let i = 0; i < frame.length; i++) difference[i] = frame[i] - reference[i];
@@ -63,6 +64,6 @@ export function simulateImpedancePhantom(definition: DefinitionOf<'electrical-im
     elements: simulation.elements,
     cells: problem.unknowns,
     nodes: problem.nodes,
-    kind: 'complete electrode model, graded isoparametric quadratic elements',
+    kind: simulation.kind,
   };
 }

@@ -9,8 +9,13 @@ import type { SmoothCurve } from './smooth-curve';
  */
 const lnLargest = ln(4);
 const overTwoPi = 0.5 / Math.PI;
-/** Closer than this, in radii, differences of coordinates have lost too many digits: the limit is taken. */
-const coincident = 1e-7;
+/**
+ * On one curve, closer than these the kernels are taken from curvature and speed at the two places: errors are of second order in the
+ * distance there, while differences of coordinates lose 1e-16 over the distance, or over its square. In radii, and for the flux in radii of
+ * curvature where those are less.
+ */
+const closePotential = 1e-5;
+const closeFlux = 1e-4;
 
 /** Potential at (x, y) of a unit charge at (u, v). */
 export function potential(x: number, y: number, u: number, v: number): number {
@@ -24,16 +29,22 @@ export function curvedPotential(nodes: Nodes, local: Float64Array, half: number,
   const dx = nodes.x[i] - nodes.x[k];
   const dy = nodes.y[i] - nodes.y[k];
   const square = dx * dx + dy * dy;
-  if (square < coincident * coincident) return overTwoPi * (lnLargest - ln(half));
+  if (i === k) return overTwoPi * (lnLargest - ln(half));
   return overTwoPi * (lnLargest - 0.5 * ln(square) + ln(Math.abs(local[i] - local[k])));
 }
 
-/** Normal derivative at place i of `at` of the potential of a unit charge at place k of `from`; on one smooth curve it is bounded. */
-export function flux(at: Nodes, i: number, from: Nodes, k: number): number {
+/**
+ * Normal derivative at place i of `at` of the potential of a unit charge at place k of `from`.
+ * @param own both lie on one smooth curve: the kernel is bounded, -curvature / (4 pi) where they coincide
+ */
+export function flux(at: Nodes, i: number, from: Nodes, k: number, own: boolean): number {
   const dx = at.x[i] - from.x[k];
   const dy = at.y[i] - from.y[k];
   const square = dx * dx + dy * dy;
-  if (square < coincident * coincident) return -0.5 * overTwoPi * at.curvature[i];
+  if (own) {
+    const bend = Math.max(1, Math.abs(at.curvature[i]));
+    if (square * bend * bend < closeFlux * closeFlux) return (-overTwoPi * (2 * at.curvature[i] + from.curvature[k])) / 6;
+  }
   return (-overTwoPi * (at.normalX[i] * dx + at.normalY[i] * dy)) / square;
 }
 
@@ -71,7 +82,7 @@ export function addOwnPotential({ curve, breaks, order, nodes }: PanelledCurve, 
       const dx = x - nodes.x[k];
       const dy = y - nodes.y[k];
       const square = dx * dx + dy * dy;
-      const smooth = square < coincident * coincident ? ln(half * nodes.speed[k]) : 0.5 * ln(square) - ln(Math.abs(local - rule.points[j]));
+      const smooth = square < closePotential * closePotential ? ln(0.5 * half * (nodes.speed[k] + place.speed[i])) : 0.5 * ln(square) - ln(Math.abs(local - rule.points[j]));
       out[k] += overTwoPi * (nodes.weight[k] * (lnLargest - smooth) - half * nodes.speed[k] * near[j]);
     }
   }

@@ -26,7 +26,7 @@ export interface SmoothScene {
 }
 
 /** The smooth curves of a truth in a body, or the reason why boundary integrals do not serve it. */
-export function smoothScene(truth: TruthField, geometry: EitGeometry): SmoothScene | string {
+export function smoothScene(truth: TruthField, geometry: Pick<EitGeometry, 'body'>): SmoothScene | string {
   if (!truth.piecewiseConstant) return 'The conductivity varies between outlines.';
   const body = bodyCurve(geometry);
   const outlines: Outline[] = [];

@@ -5,14 +5,14 @@ import type { SmoothCurve } from './smooth-curve';
 /**
  * Least sum of the distances from a foreign point to the two ends of a panel, over the length A of the panel. Points with one sum
  * lie on an ellipse about the ends: with sources outside it polynomials of degree n follow a field up to rho^-n and n Gauss points
- * integrate it up to rho^-2n, rho = A + sqrt(A^2 - 1) = 2.3 (Trefethen 2013, Approximation Theory and Approximation Practice,
+ * integrate it up to rho^-2n, rho = A + sqrt(A^2 - 1) = 2.6 (Trefethen 2013, Approximation Theory and Approximation Practice,
  * chapters 8 and 19). Most foreign charges are images far behind the curve, so densities are smoother than that.
  */
-const clearance = 1.35;
+const clearance = 1.5;
 /** The same for a point across the middle, as panels are not straight: its distance over the length. */
 const middleClearance = 0.5 * Math.sqrt(clearance * clearance - 1);
 /** A panel turns by at most this, rad. */
-const largestTurn = 1.7;
+const largestTurn = 1.3;
 /** Largest of the last two Legendre coefficients of the speed, as a share of it, and of the turn per panel, rad. */
 const shapeTail = 1e-9;
 /** Of the sampling that decides on the splits. */
@@ -45,7 +45,7 @@ interface Sampled {
  * @throws PanelError where curves touch or cross
  */
 export function choosePanels(curves: readonly SmoothCurve[]): number[][] {
-  const sampled = curves.map((curve) => sample(curve, [0, 1, 2, 3, 4].map((k) => (k / 4) * curve.period)));
+  const sampled = curves.map((curve) => sample(curve, [0, 1, 2, 3, 4, 5].map((k) => (k / 5) * curve.period)));
   for (;;) {
     const splits = sampled.map((_, c) => panelsToSplit(sampled, c));
     if (splits.every((list) => list.length === 0)) return sampled.map(({ breaks }) => breaks);

@@ -60,11 +60,11 @@ export function boundarySystem(electrodes: readonly ElectrodePlace[], outer: Pan
     }
   });
   const sources = { electrodes, starts, outer, outerStart: onElectrodes, jumps, jumpStarts };
-  fillFluxRows(head, cols, onElectrodes, outer, -1, 1, 0.5, sources);
+  fillFluxRows(head, cols, onElectrodes, outer, -1, 1, sources);
 
   // [A21 A22]
   const tail = new Float64Array(rest * count);
-  jumps.forEach((jump, i) => fillFluxRows(tail, count, jumpStarts[i] - first, jump, i, jump.contrast, 0.5, sources));
+  jumps.forEach((jump, i) => fillFluxRows(tail, count, jumpStarts[i] - first, jump, i, jump.contrast, sources));
 
   solveAugmented(head, first, cols);
   const width = rest + L;
@@ -129,7 +129,7 @@ function fillElectrodeRows(a: Float64Array, cols: number, electrodes: readonly E
   });
 }
 
-interface Sources {
+export interface Sources {
   readonly electrodes: readonly ElectrodePlace[];
   readonly starts: readonly number[];
   readonly outer: PanelledCurve;
@@ -138,23 +138,23 @@ interface Sources {
   readonly jumpStarts: readonly number[];
 }
 
-/** factor K'(all densities) + density/2 + share of the curve's total, at the nodes of a curve: the boundary (self = -1) or a jump. */
-function fillFluxRows(a: Float64Array, cols: number, start: number, curve: PanelledCurve, self: number, factor: number, share: number, sources: Sources): void {
+/** factor K'(all densities) + density/2 + half the curve's mean, at the nodes of a curve: the boundary (self = -1) or a jump. */
+export function fillFluxRows(a: Float64Array, cols: number, start: number, curve: PanelledCurve, self: number, factor: number, sources: Sources): void {
   const { nodes } = curve;
   const ownStart = self < 0 ? sources.outerStart : sources.jumpStarts[self];
   let length = 0;
   for (let k = 0; k < nodes.x.length; k++) length += nodes.weight[k];
-  const layer = (row: number, i: number, from: Nodes, at: number): void => {
-    for (let k = 0; k < from.x.length; k++) a[row + at + k] = factor * from.weight[k] * flux(nodes, i, from, k);
+  const layer = (row: number, i: number, from: Nodes, at: number, own: boolean): void => {
+    for (let k = 0; k < from.x.length; k++) a[row + at + k] = factor * from.weight[k] * flux(nodes, i, from, k, own);
   };
   for (let i = 0; i < nodes.x.length; i++) {
     const row = (start + i) * cols;
     sources.electrodes.forEach((electrode, l) => {
-      for (let k = 0; k < electrode.local.length; k++) a[row + sources.starts[l] + k] = 2 * factor * flux(nodes, i, electrode.nodes, k);
+      for (let k = 0; k < electrode.local.length; k++) a[row + sources.starts[l] + k] = 2 * factor * flux(nodes, i, electrode.nodes, k, self < 0);
     });
-    layer(row, i, sources.outer.nodes, sources.outerStart);
-    sources.jumps.forEach((jump, j) => layer(row, i, jump.nodes, sources.jumpStarts[j]));
-    for (let k = 0; k < nodes.x.length; k++) a[row + ownStart + k] += (share * nodes.weight[k]) / length;
+    layer(row, i, sources.outer.nodes, sources.outerStart, self < 0);
+    sources.jumps.forEach((jump, j) => layer(row, i, jump.nodes, sources.jumpStarts[j], j === self));
+    for (let k = 0; k < nodes.x.length; k++) a[row + ownStart + k] += (0.5 * nodes.weight[k]) / length;
     a[row + ownStart + i] += 0.5;
   }
 }
