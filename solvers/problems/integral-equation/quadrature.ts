@@ -32,14 +32,43 @@ function gauss(f: Integrand, a: number, b: number): number {
   return half * sum;
 }
 
-/** Share of (largest value times length) that halving a panel may still change. */
+/** Where the values of a panel are looked at next to its ends, beyond its outermost nodes; and what the nodes extrapolate to there. */
+const nearEnd = 1 - 2e-6;
+const atUpperEnd = extrapolation(nearEnd);
+const atLowerEnd = extrapolation(-nearEnd);
+
+/** Values at the place z of the polynomials that are 1 at one node and 0 at the others. */
+function extrapolation(z: number): Float64Array {
+  return abscissae.map((node, q) => {
+    let product = 1;
+    for (let r = 0; r < nodesPerPanel; r++) if (r !== q) product *= (z - abscissae[r]) / (node - abscissae[r]);
+    return product;
+  });
+}
+
+/** Whether the polynomial through the nodes goes on to the ends: a jump may hide between the last node and the end. */
+function reachesEnds(f: Integrand, a: number, b: number, allowed: number): boolean {
+  const half = 0.5 * (b - a);
+  const middle = 0.5 * (a + b);
+  let low = f(middle - half * nearEnd);
+  let high = f(middle + half * nearEnd);
+  for (let q = 0; q < nodesPerPanel; q++) {
+    const value = f(middle + half * abscissae[q]);
+    low -= atLowerEnd[q] * value;
+    high -= atUpperEnd[q] * value;
+  }
+  return Math.abs(low) <= allowed && Math.abs(high) <= allowed;
+}
+
+/** Share of (largest value times length) that halving a panel may still change, and of the largest value that its ends may be off by. */
 const tolerance = 1e-12;
+const endTolerance = 1e-8;
 const deepest = 36;
 /** More panels than this are refused: the function varies faster than these quadratures are made for. */
 export const mostPanels = 20_000;
 
 /**
- * Panels for a function: `count` equal ones, halved where its integral over a panel changes by that, so that jumps and corners are
+ * Panels for a function: `count` equal ones, halved where its integral over a panel changes by that or its nodes miss something at the ends, so that jumps and corners are
  * enclosed in panels of no weight.
  * @throws RangeError where that takes more than `mostPanels`
  */
@@ -54,7 +83,7 @@ export function fitPanels(f: Integrand, from: number, to: number, count: number)
     if (depth < deepest && middle > a && middle < b) {
       const left = gauss(f, a, middle);
       const right = gauss(f, middle, b);
-      if (Math.abs(left + right - whole) > allowed) {
+      if (Math.abs(left + right - whole) > allowed || !reachesEnds(f, a, b, endTolerance * largest)) {
         split(a, middle, left, depth + 1);
         split(middle, b, right, depth + 1);
         return;
