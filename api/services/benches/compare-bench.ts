@@ -61,7 +61,7 @@ async function compute(em: EntityManager, input: Request & { readonly bench: Loa
     fewestPairs,
     pairWords: pairWords(test.blocks, fewestPairs, pairs.length, looked ? 'draw' : 'phantom'),
     resamples: 1000,
-    profile: profile && { problems: profile.problems, unsolved: profile.unsolved, items: profile.items.flatMap(({ id, ratios }) => (placeOf.has(id) ? [{ solver: placeOf.get(id)!, ratios: [...ratios] }] : [])) },
+    profile: profile && { problems: profile.problems, unsolved: profile.unsolved, items: profile.items.flatMap(({ id, ratios }) => (placeOf.has(id) ? [{ solver: placeOf.get(id)!, ratios: [...ratios] }] : [])).sort((a, b) => a.solver - b.solver) },
     profileWords: profileWords(profile, at !== undefined, set, bench, results),
   };
 }

@@ -20,6 +20,7 @@ interface ProfileProps {
   height?: number;
 }
 
+/** Columns of the table. */
 const factors = [1, 1.5, 2, 4] as const;
 const candidates = [1, 1.2, 1.5, 2, 3, 5, 10, 20, 50, 100] as const;
 /** Ratios further out say only that the method is far off. */
@@ -48,7 +49,7 @@ export function ProfileChart({ label, curves, problems, focusId, onFocus, height
           <ComposedChart width={width} height={height} margin={{ top: 12, right: 14, bottom: 18, left: 0 }} accessibilityLayer={false}>
             <CartesianGrid {...gridLook} />
             <XAxis {...axisLook} dataKey="tau" type="number" scale="log" domain={[1, end]} ticks={ticks.filter((value, i) => width > 420 || i % 2 === 0 || value === end)} tickFormatter={(value: number) => `×${value}`} allowDataOverflow label={{ value: 'times the smallest error', position: 'insideBottomRight', offset: -12, fontSize: 11, fill: 'var(--ink-2)' }} />
-            <YAxis {...axisLook} dataKey="share" width={40} type="number" domain={[0, 100]} ticks={[0, 25, 50, 75, 100]} tickFormatter={(value: number) => `${value} %`} />
+            <YAxis {...axisLook} dataKey="share" width={40} type="number" domain={[0, 100]} ticks={[0, 25, 50, 75, 100]} tickFormatter={(value: number) => `${value}\u202f%`} />
             <ReferenceLine x={2} stroke="var(--hair-2)" strokeDasharray="2 3" />
             {ordered.map((curve) => (
               <Line key={curve.id} {...lineLook} type="stepAfter" data={steps(curve, problems, end)} dataKey="share" stroke={solverLook(curve.glyph).colour} strokeWidth={curve.id === focusId ? 3 : 1.6} />
