@@ -41,8 +41,8 @@ export function picardRatios(part: MapPart, dipoles: SemidefiniteFactors): Float
   return out;
 }
 
-/** Halvings of the bracket of a largest test value: four digits. */
-const halvings = 14;
+/** Halvings of the bracket of a largest test value, which spans at most the size of the matrix: five digits of 64. */
+const halvings = 22;
 
 /**
  * The largest beta with beta S <= V + floor I for each test matrix S, V the part; bounded above by beta = `largest`.

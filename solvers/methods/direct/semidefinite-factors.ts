@@ -8,16 +8,13 @@ export interface SemidefiniteFactors {
   readonly rows: Float64Array;
 }
 
-/** What a factor leaves out, as a share of the trace. */
-const tolerance = 1e-6;
-
 /**
- * Pivoted Cholesky factors, stopped where the rest has less than 1e-6 of the trace: few rows for the smooth fields of a small region.
+ * Pivoted Cholesky factors, stopped where the rest has less than `tolerance` of the trace: few rows for the smooth fields of a small region.
  * Rounding that makes a diagonal negative counts as zero.
  * @param fill writes matrix c into its argument (n x n, row-major, the lower triangle is read)
  * Source: N. J. Higham, Accuracy and Stability of Numerical Algorithms (2002), 10.3 (from memory).
  */
-export function semidefiniteFactors(count: number, size: number, fill: (c: number, matrix: Float64Array) => void): SemidefiniteFactors {
+export function semidefiniteFactors(count: number, size: number, fill: (c: number, matrix: Float64Array) => void, tolerance = 1e-6): SemidefiniteFactors {
   const matrix = new Float64Array(size * size);
   const diagonal = new Float64Array(size);
   const starts = new Int32Array(count + 1);

@@ -3,7 +3,7 @@ import { bornImage, hermitianCoefficients } from '../../../../solvers/methods/di
 import { dBarSolver } from '../../../../solvers/methods/direct/d-bar-solver';
 import { exponentialMatrix } from '../../../../solvers/methods/direct/harmonic-map';
 import reference from '../../../reference/d-bar.json';
-import { concentricMap, firstOrderDisc } from '../../../support/disc-maps';
+import { concentricMap, firstOrderDisc } from '../../../../solvers/verification/disc-maps';
 
 const N = 16;
 const points = Float64Array.of(0, 0, 0.1, 0.2, 0.3, 0.4, 0, 0.6, 0.7, 0.1, 0.9, 0.3);
@@ -17,7 +17,7 @@ function firstOrder(exponentials: Float64Array, at: Float64Array, K: number): nu
 describe('the d-bar equation', () => {
   it.each(reference.cases)('agrees with a square grid of the k plane at R = $R', ({ R, values }) => {
     const { rho, x, y, change } = reference.disc;
-    const solution = dBarSolver(Float64Array.from(reference.points.flat()), R).solve(firstOrderDisc(rho, x, y, change, N), N);
+    const solution = dBarSolver(Float64Array.from(reference.points.flat()), R).solve(firstOrderDisc(rho, Math.hypot(x, y), Math.atan2(y, x), change, N), N);
     expect(solution.converged).toBe(true);
     values.forEach((value, i) => expect(Math.abs(solution.values[i] - value)).toBeLessThan(reference.tolerance));
   });
@@ -43,7 +43,7 @@ describe('the d-bar equation', () => {
     const rotated = (angle: number): number => {
       const c = Math.cos(angle);
       const s = Math.sin(angle);
-      const disc = firstOrderDisc(0.25, 0.5 * c, 0.5 * s, 1, N);
+      const disc = firstOrderDisc(0.25, 0.5, angle, 1, N);
       return dBarSolver(Float64Array.of(0.4 * c - 0.1 * s, 0.4 * s + 0.1 * c), 4).solve(disc, N).values[0];
     };
     // Between the rings' angles the value is interpolated: 0.1 % of the change.

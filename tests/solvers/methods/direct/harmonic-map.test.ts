@@ -5,7 +5,7 @@ import { concentricEigenvalue } from '../../../../solvers/problems/electrical-im
 import { createEitInversion } from '../../../../solvers/problems/electrical-impedance/inversion-problem';
 import { simulateElectricalImpedance } from '../../../../solvers/problems/electrical-impedance/simulation';
 import { ellipse, shapesTruth, unitGeometry } from '../../../support/impedance-case';
-import { concentricMap } from '../../../support/disc-maps';
+import { concentricMap } from '../../../../solvers/verification/disc-maps';
 
 const silent = { norm: 0, level: 0 };
 
