@@ -1,11 +1,14 @@
+import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { ellipse, maxError, shapesTruth, unitGeometry } from '../../support/impedance-case';
+import { starBodySchema } from '../../../shared/domain/body';
 import type { EitGeometry } from '../../../shared/domain/geometry/electrical-impedance';
 import type { Shape } from '../../../shared/domain/truth-definition';
 import { bodyContains } from '../../../solvers/core/grid';
 import { simulateByBoundaryIntegrals } from '../../../solvers/problems/electrical-impedance/boundary-integrals/simulate';
 import { bodyGrid } from '../../../solvers/problems/electrical-impedance/body-grid';
 import { createEitInversion } from '../../../solvers/problems/electrical-impedance/inversion-problem';
+import { reciprocityGap } from '../../../solvers/problems/electrical-impedance/reciprocity';
 import { simulateElectricalImpedance } from '../../../solvers/problems/electrical-impedance/simulation';
 import { requireInOutline } from '../../../solvers/truth/check-in-body';
 import { createTruthField } from '../../../solvers/truth/truth-field';
@@ -91,6 +94,26 @@ describe('simulation in star-shaped bodies', () => {
       expect(result.data.every(Number.isFinite)).toBe(true);
       expect(result.meshQuality).toBeGreaterThan(0.2);
     }
+  });
+});
+
+describe('any outline that the form takes', () => {
+  it('is meshed well and gives finite, reciprocal voltages', () => {
+    // Coefficients that fall like those of a smooth curve; what the schema refuses is skipped.
+    const series = fc.array(fc.double({ min: -1, max: 1, noNaN: true }), { minLength: 8, maxLength: 8 });
+    const anyOutline = fc.record({ a: series, b: series, size: fc.double({ min: 0, max: 0.5 }) })
+      .map(({ a, b, size }) => ({ kind: 'star' as const, radius: 1, cosine: a.map((v, k) => (size * v) / (k + 1)), sine: b.map((v, k) => (size * v) / (k + 1)) }))
+      .filter((body) => starBodySchema.safeParse(body).success);
+    fc.assert(
+      fc.property(anyOutline, fc.constantFrom(8, 10), fc.constantFrom(1e-5, 1e-2), (body, electrodes, contactImpedance) => {
+        const geometry = unitGeometry({ body, electrodes, contactImpedance, measurement: 'adjacent-all' });
+        const result = simulateElectricalImpedance(shapesTruth([ellipse(0.1, 0.2, 0.3, 0.15, 5, 30), ellipse(0.6, -0.5, 0.3, 0.3, 0.2)]), geometry, coarse);
+        expect(result.data.every(Number.isFinite)).toBe(true);
+        expect(reciprocityGap(geometry, result.data)).toBeLessThan(1e-8);
+        expect(result.meshQuality).toBeGreaterThan(0.2);
+      }),
+      { numRuns: 6, seed: 11 },
+    );
   });
 });
 
