@@ -3,6 +3,8 @@ export { backwardFour, factorise, factorPanel, forwardFour } from './cholesky';
 export { backwardEight, forwardEight } from './solve-eight';
 export { addScaled, dot, rowsTimes, timesRows } from './vector';
 export { pairSensitivities } from './sensitivity';
+export { sha256Blocks } from './sha256';
+export { windowSums } from './smoothing';
 
 /** The first byte that no kernel keeps for itself. */
 export function firstFree(): usize {

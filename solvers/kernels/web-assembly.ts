@@ -22,6 +22,8 @@ export interface Kernels {
   backwardFour(panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, x: number, below: number): void;
   forwardEight(panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, x: number): void;
   backwardEight(panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, x: number): void;
+  sha256Blocks(data: number, blocks: number, state: number, constants: number, schedule: number): void;
+  windowSums(v: number, t: number, nx: number, ny: number, weights: number, scratch: number, sums: number): void;
   pairSensitivities(
     elements: number, stiffness: number, start: number, list: number, cells: number, fields: number, fieldCount: number,
     f: number, g: number, matrix: number, out: number,

@@ -4,6 +4,7 @@
  */
 import { exp } from '../core/math';
 import type { EvaluationGrid } from '../core/types';
+import { scratchOf } from '../kernels/kernel-memory';
 
 const radius = 5;
 const width = 2 * radius + 1;
@@ -102,6 +103,59 @@ function truthMoments(truth: Float64Array, grid: EvaluationGrid, windows: Window
   return made;
 }
 
+/** Windowed sums of the estimate about the base value, of its square and of its product with the truth, at the centres. */
+interface WindowSums {
+  readonly mean: Float64Array;
+  readonly square: Float64Array;
+  readonly product: Float64Array;
+}
+
+function windowSums(truth: Float64Array, estimate: Float64Array, grid: EvaluationGrid, windows: Windows, base: number): WindowSums {
+  const { inside, nx, ny } = grid;
+  const { centres, strips } = windows;
+  const [mean, square, product] = [new Float64Array(centres.length), new Float64Array(centres.length), new Float64Array(centres.length)];
+  const pixels = nx * ny;
+  const room = scratchOf(8 * pixels, 8 * pixels, 48, 8 * (2 * pixels + 40), 24 * pixels + 16);
+  if (room) {
+    const [atV, atT, atWeights, scratch, atSums] = room.addresses;
+    const v = new Float64Array(room.buffer, atV, pixels).fill(0);
+    const t = new Float64Array(room.buffer, atT, pixels).fill(0);
+    for (let k = 0; k < inside.length; k++) {
+      v[inside[k]] = estimate[k] - base;
+      t[inside[k]] = truth[k] - base;
+    }
+    new Float64Array(room.buffer, atWeights, 6).set(window.subarray(0, 6));
+    room.kernels.windowSums(atV, atT, nx, ny, atWeights, scratch, atSums);
+    const sums = new Float64Array(room.buffer, atSums, 3 * pixels);
+    for (let k = 0; k < centres.length; k++) {
+      mean[k] = sums[centres[k]];
+      square[k] = sums[pixels + centres[k]];
+      product[k] = sums[2 * pixels + centres[k]];
+    }
+    return { mean, square, product };
+  }
+  const [full, squares, products, rows, squareRows, productRows] = windows.scratch;
+  for (let k = 0; k < inside.length; k++) {
+    const at = inside[k];
+    const v = estimate[k] - base;
+    full[at] = v;
+    squares[at] = v * v;
+    products[at] = v * (truth[k] - base);
+  }
+  for (let i = 0; i < strips.length; i++) {
+    const at = strips[i];
+    rows[at] = weigh(full, at, 1);
+    squareRows[at] = weigh(squares, at, 1);
+    productRows[at] = weigh(products, at, 1);
+  }
+  for (let k = 0; k < centres.length; k++) {
+    mean[k] = weigh(rows, centres[k], nx);
+    square[k] = weigh(squareRows, centres[k], nx);
+    product[k] = weigh(productRows, centres[k], nx);
+  }
+  return { mean, square, product };
+}
+
 /**
  * Mean SSIM of two images on `grid.inside`; null where no window fits into the body.
  * Moments are taken about the first pixel of the truth, so that a large background costs no digits.
@@ -110,33 +164,18 @@ function truthMoments(truth: Float64Array, grid: EvaluationGrid, windows: Window
  */
 export function structuralSimilarity(truth: Float64Array, estimate: Float64Array, grid: EvaluationGrid, range: number): number | null {
   const windows = windowsOf(grid);
-  const { centres, strips } = windows;
+  const { centres } = windows;
   if (centres.length === 0) return null;
   const base = truth[0];
   const t = truthMoments(truth, grid, windows, base);
-  const [full, square, product, rows, squareRows, productRows] = windows.scratch;
-  const { inside, nx } = grid;
-  for (let k = 0; k < inside.length; k++) {
-    const at = inside[k];
-    const v = estimate[k] - base;
-    full[at] = v;
-    square[at] = v * v;
-    product[at] = v * (truth[k] - base);
-  }
-  for (let i = 0; i < strips.length; i++) {
-    const at = strips[i];
-    rows[at] = weigh(full, at, 1);
-    squareRows[at] = weigh(square, at, 1);
-    productRows[at] = weigh(product, at, 1);
-  }
+  const sums = windowSums(truth, estimate, grid, windows, base);
   const c1 = 0.01 * range * (0.01 * range);
   const c2 = 0.03 * range * (0.03 * range);
   let total = 0;
   for (let k = 0; k < centres.length; k++) {
-    const at = centres[k];
-    const mean = weigh(rows, at, nx);
-    const variance = weigh(squareRows, at, nx) - mean * mean;
-    const covariance = weigh(productRows, at, nx) - t.mean[k] * mean;
+    const mean = sums.mean[k];
+    const variance = sums.square[k] - mean * mean;
+    const covariance = sums.product[k] - t.mean[k] * mean;
     const a = t.mean[k] + base;
     const b = mean + base;
     total += ((2 * a * b + c1) * (2 * covariance + c2)) / ((a * a + b * b + c1) * (t.variance[k] + variance + c2));

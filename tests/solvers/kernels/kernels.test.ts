@@ -2,6 +2,7 @@ import { spawnSync } from 'node:child_process';
 import { join } from 'node:path';
 import fc from 'fast-check';
 import { afterEach, describe, expect, it } from 'vitest';
+import { sha256Hex } from '../../../solvers/core/hash';
 import { kernels, useCompiledKernels } from '../../../solvers/kernels/kernel-memory';
 import { denseCholesky } from '../../../solvers/linear-algebra/dense-cholesky';
 import { matmul, matmulLeftTransposed, matmulTransposed, transpose } from '../../../solvers/linear-algebra/matrix-product';
@@ -9,6 +10,8 @@ import { analyse, factorise } from '../../../solvers/linear-algebra/sparse-chole
 import { thinSvd } from '../../../solvers/linear-algebra/thin-svd';
 import type { QuadraticMesh } from '../../../solvers/mesh/quadratic-mesh';
 import { elementsByCell, pairSensitivities } from '../../../solvers/problems/electrical-impedance/sensitivity';
+import { structuralSimilarity } from '../../../solvers/metrics/structural-similarity';
+import { discGrid } from '../../support/synthetic-problem';
 import { laplacianOnGrid, randomPositiveDefinite, uniform } from '../../support/sparse-matrices';
 
 /* A compiled kernel and its TypeScript twin give the same bits (this project's own contract, no outside source). */
@@ -106,6 +109,19 @@ describe('compiled kernels', () => {
       const a = random(rows * cols, rows);
       const [compiled, twin] = both(() => thinSvd(a, rows, cols));
       expect(compiled).toEqual(twin);
+    }
+  });
+
+  it('give the bits of their twins: hashes and structural similarity', () => {
+    for (const length of [1, 1023, 1024, 4099]) {
+      const [compiled, twin] = both(() => sha256Hex(random(length, length)));
+      expect(compiled).toBe(twin);
+    }
+    for (const pixels of [11, 24, 31]) {
+      const grid = discGrid(pixels);
+      const count = grid.inside.length;
+      const [compiled, twin] = both(() => structuralSimilarity(random(count, 1), random(count, 2), grid, 1));
+      expect(compiled).toBe(twin);
     }
   });
 
