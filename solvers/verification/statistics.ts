@@ -1,6 +1,6 @@
 import type { Source } from '../core/types';
 import { nemenyiCriticalValue } from '../statistics/distributions';
-import { friedmanFromRanks, type FriedmanResult } from '../statistics/friedman';
+import { friedman, friedmanFromRanks, type FriedmanResult } from '../statistics/friedman';
 import { wilcoxonSignedRank } from '../statistics/wilcoxon';
 import { digestOf, type VerificationCheck } from './check';
 
@@ -60,7 +60,19 @@ const wilcoxonP: VerificationCheck = {
   },
 };
 
+const friedman1937: Source = { short: 'Friedman 1937', full: 'M. Friedman, The use of ranks to avoid the assumption of normality implicit in the analysis of variance, J. Amer. Statist. Assoc. 32 (1937) 675-701: table of exact levels, three ranks, three sets.', fromMemory: true };
+
+/** One order in three blocks of three: 6 of 216 arrangements, chi-square 6. */
+const friedmanCounted: VerificationCheck = {
+  key: 'friedman-counted', group, name: 'Friedman, level by counting', line: '3 methods in one order over 3 blocks', published: '0.028', unit: '', bound: 5e-4, reason: 'Half a unit of the last printed digit.', source: friedman1937, cost: 'light',
+  run() {
+    const { p, chiSquare } = friedman([[1, 2, 3], [1, 2, 3], [1, 2, 3]]);
+    return { measured: p, gap: Math.abs(p - 0.028), digest: digestOf(Float64Array.of(p, chiSquare)) };
+  },
+};
+
 export const statisticsChecks: readonly VerificationCheck[] = [
+  friedmanCounted,
   workedExample('friedman-chi-square', 'Friedman chi-square', 'worked example', '9.28', (result) => result.chiSquare),
   workedExample('friedman-f', 'F of Iman and Davenport', 'worked example', '3.69', (result) => result.f),
   workedExample('nemenyi-critical-difference', 'Nemenyi critical difference, 5 %', 'worked example', '1.25', (result) => result.criticalDifference),

@@ -152,7 +152,7 @@ describe('ranking', () => {
 
   it('refuses an unknown metric and a noise out of range', async () => {
     expect((await app.visitor.get(`/api/v1/benches/${bench.slug}/ranking?metric=charm`)).status).toBe(422);
-    expect((await app.visitor.get(`/api/v1/benches/${bench.slug}/ranking?noise=2`)).status).toBe(422);
+    expect((await app.visitor.get(`/api/v1/benches/${bench.slug}/ranking?noise=-1`)).status).toBe(422);
     expect((await app.visitor.get('/api/v1/benches/no-such-bench/ranking')).status).toBe(404);
   });
 

@@ -112,6 +112,8 @@ describe('model of the bench pages', () => {
     expect(marginWords({ breakdown: null, breakdownNote: 'beyond' }, 0.05, 0.3)).toMatch(/^Holds up to 30/);
     expect(tieWords(three[0]!, ranking(three))).toBe('Cannot be separated from one other.');
     expect(tieWords(three[2]!, ranking(three))).toBe('');
+    const few = { ...ranking(three).test, blocks: 2, enough: false };
+    expect(tieWords({ ...three[0]!, tieGroup: null }, ranking(three, { test: few }))).toBe('2 phantoms are too few to separate it from others.');
   });
 
   it('reads a bench form, levels in per cent', () => {
