@@ -56,8 +56,7 @@ const method: Method<ParametersOf<typeof specs>> = {
     };
     return makeReconstructor((frame, noise) => {
       const change = data.change(frame);
-      const relative = data.relativeMap(change, noise);
-      const parts = signedParts(relative, data.size, data.uncertainty(relative, noise, safetyFactor, smallestShare));
+      const parts = signedParts(data.relativeMap(change, noise), data.size, (norm) => data.uncertainty(norm, noise, safetyFactor, smallestShare));
       const x = signedImage(data, change, indicator(parts.more), indicator(parts.less));
       return { x, parameter: null, iterations: 0, forwardSolves: 1, stop: 'direct', residualNorm: boundedResidual(problem, x, frame) };
     });

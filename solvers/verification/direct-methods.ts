@@ -91,7 +91,7 @@ const monotonicity: VerificationCheck = {
   },
   cost: 'light',
   run() {
-    const part = signedParts(concentricMap(rho, s, N), 2 * N, 1e-15).more;
+    const part = signedParts(concentricMap(rho, s, N), 2 * N, () => 1e-15).more;
     const measured = part ? largestTestValues(part, concentricSensitivities([rho], N), 1)[0] : NaN;
     return { measured, gap: relativeGap(measured, 8 / 13), digest: digestOf(measured) };
   },
@@ -113,7 +113,7 @@ const factorisation: VerificationCheck = {
   },
   cost: 'light',
   run() {
-    const part = signedParts(concentricMap(rho, s, N), 2 * N, 1e-15).more;
+    const part = signedParts(concentricMap(rho, s, N), 2 * N, () => 1e-15).more;
     const places = [0, 0.3, 0.45];
     const ratios = part ? picardRatios(part, dipoleFunctions(places.map((r) => [r, 1] as const), N)) : new Float64Array(3).fill(NaN);
     const exact = places.map((r) => {

@@ -3,8 +3,8 @@ import { angularFourier } from './angular-fourier';
 import { cauchyMatrices } from './cauchy-transform';
 import { radialNodes } from './polar-grid';
 
-/** Residual of the equation, relative to its right-hand side mu = 1 in the mean square over |k| < R, at which the iteration ends. */
-const tolerance = 1e-5;
+/** Residual of the equation, relative to its right-hand side mu = 1 in the mean square over |k| < R, at which the iteration ends: mu is then good to about that. */
+const tolerance = 1e-4;
 const largestIteration = 30;
 
 /** The solution at the origin of the k plane. */

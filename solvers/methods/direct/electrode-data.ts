@@ -2,7 +2,6 @@ import type { EitGeometry } from '../../../shared/domain/geometry/electrical-imp
 import { denseMatrix } from '../../core/matrix-operator';
 import type { ForwardProblem, NoiseInfo, ProblemFacts } from '../../core/types';
 import { requireVector } from '../../core/vector';
-import { symmetricEigen } from '../../linear-algebra/symmetric-eigen';
 import { createEitInversion, type EitInversion } from '../../problems/electrical-impedance/inversion-problem';
 import { frameSize, patternCount } from '../../problems/electrical-impedance/patterns';
 import { drivenChannels, type DrivenChannels } from './driven-channels';
@@ -18,11 +17,11 @@ export interface ElectrodeData {
   /** The relative map R(sigma) - R(background), V per A/m, size x size; zero for the background's frame. */
   relativeMap(change: Float64Array, noise: NoiseInfo): Float64Array;
   /**
-   * What the eigenvalues of a relative map may be off by, V per A/m: the expected spectral norm of the noise times the safety factor, at
-   * least `share` of the spectral norm of the map; at least a hundredth of it where the channels at driven electrodes are predicted, about
-   * what these predictions are off by.
+   * What the eigenvalues of a relative map of spectral norm `norm` may be off by, V per A/m: the expected spectral norm of the noise times
+   * the safety factor, at least `share` of the norm; at least a hundredth of it where the channels at driven electrodes are predicted,
+   * about what these predictions are off by.
    */
-  uncertainty(relative: Float64Array, noise: NoiseInfo, safetyFactor: number, share: number): number;
+  uncertainty(norm: number, noise: NoiseInfo, safetyFactor: number, share: number): number;
   /** Expected squares of the entries of the noise in the relative map, symmetric, size x size, for noise of norm 1. */
   readonly entryVariances: Float64Array;
   /** Minus the derivative of the map for each cell, size x size x cells: positive semidefinite in every cell. V per A/m per S/m. */
@@ -98,11 +97,9 @@ function compute(given: ForwardProblem): ElectrodeData {
       return change;
     },
     relativeMap: (change, noise) => reader.read(completion ? completion.complete(change, noise) : change, 1),
-    uncertainty(relative, noise, safetyFactor, share) {
-      const { values } = symmetricEigen(relative, size);
-      const largest = Math.max(Math.abs(values[0]), Math.abs(values[size - 1]));
+    uncertainty(norm, noise, safetyFactor, share) {
       const ofNoise = (safetyFactor * reader.noiseNorm * noise.norm) / Math.sqrt(dataSize);
-      return Math.max(ofNoise, Math.max(share, completion ? predictedShare : 0) * largest);
+      return Math.max(ofNoise, Math.max(share, completion ? predictedShare : 0) * norm);
     },
     sensitivities() {
       if (!sensitivities) {

@@ -20,10 +20,11 @@ export interface SignedParts {
  * Parts of a relative map by the sign of its eigenvalues; those within the floor count as none. A change of one sign has one part; where
  * there are both the two parts are not those of the two changes, and what is concluded from each of them alone has no guarantee.
  * @param relative symmetric, size x size
- * @param floor what every eigenvalue may be off by (`ElectrodeData.uncertainty`)
+ * @param floorOf what every eigenvalue of a map of a spectral norm may be off by (`ElectrodeData.uncertainty`)
  */
-export function signedParts(relative: Float64Array, size: number, floor: number): SignedParts {
+export function signedParts(relative: Float64Array, size: number, floorOf: (norm: number) => number): SignedParts {
   const { values, vectors } = symmetricEigen(relative, size);
+  const floor = floorOf(Math.max(Math.abs(values[0]), Math.abs(values[size - 1])));
   const part = (sign: 1 | -1): MapPart | null => {
     const kept = values.map((value) => (sign * value > floor ? sign * value : 0));
     return kept.some((value) => value > 0) ? { size, values: kept, vectors, floor } : null;

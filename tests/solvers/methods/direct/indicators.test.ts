@@ -12,7 +12,7 @@ describe('Picard ratio of the factorisation method', () => {
   const places = [0, 0.15, 0.3, 0.42, 0.58, 0.7, 0.85].map((r, i) => [r, 0.7 * i] as const);
   it.each([3, 0.2])('is that of the closed form for a concentric disc of %d', (s) => {
     const floor = 1e-9;
-    const { more, less } = signedParts(concentricMap(rho, s, N), size, floor);
+    const { more, less } = signedParts(concentricMap(rho, s, N), size, () => floor);
     expect(s > 1 ? less : more).toBeNull();
     const part = (s > 1 ? more : less)!;
     picardRatios(part, dipoleFunctions(places, N)).forEach((value, c) => {
@@ -30,7 +30,7 @@ describe('Picard ratio of the factorisation method', () => {
   });
   it('is large inside and sinks outside, the more the smaller the noise', () => {
     const contrast = (floor: number): number => {
-      const ratios = picardRatios(signedParts(concentricMap(rho, 3, N), size, floor).more!, dipoleFunctions(places, N));
+      const ratios = picardRatios(signedParts(concentricMap(rho, 3, N), size, () => floor).more!, dipoleFunctions(places, N));
       for (let c = 1; c < places.length; c++) expect(ratios[c]).toBeLessThan(ratios[c - 1]);
       return ratios[2] / ratios[5];
     };
@@ -44,7 +44,7 @@ describe('Picard ratio of the factorisation method', () => {
 describe('linearised monotonicity test', () => {
   const s = 2;
   const radii = [0.2, 0.4, 0.5, 0.55, 0.7];
-  const part = signedParts(concentricMap(rho, s, N), size, 1e-16).more!;
+  const part = signedParts(concentricMap(rho, s, N), size, () => 1e-16).more!;
   it('has the largest test value of the closed form for concentric discs', () => {
     largestTestValues(part, concentricSensitivities(radii, N), Infinity).forEach((value, c) => {
       let exact = Infinity;
@@ -61,16 +61,16 @@ describe('linearised monotonicity test', () => {
     expect([...passedTests(part, concentricSensitivities(radii, N), (s - 1) / s)]).toEqual([1, 1, 1, 0, 0]);
   });
   it('lets more pass where the noise is larger', () => {
-    const noisy = signedParts(concentricMap(rho, s, N), size, 1e-2).more!;
+    const noisy = signedParts(concentricMap(rho, s, N), size, () => 1e-2).more!;
     expect([...passedTests(noisy, concentricSensitivities(radii, N), (s - 1) / s)]).toEqual([1, 1, 1, 1, 0]);
   });
   it('is symmetric: less conductivity by the same factor passes at the same value', () => {
-    const less = signedParts(concentricMap(rho, 1 / s, N), size, 1e-12).less!;
+    const less = signedParts(concentricMap(rho, 1 / s, N), size, () => 1e-12).less!;
     expect([...passedTests(less, concentricSensitivities(radii, N), (s - 1) / s)]).toEqual([1, 1, 1, 0, 0]);
   });
   it('finds nothing in a map of zeros, and nothing below the noise', () => {
-    expect(signedParts(new Float64Array(size * size), size, 0)).toEqual({ more: null, less: null });
-    expect(signedParts(concentricMap(rho, s, N), size, 10)).toEqual({ more: null, less: null });
+    expect(signedParts(new Float64Array(size * size), size, () => 0)).toEqual({ more: null, less: null });
+    expect(signedParts(concentricMap(rho, s, N), size, () => 10)).toEqual({ more: null, less: null });
   });
 });
 
