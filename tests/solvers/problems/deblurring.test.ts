@@ -24,13 +24,13 @@ type Input = Extract<PhantomDefinitionInput, { family: 'deblurring' }>;
 type Geometry = Definition['geometry'];
 
 const square = { kind: 'rectangle', width: 1, height: 1 } as const;
-const shapes: Input['truth'] = {
+const shapes = {
   kind: 'shapes', background: 0.2,
   shapes: [
     { kind: 'ellipse', label: 'oval', value: 1, x: -0.18, y: 0.1, semiAxisA: 0.2, semiAxisB: 0.12, angleDeg: 30 },
     { kind: 'polygon', label: 'wedge', value: 0.7, vertices: [[0.1, -0.3], [0.36, -0.3], [0.25, 0.05]] },
   ],
-};
+} satisfies Input['truth'];
 function definition(geometry: Partial<Input['geometry']> = {}, truth: Input['truth'] = shapes): Definition {
   return phantomDefinitionSchema.parse({ family: 'deblurring', truth, geometry: { body: square, pointSpread: 'gaussian', spread: 0.06, edge: 'reflective', cells: 24, ...geometry } }) as Definition;
 }
@@ -207,14 +207,14 @@ describe('the simulation', () => {
 
 describe('the phantom', () => {
   it('states the gap of the two models on a truth', () => {
-    const gapOf = (edge: EdgeKey, truth = shapes) => simulate(definition({ edge }, truth));
+    const gapOf = (edge: EdgeKey, truth: Input['truth'] = shapes) => simulate(definition({ edge }, truth));
     // The background goes on beyond the frame, which a zero edge denies.
     expect(gapOf('zero').modelErrorFloor).toBeGreaterThan(0.03);
     expect(gapOf('zero').backgroundGap).toBeGreaterThan(0.05);
     expect(gapOf('reflective').backgroundGap).toBeLessThan(1e-12);
     expect(gapOf('reflective').modelErrorFloor).toBeLessThan(0.01);
     // Without light beyond the frame the edges agree.
-    expect(gapOf('zero', { ...shapes, background: 0 } as Input['truth']).modelErrorFloor).toBeLessThan(0.01);
+    expect(gapOf('zero', { ...shapes, background: 0 }).modelErrorFloor).toBeLessThan(0.01);
   });
   it('keeps its targets and names its rows', () => {
     const given = definition({ body: { kind: 'rectangle', width: 1, height: 0.75 } });
