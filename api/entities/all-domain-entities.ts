@@ -1,4 +1,4 @@
-import { BenchEntity, BenchPhantomEntity, EntryEntity } from './bench.ts';
+import { AxisCaseEntity, BenchEntity, BenchPhantomEntity, EntryEntity } from './bench.ts';
 import { CounterEntity } from './counter.ts';
 import { PhantomEntity, PhantomVerdictEntity, PhantomVersionEntity } from './phantom.ts';
 import { CommentEntity, RecomputationEntity, RunEntity, RunImageEntity, TrialEntity, VerdictEntity } from './run.ts';
@@ -19,6 +19,7 @@ export const domainEntities = [
   SolverVersionEntity,
   BenchEntity,
   BenchPhantomEntity,
+  AxisCaseEntity,
   EntryEntity,
   RunEntity,
   TrialEntity,

@@ -1,6 +1,8 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core';
+import type { AxisSetting } from '../../shared/domain/axes';
 import { familyKeys } from '../../shared/domain/families';
 import { benchStates } from '../../shared/domain/states';
+import type { Target } from '../../solvers/core/types';
 import { baseProperties, timestamps } from './base.ts';
 import { GroupEntity } from './group.ts';
 import { PhantomVersionEntity } from './phantom.ts';
@@ -22,7 +24,7 @@ export const BenchEntity = defineEntity({
     family: p.enum([...familyKeys]),
     group: () => p.manyToOne(GroupEntity).ref().index('bench_group_index'),
     createdBy: () => p.manyToOne(UserEntity).ref(),
-    /** Relative noise levels, ascending fractions. */
+    /** Levels of the axis, ascending: relative noise levels as fractions, where the axis is the noise. */
     ladder: p.json().$type<number[]>(),
     draws: p.integer(),
     /** 0 to 4 294 967 295. */
@@ -34,6 +36,8 @@ export const BenchEntity = defineEntity({
     contentHash: p.string(),
     openedAt: p.datetime().nullable(),
     closedAt: p.datetime().nullable(),
+    /** What the levels of the ladder vary. */
+    axis: p.json().$type<AxisSetting>(),
     phantoms: () => p.oneToMany(BenchPhantomEntity).mappedBy('bench').orderBy({ position: 'asc' }),
     entries: () => p.oneToMany(EntryEntity).mappedBy('bench').orderBy({ place: 'asc' }),
   },
@@ -56,6 +60,29 @@ export const BenchPhantomEntity = defineEntity({
   ],
 });
 export type BenchPhantom = InferEntity<typeof BenchPhantomEntity>;
+
+/** One level of a bench whose axis is not the noise: the data of its own experiment, the same for every entry. */
+export const AxisCaseEntity = defineEntity({
+  name: 'AxisCase',
+  tableName: 'axis_case',
+  properties: {
+    id: p.integer().primary().autoincrement(),
+    bench: () => p.manyToOne(BenchEntity).ref(),
+    phantomVersion: () => p.manyToOne(PhantomVersionEntity).ref().index('axis_case_phantom_version_index'),
+    /** Index in the ladder, from 0. */
+    level: p.integer(),
+    noiseScale: p.float().$type<number>(),
+    /** Indices of the data that are left; null for all. */
+    rows: p.json().$type<number[]>().nullable(),
+    /** Targets with the contrast of the level. */
+    targets: p.json().$type<Target[]>(),
+    /** Little-endian Float64: clean data, and the ground truth on the inside pixels. */
+    clean: p.blob().lazy().hidden(),
+    truthImage: p.blob().lazy().hidden(),
+  },
+  uniques: [{ name: 'axis_case_level_unique', properties: ['bench', 'phantomVersion', 'level'] }],
+});
+export type AxisCaseRow = InferEntity<typeof AxisCaseEntity>;
 
 export const EntryEntity = defineEntity({
   name: 'Entry',

@@ -1,4 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core';
+import type { AxisSetting } from '../../shared/domain/axes';
 import type { CheckResultWire } from '../../shared/contracts/common';
 import type { Configuration } from '../../shared/contracts/solvers';
 import { reviewStates, runStates } from '../../shared/domain/states';
@@ -56,6 +57,8 @@ export const RunEntity = defineEntity({
     trivial: p.json().$type<Record<string, number | null>>().nullable(),
     /** Bias and variance of the image by level; null for levels that are not complete, and for runs older than this. */
     levelMoments: p.json().$type<(LevelMoments | null)[]>().nullable(),
+    /** Copy of the bench's; null in runs older than other axes: the noise. */
+    axis: p.json().$type<AxisSetting>().nullable(),
     trials: () => p.oneToMany(TrialEntity).mappedBy('run'),
     verdicts: () => p.oneToMany(VerdictEntity).mappedBy('run').orderBy({ createdAt: 'desc' }),
   },

@@ -67,7 +67,7 @@ export function makeJobs(options: JobsOptions): Jobs {
   const pool = makeWorkerPool({ threads: workers, memoryLimitMb: limits.memoryMb, logger, workerFile });
   // Previews and images have a thread of their own, so that nobody at a form waits for a run.
   const interactive = makeWorkerPool({ threads: 1, memoryLimitMb: limits.memoryMb, logger, workerFile });
-  const context: JobContext = { orm, clock, events, origin: options.origin, mailWaits: options.mailer.kick, timeLimitMs: limits.sliceMs };
+  const context: JobContext = { orm, clock, events, origin: options.origin, mailWaits: options.mailer.kick, timeLimitMs: limits.sliceMs, pool };
   const dispatcher = makeDispatcher({
     pool,
     logger,

@@ -13,7 +13,8 @@ export interface MomentRow {
  * Bias and variance of a complete level, in draw order however the draws came in. A draw whose every metric is undefined gave no finite
  * image: the background is stored in its place, which would count as an answer. Null while an image is missing.
  */
-export function momentsOf(rows: readonly MomentRow[], images: ReadonlyMap<number, Float64Array>, input: Pick<RunInput, 'truthImage' | 'definition'>): LevelMoments | null {
+export function momentsOf(rows: readonly MomentRow[], images: ReadonlyMap<number, Float64Array>, input: Pick<RunInput, 'truthImage' | 'definition' | 'cases'>, level: number): LevelMoments | null {
+  const { truthImage } = input.cases?.[level] ?? input;
   const ordered = [...rows].sort((a, b) => a.draw - b.draw);
   const kept: Float64Array[] = [];
   for (const { draw, metrics } of ordered) {
@@ -22,7 +23,7 @@ export function momentsOf(rows: readonly MomentRow[], images: ReadonlyMap<number
     if (Object.values(metrics).some((value) => value !== null)) kept.push(image);
   }
   const lost = ordered.length - kept.length;
-  const found = levelMoments(kept, input.truthImage, new Float64Array(input.truthImage.length).fill(input.definition.truth.background));
+  const found = levelMoments(kept, truthImage, new Float64Array(truthImage.length).fill(input.definition.truth.background));
   if (lost === 0) return found;
   return { ...found, reason: kept.length === 0 ? 'No draw gave a finite image.' : `${lost} of ${ordered.length} draws gave no finite image and are left out.` };
 }
@@ -47,7 +48,7 @@ export async function fillMoments(context: JobContext, work: { readonly id: stri
         images.set(trial.draw, trial.image);
       }
     }
-    all[level] = momentsOf(rows, images, input);
+    all[level] = momentsOf(rows, images, input, level);
     await context.orm.em.fork().nativeUpdate(RunEntity, { id }, { levelMoments: [...all] });
   }
 }

@@ -23,7 +23,7 @@ export async function claimRecomputation(context: JobContext): Promise<Job | nul
   events.changed(runId);
 
   const reader = orm.em.fork();
-  const run = await reader.findOneOrFail(RunEntity, { id: runId }, { populate: ['phantomVersion'] });
+  const run = await reader.findOneOrFail(RunEntity, { id: runId }, { populate: ['entry', 'entry.bench', 'phantomVersion'] });
   const stored = await reader.find(TrialEntity, { run: runId }, { orderBy: { level: 'asc', draw: 'asc' }, fields: ['level', 'draw', 'imageHash'] });
   const found = new Map<string, string>();
   const at = (level: number, draw: number): string => `${level}/${draw}`;

@@ -15,10 +15,11 @@ import type { Job } from './job.ts';
 import { changedBits, fillMoments, momentsOf } from './level-moments.ts';
 import { pickDraws } from './level-picks.ts';
 import type { RunEvents } from './run-events.ts';
+import { ensureAxisCases } from './axis-cases.ts';
 import { loadRunInput } from './run-input.ts';
 import { SliceSchedule } from './slice-schedule.ts';
 import type { RunChecksOutput, RunInput, TrialOutput } from './tasks.ts';
-import { WorkerFailure } from './worker-pool.ts';
+import { WorkerFailure, type WorkerPool } from './worker-pool.ts';
 
 /** Draws recomputed at the end of a run, to show that they give the stored bits. */
 const recheckedDraws = 3;
@@ -31,6 +32,7 @@ export interface JobContext {
   readonly origin: string;
   readonly mailWaits: () => void;
   readonly timeLimitMs: number;
+  readonly pool: Pick<WorkerPool, 'run'>;
 }
 
 const runParts = ['entry.bench', 'entry.solverVersion.solver.group', 'phantomVersion.phantom.group', 'submittedBy'] as const;
@@ -66,7 +68,7 @@ export async function claimRun(context: JobContext): Promise<Job | null> {
     return await openRunJob(context, id);
   } catch (error) {
     // Its data are missing or broken: it must neither stay 'running' nor hold the queue up.
-    await failRun(context, id, error instanceof AppError ? error.detail : 'The data of this run cannot be read. Tell an administrator.');
+    await failRun(context, id, error instanceof AppError ? error.detail : error instanceof WorkerFailure ? error.message : 'The data of this run cannot be read. Tell an administrator.');
     return claimRun(context);
   }
 }
@@ -87,6 +89,7 @@ async function openRunJob(context: JobContext, id: string): Promise<Job> {
   const metricKey = run.entry.$.bench.$.rankingMetric;
   /** Images of unfinished levels, until it is known which two are kept. */
   const images = new Map<number, Map<number, Float64Array>>();
+  await ensureAxisCases(context, run);
   const input = await loadRunInput(em, run, run.phantomVersion.$);
   return {
     id,
@@ -169,7 +172,7 @@ async function closeLevels(
       const image = images.get(level)?.get(draw);
       if (image) await storeImage(em, id, level, draw, image);
     }
-    const moments = momentsOf(rows, images.get(level) ?? new Map<number, Float64Array>(), input.input);
+    const moments = momentsOf(rows, images.get(level) ?? new Map<number, Float64Array>(), input.input, level);
     if (moments) found.set(level, moments);
     images.delete(level);
   }

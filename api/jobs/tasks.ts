@@ -1,4 +1,5 @@
 /** What the server asks of a worker thread, and what comes back: plain data that can be cloned or transferred. */
+import type { AxisKey, AxisSetting } from '../../shared/domain/axes';
 import type { CheckResultWire } from '../../shared/contracts/common';
 import type { Sensitivity } from '../../shared/contracts/runs';
 import type { Configuration } from '../../shared/contracts/solvers';
@@ -42,6 +43,9 @@ export interface RunInput {
   readonly definition: PhantomDefinition;
   readonly phantomHash: string;
   readonly configuration: Configuration;
+  readonly axis: AxisSetting;
+  /** On another axis than the noise: the data of each level. */
+  readonly cases: readonly CaseInput[] | null;
   readonly ladder: readonly number[];
   readonly draws: number;
   readonly seed: number;
@@ -50,6 +54,21 @@ export interface RunInput {
   readonly truthImage: Float64Array;
   readonly targets: readonly Target[];
   readonly modelErrorFloor: number;
+}
+
+/** One level of another axis than the noise. */
+export interface CaseInput {
+  readonly clean: Float64Array;
+  readonly truthImage: Float64Array;
+  readonly noiseScale: number;
+  /** Indices of the data that are left; null for all. */
+  readonly rows: Int32Array | null;
+  /** With the contrast of the level. */
+  readonly targets: readonly Target[];
+}
+export interface CaseTask extends PhantomInput {
+  readonly axis: AxisKey;
+  readonly level: number;
 }
 
 export interface SliceTask {

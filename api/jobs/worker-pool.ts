@@ -3,6 +3,7 @@ import path from 'node:path';
 import { Piscina } from 'piscina';
 import type { Logger } from 'pino';
 import type {
+  CaseInput, CaseTask,
   Answer, RunChecksOutput, RunChecksTask, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask,
   VerifyOutput, VerifyTask,
 } from './tasks.ts';
@@ -11,6 +12,7 @@ import type {
 export interface WorkerFunctions {
   simulate: { task: SimulateTask; output: Answer<SimulationOutput> };
   runSlice: { task: SliceTask; output: Answer<SliceOutput> };
+  axisCase: { task: CaseTask; output: Answer<CaseInput> };
   checkRun: { task: RunChecksTask; output: Answer<RunChecksOutput> };
   sensitivity: { task: SensitivityTask; output: Answer<SensitivityOutput> };
   verify: { task: VerifyTask; output: Answer<VerifyOutput> };

@@ -2,13 +2,14 @@ import { prepareRun, runLevel, type PreparedRun } from '../../solvers/campaign/r
 import { errorAgainstParameter, picardData } from '../../solvers/campaign/sensitivity';
 import type { SimulatedPhantom, Trial } from '../../solvers/campaign/trial';
 import { canonicalJson } from '../../solvers/core/hash';
-import type { PenaltyKey } from '../../solvers/core/types';
+import type { ForwardProblem, PenaltyKey } from '../../solvers/core/types';
+import { axisCase, axisProblem } from '../../solvers/campaign/axes/axis-case';
 import type { InversionProblem } from '../../solvers/problems/problem-family';
 import { createProblem, dataLayout, describeProblem, simulate } from '../../solvers/problems/registry';
 import type { PhantomDefinition } from '../../shared/domain/phantom-definition';
 import type { SimulationSummary } from '../entities/simulation.ts';
 import { phantomChecks } from './worker-checks.ts';
-import type { RunInput, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask, TrialOutput } from './tasks.ts';
+import type { CaseInput, CaseTask, RunInput, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask, TrialOutput } from './tasks.ts';
 
 type Clock = () => number;
 
@@ -29,28 +30,34 @@ class Recent<T> {
 // A problem takes about 20 MB; a prepared run shares the problem and its decompositions.
 const problems = new Recent<InversionProblem>(3);
 const preparedRuns = new Recent<PreparedRun>(4);
+const restricted = new Recent<ForwardProblem>(3);
 
 export function problemOf(definition: PhantomDefinition): InversionProblem {
   const descriptor = describeProblem(definition);
   return problems.get(canonicalJson(descriptor), () => createProblem(descriptor));
 }
 
-export function preparedOf(run: RunInput): PreparedRun {
-  return preparedRuns.get(canonicalJson([run.key, run.configuration, describeProblem(run.definition)]), () => prepareRun({ problem: problemOf(run.definition), ...run.configuration }));
+/** Levels that lose data have a problem each; `level` tells them apart. */
+export function problemAt(run: RunInput, level: number): ForwardProblem {
+  const rows = run.cases?.[level]?.rows ?? null;
+  const problem = problemOf(run.definition);
+  return rows ? restricted.get(`${run.key} ${level}`, () => axisProblem(problem, rows)) : problem;
 }
 
-export const simulatedOf = (run: RunInput): SimulatedPhantom => ({
-  clean: run.clean,
-  noiseScale: run.noiseScale,
-  truthImage: run.truthImage,
+export function preparedOf(run: RunInput, level: number): PreparedRun {
+  const part = run.cases?.[level]?.rows ? level : null;
+  return preparedRuns.get(canonicalJson([run.key, run.configuration, describeProblem(run.definition), part]), () => prepareRun({ problem: problemAt(run, level), ...run.configuration }));
+}
+
+export const simulatedOf = (run: RunInput, level: number): SimulatedPhantom => ({
+  ...(({ clean, noiseScale, truthImage, targets }) => ({ clean, noiseScale, truthImage, targets }))(run.cases?.[level] ?? run),
   backgroundImage: new Float64Array(run.truthImage.length).fill(run.definition.truth.background),
-  targets: run.targets,
 });
 
 export const seedOf = (run: RunInput, level: number) => {
   const delta = run.ladder[level];
   if (delta === undefined) throw new RangeError(`The ladder has no level ${level}.`);
-  return { benchSeed: run.seed, phantomHash: run.phantomHash, levelIndex: level, level: delta };
+  return { benchSeed: run.seed, phantomHash: run.phantomHash, levelIndex: level, level: run.axis.key === 'noise' ? delta : run.axis.noise };
 };
 
 export function simulatePhantom({ definition, arrayValues, checks }: SimulateTask, now: Clock): SimulationOutput {
@@ -105,11 +112,18 @@ function summarise(definition: PhantomDefinition, problem: InversionProblem, sim
   };
 }
 
+/** The data of one level of another axis than the noise. */
+export function axisCaseOf({ definition, arrayValues, axis, level }: CaseTask): CaseInput {
+  const { simulated, rows } = axisCase(definition, arrayValues ?? undefined, problemOf(definition), axis, level);
+  const { clean, truthImage, noiseScale, targets } = simulated;
+  return { clean, truthImage, noiseScale, targets, rows };
+}
+
 export function runSliceIn({ run, level, draws }: SliceTask, now: Clock): SliceOutput {
   const begin = now();
-  const prepared = preparedOf(run);
+  const prepared = preparedOf(run, level);
   const ready = now();
-  const trials = runLevel(prepared, simulatedOf(run), { ...seedOf(run, level), draws, now });
+  const trials = runLevel(prepared, simulatedOf(run, level), { ...seedOf(run, level), draws, now });
   return { trials: trials.map(toOutput), seconds: now() - ready, prepareSeconds: ready - begin };
 }
 
@@ -132,8 +146,8 @@ function toOutput(trial: Trial): TrialOutput {
 }
 
 export function sensitivityOf({ run, level, draw }: SensitivityTask): SensitivityOutput {
-  const problem = problemOf(run.definition);
-  const simulated = simulatedOf(run);
+  const problem = problemAt(run, level);
+  const simulated = simulatedOf(run, level);
   const at = { ...seedOf(run, level), drawIndex: draw };
   const found = errorAgainstParameter(problem, run.configuration, simulated, at);
   if (!found) throw new RangeError('This method has no parameter to vary, or is nonlinear: a grid of nonlinear solves takes too long to show.');

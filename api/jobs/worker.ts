@@ -4,9 +4,9 @@
  */
 import { workerData } from 'node:worker_threads';
 import { move, transferableSymbol, valueSymbol } from 'piscina';
-import { runSliceIn, sensitivityOf, simulatePhantom } from './worker-tasks.ts';
+import { axisCaseOf, runSliceIn, sensitivityOf, simulatePhantom } from './worker-tasks.ts';
 import { checkFinishedRun } from './worker-checks.ts';
-import type { Answer, RunChecksOutput, RunChecksTask, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask, VerifyOutput, VerifyTask } from './tasks.ts';
+import type { Answer, CaseInput, CaseTask, RunChecksOutput, RunChecksTask, SensitivityOutput, SensitivityTask, SimulateTask, SimulationOutput, SliceOutput, SliceTask, VerifyOutput, VerifyTask } from './tasks.ts';
 import { getVerificationCheck } from '../../solvers/verification/registry';
 import { TruthError } from '../../solvers/truth/truth-error';
 
@@ -47,6 +47,10 @@ function handOver<T extends object>(result: T, arrays: readonly Float64Array[]):
 export function simulate(task: SimulateTask): Answer<SimulationOutput> {
   const result = answer(() => simulatePhantom(task, now));
   return result.ok ? handOver(result, [result.frame, result.reference, result.clean, result.truthImage]) : result;
+}
+export function axisCase(task: CaseTask): Answer<CaseInput> {
+  const result = answer(() => axisCaseOf(task));
+  return result.ok ? handOver(result, [result.clean, result.truthImage]) : result;
 }
 export function runSlice(task: SliceTask): Answer<SliceOutput> {
   const result = answer(() => runSliceIn(task, now));

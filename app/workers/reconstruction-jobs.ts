@@ -1,5 +1,6 @@
 import { decodeArray } from '../../shared/domain/array-encoding';
 import type { Replay } from '../../shared/contracts/runs';
+import { axisProblem } from '../../solvers/campaign/axes/axis-case';
 import { prepareRun, recomputeDraw, runLevel, type PreparedRun } from '../../solvers/campaign/run';
 import { errorAgainstParameter } from '../../solvers/campaign/sensitivity';
 import { runHash, type SimulatedPhantom } from '../../solvers/campaign/trial';
@@ -63,15 +64,13 @@ export class ReconstructionJobs {
 
   private async recompute(replay: Replay, control: JobControl): Promise<Answers['recompute']> {
     const begin = control.now();
-    const ready = this.prepare(replay.problem, replay.configuration);
-    const phantom = simulated(ready.problem, replay.problem.background, {
-      contentHash: replay.phantomHash, clean: decodeArray(replay.clean), noiseScale: replay.noiseScale, truth: replay.truth ? decodeArray(replay.truth) : null, targets: replay.targets ?? [],
-    });
     const stored = new Map(replay.trials.map((t) => [`${t.level} ${t.draw}`, t.imageHash]));
     const trials: { level: number; draw: number; imageHash: string }[] = [];
     let firstDifference: { level: number; draw: number } | null = null;
     let equal = 0;
-    for (const [levelIndex, level] of replay.ladder.entries()) {
+    for (const [levelIndex, value] of replay.ladder.entries()) {
+      const level = replay.axis.key === 'noise' ? value : replay.axis.noise;
+      const { ready, phantom } = this.levelOf(replay, levelIndex);
       for (let draw = 0; draw < replay.draws; draw++) {
         await control.pause();
         if (control.cancelled()) throw new Cancelled();
@@ -83,6 +82,18 @@ export class ReconstructionJobs {
       }
     }
     return { resultHash: runHash(trials.map((t) => t.imageHash)), trials, equal, firstDifference, seconds: control.now() - begin };
+  }
+
+  /** On the axis of the noise every level has the same data; on another one its own, and perhaps fewer of them. */
+  private levelOf(replay: Replay, level: number): { ready: PreparedRun; phantom: SimulatedPhantom } {
+    const { problem: spec, configuration, phantomHash } = replay;
+    const own = replay.cases?.[level];
+    const ready = own?.rows ? prepareRun({ problem: axisProblem(this.problem(spec), Int32Array.from(own.rows)), ...configuration }) : this.prepare(spec, configuration);
+    const data = own ?? replay;
+    const phantom = simulated(ready.problem, spec.background, {
+      contentHash: phantomHash, clean: decodeArray(data.clean), noiseScale: data.noiseScale, truth: !own && replay.truth ? decodeArray(replay.truth) : null, targets: own ? [] : (replay.targets ?? []),
+    });
+    return { ready, phantom };
   }
 
   private prepare(spec: ProblemSpec, configuration: ConfigurationSpec): PreparedRun {

@@ -1,13 +1,15 @@
 import { z } from 'zod';
 import { dateTimeSchema, familyKeySchema, groupRefSchema, hashSchema, idSchema, levelStatisticsSchema, markdownSchema, slugSchema, stabilitySheetSchema } from './common';
+import { axisSettingSchema, levelsFault, type AxisSetting } from '../domain/axes';
 import { benchStates, reviewStates, runStates } from '../domain/states';
 import { defaultDraws, defaultLadder } from '../domain/ladder';
 
 export const benchStateSchema = z.enum(benchStates);
 export const metricKeySchema = z.string().regex(/^[a-z0-9-]{1,60}$/);
-export const ladderSchema = z.array(z.number().min(1e-8).max(1)).min(1).max(24)
+/** Levels of the axis, ascending; each axis has its own range. */
+export const ladderSchema = z.array(z.number().min(1e-8).max(10)).min(1).max(24)
   .refine((levels) => levels.every((level, i) => i === 0 || level > levels[i - 1]!), 'Levels must increase.');
-export const benchCreateSchema = z.strictObject({
+const benchTerms = z.strictObject({
   group: slugSchema,
   /** The short name in lists. */
   title: z.string().trim().min(3).max(80),
@@ -15,12 +17,18 @@ export const benchCreateSchema = z.strictObject({
   question: z.string().trim().min(10).max(200),
   description: markdownSchema.default(''),
   phantoms: z.array(z.strictObject({ slug: slugSchema, version: z.int().min(1) })).min(1).max(50),
+  axis: axisSettingSchema.default({ key: 'noise' }),
   ladder: ladderSchema.default([...defaultLadder]), draws: z.int().min(1).max(200).default(defaultDraws),
   seed: z.int().min(0).max(4_294_967_295), rankingMetric: metricKeySchema.default('relative-l2-error'),
 });
+const levelsInRange = (bench: { axis: AxisSetting; ladder: number[] }, ctx: z.RefinementCtx): void => {
+  const fault = levelsFault(bench.axis.key, bench.ladder);
+  if (fault) ctx.addIssue({ code: 'custom', path: ['ladder'], message: fault });
+};
+export const benchCreateSchema = benchTerms.superRefine(levelsInRange);
 export type BenchCreate = z.input<typeof benchCreateSchema>;
 /** PUT /benches/:slug, while it is a draft. */
-export const benchUpdateSchema = benchCreateSchema.omit({ group: true });
+export const benchUpdateSchema = benchTerms.omit({ group: true }).superRefine(levelsInRange);
 export type BenchUpdate = z.input<typeof benchUpdateSchema>;
 export const benchParamsSchema = z.strictObject({ slug: slugSchema });
 export const benchListQuerySchema = z.strictObject({
@@ -53,7 +61,7 @@ export const benchEntrySchema = z.object({
   runs: z.array(z.object({ run: idSchema, phantom: slugSchema, state: z.enum(runStates), review: z.enum(reviewStates), done: z.int(), total: z.int(), failure: z.string().nullable() })),
 });
 export const benchDetailSchema = benchSummarySchema.extend({
-  description: z.string(), ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: metricKeySchema, revision: z.int(), contentHash: hashSchema,
+  description: z.string(), axis: axisSettingSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: metricKeySchema, revision: z.int(), contentHash: hashSchema,
   phantoms: z.array(benchPhantomSchema), entries: z.array(benchEntrySchema),
   /** Largest model-error floor of the phantoms, and whose it is. */
   modelErrorFloor: z.number(), floorPhantom: z.string().nullable(),
@@ -63,7 +71,7 @@ export type BenchDetail = z.infer<typeof benchDetailSchema>;
 
 /** What a phantom's figure is: the median over draws at the level nearest to the noise, or the mean of the medians over the ladder above the model-error floor. */
 export const rankedOver = ['level', 'ladder'] as const;
-export const rankingQuerySchema = z.strictObject({ noise: z.coerce.number<string>().min(1e-8).max(1).default(0.01), metric: metricKeySchema.optional(), over: z.enum(rankedOver).default('level') });
+export const rankingQuerySchema = z.strictObject({ noise: z.coerce.number<string>().min(1e-8).max(10).default(0.01), metric: metricKeySchema.optional(), over: z.enum(rankedOver).default('level') });
 /** Friedman's test with Nemenyi's distance over blocks. */
 export const separationTestSchema = z.object({
   /** 'Friedman with Nemenyi distance over n phantoms', or 'No test'. */
@@ -140,7 +148,7 @@ export type BenchComparison = z.infer<typeof comparisonSchema>;
 export const seriesQuerySchema = z.strictObject({ metric: metricKeySchema.optional(), phantom: slugSchema.optional() });
 /** GET /benches/:slug/series?metric=: the stability chart, over all phantoms or one. */
 export const seriesSchema = z.object({
-  metric: metricKeySchema, ladder: z.array(z.number()), trivial: z.number().nullable(), modelErrorFloor: z.number(),
+  metric: metricKeySchema, axis: axisSettingSchema, ladder: z.array(z.number()), trivial: z.number().nullable(), modelErrorFloor: z.number(),
   items: z.array(z.object({
     glyph: z.int(), solver: z.object({ slug: slugSchema, id: idSchema, name: z.string(), version: z.int() }), group: groupRefSchema,
     levels: z.array(levelStatisticsSchema.omit({ draws: true })), sheet: stabilitySheetSchema,

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { accountRefSchema, checkResultSchema, dateTimeSchema, groupRefSchema, gridSchema, hashSchema, idSchema, levelStatisticsSchema, reasonSchema, slugSchema, stabilitySheetSchema } from './common';
 import { encodedArraySchema } from '../domain/array-encoding';
 import { problemDescriptorSchema } from '../domain/phantom-definition';
+import { axisSettingSchema } from '../domain/axes';
 import { reviewStates, runStates, verdicts } from '../domain/states';
 import { configurationSchema } from './solvers';
 import { targetSchema } from './simulations';
@@ -43,7 +44,7 @@ export const levelMomentsSchema = z.object({
 });
 export type LevelMomentsWire = z.infer<typeof levelMomentsSchema>;
 export const runDetailSchema = runSummarySchema.extend({
-  ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: z.string(),
+  axis: axisSettingSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: z.string(),
   noiseReference: z.string(), dataKind: z.string(), unit: z.string(), background: z.number(),
   modelErrorFloor: z.number(), grid: gridSchema,
   /** The problem that was inverted: family, acquisition, data kind, background. */
@@ -88,7 +89,10 @@ export type RunImage = z.infer<typeof runImageSchema>;
 /** GET /runs/:id/replay: all that is needed to recompute the run elsewhere with the same code. */
 export const replaySchema = z.object({
   run: idSchema, phantomHash: hashSchema, problem: problemDescriptorSchema,
-  configuration: configurationSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), noiseScale: z.number(), clean: encodedArraySchema,
+  configuration: configurationSchema, axis: axisSettingSchema,
+  /** On another axis than the noise: the data of each level, and the indices of the data that are left. */
+  cases: z.array(z.object({ clean: encodedArraySchema, noiseScale: z.number(), rows: z.array(z.int()).nullable() })).nullable(),
+  ladder: z.array(z.number()), draws: z.int(), seed: z.int(), noiseScale: z.number(), clean: encodedArraySchema,
   truth: encodedArraySchema.nullable(), targets: z.array(targetSchema).nullable(),
   trials: z.array(z.object({ level: z.int(), draw: z.int(), imageHash: hashSchema })), resultHash: hashSchema.nullable(),
 });

@@ -108,9 +108,10 @@ export async function makeBench(app: TestApp, request: BenchRequest): Promise<Ma
   const question = 'Which of them answers what the test asks?';
   const seed = 1;
   const bench = em.create(BenchEntity, {
+    axis: { key: 'noise' },
     id: await nextId(em, 'bench'), slug: slugify(request.title), title: request.title, question, description: '', family: 'electrical-impedance',
     group: em.getReference(GroupEntity, (await em.findOneOrFail(GroupEntity, { slug: phantomGroup })).id), createdBy: user, ladder: [...ladder], draws, seed, rankingMetric,
-    state: 'open', contentHash: benchHash({ question, phantomHashes: phantoms.map((_, i) => versionOf(i).contentHash), ladder, draws, seed, rankingMetric }), openedAt: app.deps.clock(), closedAt: null,
+    state: 'open', contentHash: benchHash({ axis: { key: 'noise' }, question, phantomHashes: phantoms.map((_, i) => versionOf(i).contentHash), ladder, draws, seed, rankingMetric }), openedAt: app.deps.clock(), closedAt: null,
   });
   phantoms.forEach((_, position) => em.create(BenchPhantomEntity, { bench, phantomVersion: versionOf(position), position }));
   await em.flush();

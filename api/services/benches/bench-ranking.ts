@@ -55,11 +55,14 @@ export async function rankedSet(em: EntityManager, input: { readonly bench: Load
   }
   const above = levelsAbove(bench, results);
   const nearest = placeOnLadder(bench.ladder, noise).nearest;
-  return { entries, ranked, better, levels: over === 'ladder' && above.length > 0 ? above : [nearest], belowFloor: over === 'ladder' ? above.length === 0 : noise < results.floor };
+  return { entries, ranked, better, levels: over === 'ladder' && above.length > 0 ? above : [nearest], belowFloor: over === 'ladder' ? above.length === 0 : noiseAt(bench, noise) < results.floor };
 }
 
 /** Levels at or above the model-error floor. */
-export const levelsAbove = (bench: Pick<Bench, 'ladder'>, results: BenchResults): number[] => bench.ladder.flatMap((noise, level) => (noise >= results.floor * (1 - 1e-9) ? [level] : []));
+export const levelsAbove = (bench: Pick<Bench, 'axis' | 'ladder'>, results: BenchResults): number[] => bench.ladder.flatMap((value, level) => (noiseAt(bench, value) >= results.floor * (1 - 1e-9) ? [level] : []));
+
+/** The noise of a level: the level itself, or the fixed one of another axis. */
+const noiseAt = ({ axis }: Pick<Bench, 'axis'>, level: number): number => (axis.key === 'noise' ? level : axis.noise);
 
 async function compute(em: EntityManager, input: { readonly bench: LoadedBench; readonly noise: number; readonly metric: string; readonly over: RankedOver; readonly results: BenchResults }): Promise<Ranking> {
   const { bench, noise, metric, over, results } = input;

@@ -53,7 +53,7 @@ function pooledSheet(figures: readonly RunFigures[], input: { readonly bench: Lo
   const nothing = { metric, model: 'none' as const, exponent: null, floor: null, constant: null, breakdown: null, breakdownNote: null };
   if (figures.length === 0) return { ...nothing, reason: 'No run has finished.' };
   if (requireMetric(metric).better !== 'lower') return { ...nothing, reason: 'The law is fitted to metrics where smaller is better.' };
-  return makeSheet({ metric, ladder: bench.ladder, draws: bench.ladder.map((_, level) => figures.flatMap((own) => drawsAt(own, metric, level))), trivial, seed });
+  return makeSheet({ metric, axis: bench.axis.key, ladder: bench.ladder, draws: bench.ladder.map((_, level) => figures.flatMap((own) => drawsAt(own, metric, level))), trivial, seed });
 }
 
 const wireCache = new BoundedCache<Series>(200);
@@ -77,6 +77,7 @@ export async function benchSeries(
   const series = await entrySeries(em, { bench, results, metric, phantom });
   return wireCache.set(key(results.key), {
     metric,
+    axis: bench.axis,
     ladder: bench.ladder,
     trivial: trivialOf(results.entries, metric, phantom),
     modelErrorFloor: results.floor,

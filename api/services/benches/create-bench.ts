@@ -1,6 +1,8 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
 import type { z } from 'zod';
 import type { benchCreateSchema, benchUpdateSchema } from '../../../shared/contracts/benches';
+import { axisWords } from '../../../shared/domain/axes';
+import { familyNames } from '../../../shared/domain/families';
 import { AppError, type Issue } from '../../../shared/errors.ts';
 import { metrics } from '../../../solvers/metrics/registry';
 import { BenchEntity, BenchPhantomEntity } from '../../entities/bench.ts';
@@ -27,6 +29,7 @@ export async function createBench(em: EntityManager, input: Acting & { readonly 
       family: familyOf(versions),
       group: inner.getReference(GroupEntity, group.id),
       createdBy: inner.getReference(UserEntity, actor.id),
+      axis: given.axis,
       ladder: [...given.ladder],
       draws: given.draws,
       seed: given.seed,
@@ -56,7 +59,7 @@ export async function editBench(em: EntityManager, input: Acting & { readonly be
     const row = await inner.findOneOrFail(BenchEntity, bench.id);
     const before = { title: row.title, contentHash: row.contentHash };
     Object.assign(row, {
-      title: terms.title, question: terms.question, description: terms.description, family: familyOf(versions), ladder: [...terms.ladder],
+      title: terms.title, question: terms.question, description: terms.description, family: familyOf(versions), axis: terms.axis, ladder: [...terms.ladder],
       draws: terms.draws, seed: terms.seed, rankingMetric: terms.rankingMetric, contentHash: hashOf(terms, versions),
     });
     listPhantoms(inner, row.id, versions);
@@ -95,6 +98,9 @@ async function checkTerms(em: EntityManager, terms: Terms, groupIds: readonly st
   if (references.size > 1) {
     issues.push({ path: ['phantoms'], message: 'All phantoms of a bench state their noise relative to the same thing: the voltages, the difference signal or the data.' });
   }
+  const { key } = terms.axis;
+  const unserved = [...families].filter((family) => !axisWords[key].families.includes(family));
+  if (unserved.length > 0) issues.push({ path: ['axis', 'key'], message: `${axisWords[key].name}: this axis does not serve ${unserved.map((family) => familyNames[family].name).join(', ')}.` });
   if (issues.length > 0) throw new AppError('validation-failed', 'Correct the fields named in issues.', issues);
   return versions;
 }

@@ -1,3 +1,4 @@
+import type { AxisSetting } from '../../../shared/domain/axes';
 import type { EntityManager, Loaded } from '@mikro-orm/sqlite';
 import { distinctGlyphs, solverGlyph } from '../../../shared/domain/glyphs';
 import type { Subject } from '../../../shared/domain/permissions.ts';
@@ -61,6 +62,7 @@ export function benchSubject(bench: Pick<Bench, 'state'> & { readonly group: { r
 export interface BenchTerms {
   readonly question: string;
   readonly phantomHashes: readonly string[];
+  readonly axis: AxisSetting;
   readonly ladder: readonly number[];
   readonly draws: number;
   readonly seed: number;
@@ -69,13 +71,14 @@ export interface BenchTerms {
 
 /** SHA-256 of what the bench asks. A closed bench adds what was answered. */
 export function benchHash(terms: BenchTerms, results?: readonly { readonly solver: string; readonly phantom: string; readonly result: string }[]): string {
-  const { question, phantomHashes, ladder, draws, seed, rankingMetric } = terms;
-  return contentHash({ question, phantoms: phantomHashes, ladder, draws, seed, rankingMetric, ...(results ? { results } : {}) });
+  const { question, phantomHashes, axis, ladder, draws, seed, rankingMetric } = terms;
+  return contentHash({ question, phantoms: phantomHashes, ...(axis.key === 'noise' ? {} : { axis }), ladder, draws, seed, rankingMetric, ...(results ? { results } : {}) });
 }
 
 export const termsOf = (bench: LoadedBench): BenchTerms => ({
   question: bench.question,
   phantomHashes: phantomsOf(bench).map(({ version }) => version.contentHash),
+  axis: bench.axis,
   ladder: bench.ladder,
   draws: bench.draws,
   seed: bench.seed,

@@ -83,6 +83,7 @@ export async function showBench(em: EntityManager, input: { readonly bench: Load
   return {
     ...toBenchSummary(bench, bench.group.$, counts.get(bench.id)),
     description: bench.description,
+    axis: bench.axis,
     ladder: bench.ladder,
     draws: bench.draws,
     seed: bench.seed,

@@ -1,4 +1,5 @@
 import type { LevelStatistics, StabilitySheetWire } from '../../../shared/contracts/common';
+import type { AxisKey } from '../../../shared/domain/axes';
 import { getMetric, metrics } from '../../../solvers/metrics/registry';
 import { levelStatistics } from '../../../solvers/statistics/error-table';
 import { stabilitySheet, type StabilitySheet } from '../../../solvers/statistics/stability-sheet';
@@ -37,7 +38,7 @@ export function levelTable(figures: RunFigures, ladder: readonly number[], metri
 }
 
 /** How each error grows with the noise, for metrics where smaller is better. Only a finished run has them. */
-export function runSheets(run: Pick<Run, 'id' | 'state' | 'ladder' | 'trivial'>, figures: RunFigures): Record<string, StabilitySheetWire> {
+export function runSheets(run: Pick<Run, 'id' | 'state' | 'ladder' | 'trivial' | 'axis'>, figures: RunFigures): Record<string, StabilitySheetWire> {
   if (run.state !== 'finished') return {};
   const kept = sheets.get(figures);
   if (kept) return kept;
@@ -46,25 +47,29 @@ export function runSheets(run: Pick<Run, 'id' | 'state' | 'ladder' | 'trivial'>,
   return made;
 }
 
-export function runSheet(run: Pick<Run, 'id' | 'ladder' | 'trivial'>, figures: RunFigures, metric: string): StabilitySheetWire {
+export function runSheet(run: Pick<Run, 'id' | 'ladder' | 'trivial' | 'axis'>, figures: RunFigures, metric: string): StabilitySheetWire {
   return makeSheet({
-    metric, ladder: run.ladder, draws: run.ladder.map((_, level) => drawsAt(figures, metric, level)), trivial: run.trivial?.[metric] ?? null, seed: `${run.id}/${metric}`,
+    metric, axis: run.axis?.key ?? 'noise', ladder: run.ladder, draws: run.ladder.map((_, level) => drawsAt(figures, metric, level)), trivial: run.trivial?.[metric] ?? null, seed: `${run.id}/${metric}`,
   });
 }
 
 /** The law is fitted below a noise of 100 %: at and beyond it a logarithmic law means nothing. */
 export function makeSheet(input: {
   readonly metric: string;
+  readonly axis: AxisKey;
   readonly ladder: readonly number[];
   readonly draws: readonly (readonly (number | null)[])[];
   readonly trivial: number | null;
   readonly seed: string;
 }): StabilitySheetWire {
-  const { metric, trivial, seed } = input;
+  const { metric, axis, trivial, seed } = input;
+  if (axis === 'contrast') return toSheet(metric, none('The errors are relative to the contrast itself: there is no law in it to fit.'));
   const levels = input.ladder.filter((level) => level < 1).length;
-  if (levels === 0) return toSheet(metric, { model: 'none', exponent: null, floor: null, constant: null, breakdown: null, breakdownNote: null, aiccDifference: null, reason: 'No level lies below 100 %.' });
+  if (levels === 0) return toSheet(metric, none('No level lies below 100 %.'));
   return toSheet(metric, stabilitySheet({ ladder: input.ladder.slice(0, levels), draws: input.draws.slice(0, levels), trivial, seed }));
 }
+
+const none = (reason: string): StabilitySheet => ({ model: 'none', exponent: null, floor: null, constant: null, breakdown: null, breakdownNote: null, aiccDifference: null, reason });
 
 function toSheet(metric: string, { model, exponent, floor, constant, breakdown, breakdownNote, reason }: StabilitySheet): StabilitySheetWire {
   return { metric, model, exponent, floor, constant, breakdown, breakdownNote, reason };

@@ -32,6 +32,8 @@ export async function listBest(em: EntityManager, input: { readonly version: Pic
   let interpolated = false;
   const items: z.input<typeof phantomBestSchema>['items'] = [];
   for (const run of runs) {
+    // Levels of another axis are no noise levels.
+    if (run.axis && run.axis.key !== 'noise') continue;
     const lowest = run.ladder[0];
     const highest = run.ladder.at(-1);
     if (lowest === undefined || highest === undefined || noise < lowest || noise > highest) continue;

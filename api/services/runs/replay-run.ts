@@ -6,6 +6,8 @@ import type { Actor } from '../../../shared/domain/permissions.ts';
 import { fromBlob } from '../../entities/float64-blob.ts';
 import { TrialEntity } from '../../entities/run.ts';
 import { SimulationEntity } from '../../entities/simulation.ts';
+import { loadAxisCases } from '../../jobs/axis-cases.ts';
+import { axisOf } from './axis-of.ts';
 import type { LoadedRun } from './find-run.ts';
 import { truthFor } from './show-image.ts';
 
@@ -16,11 +18,14 @@ export async function replayRun(em: EntityManager, input: { readonly run: Loaded
   const simulation = await em.findOneOrFail(SimulationEntity, { contentHash: definitionHash }, { populate: ['clean'] });
   const trials = await em.find(TrialEntity, { run: run.id }, { orderBy: { level: 'asc', draw: 'asc' }, fields: ['level', 'draw', 'imageHash'] });
   const truth = await truthFor(em, input);
+  const cases = await loadAxisCases(em, run);
   return {
     run: run.id,
     phantomHash: run.phantomHash,
     problem: describeProblem(definition),
     configuration: run.configuration,
+    axis: axisOf(run),
+    cases: cases?.map(({ clean, noiseScale, rows }) => ({ clean: encodeArray(clean), noiseScale, rows: rows ? [...rows] : null })) ?? null,
     ladder: run.ladder,
     draws: run.draws,
     seed: run.seed,

@@ -1,4 +1,5 @@
 import type { EntityManager } from '@mikro-orm/sqlite';
+import { axisWords } from '../../../shared/domain/axes';
 import { metrics } from '../../../solvers/metrics/registry';
 import { toCsv, type CsvCell } from '../../http/csv.ts';
 import { caution } from '../benches/caution.ts';
@@ -7,6 +8,7 @@ import { metricUnit } from '../figures/metric-unit.ts';
 import { levelTable } from '../figures/run-tables.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
 import { commentLines } from '../files/comment-lines.ts';
+import { axisOf } from './axis-of.ts';
 import type { LoadedRun } from './find-run.ts';
 import { listTrials } from './list-trials.ts';
 
@@ -27,19 +29,27 @@ export async function runTableCsv(em: EntityManager, run: LoadedRun): Promise<st
       const moments = run.levelMoments?.[i];
       rows.push([key, '', level, moments?.draws ?? null, null, null, null, moments?.[of] ?? null, null, null, null, null]);
     });
-  return preamble(run) + toCsv(['metric', 'unit', 'noise', 'draws', 'median', 'p05', 'p95', 'mean', 'sd', 'worst', 'worst_draw', 'trivial'], rows);
+  return preamble(run) + toCsv(['metric', 'unit', levelColumn(run), 'draws', 'median', 'p05', 'p95', 'mean', 'sd', 'worst', 'worst_draw', 'trivial'], rows);
 }
 
 /** Every draw, one row each. */
 export async function runTrialsCsv(em: EntityManager, run: LoadedRun): Promise<string> {
   const trials = await listTrials(em, { run });
   const keys = metrics.map((metric) => metric.key);
-  const header = ['level', 'noise', 'draw', 'noise_norm', 'parameter', 'iterations', 'forward_solves', 'stop', ...keys, 'sup_x', 'sup_y', 'seconds', 'image_sha256'];
+  const header = ['level', levelColumn(run), 'draw', 'noise_norm', 'parameter', 'iterations', 'forward_solves', 'stop', ...keys, 'sup_x', 'sup_y', 'seconds', 'image_sha256'];
   const rows = trials.map((trial) => [
     trial.level + 1, run.ladder[trial.level] ?? null, trial.draw + 1, trial.noiseNorm, trial.parameter, trial.iterations, trial.forwardSolves, trial.stop, ...keys.map((key) => trial.metrics[key] ?? null),
     trial.supAt?.[0] ?? null, trial.supAt?.[1] ?? null, trial.seconds, trial.imageHash,
   ]);
   return preamble(run) + toCsv(header, rows);
+}
+
+/** Name of the column of levels: the axis. */
+const levelColumn = (run: LoadedRun): string => axisOf(run).key.replaceAll('-', '_');
+
+function axisLine(run: LoadedRun): string[] {
+  const axis = axisOf(run);
+  return axis.key === 'noise' ? [] : [`Levels: ${axisWords[axis.key].name}. ${axisWords[axis.key].line} The noise is fixed at ${Number((100 * axis.noise).toPrecision(4))} %`];
 }
 
 function preamble(run: LoadedRun): string {
@@ -50,6 +60,7 @@ function preamble(run: LoadedRun): string {
     `Hadamark run ${run.id}: ${version.solver.$.name}, version ${version.n}, on ${phantom.name}, version ${phantom.n}`,
     `Bench ${bench.id}, revision ${bench.revision}: ${bench.title}`,
     noiseWords(phantom.definition.noiseReference),
+    ...axisLine(run),
     `Seed ${run.seed}; ${run.draws} draws a level; code ${run.codeVersion ?? 'not started'}`,
     `Phantom ${run.phantomHash}; solver ${version.contentHash}; result ${run.resultHash ?? 'not finished'}`,
     `Review: ${run.review}${run.reservation ? `. Reservation: ${run.reservation}` : ''}`,

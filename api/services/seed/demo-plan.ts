@@ -1,5 +1,6 @@
 import type { z } from 'zod';
 import type { Configuration } from '../../../shared/contracts/solvers';
+import type { AxisSetting } from '../../../shared/domain/axes';
 import { defaultDraws, defaultLadder } from '../../../shared/domain/ladder';
 import type { GroupRole } from '../../../shared/domain/permissions';
 import type { Verdict } from '../../../shared/domain/states';
@@ -42,6 +43,8 @@ export interface BenchPlan {
   readonly question: string;
   readonly description: string;
   readonly phantoms: readonly string[];
+  /** The noise where absent. */
+  readonly axis?: AxisSetting;
   readonly ladder: readonly number[];
   readonly draws: number;
   readonly seed: number;

@@ -84,7 +84,7 @@ it('a server killed in the middle of a run goes on at the next start, without a 
 
   await startServer();
   await until(async () => (await orm.em.fork().findOneOrFail(RunEntity, { id })).state !== 'running' && (await stored()).length === total, 'the end of the run');
-  const run = await orm.em.fork().findOneOrFail(RunEntity, { id }, { populate: ['phantomVersion'] });
+  const run = await orm.em.fork().findOneOrFail(RunEntity, { id }, { populate: ['entry', 'entry.bench', 'phantomVersion'] });
   expect(run, run.failure ?? '').toMatchObject({ state: 'finished', done: total, failure: null });
   const trials = await stored();
   expect(trials.map(({ level, draw }) => [level, draw])).toEqual(ladder.flatMap((_, level) => Array.from({ length: draws }, (_d, draw) => [level, draw])));

@@ -1,4 +1,4 @@
-import { mkdtempSync, rmSync } from 'node:fs';
+import { mkdirSync, mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { MikroORM } from '@mikro-orm/sqlite';
@@ -66,6 +66,32 @@ describe('migrations', () => {
       expect(await again.em.getConnection().execute('select slug from `group`')).toEqual([{ slug: 'kept' }]);
     } finally {
       await again.close(true);
+    }
+  });
+
+  it('keep the phantoms and benches of a database that knew one family, with what refers to them', async () => {
+    const older = path.join(folder, 'older');
+    const file = databaseFile(older);
+    mkdirSync(older);
+    const before = await MikroORM.init({ ...ormOptions(file), logger: () => undefined, migrations: { ...ormOptions(file).migrations, migrationsList: allMigrations.slice(0, 3), snapshot: false } });
+    await before.getMigrator().up();
+    const run = (sql: string) => before.em.getConnection().execute(sql);
+    await run("insert into `user` (id, created_at, updated_at, handle, site_roles, notifications) values ('u', 0, 0, 'curator-demo', '[]', '{}')");
+    await run("insert into `group` (id, created_at, updated_at, slug, name) values ('g', 0, 0, 'kept', 'Kept')");
+    await run("insert into phantom (id, created_at, updated_at, slug, family, group_id, name) values ('p', 0, 0, 'disc', 'electrical-impedance', 'g', 'Disc')");
+    await run("insert into phantom_version (id, created_at, updated_at, phantom_id, n, state, name, description, licence, definition, definition_hash, content_hash, created_by_id) values ('v', 0, 0, 'p', 1, 'published', 'Disc', '', 'CC0-1.0', '{}', 'h', 'h', 'u')");
+    await run("insert into bench (id, created_at, updated_at, slug, title, question, description, family, group_id, created_by_id, ladder, draws, seed, ranking_metric, state, content_hash) values ('b', 0, 0, 'bench', 'Bench', 'Which?', '', 'electrical-impedance', 'g', 'u', '[0.01]', 2, 1, 'relative-l2-error', 'open', 'h')");
+    await run("insert into bench_phantom (id, created_at, updated_at, bench_id, phantom_version_id, position) values ('bp', 0, 0, 'b', 'v', 0)");
+    await before.close(true);
+    const after = await openDatabase(file);
+    try {
+      const rows = (sql: string): Promise<unknown> => after.em.getConnection().execute(sql);
+      expect(await rows('select slug, family from phantom')).toEqual([{ slug: 'disc', family: 'electrical-impedance' }]);
+      expect(await rows('select slug, axis from bench')).toEqual([{ slug: 'bench', axis: '{"key":"noise"}' }]);
+      expect(await rows('select bench_id from bench_phantom')).toEqual([{ bench_id: 'b' }]);
+      await rows("insert into phantom (id, created_at, updated_at, slug, family, group_id, name) values ('q', 0, 0, 'head', 'x-ray', 'g', 'Head')");
+    } finally {
+      await after.close(true);
     }
   });
 

@@ -14,7 +14,7 @@ describe('a metric that is younger than the run', () => {
     expect(levelTable(figures, ladder, 'relative-l2-error')[0]?.count).toBe(2);
   });
   it('has a stability sheet that says why it is empty', () => {
-    const sheet = runSheet({ id: 'run', ladder, trivial: { 'relative-l2-error': 1 } }, figures, 'relative-h1-error');
+    const sheet = runSheet({ id: 'run', axis: null, ladder, trivial: { 'relative-l2-error': 1 } }, figures, 'relative-h1-error');
     expect(JSON.stringify(sheet)).not.toMatch(/NaN|Infinity/);
   });
 });
