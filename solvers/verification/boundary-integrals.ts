@@ -32,7 +32,7 @@ const eigenvalues: VerificationCheck = {
   published: '0.249349805',
   unit: '',
   bound: 1e-9,
-  reason: 'Relative to the largest eigenvalue; panels with 12 points leave about 1e-12.',
+  reason: 'Relative to the largest eigenvalue; panels with 12 points leave little more than rounding.',
   source: {
     short: 'Isaacson 1986',
     full: 'D. Isaacson, Distinguishability of conductivities by electric current computed tomography, IEEE Trans. Med. Imaging MI-5 (1986) 91-95: (1/n)(1 - μρ²ⁿ)/(1 + μρ²ⁿ), μ = (s - 1)/(s + 1).',

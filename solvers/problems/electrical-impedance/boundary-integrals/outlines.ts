@@ -57,30 +57,40 @@ export function smoothScene(truth: TruthField, geometry: Pick<EitGeometry, 'body
 
 /** Conductivity inside and outside an outline; 'hidden' where a later shape covers it, 'mixed' where it changes along it. */
 function sidesOf(truth: TruthField, outline: TruthInterface, radius: number): { inside: number; outside: number } | 'hidden' | 'mixed' {
+  const steps = outline.curveAt ? curveSteps(outline.curveAt, radius) : chordSteps(outline, radius);
+  const seen = steps.map(([x, y, nx, ny]) => ({ inside: truth.valueAt(x - nx, y - ny), outside: truth.valueAt(x + nx, y + ny) }));
+  if (seen.every(({ inside, outside }) => inside === outside)) return 'hidden';
+  const [first] = seen;
+  return seen.every(({ inside, outside }) => inside === first.inside && outside === first.outside) ? first : 'mixed';
+}
+
+/** A place on an outline and a small step outward from it, m. */
+type Step = readonly [x: number, y: number, outwardX: number, outwardY: number];
+
+function curveSteps(curveAt: (t: number, out: Float64Array) => void, radius: number): Step[] {
+  const point = new Float64Array(6);
+  return Array.from({ length: samples }, (_, i) => {
+    curveAt((i + 0.5) / samples, point);
+    const [x, y, dx, dy] = point;
+    const speed = Math.sqrt(dx * dx + dy * dy);
+    const offset = Math.min(step * radius, (1e-3 * speed) / samples) / speed;
+    return [x, y, offset * dy, -offset * dx] as const;
+  });
+}
+
+/** Middles of chords brought onto the outline; the chord gives the direction. */
+function chordSteps(outline: TruthInterface, radius: number): Step[] {
   const points = samplePoints(outline);
   const n = points.length / 2;
-  let first: { inside: number; outside: number } | null = null;
-  let hidden = 0;
-  for (let i = 0; i < n; i++) {
+  return Array.from({ length: n }, (_, i) => {
     const next = (i + 1) % n;
-    // The middle of a chord, brought onto the curve; the chord gives the direction of the normal.
     const tx = points[2 * next] - points[2 * i];
     const ty = points[2 * next + 1] - points[2 * i + 1];
     const length = Math.sqrt(tx * tx + ty * ty);
     const [x, y] = outline.project(0.5 * (points[2 * i] + points[2 * next]), 0.5 * (points[2 * i + 1] + points[2 * next + 1]));
-    const offset = Math.min(step * radius, 1e-3 * length);
-    const nx = (offset * ty) / length;
-    const ny = (-offset * tx) / length;
-    const sides = { inside: truth.valueAt(x - nx, y - ny), outside: truth.valueAt(x + nx, y + ny) };
-    if (sides.inside === sides.outside) hidden++;
-    first ??= sides;
-    if (sides.inside !== first.inside || sides.outside !== first.outside) {
-      if (hidden !== i + 1) return 'mixed';
-      first = sides;
-    }
-  }
-  if (hidden === n) return 'hidden';
-  return hidden === 0 && first ? first : 'mixed';
+    const offset = Math.min(step * radius, 1e-3 * length) / length;
+    return [x, y, offset * ty, -offset * tx] as const;
+  });
 }
 
 function samplePoints(outline: TruthInterface): Float64Array {

@@ -21,7 +21,7 @@ const sampleOrder = 16;
 const foldShare = 0.5;
 
 /** Two curves closer than about this, in radii (or this share of a small curve), are taken to touch; and the most panels of all curves. */
-export const shortestPanel = 1e-4;
+const shortestPanel = 1e-4;
 const shortestShare = 0.01;
 const mostPanels = 180;
 
@@ -42,7 +42,7 @@ interface Sampled {
  * Panels of every curve so that a panel is short against its distance to other curves and to parts of its own curve that
  * fold back, and resolves the shape of its curve.
  * @returns breaks of the parameter, ascending over one period, both ends listed
- * @throws PanelError where curves touch or cross
+ * @throws PanelError where curves touch, cross or come too close
  */
 export function choosePanels(curves: readonly SmoothCurve[]): number[][] {
   const sampled = curves.map((curve) => sample(curve, [0, 1, 2, 3, 4, 5].map((k) => (k / 5) * curve.period)));
@@ -51,12 +51,11 @@ export function choosePanels(curves: readonly SmoothCurve[]): number[][] {
     if (splits.every((list) => list.length === 0)) return sampled.map(({ breaks }) => breaks);
     splits.forEach((list, c) => {
       if (list.length === 0) return;
-      const { breaks, along } = sampled[c];
+      const { breaks } = sampled[c];
       const refined = [breaks[0]];
       let next = 0;
       for (let p = 0; p + 1 < breaks.length; p++) {
         if (list[next] === p) {
-          if (along[p + 1] - along[p] < Math.min(shortestPanel, shortestShare * along[along.length - 1])) throw new PanelError('Outlines touch or cross each other or the boundary of the body.');
           refined.push(0.5 * (breaks[p] + breaks[p + 1]));
           next++;
         }
@@ -64,7 +63,7 @@ export function choosePanels(curves: readonly SmoothCurve[]): number[][] {
       }
       sampled[c] = sample(curves[c], refined);
     });
-    if (sampled.reduce((sum, { breaks }) => sum + breaks.length, 0) > mostPanels) throw new PanelError('The outlines would need too many panels.');
+    if (sampled.reduce((sum, { breaks }) => sum + breaks.length, 0) > mostPanels) throw new PanelError('Outlines lie too close together or to the boundary, or bend too sharply, for panels on them.');
   }
 }
 
@@ -100,8 +99,13 @@ function sample(curve: SmoothCurve, breaks: number[]): Sampled {
 function panelsToSplit(sampled: readonly Sampled[], c: number): number[] {
   const own = sampled[c];
   const list: number[] = [];
+  const total = own.along[own.along.length - 1];
   for (let p = 0; p + 1 < own.breaks.length; p++) {
-    if (!resolvesShape(own.nodes, p) || sampled.some((other, o) => (o === c ? foldsBack(own, p) : nearer(other.nodes, own, p)))) list.push(p);
+    if (!resolvesShape(own.nodes, p) || foldsBack(own, p)) list.push(p);
+    else if (sampled.some((other, o) => o !== c && nearer(other.nodes, own, p))) {
+      if (own.along[p + 1] - own.along[p] < Math.min(shortestPanel, shortestShare * total)) throw new PanelError('Outlines touch or cross each other or the boundary of the body.');
+      list.push(p);
+    }
   }
   return list;
 }

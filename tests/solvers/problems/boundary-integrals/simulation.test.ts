@@ -103,10 +103,10 @@ describe('what boundary integrals do not serve', () => {
 
   it.each<[string, Shape[], RegExp]>([
     ['shapes that cross', [ellipse(-0.2, 0, 0.3, 0.3, 50), ellipse(0.3, 0, 0.3, 0.3, 20)], /touch or cross/],
-    ['shapes that touch', [ellipse(-0.3, 0, 0.3, 0.3, 50), ellipse(0.3, 0, 0.3, 0.3, 20)], /touch or cross|too many panels/],
-    ['a shape that touches another from within', [ellipse(0, 0, 0.4, 0.4, 50), ellipse(0.2, 0, 0.2, 0.2, 20)], /touch or cross|too many panels/],
+    ['shapes that touch', [ellipse(-0.3, 0, 0.3, 0.3, 50), ellipse(0.3, 0, 0.3, 0.3, 20)], /touch or cross|too close/],
+    ['a shape that touches another from within', [ellipse(0, 0, 0.4, 0.4, 50), ellipse(0.2, 0, 0.2, 0.2, 20)], /touch or cross|too close/],
     ['a shape that crosses the boundary', [ellipse(-0.9, 0, 0.3, 0.3, 50)], /leaves the body|touch or cross/],
-    ['a shape that touches the boundary', [ellipse(0.7, 0, 0.3, 0.3, 50)], /leaves the body|touch or cross|too many panels/],
+    ['a shape that touches the boundary', [ellipse(0.7, 0, 0.3, 0.3, 50)], /leaves the body|touch or cross|too close/],
     ['a polygon', [square], /corners/],
     ['a smooth bump', [{ kind: 'bump', label: 'bump', target: true, value: 4, x: 0, y: 0, semiAxisA: 0.4, semiAxisB: 0.4, angleDeg: 0 }], /varies/],
   ])('gives the reason: %s', (_, shapes, why) => {
