@@ -24,7 +24,7 @@ export interface BoundarySystem {
  *   electrodes   zeta j + u = U_l
  *   boundary     psi/2 + K'(2 j + psi + sum phi_i) = 0          (du/dn = j)
  *   jump i       phi_i/2 + contrast K'(2 j + psi + sum phi_k) = 0   (sigma du/dn continuous)
- * (Kress 2014, Linear Integral Equations, chapter 6, for the layers; Colton and Kress for transmission.) Taking 2 j out of the
+ * (Kress 2014, Linear Integral Equations, chapter 6, for the layers and their jumps; from memory.) Taking 2 j out of the
  * density leaves psi smooth across electrode ends, because K' has a smooth kernel on a smooth curve. The unknowns on an electrode
  * are the moments m of j with the polynomials of its pieces, m + response (field from elsewhere) = response (U_l - c). Totals of the
  * densities are added to the last two equations: they are zero in the solution and make it unique, c follows from zero total current.
