@@ -30,7 +30,8 @@ export const phantomCheckNames: Record<FamilyKey, readonly { name: string; how: 
   'electrical-impedance': [
     shape,
     { name: 'Reciprocity', how: 'swap drive and measurement' },
-    { name: 'Mesh convergence', how: 'a finer mesh of the same truth' },
+    { name: 'Convergence of the simulation', how: 'a coarser simulation of the same truth' },
+    { name: 'Two simulators agree', how: 'boundary integrals against finite elements' },
     { name: 'Closed form of the concentric disc', how: 'where the eigenvalues are known' },
     gap,
     { name: 'Shapes clear of the electrodes', how: 'distance of an outline to the edge' },
