@@ -2,6 +2,8 @@
 import { equationKeys } from '../../shared/domain/geometry/integral-equation';
 import { familyNames, type FamilyKey } from '../../shared/domain/families';
 import type { Source } from '../core/types';
+import { pointSpreadKeys } from '../../shared/domain/geometry/deblurring';
+import { pointSpreadOf, pointSpreadWords } from './deblurring/point-spread';
 import { equationOf } from './integral-equation/equations';
 
 export interface ProblemDefinition {
@@ -95,7 +97,7 @@ function equationSources(): Source[] {
   return [...sources.values()];
 }
 
-/** Families, then the equations one by one. */
+/** Families, then the equations and the point-spread functions one by one. */
 export function problemDefinitions(): ProblemDefinition[] {
   const families = (Object.keys(texts) as FamilyKey[]).map((family) => ({ key: family, family, name: familyNames[family].name, ...texts[family] }));
   const equations = equationKeys.map((equation): ProblemDefinition => {
@@ -110,7 +112,16 @@ export function problemDefinitions(): ProblemDefinition[] {
       conventions: [],
     };
   });
-  return [...families, ...equations];
+  const spreads = pointSpreadKeys.map((pointSpread): ProblemDefinition => {
+    const { name, line, inverted } = pointSpreadWords[pointSpread];
+    const { formula } = pointSpreadOf({ body: { kind: 'rectangle', width: 1, height: 1 }, pointSpread, spread: 0.1, cells: 32, edge: 'zero' });
+    return {
+      key: `point-spread-${pointSpread}`, family: 'deblurring', name, summary: line, formula,
+      facts: [['Simulated by', 'the exact response of each pixel to samples of a larger field'], ['Inverted by', inverted]],
+      conventions: [], sources: texts.deblurring.sources,
+    };
+  });
+  return [...families, ...equations, ...spreads];
 }
 
 const round = (value: number): string => String(Number(value.toPrecision(5)));

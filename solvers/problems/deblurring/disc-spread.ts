@@ -45,10 +45,6 @@ export function discSpread(radius: number): PointSpread {
         return count;
       }),
     response: (x, y, dx, dy) => discInRectangle((-dx / 2 - x) / radius, (dx / 2 - x) / radius, (-dy / 2 - y) / radius, (dy / 2 - y) / radius),
-    edge(x) {
-      const t = Math.max(-1, Math.min(1, x / radius));
-      return 0.5 + (t * Math.sqrt(1 - t * t) + asin(t)) / Math.PI;
-    },
     edgeIntegral(x) {
       const t = x / radius;
       if (t <= -1) return 0;

@@ -35,7 +35,6 @@ export function gaussianSpread(sigma: number): PointSpread {
     },
     response: (x, y, dx, dy) => strip(x, dx, sigma) * strip(y, dy, sigma),
     separable: { along: (offset, size) => strip(offset, size, sigma) },
-    edge: (x) => below(x / sigma),
     edgeIntegral: (x) => x * below(x / sigma) + (sigma * exp(-0.5 * (x / sigma) * (x / sigma))) / rootTwoPi,
     formula: 'p(x, y) = \\frac{1}{2\\pi\\sigma^2} \\exp\\!\\left(-\\frac{x^2 + y^2}{2\\sigma^2}\\right)',
   };

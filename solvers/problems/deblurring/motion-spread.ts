@@ -54,7 +54,6 @@ export function motionSpread(half: number, degrees: number): PointSpread {
       clip(y, s, dy, range);
       return Math.max(0, range.high - range.low);
     },
-    edge: (x) => (across === 0 ? (x >= 0 ? 1 : 0) : Math.max(0, Math.min(1, 0.5 + x / (2 * across)))),
     edgeIntegral(x) {
       if (x <= -across) return 0;
       if (x >= across) return x;

@@ -29,8 +29,7 @@ export interface PointSpread {
   response(x: number, y: number, dx: number, dy: number): number;
   /** Factors of `response` along x and y, where it is a product. */
   readonly separable?: { along(offset: number, size: number): number };
-  /** Share of the function to the left of a vertical line at x (m), and its integral from -infinity to x: what an edge is blurred to. */
-  edge(x: number): number;
+  /** Integral from -infinity to x of the share of the function to the left of a vertical line, m: differences of it are what an edge is blurred to. */
   edgeIntegral(x: number): number;
   /** LaTeX. */
   readonly formula: string;
@@ -40,6 +39,13 @@ const factories: Record<PointSpreadKey, (geometry: DeblurringGeometry) => PointS
   gaussian: ({ spread }) => gaussianSpread(spread),
   disc: ({ spread }) => discSpread(spread),
   motion: ({ spread, motionDeg }) => motionSpread(spread, motionDeg ?? 0),
+};
+
+/** For the reference page. */
+export const pointSpreadWords: Record<PointSpreadKey, { readonly name: string; readonly line: string; readonly inverted: string }> = {
+  gaussian: { name: 'Gaussian point-spread function', line: 'turbulence, or many small blurs one after another; its spread is the standard deviation', inverted: 'samples at the centres of pixels, out to five deviations' },
+  disc: { name: 'Disc point-spread function', line: 'a lens out of focus; its spread is the radius', inverted: 'share of 64 points of each pixel inside the disc' },
+  motion: { name: 'Motion point-spread function', line: 'a straight motion at even speed while the picture was taken; its spread is half the length', inverted: 'evenly spaced points of the path, counted by pixel' },
 };
 
 export const pointSpreadOf = (geometry: DeblurringGeometry): PointSpread => factories[geometry.pointSpread](geometry);

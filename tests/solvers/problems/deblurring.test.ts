@@ -5,6 +5,7 @@ import { prepareRun, runLevel } from '../../../solvers/campaign/run';
 import { adjointCheck } from '../../../solvers/checks/adjoint';
 import { blurredEdge } from '../../../solvers/checks/blurred-edge';
 import { taylorCheck } from '../../../solvers/checks/taylor';
+import { erf } from '../../../solvers/core/math';
 import { denseMatrix } from '../../../solvers/core/matrix-operator';
 import { norm2 } from '../../../solvers/core/vector';
 import { getMethod } from '../../../solvers/methods/registry';
@@ -158,16 +159,16 @@ describe('the simulation', () => {
     expect(exact[exact.length - 1]).toBeCloseTo(0, 4);
   });
 
-  // A Gaussian blurs a Gaussian to a Gaussian of the sum of the variances: closed form, averaged over pixels by erf through the edge.
+  // A Gaussian blurs a Gaussian to a Gaussian of the sum of the variances: closed form, averaged over pixels by the error function.
   it('adds variances', () => {
     const given = definition({}, { kind: 'expression', background: 0, expression: 'exp(-(x*x + y*y) / (2 * 0.01))' });
     const { clean } = simulate(given);
     const { nx, dx } = pictureOf(given.geometry);
     const sigma = Math.sqrt(0.01 + 0.06 ** 2);
-    const wide = pointSpreadOf(geometry({ spread: sigma }));
+    const below = (x: number): number => 0.5 * (1 + erf(x / (sigma * Math.SQRT2)));
     const average = (j: number): number => {
       const left = (j - nx / 2) * dx;
-      const part = (wide.edge(left + dx) - wide.edge(left)) / dx;
+      const part = (below(left + dx) - below(left)) / dx;
       return part * Math.sqrt(2 * Math.PI * 0.01);
     };
     for (const [i, j] of [[12, 12], [8, 14], [3, 20], [0, 0]]) expect(Math.abs(clean[i * nx + j] - average(i) * average(j))).toBeLessThan(2e-4);
