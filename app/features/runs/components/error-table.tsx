@@ -2,14 +2,17 @@ import clsx from 'clsx';
 import type { LevelStatistics } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { solverLook } from '../../../components/ui/solver-glyph';
-import { formatError, formatPercent } from '../../../lib/format';
+import { formatError, formatNumber, formatPercent } from '../../../lib/format';
 import { fixedGroup, isMoment, outlier, shade, tableGroups, type TableGroup } from '../model/error-table';
 import { DrawDots } from './draw-dots';
 
 const columnNames = { mean: 'mean', sd: 'sd', p05: '5 %', p95: '95 %', worst: 'worst', biasSquared: 'bias²', variance: 'variance', meanSquaredError: 'sum' } as const;
 
+/** What the table reads of a run. */
+export type TableRun = Pick<RunDetail, 'glyph' | 'ladder' | 'modelErrorFloor' | 'table' | 'trivial' | 'moments'>;
+
 /** Value of a cell, and why there is none. */
-function cellValue(run: RunDetail, group: TableGroup, column: TableGroup['columns'][number], level: number): { value: number | null; reason: string | null } {
+function cellValue(run: TableRun, group: TableGroup, column: TableGroup['columns'][number], level: number): { value: number | null; reason: string | null } {
   if (isMoment(column)) {
     const moments = run.moments[level];
     return { value: moments?.[column] ?? null, reason: moments ? moments.reason : 'Not computed: the level is not complete, or the run is older than this figure.' };
@@ -19,7 +22,7 @@ function cellValue(run: RunDetail, group: TableGroup, column: TableGroup['column
 }
 
 export interface ErrorTableProps {
-  run: RunDetail;
+  run: TableRun;
   shown: ReadonlySet<string>;
   /** Level the rule stands at. */
   current: number;
@@ -37,7 +40,7 @@ export function dotRange(rows: readonly LevelStatistics[], trivial: number | nul
 }
 
 const print = (value: number | null, group: TableGroup): string =>
-  value === null ? '–' : group.digits === 'one' ? (value * group.scale).toFixed(1) : formatError(value * group.scale);
+  value === null ? '–' : group.digits === 'one' ? (value * group.scale).toFixed(1) : group.digits === 'three' ? formatNumber(value) : formatError(value * group.scale);
 
 /** Errors by noise level: petrol shade by log error, brick hatch past the trivial reconstruction, corner for an outlier. */
 export function ErrorTable({ run, shown, current, onCell, onLevel }: ErrorTableProps) {
@@ -83,7 +86,7 @@ function DotsHead({ low, high }: { low: number; high: number }) {
   return <th scope="col" className="dots">all draws<span className="ends"><i>{formatError(low)}</i><i>dashed: trivial</i><i>{formatError(high)}</i></span></th>;
 }
 
-function levelCells({ run, group, i, colour, onCell }: { run: RunDetail; group: TableGroup; i: number; colour: string; onCell?: (anchor: string) => void }) {
+function levelCells({ run, group, i, colour, onCell }: { run: TableRun; group: TableGroup; i: number; colour: string; onCell?: (anchor: string) => void }) {
   const row = run.table[group.key]?.[i];
   const trivial = run.trivial[group.key] ?? null;
   const flagged = row ? outlier(row) : null;

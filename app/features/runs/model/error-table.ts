@@ -17,7 +17,8 @@ export interface TableGroup {
   columns: readonly ('mean' | 'sd' | 'p05' | 'p95' | 'worst' | MomentColumn)[];
   /** The dot strip of all draws follows. */
   draws: boolean;
-  digits: 'error' | 'one';
+  /** 'three' significant ones where values span decades, as variances do. */
+  digits: 'error' | 'one' | 'three';
 }
 
 const standing: Record<string, Partial<TableGroup>> = {
@@ -48,7 +49,7 @@ export function tableGroups(run: Pick<RunDetail, 'table' | 'moments'> & { readon
       ...(metric.key === 'sup-error' ? { unit: run.unit ?? '' } : {}),
     }));
   if (run.moments.every((own) => own === null)) return ofMetrics;
-  return [...ofMetrics, { key: momentsGroup, name: 'Bias and variance of the image', unit: 'squares', scale: 1, columns: momentColumns, draws: false, digits: 'error' }];
+  return [...ofMetrics, { key: momentsGroup, name: 'Bias and variance of the image', unit: 'squares', scale: 1, columns: momentColumns, draws: false, digits: 'three' }];
 }
 
 /** How many standard deviations the worst draw lies beyond the mean; null when it does not pass three. */
