@@ -7,14 +7,28 @@
 /** Blocks up to which orders are counted, by the number of methods: some tenths of a second at most. Beyond, F is near enough. */
 const mostBlocks = [0, 0, 50, 24, 12, 7, 3] as const;
 
+/** Levels counted last, by their rows: a ranking is asked again at every noise between two levels. */
+const counted = new Map<string, number>();
+const mostCounted = 200;
+
 /**
  * @param ranks one row a block, mean ranks for ties
  * @returns share of all orders whose sum of squared rank sums is at least the observed one; null where they are too many to count
  */
 export function friedmanExactP(ranks: readonly Float64Array[]): number | null {
+  if (ranks.length > (mostBlocks[ranks[0].length] ?? 0)) return null;
+  const key = ranks.map((row) => row.join(' ')).join('|');
+  const known = counted.get(key);
+  if (known !== undefined) return known;
+  if (counted.size >= mostCounted) counted.clear();
+  const p = countOrders(ranks);
+  counted.set(key, p);
+  return p;
+}
+
+function countOrders(ranks: readonly Float64Array[]): number {
   const k = ranks[0].length;
   const n = ranks.length;
-  if (n > (mostBlocks[k] ?? 0)) return null;
   // Doubled ranks are whole, so sums and their squares are exact.
   const rows = ranks.map((row) => Float64Array.from(row, (rank) => 2 * rank));
   const total = k * (k + 1);
