@@ -53,8 +53,8 @@ export const emptyEit: EitDraft = {
 export const emptyXray: XrayDraft = {
   radius: '100', beam: 'parallel', views: '60', firstAngleDeg: '0', arcDeg: '180', detectors: '64', detectorSpacing: '3.2', sourceDistance: '300', detectorDistance: '200', cells: '40',
 };
-export const emptyEquation: EquationDraft = { equation: 'phillips', cells: '100', points: '100', depth: '0.25', diffusivity: '1' };
-export const emptyDeblurring: DeblurringDraft = { width: '100', height: '100', pointSpread: 'gaussian', spread: '3', motionDeg: '0', cells: '48', edge: 'reflective' };
+export const emptyEquation: EquationDraft = { equation: 'phillips', cells: '200', points: '200', depth: '0.25', diffusivity: '1' };
+export const emptyDeblurring: DeblurringDraft = { width: '100', height: '100', pointSpread: 'gaussian', spread: '3', motionDeg: '0', cells: '32', edge: 'reflective' };
 
 /** The ways in which a family's ground truth can be given, the first being the usual one. */
 export const truthKinds: Record<FamilyKey, readonly TruthKind[]> = {

@@ -12,7 +12,7 @@ export function deblurringIssues(draft: DeblurringDraft): FormIssue[] {
     numberIssue({ path: `${g}.body.height`, label: 'Height', text: draft.height, minimum: 1, maximum: 20_000, unit: 'mm', works: '100' }),
     numberIssue({ path: `${g}.spread`, label: 'Spread', text: draft.spread, minimum: 1e-3, maximum: Number.isFinite(smaller) ? smaller / 2 : 10_000, unit: 'mm', works: '3' }),
     draft.pointSpread === 'motion' ? numberIssue({ path: `${g}.motionDeg`, label: 'Direction', text: draft.motionDeg, minimum: -360, maximum: 360, unit: '°', works: '0' }) : null,
-    numberIssue({ path: `${g}.cells`, label: 'Pixels', text: draft.cells, minimum: 8, maximum: 96, unit: '', works: '48', whole: true }),
+    numberIssue({ path: `${g}.cells`, label: 'Pixels', text: draft.cells, minimum: 8, maximum: 96, unit: '', works: '32', whole: true }),
   ].filter((issue) => issue !== null);
 }
 
