@@ -39,9 +39,9 @@ const method: Method<ParametersOf<typeof specs>> = {
     for (const cutoff of transform.cutoffs(choice)) transform.image(zero, cutoff);
     const background = problem.background();
     return makeReconstructor((data, noise) => {
-      const exponentials = transform.read(data, noise, 'exponential');
-      const cutoff = transform.choose(exponentials, noise, choice);
-      const change = transform.image(exponentials, cutoff);
+      const read = transform.read(data, noise, 'exponential');
+      const cutoff = transform.choose(read, noise, choice);
+      const change = transform.image(read.exponentials, cutoff);
       const x = Float64Array.from(background, (value, j) => value * (1 + change[j]));
       const residualNorm = boundedResidual(problem, x, data);
       return { x, parameter: cutoff, iterations: 0, forwardSolves: 1, stop: 'direct', residualNorm };

@@ -47,9 +47,9 @@ const method: Method<ParametersOf<typeof specs>> = {
     const solvers = new Map<number, DBarSolver>(transform.cutoffs(choice).map((cutoff) => [cutoff, dBarSolver(centres, 0.5 * cutoff)]));
     const background = problem.background();
     return makeReconstructor((data, noise) => {
-      const exponentials = transform.read(data, noise, traces);
-      const cutoff = transform.choose(exponentials, noise, choice);
-      const { values, iterations, converged } = solvers.get(cutoff)!.solve(exponentials, harmonics);
+      const read = transform.read(data, noise, traces);
+      const cutoff = transform.choose(read, noise, choice);
+      const { values, iterations, converged } = solvers.get(cutoff)!.solve(read.exponentials, harmonics);
       const x = Float64Array.from(background, (value, j) => value * values[j]);
       const residualNorm = boundedResidual(problem, x, data);
       return { x, parameter: 0.5 * cutoff, iterations, forwardSolves: 1, stop: converged ? 'direct' : 'maxIterations', residualNorm };

@@ -10,7 +10,7 @@ import { makeReconstructor } from './reconstructor';
 
 const specs = {
   safetyFactor: { kind: 'number', label: 'Safety factor', symbol: '\\tau', default: 1, minimum: 0, maximum: 10, scale: 'linear', help: 'Every eigenvalue is raised by this times the expected spectral norm of the noise. The method is told the noise.' },
-  smallestShare: { kind: 'number', label: 'Smallest share', symbol: '\\epsilon', default: 1e-4, minimum: 1e-10, maximum: 0.1, scale: 'log', help: 'Eigenvalues are raised by at least this share of the largest one: smaller ones hold the error of the model. At least 0.01 where driven electrodes are not measured.' },
+  smallestShare: { kind: 'number', label: 'Smallest share', symbol: '\\epsilon', default: 1e-4, minimum: 1e-10, maximum: 0.1, scale: 'log', help: 'Eigenvalues are raised by at least this share of the largest one: smaller ones hold the error of the model. At least 0.003 where driven electrodes are not measured.' },
 } as const;
 const { schema, fields } = defineParameters(specs);
 

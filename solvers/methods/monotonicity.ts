@@ -10,14 +10,14 @@ import { makeReconstructor } from './reconstructor';
 
 const specs = {
   image: {
-    kind: 'choice', label: 'Image', default: 'marked',
-    choices: [{ value: 'marked', label: 'regions that pass the test' }, { value: 'graded', label: 'largest contrast that passes' }],
-    help: 'Marked: 1 in every region that passes at the tested contrast. Graded: in each cell the largest contrast its region passes, less what the noise alone lets pass.',
+    kind: 'choice', label: 'Image', default: 'graded',
+    choices: [{ value: 'graded', label: 'largest contrast that passes' }, { value: 'marked', label: 'regions that pass the test' }],
+    help: 'Graded: in each cell the largest test value that its region passes, less what the noise alone lets pass. Marked: 1 in every region that passes at the tested contrast; it marks nothing where conductive and resistive changes hide each other.',
   },
-  testedContrast: { kind: 'number', label: 'Tested contrast', symbol: 'c', default: 1.5, minimum: 0.01, maximum: 100, scale: 'log', help: 'Change over the background that a region is tested for. Regions inside a change of at least this contrast pass; a smaller value passes more regions around it. For less conductivity the resistivity is meant.' },
-  testRadius: { kind: 'number', label: 'Test radius', symbol: '\\rho', unit: 'body radii', default: 0.18, minimum: 0, maximum: 0.5, scale: 'linear', help: 'Radius of the round region tested about each cell; 0 tests single cells, which hardly weigh against the noise.' },
+  testedContrast: { kind: 'number', label: 'Tested contrast', symbol: 'c', default: 1.5, minimum: 0.01, maximum: 100, scale: 'log', help: 'For the marked image. Change over the background that a region is tested for. Regions inside a change of at least this contrast pass; a smaller value passes more regions around it. For less conductivity the resistivity is meant.' },
+  testRadius: { kind: 'number', label: 'Test radius', symbol: '\\rho', unit: 'body radii', default: 0.12, minimum: 0, maximum: 0.5, scale: 'linear', help: 'Radius of the round region tested about each cell; 0 tests single cells, which hardly weigh against the noise.' },
   safetyFactor: { kind: 'number', label: 'Safety factor', symbol: '\\tau', default: 1, minimum: 0, maximum: 10, scale: 'linear', help: 'The bound is this times the expected spectral norm of the noise. The method is told the noise.' },
-  smallestShare: { kind: 'number', label: 'Smallest share', symbol: '\\epsilon', default: 1e-4, minimum: 1e-10, maximum: 0.1, scale: 'log', help: 'The bound is at least this share of the largest eigenvalue: smaller ones hold the error of the model. At least 0.01 where driven electrodes are not measured.' },
+  smallestShare: { kind: 'number', label: 'Smallest share', symbol: '\\epsilon', default: 1e-4, minimum: 1e-10, maximum: 0.1, scale: 'log', help: 'The bound is at least this share of the largest eigenvalue: smaller ones hold the error of the model. At least 0.003 where driven electrodes are not measured.' },
 } as const;
 const { schema, fields } = defineParameters(specs);
 

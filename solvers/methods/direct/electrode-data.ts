@@ -18,7 +18,7 @@ export interface ElectrodeData {
   relativeMap(change: Float64Array, noise: NoiseInfo): Float64Array;
   /**
    * What the eigenvalues of a relative map of spectral norm `norm` may be off by, V per A/m: the expected spectral norm of the noise times
-   * the safety factor, at least `share` of the norm; at least a hundredth of it where the channels at driven electrodes are predicted,
+   * the safety factor, at least `share` of the norm; at least 0.003 of it where the channels at driven electrodes are predicted,
    * about what these predictions are off by.
    */
   uncertainty(norm: number, noise: NoiseInfo, safetyFactor: number, share: number): number;
@@ -42,8 +42,8 @@ export function mapUnfit(facts: ProblemFacts): string | null {
   return null;
 }
 
-/** Share of the largest eigenvalue that predicted channels may put the others off by; measured 0.2 to 4 % (`driven-channels.ts`). */
-const predictedShare = 0.01;
+/** Share of the largest eigenvalue that predicted channels put the others off by, for changes well inside (`driven-channels.ts`). */
+const predictedShare = 0.003;
 
 const cache = new WeakMap<ForwardProblem, ElectrodeData>();
 

@@ -138,6 +138,23 @@ export function exponentialMatrix(relative: Float64Array, N: number, traces: Tra
       for (let b = 0; b < size; b++) map[a * size + b] += weight * vectors[k * size + b] * root[b];
     }
   }
+  return betweenExponentials(map, N);
+}
+
+/**
+ * The same to first order in the relative map, -D dR D: no bound, no trace, and noise in it is that of the data times fixed factors
+ * (`HarmonicReader.exponentialVariances`).
+ */
+export function linearExponentialMatrix(relative: Float64Array, N: number): Float64Array {
+  const size = 2 * N;
+  const map = new Float64Array(size * size);
+  for (let a = 0; a < size; a++) for (let b = 0; b < size; b++) map[a * size + b] = -(Math.floor(a / 2) + 1) * (Math.floor(b / 2) + 1) * relative[a * size + b];
+  return betweenExponentials(map, N);
+}
+
+/** From cosines and sines over sqrt(pi), 2N x 2N, to e^{-i m theta}, e^{i n theta}. */
+function betweenExponentials(map: Float64Array, N: number): Float64Array {
+  const size = 2 * N;
   const out = new Float64Array(2 * N * N);
   for (let m = 0; m < N; m++) {
     for (let n = 0; n < N; n++) {

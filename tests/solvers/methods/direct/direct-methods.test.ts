@@ -74,6 +74,15 @@ describe('direct methods on 16 electrodes, trigonometric currents', () => {
     for (let i = 1; i < radii.length; i++) expect(radii[i]).toBeLessThan(radii[i - 1]);
   });
 
+  it('cuts at the first step where noise relative to the voltages buries the signal', () => {
+    const voltages = { ...phantoms.more, noiseScale: 200 * phantoms.more.noiseScale };
+    for (const method of ['calderon', 'd-bar']) {
+      const [trial] = runLevel(prepareRun({ problem, method, parameters: {}, rule: { key: 'discrepancy', safetyFactor: 1.05 } }), voltages, { ...seed, level: 0.2, draws: [0] });
+      expect(trial.parameter).toBeLessThan(method === 'd-bar' ? 1 : 2);
+      expect(Math.max(...trial.image)).toBeLessThan(2);
+    }
+  });
+
   it('takes a fixed cutoff as it is', () => {
     for (const [method, value] of [['calderon', 5], ['d-bar', 2.5]] as const) {
       const [trial] = runLevel(prepareRun({ problem, method, parameters: {}, rule: { key: 'fixed', value } }), phantoms.more, { ...seed, level: 0.01, draws: [0] });
@@ -83,7 +92,7 @@ describe('direct methods on 16 electrodes, trigonometric currents', () => {
 
   it('marks only what the tested contrast lets pass', () => {
     const marked = (testedContrast: number): number => {
-      const { reconstructor } = prepareRun({ problem, method: 'monotonicity', parameters: { testedContrast }, rule: null });
+      const { reconstructor } = prepareRun({ problem, method: 'monotonicity', parameters: { image: 'marked', testRadius: 0.18, testedContrast }, rule: null });
       return reconstructor.reconstruct(phantoms.more.clean, { norm: 0, level: 0 }).x.reduce((sum, v, j) => sum + (v !== 1 ? problem.unknownWeights[j] : 0), 0);
     };
     const areas = [0.5, 1.5, 20].map(marked);

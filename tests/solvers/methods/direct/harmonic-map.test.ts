@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { electrodeData } from '../../../../solvers/methods/direct/electrode-data';
-import { exponentialMatrix, harmonicReader, harmonicsUnfit } from '../../../../solvers/methods/direct/harmonic-map';
+import { exponentialMatrix, harmonicReader, harmonicsUnfit, linearExponentialMatrix } from '../../../../solvers/methods/direct/harmonic-map';
 import { concentricEigenvalue } from '../../../../solvers/problems/electrical-impedance/continuum';
 import { createEitInversion } from '../../../../solvers/problems/electrical-impedance/inversion-problem';
 import { simulateElectricalImpedance } from '../../../../solvers/problems/electrical-impedance/simulation';
@@ -23,6 +23,15 @@ describe('exponentialMatrix', () => {
       }
       expect(Math.max(...plain.slice(N * N).map(Math.abs))).toBeLessThan(1e-12);
     }
+  });
+  it('differs from the linear one by the square of the contrast', () => {
+    const gap = (contrast: number): number => {
+      const map = concentricMap(0.6, 1 + contrast, 4);
+      const linear = linearExponentialMatrix(map, 4);
+      return Math.abs(exponentialMatrix(map, 4)[0] - linear[0]);
+    };
+    // A quarter at half the contrast, to the third order.
+    expect(Math.abs(gap(0.02) / gap(0.01) - 4)).toBeLessThan(0.1);
   });
   it('stays bounded where noise asks for a conductivity below nothing', () => {
     const map = concentricMap(0.6, 3, 4);
