@@ -38,6 +38,8 @@ export const BenchEntity = defineEntity({
     closedAt: p.datetime().nullable(),
     /** What the levels of the ladder vary. */
     axis: p.json().$type<AxisSetting>(),
+    /** Key of a noise model. */
+    noiseModel: p.string().default('gaussian'),
     phantoms: () => p.oneToMany(BenchPhantomEntity).mappedBy('bench').orderBy({ position: 'asc' }),
     entries: () => p.oneToMany(EntryEntity).mappedBy('bench').orderBy({ place: 'asc' }),
   },

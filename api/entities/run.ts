@@ -59,6 +59,8 @@ export const RunEntity = defineEntity({
     levelMoments: p.json().$type<(LevelMoments | null)[]>().nullable(),
     /** Copy of the bench's; null in runs older than other axes: the noise. */
     axis: p.json().$type<AxisSetting>().nullable(),
+    /** Copy of the bench's. */
+    noiseModel: p.string().default('gaussian'),
     trials: () => p.oneToMany(TrialEntity).mappedBy('run'),
     verdicts: () => p.oneToMany(VerdictEntity).mappedBy('run').orderBy({ createdAt: 'desc' }),
   },

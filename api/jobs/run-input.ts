@@ -8,7 +8,7 @@ import { loadAxisCases, type AxisRun } from './axis-cases.ts';
 import type { RunInput } from './tasks.ts';
 
 /** What a worker needs to compute any draw of the run. */
-export async function loadRunInput(em: EntityManager, run: AxisRun & Pick<Run, 'id' | 'configuration' | 'draws' | 'seed' | 'phantomHash'>, version: Pick<PhantomVersion, 'definition' | 'definitionHash'>): Promise<RunInput> {
+export async function loadRunInput(em: EntityManager, run: AxisRun & Pick<Run, 'id' | 'configuration' | 'noiseModel' | 'draws' | 'seed' | 'phantomHash'>, version: Pick<PhantomVersion, 'definition' | 'definitionHash'>): Promise<RunInput> {
   const simulation = await findSimulation(em, version.definitionHash);
   const { clean, truthImage } = await loadSimulationArrays(simulation);
   return {
@@ -16,6 +16,7 @@ export async function loadRunInput(em: EntityManager, run: AxisRun & Pick<Run, '
     definition: version.definition,
     phantomHash: run.phantomHash,
     configuration: run.configuration,
+    noiseModel: run.noiseModel,
     axis: axisOf(run),
     cases: await loadAxisCases(em, run),
     ladder: run.ladder,

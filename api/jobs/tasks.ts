@@ -43,6 +43,7 @@ export interface RunInput {
   readonly definition: PhantomDefinition;
   readonly phantomHash: string;
   readonly configuration: Configuration;
+  readonly noiseModel: string;
   readonly axis: AxisSetting;
   /** On another axis than the noise: the data of each level. */
   readonly cases: readonly CaseInput[] | null;

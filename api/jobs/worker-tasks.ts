@@ -46,7 +46,7 @@ export function problemAt(run: RunInput, level: number): ForwardProblem {
 
 export function preparedOf(run: RunInput, level: number): PreparedRun {
   const part = run.cases?.[level]?.rows ? level : null;
-  return preparedRuns.get(canonicalJson([run.key, run.configuration, describeProblem(run.definition), part]), () => prepareRun({ problem: problemAt(run, level), ...run.configuration }));
+  return preparedRuns.get(canonicalJson([run.key, run.configuration, describeProblem(run.definition), part]), () => prepareRun({ problem: problemAt(run, level), noiseModel: run.noiseModel, ...run.configuration }));
 }
 
 export const simulatedOf = (run: RunInput, level: number): SimulatedPhantom => ({
@@ -148,7 +148,7 @@ function toOutput(trial: Trial): TrialOutput {
 export function sensitivityOf({ run, level, draw }: SensitivityTask): SensitivityOutput {
   const problem = problemAt(run, level);
   const simulated = simulatedOf(run, level);
-  const at = { ...seedOf(run, level), drawIndex: draw };
+  const at = { ...seedOf(run, level), drawIndex: draw, noiseModel: run.noiseModel };
   const found = errorAgainstParameter(problem, run.configuration, simulated, at);
   if (!found) throw new RangeError('This method has no parameter to vary, or is nonlinear: a grid of nonlinear solves takes too long to show.');
   const penalty = run.configuration.parameters['penalty'];

@@ -86,9 +86,9 @@ export class ReconstructionJobs {
 
   /** On the axis of the noise every level has the same data; on another one its own, and perhaps fewer of them. */
   private levelOf(replay: Replay, level: number): { ready: PreparedRun; phantom: SimulatedPhantom } {
-    const { problem: spec, configuration, phantomHash } = replay;
+    const { problem: spec, configuration, phantomHash, noiseModel } = replay;
     const own = replay.cases?.[level];
-    const ready = own?.rows ? prepareRun({ problem: axisProblem(this.problem(spec), Int32Array.from(own.rows)), ...configuration }) : this.prepare(spec, configuration);
+    const ready = own?.rows ? prepareRun({ problem: axisProblem(this.problem(spec), Int32Array.from(own.rows)), noiseModel, ...configuration }) : this.prepare(spec, configuration, noiseModel);
     const data = own ?? replay;
     const phantom = simulated(ready.problem, spec.background, {
       contentHash: phantomHash, clean: decodeArray(data.clean), noiseScale: data.noiseScale, truth: !own && replay.truth ? decodeArray(replay.truth) : null, targets: own ? [] : (replay.targets ?? []),
@@ -96,14 +96,14 @@ export class ReconstructionJobs {
     return { ready, phantom };
   }
 
-  private prepare(spec: ProblemSpec, configuration: ConfigurationSpec): PreparedRun {
+  private prepare(spec: ProblemSpec, configuration: ConfigurationSpec, noiseModel?: string): PreparedRun {
     const problem = this.problem(spec);
     let runs = this.prepared.get(problem);
     if (!runs) this.prepared.set(problem, (runs = new Map()));
-    const key = canonicalJson(configuration);
+    const key = canonicalJson([configuration, noiseModel ?? null]);
     let run = runs.get(key);
     if (!run) {
-      run = prepareRun({ problem, ...configuration });
+      run = prepareRun({ problem, noiseModel, ...configuration });
       keepNewest(runs, key, run);
     }
     return run;

@@ -17,7 +17,8 @@ const benchTerms = z.strictObject({
   question: z.string().trim().min(10).max(200),
   description: markdownSchema.default(''),
   phantoms: z.array(z.strictObject({ slug: slugSchema, version: z.int().min(1) })).min(1).max(50),
-  axis: axisSettingSchema.default({ key: 'noise' }),
+  /** Key of a noise model that the family of the phantoms has. */
+  noiseModel: z.string().max(60).default('gaussian'), axis: axisSettingSchema.default({ key: 'noise' }),
   ladder: ladderSchema.default([...defaultLadder]), draws: z.int().min(1).max(200).default(defaultDraws),
   seed: z.int().min(0).max(4_294_967_295), rankingMetric: metricKeySchema.default('relative-l2-error'),
 });
@@ -61,7 +62,7 @@ export const benchEntrySchema = z.object({
   runs: z.array(z.object({ run: idSchema, phantom: slugSchema, state: z.enum(runStates), review: z.enum(reviewStates), done: z.int(), total: z.int(), failure: z.string().nullable() })),
 });
 export const benchDetailSchema = benchSummarySchema.extend({
-  description: z.string(), axis: axisSettingSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: metricKeySchema, revision: z.int(), contentHash: hashSchema,
+  description: z.string(), noiseModel: z.string(), axis: axisSettingSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: metricKeySchema, revision: z.int(), contentHash: hashSchema,
   phantoms: z.array(benchPhantomSchema), entries: z.array(benchEntrySchema),
   /** Largest model-error floor of the phantoms, and whose it is. */
   modelErrorFloor: z.number(), floorPhantom: z.string().nullable(),

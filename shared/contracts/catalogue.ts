@@ -57,7 +57,7 @@ export const ruleSchema = z.object({
 export type RuleWire = z.infer<typeof ruleSchema>;
 
 export const noiseModelSchema = z.object({
-  key: z.string(), name: z.string(), summary: z.string(), formula: z.string(), sources: z.array(sourceSchema), exact: z.boolean(),
+  key: z.string(), name: z.string(), summary: z.string(), formula: z.string(), sources: z.array(sourceSchema), exact: z.boolean(), families: z.array(familyKeySchema),
 });
 export type NoiseModelWire = z.infer<typeof noiseModelSchema>;
 

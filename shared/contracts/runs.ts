@@ -44,7 +44,7 @@ export const levelMomentsSchema = z.object({
 });
 export type LevelMomentsWire = z.infer<typeof levelMomentsSchema>;
 export const runDetailSchema = runSummarySchema.extend({
-  axis: axisSettingSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: z.string(),
+  noiseModel: z.string(), axis: axisSettingSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: z.string(),
   noiseReference: z.string(), dataKind: z.string(), unit: z.string(), background: z.number(),
   modelErrorFloor: z.number(), grid: gridSchema,
   /** The problem that was inverted: family, acquisition, data kind, background. */
@@ -89,7 +89,7 @@ export type RunImage = z.infer<typeof runImageSchema>;
 /** GET /runs/:id/replay: all that is needed to recompute the run elsewhere with the same code. */
 export const replaySchema = z.object({
   run: idSchema, phantomHash: hashSchema, problem: problemDescriptorSchema,
-  configuration: configurationSchema, axis: axisSettingSchema,
+  configuration: configurationSchema, noiseModel: z.string(), axis: axisSettingSchema,
   /** On another axis than the noise: the data of each level, and the indices of the data that are left. */
   cases: z.array(z.object({ clean: encodedArraySchema, noiseScale: z.number(), rows: z.array(z.int()).nullable() })).nullable(),
   ladder: z.array(z.number()), draws: z.int(), seed: z.int(), noiseScale: z.number(), clean: encodedArraySchema,

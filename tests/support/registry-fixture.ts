@@ -111,7 +111,7 @@ export async function makeBench(app: TestApp, request: BenchRequest): Promise<Ma
     axis: { key: 'noise' },
     id: await nextId(em, 'bench'), slug: slugify(request.title), title: request.title, question, description: '', family: 'electrical-impedance',
     group: em.getReference(GroupEntity, (await em.findOneOrFail(GroupEntity, { slug: phantomGroup })).id), createdBy: user, ladder: [...ladder], draws, seed, rankingMetric,
-    state: 'open', contentHash: benchHash({ axis: { key: 'noise' }, question, phantomHashes: phantoms.map((_, i) => versionOf(i).contentHash), ladder, draws, seed, rankingMetric }), openedAt: app.deps.clock(), closedAt: null,
+    state: 'open', contentHash: benchHash({ axis: { key: 'noise' }, noiseModel: 'gaussian', question, phantomHashes: phantoms.map((_, i) => versionOf(i).contentHash), ladder, draws, seed, rankingMetric }), openedAt: app.deps.clock(), closedAt: null,
   });
   phantoms.forEach((_, position) => em.create(BenchPhantomEntity, { bench, phantomVersion: versionOf(position), position }));
   await em.flush();

@@ -70,7 +70,7 @@ function preamble(bench: LoadedBench, now: Date): string {
     `Hadamark bench ${bench.id}, revision ${bench.revision}: ${bench.title}`,
     bench.question,
     `State ${bench.state}; read ${now.toISOString()}; content hash ${bench.contentHash}`,
-    ...(reference ? [noiseWords(reference)] : []),
+    ...(reference ? [noiseWords(reference, bench.noiseModel)] : []),
     `Seed ${bench.seed}; ${bench.draws} draws at each of ${bench.ladder.length} levels: ${bench.ladder.map(percent).join(', ')}`,
     'Norms: errors are taken on the evaluation grid inside the body; a relative one is over the same norm of truth less background, so that the background alone scores 1',
     'Medians with 5 and 95 % quantiles over draws',

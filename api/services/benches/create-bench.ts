@@ -5,6 +5,7 @@ import { axisWords } from '../../../shared/domain/axes';
 import { familyNames } from '../../../shared/domain/families';
 import { AppError, type Issue } from '../../../shared/errors.ts';
 import { metrics } from '../../../solvers/metrics/registry';
+import { noiseModels } from '../../../solvers/noise/registry';
 import { BenchEntity, BenchPhantomEntity } from '../../entities/bench.ts';
 import { GroupEntity, type Group } from '../../entities/group.ts';
 import { PhantomVersionEntity, type PhantomVersion } from '../../entities/phantom.ts';
@@ -30,6 +31,7 @@ export async function createBench(em: EntityManager, input: Acting & { readonly 
       group: inner.getReference(GroupEntity, group.id),
       createdBy: inner.getReference(UserEntity, actor.id),
       axis: given.axis,
+      noiseModel: given.noiseModel,
       ladder: [...given.ladder],
       draws: given.draws,
       seed: given.seed,
@@ -59,7 +61,7 @@ export async function editBench(em: EntityManager, input: Acting & { readonly be
     const row = await inner.findOneOrFail(BenchEntity, bench.id);
     const before = { title: row.title, contentHash: row.contentHash };
     Object.assign(row, {
-      title: terms.title, question: terms.question, description: terms.description, family: familyOf(versions), axis: terms.axis, ladder: [...terms.ladder],
+      title: terms.title, question: terms.question, description: terms.description, family: familyOf(versions), axis: terms.axis, noiseModel: terms.noiseModel, ladder: [...terms.ladder],
       draws: terms.draws, seed: terms.seed, rankingMetric: terms.rankingMetric, contentHash: hashOf(terms, versions),
     });
     listPhantoms(inner, row.id, versions);
@@ -98,6 +100,9 @@ async function checkTerms(em: EntityManager, terms: Terms, groupIds: readonly st
   if (references.size > 1) {
     issues.push({ path: ['phantoms'], message: 'All phantoms of a bench state their noise relative to the same thing: the voltages, the difference signal or the data.' });
   }
+  const model = noiseModels.find((own) => own.key === terms.noiseModel);
+  if (!model) issues.push({ path: ['noiseModel'], message: `No noise model is called '${terms.noiseModel}'. There are: ${noiseModels.map((own) => own.key).join(', ')}.` });
+  for (const family of families) if (model && !model.families.includes(family)) issues.push({ path: ['noiseModel'], message: `${model.name}: this noise does not occur in ${familyNames[family].name}.` });
   const { key } = terms.axis;
   const unserved = [...families].filter((family) => !axisWords[key].families.includes(family));
   if (unserved.length > 0) issues.push({ path: ['axis', 'key'], message: `${axisWords[key].name}: this axis does not serve ${unserved.map((family) => familyNames[family].name).join(', ')}.` });

@@ -63,6 +63,7 @@ export interface BenchTerms {
   readonly question: string;
   readonly phantomHashes: readonly string[];
   readonly axis: AxisSetting;
+  readonly noiseModel: string;
   readonly ladder: readonly number[];
   readonly draws: number;
   readonly seed: number;
@@ -71,14 +72,15 @@ export interface BenchTerms {
 
 /** SHA-256 of what the bench asks. A closed bench adds what was answered. */
 export function benchHash(terms: BenchTerms, results?: readonly { readonly solver: string; readonly phantom: string; readonly result: string }[]): string {
-  const { question, phantomHashes, axis, ladder, draws, seed, rankingMetric } = terms;
-  return contentHash({ question, phantoms: phantomHashes, ...(axis.key === 'noise' ? {} : { axis }), ladder, draws, seed, rankingMetric, ...(results ? { results } : {}) });
+  const { question, phantomHashes, axis, noiseModel, ladder, draws, seed, rankingMetric } = terms;
+  return contentHash({ question, phantoms: phantomHashes, ...(axis.key === 'noise' ? {} : { axis }), ...(noiseModel === 'gaussian' ? {} : { noiseModel }), ladder, draws, seed, rankingMetric, ...(results ? { results } : {}) });
 }
 
 export const termsOf = (bench: LoadedBench): BenchTerms => ({
   question: bench.question,
   phantomHashes: phantomsOf(bench).map(({ version }) => version.contentHash),
   axis: bench.axis,
+  noiseModel: bench.noiseModel,
   ladder: bench.ladder,
   draws: bench.draws,
   seed: bench.seed,

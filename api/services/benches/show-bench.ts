@@ -84,6 +84,7 @@ export async function showBench(em: EntityManager, input: { readonly bench: Load
     ...toBenchSummary(bench, bench.group.$, counts.get(bench.id)),
     description: bench.description,
     axis: bench.axis,
+    noiseModel: bench.noiseModel,
     ladder: bench.ladder,
     draws: bench.draws,
     seed: bench.seed,

@@ -16,7 +16,7 @@ import { statistics } from '../../../solvers/statistics/definitions';
 export const listMethods = (): MethodWire[] => methods.map(toMethod);
 export const listMetrics = (): MetricWire[] => metrics.map(toMetric);
 export const listNoiseModels = (): NoiseModelWire[] =>
-  noiseModels.map(({ key, name, summary, formula, sources, exact }) => ({ key, name, summary, formula, sources: sources.map(toSource), exact }));
+  noiseModels.map(({ key, name, summary, formula, sources, exact, families }) => ({ key, name, summary, formula, sources: sources.map(toSource), exact, families: [...families] }));
 export const listRules = (): RuleWire[] =>
   parameterRules.map((rule) => ({
     key: rule.key,

@@ -28,7 +28,7 @@ export function runPriority(methodKey: string): number {
 export async function enqueueRun(
   em: EntityManager,
   input: Acting & {
-    readonly bench: Pick<Bench, 'axis' | 'ladder' | 'draws' | 'seed'>;
+    readonly bench: Pick<Bench, 'axis' | 'noiseModel' | 'ladder' | 'draws' | 'seed'>;
     readonly entry: Pick<Entry, 'id'>;
     readonly solverVersion: Pick<SolverVersion, 'configuration' | 'method'>;
     readonly phantomVersion: Pick<PhantomVersion, 'id' | 'contentHash'>;
@@ -48,6 +48,7 @@ export async function enqueueRun(
     reviewer: null,
     configuration: solverVersion.configuration,
     axis: bench.axis,
+    noiseModel: bench.noiseModel,
     ladder: [...bench.ladder],
     draws: bench.draws,
     seed: bench.seed,

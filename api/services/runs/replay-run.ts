@@ -24,6 +24,7 @@ export async function replayRun(em: EntityManager, input: { readonly run: Loaded
     phantomHash: run.phantomHash,
     problem: describeProblem(definition),
     configuration: run.configuration,
+    noiseModel: run.noiseModel,
     axis: axisOf(run),
     cases: cases?.map(({ clean, noiseScale, rows }) => ({ clean: encodeArray(clean), noiseScale, rows: rows ? [...rows] : null })) ?? null,
     ladder: run.ladder,

@@ -59,7 +59,7 @@ function preamble(run: LoadedRun): string {
   return commentLines([
     `Hadamark run ${run.id}: ${version.solver.$.name}, version ${version.n}, on ${phantom.name}, version ${phantom.n}`,
     `Bench ${bench.id}, revision ${bench.revision}: ${bench.title}`,
-    noiseWords(phantom.definition.noiseReference),
+    noiseWords(phantom.definition.noiseReference, run.noiseModel),
     ...axisLine(run),
     `Seed ${run.seed}; ${run.draws} draws a level; code ${run.codeVersion ?? 'not started'}`,
     `Phantom ${run.phantomHash}; solver ${version.contentHash}; result ${run.resultHash ?? 'not finished'}`,

@@ -10,6 +10,7 @@ import { loadRunFigures } from '../figures/load-run-figures.ts';
 import { countOpenQuestions } from '../review/comments.ts';
 import { metrics } from '../../../solvers/metrics/registry';
 import { describeProblem } from '../../../solvers/problems/registry';
+import { noiseModelName } from '../benches/noise-words.ts';
 import { axisOf } from './axis-of.ts';
 import { runSubject, type LoadedRun } from './find-run.ts';
 import { toRunSummary } from './run-summary.ts';
@@ -30,6 +31,7 @@ export async function showRun(em: EntityManager, input: { readonly run: LoadedRu
   const trivial = run.trivial ?? {};
   return {
     ...toRunSummary(run, now, input.secondsLeft),
+    noiseModel: run.noiseModel,
     axis: axisOf(run),
     ladder: run.ladder,
     draws: run.draws,
@@ -88,7 +90,7 @@ function provenanceOf(run: LoadedRun, simulation: Simulation): RunDetail['proven
     { what: 'Inversion model', detail: `${summary.inversion.cells} cells, ${summary.inversion.nodes} nodes, another mesh than the simulation`, hash: null },
     { what: 'Solver', detail: `${solver.solver.$.id}, ${solver.solver.$.name}, version ${solver.n}`, hash: solver.contentHash },
     { what: 'Bench', detail: `${bench.id}, ${bench.title}, revision ${bench.revision}`, hash: bench.contentHash },
-    { what: 'Noise', detail: `Gaussian, exact level, relative to the ${phantom.definition.noiseReference}; ${levelsWords(run)}, ${run.draws} draws each, seed ${run.seed}`, hash: null },
+    { what: 'Noise', detail: `${noiseModelName(run.noiseModel)}, relative to the ${phantom.definition.noiseReference}; ${levelsWords(run)}, ${run.draws} draws each, seed ${run.seed}`, hash: null },
     { what: 'Code', detail: run.codeVersion ? `Version ${run.codeVersion}` : 'Not started', hash: null },
     { what: 'Result', detail: run.finishedAt ? `Over the images of ${run.total} draws, finished ${written.format(run.finishedAt)} UTC` : 'Not finished', hash: run.resultHash ?? null },
   ];

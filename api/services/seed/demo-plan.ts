@@ -45,6 +45,8 @@ export interface BenchPlan {
   readonly phantoms: readonly string[];
   /** The noise where absent. */
   readonly axis?: AxisSetting;
+  /** The Gaussian one of exact level where absent. */
+  readonly noiseModel?: string;
   readonly ladder: readonly number[];
   readonly draws: number;
   readonly seed: number;

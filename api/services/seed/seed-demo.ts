@@ -178,10 +178,10 @@ async function seedBench(context: SeedContext, plan: BenchPlan, solvers: readonl
   if ((await em.count(BenchEntity, { slug })) === 0) {
     const phantoms: { slug: string; version: number }[] = [];
     for (const folder of plan.phantoms) phantoms.push({ slug: slugify((await readStockPhantom(folder)).name), version: 1 });
-    const { group, title, question, description, ladder, draws, seed: benchSeed, axis = { key: 'noise' } } = plan;
+    const { group, title, question, description, ladder, draws, seed: benchSeed, axis = { key: 'noise' }, noiseModel = 'gaussian' } = plan;
     await createBench(em, {
       ...acting, group: await groupOf(em, group),
-      bench: { group, title, question, description, phantoms, axis, ladder: [...ladder], draws, seed: benchSeed, rankingMetric: 'relative-l2-error' },
+      bench: { group, title, question, description, phantoms, axis, noiseModel, ladder: [...ladder], draws, seed: benchSeed, rankingMetric: 'relative-l2-error' },
     });
   }
   const opened = orm.em.fork();

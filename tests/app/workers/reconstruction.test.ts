@@ -28,7 +28,7 @@ function storedRun(): Replay {
   const ladder = [0.001, 0.01];
   const trials = ladder.flatMap((level, levelIndex) => runLevel(prepared, phantom, { benchSeed: 7, phantomHash: 'f'.repeat(64), levelIndex, level, draws: [0, 1] }));
   return {
-    run: 'RN-1', phantomHash: 'f'.repeat(64), problem: { family: 'electrical-impedance', geometry, dataKind: 'difference', background: 1 }, configuration, axis: { key: 'noise' }, cases: null, ladder, draws: 2, seed: 7, noiseScale: 1e-3,
+    run: 'RN-1', phantomHash: 'f'.repeat(64), problem: { family: 'electrical-impedance', geometry, dataKind: 'difference', background: 1 }, configuration, noiseModel: 'gaussian', axis: { key: 'noise' }, cases: null, ladder, draws: 2, seed: 7, noiseScale: 1e-3,
     clean: encodeArray(clean), truth: encodeArray(image), targets: [], trials: trials.map((t) => ({ level: t.levelIndex, draw: t.drawIndex, imageHash: t.imageHash })), resultHash: runHash(trials.map((t) => t.imageHash)),
   };
 }

@@ -67,7 +67,7 @@ export function definitionsOf(kind: Kind, catalogue: Catalogue): Definition[] {
     case 'noise':
       return catalogue.noise.map((n) => ({
         kind, key: n.key, name: n.name, summary: n.summary, formula: n.formula, fields: [], sources: n.sources, notes: none,
-        facts: [['Level', n.exact ? 'exact in every draw' : 'in expectation'], ['Key', n.key]],
+        facts: [['Level', n.exact ? 'exact in every draw' : 'in expectation'], ['Families', n.families.join(', ')], ['Key', n.key]],
       }));
     case 'checks':
       return catalogue.checks.map((c) => ({
