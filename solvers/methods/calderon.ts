@@ -29,7 +29,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   fields,
   capabilities: { linear: false, nonlinear: true, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
-  fixedValue: defineField('value', { kind: 'number', label: 'Cutoff', symbol: 'K', unit: '1/R', default: 5, minimum: 0.5, maximum: 24, scale: 'linear', help: 'Largest frequency kept, over one body radius: details down to about 3 R / K.' }),
+  fixedValue: defineField('value', { kind: 'number', label: 'Cutoff', symbol: 'K', unit: '1/R', default: 5, minimum: 0.1, maximum: 24, scale: 'linear', help: 'Largest frequency kept, over one body radius: details down to about 3 R / K.' }),
   unfit: harmonicsUnfit,
   prepare(problem, parameters, rule) {
     const { largestCutoff } = readParameters(method.name, schema, parameters);

@@ -36,7 +36,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   fields,
   capabilities: { linear: false, nonlinear: true, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
-  fixedValue: defineField('value', { kind: 'number', label: 'Truncation radius', symbol: 'R_k', unit: '1/R', default: 3, minimum: 0.25, maximum: 12, scale: 'linear', help: 'Largest |k| of the transform, over one body radius: details down to about 1.5 body radii over this number.' }),
+  fixedValue: defineField('value', { kind: 'number', label: 'Truncation radius', symbol: 'R_k', unit: '1/R', default: 3, minimum: 0.05, maximum: 12, scale: 'linear', help: 'Largest |k| of the transform, over one body radius: details down to about 1.5 body radii over this number.' }),
   unfit: harmonicsUnfit,
   prepare(problem, parameters, rule) {
     const { traces, largestRadius } = readParameters(method.name, schema, parameters);
