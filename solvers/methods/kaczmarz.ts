@@ -21,6 +21,8 @@ const { schema, fields } = defineParameters(specs);
 
 /** A datum whose squared row is below this share of the largest depends on nothing and says nothing. */
 const smallestRow = 1e-24;
+/** The same where rows are those of rays: one that only grazes the body carries its noise over the length of its chord into the cells at the rim. */
+const grazingRow = 0.01;
 
 /** Sweeps over the rows of the derivative itself: sparse ones where the norm is that of the unknowns, else rows of J R^{-1}. */
 function kaczmarzByRows(problem: ForwardProblem, options: { penalty: PenaltyKey; constraint: ConstraintKey; relaxation: number; largestIteration: number }, setting: RuleSetting): Reconstructor {
@@ -50,6 +52,7 @@ function kaczmarzByRows(problem: ForwardProblem, options: { penalty: PenaltyKey;
     for (let k = rowStart[i]; k < rowStart[i + 1]; k++) squares[i] += values[k] * values[k];
     largest = Math.max(largest, squares[i]);
   }
+  const least = problem.family === 'electrical-impedance' ? smallestRow : grazingRow;
   const lowest = lowestChange(problem, constraint)?.map((value, j) => value * root[j]) ?? null;
   return stoppedByAction(base, setting, largestIteration, (y) => {
     const z = new Float64Array(n);
@@ -61,7 +64,7 @@ function kaczmarzByRows(problem: ForwardProblem, options: { penalty: PenaltyKey;
       advance() {
         let moved = false;
         for (let i = 0; i < m; i++) {
-          if (!(squares[i] > smallestRow * largest)) continue;
+          if (!(squares[i] > least * largest)) continue;
           let rest = y[i];
           for (let k = rowStart[i]; k < rowStart[i + 1]; k++) rest -= values[k] * z[columns[k]];
           const step = (relaxation * rest) / squares[i];
@@ -119,7 +122,7 @@ const method: Method<ParametersOf<typeof specs>> = {
         advance() {
           let moved = false;
           for (let i = 0; i < m; i++) {
-            if (!(squares[i] > smallestRow * largest)) continue;
+            if (!(squares[i] > least * largest)) continue;
             const row = i * rank;
             let rest = data[i] - offset[i];
             for (let k = 0; k < rank; k++) rest -= rows[row + k] * z[k];
