@@ -7,8 +7,8 @@ import { makeReconstructor } from './reconstructor';
 
 const specs = {
   largestCutoff: {
-    kind: 'number', label: 'Largest cutoff', symbol: 'K_{\\max}', unit: '1/R', default: 16, minimum: 1, maximum: 24, scale: 'linear',
-    help: 'The discrepancy principle looks for a cutoff in sixteen steps up to here, at most half the number of electrodes: beyond that the data hold nothing.',
+    kind: 'number', label: 'Largest cutoff', symbol: 'K_{\\max}', unit: 'per body radius', default: 16, minimum: 1, maximum: 24, scale: 'linear',
+    help: 'The discrepancy principle compares the noise with the transform itself, ring by ring, and looks for a cutoff in sixteen steps up to here, at most half the number of electrodes: beyond that the data hold nothing.',
   },
 } as const;
 const { schema, fields } = defineParameters(specs);
@@ -29,7 +29,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   fields,
   capabilities: { linear: false, nonlinear: true, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
-  fixedValue: defineField('value', { kind: 'number', label: 'Cutoff', symbol: 'K', unit: '1/R', default: 5, minimum: 0.1, maximum: 24, scale: 'linear', help: 'Largest frequency kept, over one body radius: details down to about 3 R / K.' }),
+  fixedValue: defineField('value', { kind: 'number', label: 'Cutoff', symbol: 'K', unit: 'per body radius', default: 5, minimum: 0.1, maximum: 24, scale: 'linear', help: 'Largest frequency kept, over one body radius: details down to about 3 R / K.' }),
   unfit: harmonicsUnfit,
   prepare(problem, parameters, rule) {
     const { largestCutoff } = readParameters(method.name, schema, parameters);

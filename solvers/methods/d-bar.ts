@@ -13,8 +13,8 @@ const specs = {
     help: 'The true transform needs the traces of the growing solutions. The exponentials replace them by those of a constant conductivity; the single layer corrects them with the Green function of the Laplace equation.',
   },
   largestRadius: {
-    kind: 'number', label: 'Largest radius', symbol: 'R_{\\max}', unit: '1/R', default: 8, minimum: 0.5, maximum: 12, scale: 'linear',
-    help: 'The discrepancy principle looks for a truncation radius in sixteen steps up to here, at most a quarter of the number of electrodes: beyond that the data hold nothing.',
+    kind: 'number', label: 'Largest radius', symbol: 'R_{\\max}', unit: 'per body radius', default: 8, minimum: 0.5, maximum: 12, scale: 'linear',
+    help: 'The discrepancy principle compares the noise with the transform itself, ring by ring, and looks for a radius in sixteen steps up to here, at most a quarter of the number of electrodes: beyond that the data hold nothing.',
   },
 } as const;
 const { schema, fields } = defineParameters(specs);
@@ -36,7 +36,7 @@ const method: Method<ParametersOf<typeof specs>> = {
   fields,
   capabilities: { linear: false, nonlinear: true, direct: true, statistical: false, families: ['electrical-impedance'], dataKinds: ['difference', 'absolute'], rules: ['discrepancy', 'fixed'] },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
-  fixedValue: defineField('value', { kind: 'number', label: 'Truncation radius', symbol: 'R_k', unit: '1/R', default: 3, minimum: 0.05, maximum: 12, scale: 'linear', help: 'Largest |k| of the transform, over one body radius: details down to about 1.5 body radii over this number.' }),
+  fixedValue: defineField('value', { kind: 'number', label: 'Truncation radius', symbol: 'R', unit: 'per body radius', default: 3, minimum: 0.05, maximum: 12, scale: 'linear', help: 'Largest |k| of the transform, over one body radius: details down to about 1.5 body radii over this number.' }),
   unfit: harmonicsUnfit,
   prepare(problem, parameters, rule) {
     const { traces, largestRadius } = readParameters(method.name, schema, parameters);
