@@ -12,10 +12,11 @@ import { metricChecks } from './metrics';
 import { randomnessChecks } from './randomness';
 import { regularisationChecks } from './regularisation';
 import { statisticsChecks } from './statistics';
+import { xrayChecks } from './x-ray';
 
 /** Every published value that an instance computes again, in the order of the page. */
 export const verificationChecks: readonly VerificationCheck[] = [
-  ...concentricDiscChecks, ...electrodeModelChecks, ...boundaryIntegralChecks, ...integralEquationChecks, ...deblurringChecks, ...derivativeChecks, ...regularisationChecks, ...closedFormChecks, ...directMethodChecks, ...metricChecks, ...statisticsChecks, ...randomnessChecks,
+  ...concentricDiscChecks, ...electrodeModelChecks, ...boundaryIntegralChecks, ...integralEquationChecks, ...deblurringChecks, ...derivativeChecks, ...xrayChecks, ...regularisationChecks, ...closedFormChecks, ...directMethodChecks, ...metricChecks, ...statisticsChecks, ...randomnessChecks,
 ];
 
 /** @throws RangeError for an unknown key */

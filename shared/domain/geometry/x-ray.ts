@@ -4,6 +4,9 @@ import { discBodySchema } from '../body';
 export const beamKeys = ['parallel', 'fan'] as const;
 export type BeamKey = (typeof beamKeys)[number];
 
+/** Rays of one phantom: a matrix of some 200 MB at the finest cells. */
+const largestRayCount = 65_536;
+
 /**
  * Line integrals through a disc. Views stand at `firstAngleDeg + k arcDeg / views`, k = 0 .. views - 1: the direction of the
  * detector axis for a parallel beam, the place of the source for a fan. The detector has `detectors` cells of `detectorSpacing`
@@ -26,6 +29,7 @@ export const xrayGeometrySchema = z
   })
   .superRefine((g, ctx) => {
     const fault = (path: string, message: string) => ctx.addIssue({ code: 'custom', path: [path], message });
+    if (g.views * g.detectors > largestRayCount) fault('views', `At most ${largestRayCount} rays in all: ${g.views} views of ${g.detectors} detector cells are ${g.views * g.detectors}.`);
     if (g.beam === 'parallel') {
       if (g.sourceDistance !== undefined) fault('sourceDistance', 'A parallel beam has no source distance.');
       if (g.detectorDistance !== undefined) fault('detectorDistance', 'A parallel beam has no detector distance.');
