@@ -95,6 +95,11 @@ async function seed(options: SeedOptions, stopped: () => boolean): Promise<void>
     if (stopped()) return;
     await seedPhantom(context, phantom, options.phantoms ?? stockFolder());
   }
+  // What takes long comes last, so that every bench has its first ranking early.
+  for (const bench of plan.benches) {
+    if (stopped()) return;
+    await enterSolvers(context, bench, plan.solvers, bench.entries.filter((entry) => entry.last));
+  }
   logger.info({ seconds: Math.round((performance.now() - began) / 1000) }, 'the demonstration stands; its runs are computed now');
   if (!(await reviewDemo(context, plan))) return;
   const em = orm.em.fork();
@@ -171,7 +176,7 @@ async function seedPhantom(context: SeedContext, plan: PhantomPlan, folder: stri
 }
 
 async function seedBench(context: SeedContext, plan: BenchPlan, solvers: readonly SolverPlan[]): Promise<void> {
-  const { orm, clock, jobs, logger } = context;
+  const { orm, clock, logger } = context;
   const slug = slugify(plan.title);
   const em = orm.em.fork();
   const acting = await actAs(context, em, plan.curator);
@@ -192,11 +197,19 @@ async function seedBench(context: SeedContext, plan: BenchPlan, solvers: readonl
     return;
   }
   if (bench.state === 'draft') await openBench(opened, { ...acting, now: clock(), bench });
-  for (const { solver: key, by, version } of plan.entries) {
+  await enterSolvers(context, plan, solvers, plan.entries.filter((entry) => !entry.last));
+}
+
+/** Enters what is not entered yet; a bench that waits for its phantoms gets nothing. */
+async function enterSolvers(context: SeedContext, plan: BenchPlan, solvers: readonly SolverPlan[], entries: BenchPlan['entries']): Promise<void> {
+  const { orm, jobs } = context;
+  const slug = slugify(plan.title);
+  for (const { solver: key, by, version } of entries) {
     const name = solvers.find((solver) => solver.key === key)?.name;
     if (name === undefined) throw new Error(`The demonstration has no solver '${key}'.`);
     const inner = orm.em.fork();
     const entered = await findBench(inner, slug);
+    if (entered.state !== 'open') return;
     const solver = await findSolver(inner, slugify(name));
     const n = version ?? Math.max(...solver.versions.getItems().map((row) => row.n));
     if (entriesOf(entered).some((entry) => entry.solver.id === solver.id && entry.version.n === n)) continue;

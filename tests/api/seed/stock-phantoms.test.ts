@@ -6,8 +6,11 @@ import { slugify } from '../../../api/services/identifiers.ts';
 import { demoPlan } from '../../../api/services/seed/demo-plan.ts';
 import { readStockPhantom, stockFolder } from '../../../api/services/seed/stock-phantoms.ts';
 import { checkConfiguration, whyUnfit } from '../../../api/services/solvers/check-configuration.ts';
+import { axisWords, levelsFault } from '../../../shared/domain/axes.ts';
+import { familyKeys } from '../../../shared/domain/families.ts';
 import { can } from '../../../shared/domain/permissions.ts';
 import { contentHash, sha256Hex } from '../../../solvers/core/hash.ts';
+import { getMethod } from '../../../solvers/methods/registry.ts';
 import { demoAccounts } from '../../../api/sign-in/demo-accounts.ts';
 
 const folders = readdirSync(stockFolder());
@@ -76,12 +79,26 @@ describe('the demonstration plan', () => {
     }
   });
 
+  it('has a bench for every family, and benches on other axes than the noise whose levels are admissible', async () => {
+    const families = await Promise.all(demoPlan.benches.map(async (bench) => (await readStockPhantom(bench.phantoms[0]!)).definition.family));
+    expect(new Set(families)).toEqual(new Set(familyKeys));
+    demoPlan.benches.forEach((bench, i) => {
+      const key = bench.axis?.key ?? 'noise';
+      expect(axisWords[key].families).toContain(families[i]);
+      expect(levelsFault(key, bench.ladder), bench.key).toBeNull();
+    });
+    expect(demoPlan.benches.map((bench) => bench.axis?.key)).toEqual(expect.arrayContaining(['contrast', 'electrode-displacement']));
+  });
+
   it('covers what the demonstration is to show', () => {
     const published = demoPlan.phantoms.filter((phantom) => phantom.published);
     expect(published.length).toBeGreaterThanOrEqual(5);
     expect(demoPlan.phantoms.filter((phantom) => !phantom.published)).toHaveLength(1);
     expect(published.filter((phantom) => phantom.sealedForDays !== undefined)).toHaveLength(1);
-    expect(new Set(demoPlan.solvers.map((solver) => solver.configuration.method))).toEqual(new Set(['tikhonov', 'truncated-svd', 'cgls', 'total-variation', 'gauss-newton']));
+    expect(demoPlan.phantoms.map((phantom) => phantom.folder).sort()).toEqual([...folders].sort());
+    const entered = new Set(demoPlan.benches.flatMap((bench) => bench.entries.map((entry) => entry.solver)));
+    expect(new Set(demoPlan.solvers.map((solver) => solver.key))).toEqual(entered);
+    expect(new Set(demoPlan.solvers.map((solver) => getMethod(solver.configuration.method).class))).toEqual(new Set(['spectral', 'iterative', 'variational', 'nonlinear', 'direct', 'statistical']));
     expect(new Set(demoPlan.reviews.flatMap((review) => review.verdict?.verdict ?? []))).toEqual(new Set(['signed-off', 'signed-off-with-reservation', 'returned']));
     const names = [...demoPlan.solvers.map((solver) => slugify(solver.name)), ...demoPlan.benches.map((bench) => slugify(bench.title))];
     expect(new Set(names).size).toBe(names.length);
