@@ -1,24 +1,29 @@
 import { loadKernels, type Kernels } from './web-assembly';
 
 /*
- * The memory of the compiled kernels: first one resident block (the factor used last), then scratch that lives for one call.
- * Views are made anew for every call, because growing the memory detaches the old ones.
+ * The memory of the compiled kernels: first the blocks that stay between calls, one after another, then scratch that lives for one
+ * call. Views are made anew for every call, because growing the memory detaches the old ones.
  */
 
 /** More than this is left to the TypeScript twins: a 32-bit memory ends at 4 GiB, and it never shrinks. */
 const largestMemory = 0x40000000;
+/** Blocks that stay: beyond these all are sent away and the newest starts anew. */
+const largestStay = 0x18000000;
+const mostResidents = 4;
 const page = 0x10000;
 
 /** Something that wants to stay in the memory between calls, and can be taken out. */
 export interface Resident {
   readonly bytes: number;
-  /** Copies what is needed out of the memory before another takes the place. */
+  /** True once it is not needed any more. */
+  readonly released?: boolean;
+  /** Copies what is needed out of the memory before the place is given away. */
   leave(from: ArrayBuffer, address: number): void;
 }
 
 let compiled = true;
-let resident: WeakRef<Resident> | null = null;
-let residentBytes = 0;
+// Weak: an owner that nobody holds needs no place. When that is noticed changes the time taken, never a value.
+let residents: { readonly owner: WeakRef<Resident>; readonly bytes: number }[] = [];
 
 /**
  * The compiled kernels of this thread, or null where the engine or a content policy refuses them. Their TypeScript twins then
@@ -31,11 +36,12 @@ export function kernels(): Kernels | null {
 /** Turns the compiled kernels off (false) and on again, so that a test can compare them with their twins. */
 export function useCompiledKernels(use: boolean): void {
   const found = kernels();
-  if (found) evict(found);
+  if (found) sendAway(found);
   compiled = use;
 }
 
 const aligned = (bytes: number): number => (bytes + 63) & ~63;
+const stay = (): number => residents.reduce((sum, { bytes }) => sum + bytes, 0);
 
 /** Scratch addresses of one call, in the order asked for. */
 export interface Scratch {
@@ -51,53 +57,56 @@ export interface Scratch {
 export function scratchOf(...bytes: readonly number[]): Scratch | null {
   const found = kernels();
   if (!found) return null;
-  let total = 0;
-  for (const size of bytes) total += aligned(size);
+  const total = bytes.reduce((sum, size) => sum + aligned(size), 0);
   if (total > largestMemory) return null;
-  if (residentBytes + total > largestMemory) evict(found);
-  return place(found, aligned(found.firstFree()) + residentBytes, bytes);
+  if (stay() + total > largestMemory) sendAway(found);
+  return place(found, bytes);
 }
 
 /**
- * As `scratchOf`, with the block of `owner` first, resident until another owner asks.
- * @returns also whether the block is new to the memory and has to be filled
+ * As `scratchOf`, with a block for `owner` that stays.
+ * @returns also its address, and whether the block is new to the memory and has to be filled
  */
 export function scratchWith(owner: Resident, ...bytes: readonly number[]): (Scratch & { readonly address: number; readonly fresh: boolean }) | null {
   const found = kernels();
   if (!found) return null;
-  let total = aligned(owner.bytes);
-  for (const size of bytes) total += aligned(size);
-  if (total > largestMemory) return null;
-  const fresh = resident?.deref() !== owner;
+  const own = aligned(owner.bytes);
+  const total = bytes.reduce((sum, size) => sum + aligned(size), 0);
+  if (own + total > largestMemory) return null;
+  let index = residents.findIndex((resident) => resident.owner.deref() === owner);
+  const fresh = index < 0 || stay() + total > largestMemory;
   if (fresh) {
-    evict(found);
-    resident = new WeakRef(owner);
-    residentBytes = aligned(owner.bytes);
+    while (residents.length > 0 && (residents[residents.length - 1].owner.deref()?.released ?? true)) residents.pop();
+    if (residents.length >= mostResidents || stay() + own > largestStay || stay() + own + total > largestMemory || index >= 0) sendAway(found);
+    index = residents.length;
+    residents.push({ owner: new WeakRef(owner), bytes: own });
   }
-  const address = aligned(found.firstFree());
-  const scratch = place(found, address + residentBytes, bytes);
+  const scratch = place(found, bytes);
   if (!scratch) {
-    if (fresh) forget();
-    else evict(found);
+    if (fresh) residents.pop();
+    else sendAway(found);
     return null;
   }
-  return { ...scratch, address, fresh };
+  return { ...scratch, address: addressOf(found, index), fresh };
 }
 
-/** Ends the stay of the resident block without copying anything out. */
-export function forget(): void {
-  resident = null;
-  residentBytes = 0;
+function addressOf(found: Kernels, index: number): number {
+  let address = aligned(found.firstFree());
+  for (let k = 0; k < index; k++) address += residents[k].bytes;
+  return address;
 }
 
-function evict(found: Kernels): void {
-  resident?.deref()?.leave(found.memory.buffer as ArrayBuffer, aligned(found.firstFree()));
-  forget();
+function sendAway(found: Kernels): void {
+  residents.forEach(({ owner }, index) => {
+    const resident = owner.deref();
+    if (resident && !resident.released) resident.leave(found.memory.buffer as ArrayBuffer, addressOf(found, index));
+  });
+  residents = [];
 }
 
-function place(found: Kernels, from: number, bytes: readonly number[]): Scratch | null {
+function place(found: Kernels, bytes: readonly number[]): Scratch | null {
   const addresses: number[] = [];
-  let end = from;
+  let end = addressOf(found, residents.length);
   for (const size of bytes) {
     addresses.push(end);
     end += aligned(size);

@@ -1,7 +1,7 @@
 export { multiply, packedBytes } from './product';
 export { backwardFour, factorise, factorPanel, forwardFour } from './cholesky';
 export { backwardEight, forwardEight } from './solve-eight';
-export { addScaled, dot, rowsTimes, timesRows } from './vector';
+export { addScaled, dot, rowsTimes, sparseRows, timesRows } from './vector';
 export { pairSensitivities } from './sensitivity';
 export { sha256Blocks } from './sha256';
 export { windowSums } from './smoothing';

@@ -125,3 +125,47 @@ export function timesRows(a: usize, stride: usize, rows: i32, cols: i32, x: usiz
     a += stride;
   }
 }
+
+/** out = A x for compressed sparse rows; every row is summed in the order of its entries, four rows at a time. */
+export function sparseRows(rows: i32, rowStart: usize, columns: usize, values: usize, x: usize, out: usize): void {
+  let i = 0;
+  for (; i + 4 <= rows; i += 4) {
+    let k0 = i32.load(rowStart), k1 = i32.load(rowStart, 4), k2 = i32.load(rowStart, 8), k3 = i32.load(rowStart, 12);
+    const e0 = k1, e1 = k2, e2 = k3, e3 = i32.load(rowStart, 16);
+    const common = min(min(e0 - k0, e1 - k1), min(e2 - k2, e3 - k3));
+    let s0: f64 = 0, s1: f64 = 0, s2: f64 = 0, s3: f64 = 0;
+    let c0 = columns + (<usize>k0 << 2), c1 = columns + (<usize>k1 << 2), c2 = columns + (<usize>k2 << 2), c3 = columns + (<usize>k3 << 2);
+    let v0 = values + (<usize>k0 << 3), v1 = values + (<usize>k1 << 3), v2 = values + (<usize>k2 << 3), v3 = values + (<usize>k3 << 3);
+    const end = c0 + (<usize>common << 2);
+    while (c0 < end) {
+      s0 += f64.load(v0) * f64.load(x + (<usize>i32.load(c0) << 3));
+      s1 += f64.load(v1) * f64.load(x + (<usize>i32.load(c1) << 3));
+      s2 += f64.load(v2) * f64.load(x + (<usize>i32.load(c2) << 3));
+      s3 += f64.load(v3) * f64.load(x + (<usize>i32.load(c3) << 3));
+      c0 += 4;
+      c1 += 4;
+      c2 += 4;
+      c3 += 4;
+      v0 += 8;
+      v1 += 8;
+      v2 += 8;
+      v3 += 8;
+    }
+    f64.store(out, rowRest(s0, k0 + common, e0, columns, values, x));
+    f64.store(out, rowRest(s1, k1 + common, e1, columns, values, x), 8);
+    f64.store(out, rowRest(s2, k2 + common, e2, columns, values, x), 16);
+    f64.store(out, rowRest(s3, k3 + common, e3, columns, values, x), 24);
+    rowStart += 16;
+    out += 32;
+  }
+  for (; i < rows; i++) {
+    f64.store(out, rowRest(0, i32.load(rowStart), i32.load(rowStart, 4), columns, values, x));
+    rowStart += 4;
+    out += 8;
+  }
+}
+
+function rowRest(sum: f64, k: i32, end: i32, columns: usize, values: usize, x: usize): f64 {
+  for (; k < end; k++) sum += f64.load(values + (<usize>k << 3)) * f64.load(x + (<usize>i32.load(columns + (<usize>k << 2)) << 3));
+  return sum;
+}

@@ -13,6 +13,7 @@ export interface Kernels {
   addScaled(alpha: number, x: number, y: number, count: number): void;
   rowsTimes(a: number, stride: number, rows: number, cols: number, x: number, out: number): void;
   timesRows(a: number, stride: number, rows: number, cols: number, x: number, out: number): void;
+  sparseRows(rows: number, rowStart: number, columns: number, values: number, x: number, out: number): void;
   factorPanel(panel: number, width: number, height: number): number;
   factorise(
     panels: number, supernodes: number, first: number, rowStart: number, rowIndex: number, panelStart: number, supernodeOf: number,

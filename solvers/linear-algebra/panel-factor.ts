@@ -1,4 +1,4 @@
-import { forget, scratchWith, type Resident } from '../kernels/kernel-memory';
+import { scratchWith, type Resident } from '../kernels/kernel-memory';
 import type { Kernels } from '../kernels/web-assembly';
 import { factorPanel, paddedHeight, subtractDescendant } from './panel-kernels';
 import { backwardBlock, blockWidth, forwardBlock } from './panel-solve';
@@ -26,7 +26,7 @@ export class PanelFactor implements Resident {
   private readonly longest: number;
   /** Null while the only copy is in the memory of the kernels. */
   private panels: Float64Array | null = null;
-  private released = false;
+  private isReleased = false;
 
   constructor(private readonly analysis: CholeskyAnalysis) {
     const { panelStart, supernodes, rowStart, layout } = analysis;
@@ -38,13 +38,17 @@ export class PanelFactor implements Resident {
     this.longest = longest;
   }
 
+  get released(): boolean {
+    return this.isReleased;
+  }
+
   leave(from: ArrayBuffer, address: number): void {
-    if (!this.released) this.panels ??= new Float64Array(from, address, this.entries).slice();
+    this.panels ??= new Float64Array(from, address, this.entries).slice();
   }
 
   /** The factor is not needed any more: nothing is copied out for it. */
   release(): void {
-    this.released = true;
+    this.isReleased = true;
     this.panels = null;
   }
 
@@ -67,7 +71,7 @@ export class PanelFactor implements Resident {
     const failed = room.kernels.factorise(
       room.address, supernodes, layout.first, layout.rowStart, layout.rowIndex, layout.panelStart, layout.supernodeOf, localRow, head, next, reached, places,
     );
-    if (failed >= 0) forget();
+    if (failed >= 0) this.release();
     return failed;
   }
 

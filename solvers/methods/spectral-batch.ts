@@ -14,7 +14,7 @@ export interface SpectralChoice {
 type Choose = (frame: SpectralData, noise: NoiseInfo, data: Float64Array, context?: ReconstructContext) => SpectralChoice;
 
 /** Frames taken together; a caller that wants to stop is asked between two batches. */
-const batch = 48;
+const batch = 256;
 /** Fewer frames than this are taken one by one. */
 const worthProduct = 3;
 
@@ -80,8 +80,8 @@ function expandMany(system: SpectralSystem, choices: readonly SpectralChoice[]):
   choices.forEach((choice, f) => d.set(choice.d.subarray(0, choice.count), f * used));
   const all = matmul(d, basis.subarray(0, used * unknowns), choices.length, used, unknowns);
   return choices.map((_, f) => {
-    const x = all.slice(f * unknowns, (f + 1) * unknowns);
-    for (let j = 0; j < unknowns; j++) x[j] += background[j];
+    const x = new Float64Array(unknowns);
+    for (let j = 0, from = f * unknowns; j < unknowns; j++, from++) x[j] = all[from] + background[j];
     return x;
   });
 }

@@ -82,7 +82,7 @@ def batch(o):
     m, r, pixels, draws = (int(o[k]) for k in ('data', 'rank', 'pixels', 'draws'))
     left, basis, f, data = array('batch-left').reshape(m, r), array('batch-basis').reshape(r, pixels), array('batch-filter'), array('batch-data').reshape(draws, m)
     t, x = timed(lambda: ((data @ left) * f) @ basis, o['repetitions'])
-    return dict(batch=t), dict(squares=float((x * x).sum()))
+    return dict(batch=t), dict(squares=float((x[:, [0, -1]] ** 2).sum()))
 
 
 STAGES = {

@@ -30,7 +30,7 @@ export class PeerProcess {
     const [numpy, scipy, python] = probe.stdout.trim().split(' ');
     const count = String(threads);
     const child = spawn('python3', [script], {
-      stdio: ['pipe', 'pipe', 'inherit'], env: { ...process.env, OMP_NUM_THREADS: count, OPENBLAS_NUM_THREADS: count, MKL_NUM_THREADS: count, PYTHONWARNINGS: 'ignore' },
+      stdio: ['pipe', 'pipe', 'inherit'], env: { ...process.env, OMP_NUM_THREADS: count, OPENBLAS_NUM_THREADS: count, MKL_NUM_THREADS: count, PYTHONWARNINGS: 'ignore', PYTHONDONTWRITEBYTECODE: '1' },
     });
     return new PeerProcess(child, createInterface({ input: child.stdout! }), mkdtempSync(join(tmpdir(), 'hadamark-bench-')), { numpy, scipy, python });
   }

@@ -3,6 +3,7 @@ import { join } from 'node:path';
 import fc from 'fast-check';
 import { afterEach, describe, expect, it } from 'vitest';
 import { sha256Hex } from '../../../solvers/core/hash';
+import { applySparse, applySparseTransposed } from '../../../solvers/core/sparse';
 import { kernels, useCompiledKernels } from '../../../solvers/kernels/kernel-memory';
 import { denseCholesky } from '../../../solvers/linear-algebra/dense-cholesky';
 import { matmul, matmulLeftTransposed, matmulTransposed, transpose } from '../../../solvers/linear-algebra/matrix-product';
@@ -123,6 +124,34 @@ describe('compiled kernels', () => {
       const [compiled, twin] = both(() => structuralSimilarity(random(count, 1), random(count, 2), grid, 1));
       expect(compiled).toBe(twin);
     }
+  });
+
+  it('give the bits of their twins: large sparse products, again and again, and after the transpose is kept', () => {
+    const [rows, cols, perRow] = [503, 400, 201];
+    const next = uniform(9);
+    const columns = new Int32Array(rows * perRow);
+    for (let i = 0; i < rows; i++) {
+      const first = Math.floor(next() * (cols - perRow));
+      for (let k = 0; k < perRow; k++) columns[i * perRow + k] = first + k;
+    }
+    const matrix = { rows, cols, rowStart: Int32Array.from({ length: rows + 1 }, (_, i) => i * perRow), columns, values: random(rows * perRow, 3) };
+    const x = random(cols, 4);
+    const y = random(rows, 5);
+    const products = (): Float64Array[] => Array.from({ length: 6 }, () => {
+      const forward = new Float64Array(rows);
+      const back = new Float64Array(cols);
+      applySparse(matrix, x, forward);
+      applySparseTransposed(matrix, y, back);
+      return Float64Array.of(...forward, ...back);
+    });
+    const [compiled, twin] = both(products);
+    const plain = new Float64Array(rows + cols);
+    for (let i = 0; i < rows; i++)
+      for (let k = i * perRow; k < (i + 1) * perRow; k++) {
+        plain[i] += matrix.values[k] * x[columns[k]];
+        plain[rows + columns[k]] += matrix.values[k] * y[i];
+      }
+    for (const product of [...compiled, ...twin]) expect(product).toEqual(plain);
   });
 
   it.each([8, 10, 13])('give the bits of their twins: sensitivities of pairs of %i fields', (fields) => {
