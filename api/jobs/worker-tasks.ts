@@ -159,6 +159,6 @@ export function sensitivityOf({ run, level, draw }: SensitivityTask): Sensitivit
     parameters: [...found.parameters],
     errors: [...found.errors],
     oracle: found.oracle,
-    picard: { ...picard, singularValues: [...picard.singularValues], coefficients: [...picard.coefficients] },
+    picard: picard && { ...picard, singularValues: [...picard.singularValues], coefficients: [...picard.coefficients] },
   };
 }

@@ -4,6 +4,7 @@ import { exp, ln } from '../core/math';
 import { deriveDrawKey } from '../core/random';
 import type { ForwardProblem, NoiseInfo, ParameterField, PenaltyKey } from '../core/types';
 import { getNoiseModel } from '../noise/registry';
+import { explicitLimit } from '../methods/explicit-limit';
 import { frameSpectrum, spectralSystem } from '../methods/spectral-system';
 
 /** Error of one draw against the regularisation parameter. */
@@ -98,7 +99,9 @@ export interface PicardData {
   readonly crossing: number | null;
 }
 
-export function picardData(problem: ForwardProblem, penalty: PenaltyKey, simulated: SimulatedPhantom, draw: DrawOfLevel): PicardData {
+/** @returns null where the singular vectors of the problem are out of reach */
+export function picardData(problem: ForwardProblem, penalty: PenaltyKey, simulated: SimulatedPhantom, draw: DrawOfLevel): PicardData | null {
+  if (explicitLimit(problem) !== null) return null;
   const { data, noise } = drawData(simulated, draw);
   const frame = frameSpectrum(spectralSystem(problem, penalty), data);
   const singularValues = Array.from(frame.singularValues);

@@ -1,4 +1,5 @@
 import type { ForwardProblem } from '../core/types';
+import { getMethod } from '../methods/registry';
 import { prepareRun, runLevel, type RunLevelOptions } from './run';
 import type { SimulatedPhantom, Trial } from './trial';
 
@@ -13,8 +14,10 @@ export function secondsPerReconstruction(trials: readonly Trial[]): number | nul
 /**
  * The yardstick of cost: truncated SVD at the discrepancy, timed by `runLevel` on the same data in the same worker. The first batch
  * warms the code up and is not counted.
+ * @returns null where truncated SVD does not serve the problem
  */
 export function timeBaseline(problem: ForwardProblem, simulated: SimulatedPhantom, options: RunLevelOptions & { readonly now: () => number }): number | null {
+  if (getMethod('truncated-svd').unfit?.(problem)) return null;
   const prepared = prepareRun({ problem, method: 'truncated-svd', parameters: {}, rule: { key: 'discrepancy', safetyFactor: 1.05 } });
   runLevel(prepared, simulated, options);
   return secondsPerReconstruction(runLevel(prepared, simulated, options));

@@ -90,10 +90,11 @@ describe('sensitivity', () => {
     }
   });
   it('the Picard view shows where the noise takes over', () => {
-    const picard = picardData(problem, 'identity', simulated, { ...draw, level: 0.1 });
+    const picard = picardData(problem, 'identity', simulated, { ...draw, level: 0.1 })!;
     expect(picard.singularValues.length).toBe(picard.coefficients.length);
     expect(picard.crossing).not.toBeNull();
-    expect(picardData(problem, 'identity', simulated, { ...draw, level: 1e-3 }).crossing ?? 30).toBeGreaterThan(picard.crossing!);
+    expect(picardData({ ...problem, dataSize: 2000, unknowns: 2000 }, 'identity', simulated, { ...draw, level: 0.1 })).toBeNull();
+    expect(picardData(problem, 'identity', simulated, { ...draw, level: 1e-3 })!.crossing ?? 30).toBeGreaterThan(picard.crossing!);
     expect(picard.noisePerCoefficient).toBeCloseTo((0.1 * simulated.noiseScale) / Math.sqrt(30), 12);
   });
 });
