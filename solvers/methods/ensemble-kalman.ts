@@ -22,7 +22,7 @@ const specs = {
 const { schema, fields } = defineParameters(specs);
 
 /** More data than this make the dense system of a step too slow. */
-const largestData = 2500;
+const largestData = 700;
 
 /** Ensemble Kalman inversion. */
 const method: Method<ParametersOf<typeof specs>> = {

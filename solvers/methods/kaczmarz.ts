@@ -21,8 +21,12 @@ const { schema, fields } = defineParameters(specs);
 
 /** A datum whose squared row is below this share of the largest depends on nothing and says nothing. */
 const smallestRow = 1e-24;
-/** The same where rows are those of rays: one that only grazes the body carries its noise over the length of its chord into the cells at the rim. */
+/**
+ * The same outside electrical impedance: a ray that only grazes the body, or a point that a causal kernel hardly reaches, carries its noise over
+ * its small norm into a few cells.
+ */
 const grazingRow = 0.01;
+const leastRow = (problem: ForwardProblem): number => (problem.family === 'electrical-impedance' ? smallestRow : grazingRow);
 
 /** Sweeps over the rows of the derivative itself: sparse ones where the norm is that of the unknowns, else rows of J R^{-1}. */
 function kaczmarzByRows(problem: ForwardProblem, options: { penalty: PenaltyKey; constraint: ConstraintKey; relaxation: number; largestIteration: number }, setting: RuleSetting): Reconstructor {
@@ -52,7 +56,7 @@ function kaczmarzByRows(problem: ForwardProblem, options: { penalty: PenaltyKey;
     for (let k = rowStart[i]; k < rowStart[i + 1]; k++) squares[i] += values[k] * values[k];
     largest = Math.max(largest, squares[i]);
   }
-  const least = problem.family === 'electrical-impedance' ? smallestRow : grazingRow;
+  const least = leastRow(problem);
   const lowest = lowestChange(problem, constraint)?.map((value, j) => value * root[j]) ?? null;
   return stoppedByAction(base, setting, largestIteration, (y) => {
     const z = new Float64Array(n);
@@ -103,6 +107,7 @@ const method: Method<ParametersOf<typeof specs>> = {
     if (constraint !== 'none' || goesByAction(problem)) return kaczmarzByRows(problem, { penalty, constraint, relaxation, largestIteration }, setting);
     const system = spectralSystem(problem, penalty);
     const { rank, dataSize: m, left, leftColumns, singularValues: s, offset } = system;
+    const least = leastRow(problem);
     // Rows of A in the coordinates of the right singular vectors, which hold every iterate that starts at 0.
     const rows = new Float64Array(m * rank);
     const squares = new Float64Array(m);

@@ -1,4 +1,3 @@
-import { familyKeys } from '../../shared/domain/families';
 import { pow } from '../core/math';
 import type { ForwardProblem, Method } from '../core/types';
 import { explicitLimit } from './explicit-limit';
@@ -49,7 +48,8 @@ const method: Method<ParametersOf<typeof specs>> = {
   sources: [{ short: 'Cheney et al. 1990', full: 'M. Cheney, D. Isaacson, J. C. Newell, S. Simske, J. Goble. International Journal of Imaging Systems and Technology 2 (1990) 66-75 (published with p = 1; other powers are common practice).', fromMemory: true }],
   parameters: schema,
   fields,
-  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: filterRules },
+  // Not equations: where a causal kernel does not see the end of the interval the prior vanishes with the sensitivity, and nothing holds the image there.
+  capabilities: { linear: true, nonlinear: false, direct: true, statistical: false, families: ['electrical-impedance', 'x-ray', 'deblurring'], dataKinds: ['difference', 'absolute'], rules: filterRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'number', label: 'Alpha', symbol: '\\alpha/\\sigma_1', default: 0.01, minimum: 1e-10, maximum: 10, scale: 'log', help: 'As a share of the largest singular value of the problem in standard form.' }),
   unfit: explicitLimit,

@@ -72,7 +72,7 @@ function* methodHashes({ name, definition, problem, simulated }: Case): Generato
     const figures = trials.map(({ imageHash, metrics }) => `${imageHash} ${Object.entries(metrics).map(([key, { value }]) => `${key}=${value}`).join(' ')}`);
     yield { name: `${name}: ${method.key}`, family, hash: runHash(figures) };
   }
-  for (const { key, draw } of noiseModels)
-    if (key !== 'poisson' || family === 'x-ray')
+  for (const { key, draw, families } of noiseModels)
+    if (families.includes(family))
       yield { name: `${name}: noise ${key}`, family, hash: sha256Hex(draw(simulated.clean, level, simulated.noiseScale, { key: [1, 2], stream: [3, 4] }).data) };
 }

@@ -49,7 +49,8 @@ export function whyUnfit(methodKey: string, definition: Pick<PhantomDefinition, 
   if (!dataKinds.includes(definition.dataKind)) {
     return `${method.name} needs ${dataKinds.join(' or ')} data; this phantom has ${definition.dataKind} data.`;
   }
-  return method.unfit?.(problemFacts(definition)) ?? null;
+  const reason = method.unfit?.(problemFacts(definition));
+  return reason ? `${method.name} does not serve this phantom: ${reason}` : null;
 }
 
 export const methodName = (key: string): string => methods.find((method) => method.key === key)?.name ?? key;

@@ -35,8 +35,8 @@ export interface ProximalGoal {
 }
 
 /** A stage ends when a step changes z by less than this share of it. */
-const changeShare = 1e-4;
-/** Two stages in a row that lower the residual by less than this share of it: no weight reaches the target. */
+const changeShare = 2e-5;
+/** Four stages in a row that lower the residual by less than this share of it: no weight reaches the target. */
 const stalledShare = 0.01;
 
 /**
@@ -97,7 +97,7 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
     stalled = size > (1 - stalledShare) * before ? stalled + 1 : 0;
     if (goal.target === null) return { z, weight, iterations, stop: converged ? 'converged' : 'maxIterations', residualNorm: size };
     if (size <= goal.target) return { z, weight, iterations, stop: 'discrepancy', residualNorm: size };
-    if (weight <= goal.smallestWeight || stalled === 2) return { z, weight, iterations, stop: 'converged', residualNorm: size };
+    if (weight <= goal.smallestWeight || stalled === 4) return { z, weight, iterations, stop: 'converged', residualNorm: size };
     weight = Math.max(goal.smallestWeight, goal.decay * weight);
   }
 }

@@ -12,7 +12,8 @@ export function whyUnfit(method: Method, facts: RoughFacts): string | null {
   const { families, dataKinds } = method.capabilities;
   if (!families.includes(facts.family)) return `${method.name} serves ${familiesInWords(families)}, not ${familiesInWords([facts.family])}.`;
   if (facts.dataKind && !dataKinds.includes(facts.dataKind)) return `${method.name} needs ${dataKinds.join(' or ')} data; this phantom has ${facts.dataKind} data.`;
-  if (facts.geometry && facts.dataKind && facts.dataSize !== undefined && facts.unknowns !== undefined)
-    return method.unfit?.({ family: facts.family, dataKind: facts.dataKind, geometry: facts.geometry, dataSize: facts.dataSize, unknowns: facts.unknowns }) ?? null;
-  return null;
+  const { family, geometry, dataKind, dataSize, unknowns } = facts;
+  if (!geometry || !dataKind || dataSize === undefined || unknowns === undefined) return null;
+  const reason = method.unfit?.({ family, dataKind, geometry, dataSize, unknowns });
+  return reason ? `${method.name} does not serve this phantom: ${reason}` : null;
 }
