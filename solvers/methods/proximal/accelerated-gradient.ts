@@ -36,7 +36,7 @@ export interface ProximalGoal {
 
 /** A stage ends when a step changes z by less than this share of it. */
 const changeShare = 2e-5;
-/** Four stages in a row that lower the residual by less than this share of it: no weight reaches the target. */
+/** Four stages in a row that lower the residual by less than this share of it, once half of the data is fitted: no weight reaches the target. */
 const stalledShare = 0.01;
 
 /**
@@ -57,7 +57,8 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
     for (let i = 0; i < m; i++) residual[i] -= y[i];
     return norm2(residual);
   };
-  let size = norm2(y);
+  const dataSize = norm2(y);
+  let size = dataSize;
   let weight = goal.weight;
   let iterations = 0;
   let stalled = 0;
@@ -94,7 +95,7 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
     }
     const before = size;
     size = residualOf(z);
-    stalled = size > (1 - stalledShare) * before ? stalled + 1 : 0;
+    stalled = size < 0.5 * dataSize && size > (1 - stalledShare) * before ? stalled + 1 : 0;
     if (goal.target === null) return { z, weight, iterations, stop: converged ? 'converged' : 'maxIterations', residualNorm: size };
     if (size <= goal.target) return { z, weight, iterations, stop: 'discrepancy', residualNorm: size };
     if (weight <= goal.smallestWeight || stalled === 4) return { z, weight, iterations, stop: 'converged', residualNorm: size };
