@@ -12,6 +12,9 @@ export const withUnit = (text: string, unit: string): string => (unit ? `${text}
 /** '…, S/m' behind a name; nothing for a pure number. */
 export const unitAfter = (unit: string): string => (unit ? `, ${unit}` : '');
 
+/** A number of up to three digits without trailing zeros: 6, 3.14, 0.25. */
+export const plainNumber = (value: number): string => String(Number(value.toPrecision(3))).replace('-', '\u2212');
+
 const millimetres = (metres: number): string => `${formatSigned(metres * 1000, 0).replace('+', '')} mm`;
 
 /** A place in the body: 'x 12 mm, y −30 mm', or on a line 'x 0.25'. */

@@ -13,6 +13,7 @@ interface DataMatrixProps {
   columns: number;
   unit: string;
   map?: MapName;
+  /** What a row and a column are; nothing is said without them. */
   rowName?: string;
   columnName?: string;
   /** Width over height of the drawing; square where absent. */
@@ -22,7 +23,7 @@ interface DataMatrixProps {
 }
 
 /** Data as a picture, one row a group. Symmetric limits for the diverging map. */
-export function DataMatrix({ label, values, rows, columns, unit, map = 'sequential', rowName = 'drive pattern', columnName = 'measurement', aspect, fromBelow = false }: DataMatrixProps) {
+export function DataMatrix({ label, values, rows, columns, unit, map = 'sequential', rowName, columnName, aspect, fromBelow = false }: DataMatrixProps) {
   const canvas = useRef<HTMLCanvasElement>(null);
   const dark = useTheme() === 'dark';
   const finite = values.filter((v) => Number.isFinite(v));
@@ -52,7 +53,7 @@ export function DataMatrix({ label, values, rows, columns, unit, map = 'sequenti
       <div role="img" aria-label={`${label}: ${rows} by ${columns}, from ${formatNumber(least)} to ${formatNumber(most)}${unit ? ` ${unit}` : ''}`}>
         <canvas ref={canvas} aria-hidden="true" style={aspect ? { aspectRatio: String(aspect) } : undefined} />
       </div>
-      <p className="sm">rows: {rowName}, columns: {columnName}</p>
+      {rowName && columnName ? <p className="sm">rows: {rowName}, columns: {columnName}</p> : <p className="sm" />}
       <ColourBar map={map} labels={map === 'diverging' ? [formatNumber(low, 2), '0', withUnit(formatNumber(high, 2), unit)] : [formatNumber(low, 2), withUnit(formatNumber(high, 2), unit)]} width={300} />
     </div>
   );

@@ -1,6 +1,6 @@
 import type { KeyboardEvent, PointerEvent } from 'react';
 import type { Body } from '../../../shared/domain/body';
-import { formatNumber } from '../../lib/format';
+import { plainNumber } from '../../lib/problem-words';
 import { useWidth } from '../../lib/use-size';
 import { linearTicks, tickText } from '../charts/scales';
 import { linePath } from '../charts/plot';
@@ -56,7 +56,7 @@ export function LineImage({ label, picture, body, low, high, map = 'sequential',
             <g key={v}><line x1={left} x2={right} y1={Y(v)} y2={Y(v)} stroke="var(--hair)" /><text className="ax" x={left - 5} y={Y(v) + 4} textAnchor="end">{tickText(v)}</text></g>
           )) : null}
           {low < 0 && high > 0 ? <line x1={left} x2={right} y1={Y(0)} y2={Y(0)} stroke="var(--hair-2)" /> : null}
-          {room ? [from, (from + to) / 2, to].map((v, i) => <text key={i} className="ax" x={X(v)} y={bottom + 14} textAnchor={i === 0 ? 'start' : i === 2 ? 'end' : 'middle'}>{formatNumber(v, 3)}</text>) : null}
+          {room ? [from, (from + to) / 2, to].map((v, i) => <text key={i} className="ax" x={X(v)} y={bottom + 14} textAnchor={i === 0 ? 'start' : i === 2 ? 'end' : 'middle'}>{plainNumber(v)}</text>) : null}
           <clipPath id={`lc${Math.round(left)}-${width}-${height}`}><rect x={left} y={top} width={Math.max(0, right - left)} height={Math.max(0, bottom - top)} /></clipPath>
           <rect x={left} y={top} width={Math.max(0, right - left)} height={Math.max(0, bottom - top)} fill="none" stroke={picture ? 'var(--hair-2)' : 'var(--line)'} strokeDasharray={picture ? undefined : '3 3'} />
           <g clipPath={`url(#lc${Math.round(left)}-${width}-${height})`} fill="none">

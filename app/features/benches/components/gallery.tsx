@@ -1,6 +1,6 @@
 import { BodyImage } from '../../../components/images/body-image';
 import type { ElectrodeLayout } from '../../../components/images/electrode-layout';
-import { ColourBar } from '../../../components/images/colour-bar';
+import { ColourBar, scaleTexts } from '../../../components/images/colour-bar';
 import type { Picture } from '../../../components/images/pixels';
 import { SolverGlyph } from '../../../components/ui/solver-glyph';
 import { formatNumber } from '../../../lib/format';
@@ -33,7 +33,7 @@ export function Gallery({ items, low, high, background, unit, electrodes, body }
         ))}
       </div>
       <div style={{ marginTop: 14 }}>
-        {body?.kind === 'interval' ? <p className="sm">Dashed: ground truth. All curves share one scale.</p> : <ColourBar width={300} labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, withUnit(formatNumber(high, 2), unit)]} label={`Colour scale from ${formatNumber(low, 2)} to ${withUnit(formatNumber(high, 2), unit)}`} />}
+        {body?.kind === 'interval' ? <p className="sm">Dashed: ground truth. All curves share one scale.</p> : <ColourBar width={300} labels={scaleTexts(low, high, background, unit)} label={`Colour scale from ${formatNumber(low, 2)} to ${withUnit(formatNumber(high, 2), unit)}`} />}
       </div>
     </div>
   );

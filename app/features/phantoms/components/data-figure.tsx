@@ -22,7 +22,7 @@ export function DataPicture({ family, simulation, data, label, map = 'sequential
   const image = family === 'deblurring';
   return (
     <DataMatrix
-      label={label} values={data.draw} rows={patterns} columns={valuesPerPattern} unit={data.unit} map={map} rowName={words.group} columnName={words.value.replace('measured between electrodes', 'measurement')}
+      label={label} values={data.draw} rows={patterns} columns={valuesPerPattern} unit={data.unit} map={map} {...(image ? {} : { rowName: words.group, columnName: words.value.replace('measured between electrodes', 'measurement') })}
       aspect={image ? (grid.xMax - grid.xMin) / (grid.yMax - grid.yMin) : family === 'x-ray' ? 1.4 : undefined} fromBelow={image}
     />
   );

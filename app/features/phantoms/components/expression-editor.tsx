@@ -1,11 +1,11 @@
 import { BodyImage } from '../../../components/images/body-image';
 import { bodyHalfSize } from '../../../components/images/body-outline';
-import { ColourBar } from '../../../components/images/colour-bar';
+import { ColourBar, scaleTexts } from '../../../components/images/colour-bar';
 import { Textarea } from '../../../components/ui/field';
 import { FactList } from '../../../components/ui/layout';
 import { parseDecimal } from '../../../lib/decimal';
 import { formatNumber } from '../../../lib/format';
-import { withUnit } from '../../../lib/problem-words';
+import { plainNumber, withUnit } from '../../../lib/problem-words';
 import { familyNames } from '../../../../shared/domain/families';
 import { fieldId } from '../model/field-id';
 import { formBody, formElectrodes } from '../model/form-geometry';
@@ -24,11 +24,11 @@ function words(form: PhantomForm): { label: string; help: string; example: strin
   const label = `${upperFirst(valueName)} as a function of x and y${valueUnit ? `, in ${valueUnit}` : ''}`;
   if (form.family === 'integral-equation') {
     const [from, to] = equationInterval(equationSetting(form.equation));
-    return { label: 'The unknown as a function of x', help: `x runs from ${formatNumber(from, 3)} to ${formatNumber(to, 3)}.`, example: 'A step at 0.4: step(x - 0.4)' };
+    return { label: 'The unknown as a function of x', help: `x runs from ${plainNumber(from)} to ${plainNumber(to)}.`, example: 'A step at 0.4: step(x - 0.4)' };
   }
   const body = formBody(form);
   const [a, b] = body ? bodyHalfSize(body) : [0, 0];
-  const span = body ? (body.kind === 'rectangle' ? `x runs from −${formatNumber(a, 3)} to ${formatNumber(a, 3)}, y from −${formatNumber(b, 3)} to ${formatNumber(b, 3)}` : `x and y are in metres and run from −${formatNumber(Math.max(a, b), 3)} to ${formatNumber(Math.max(a, b), 3)} across the body`) : 'x and y are in metres';
+  const span = body ? (body.kind === 'rectangle' ? `x runs from −${plainNumber(a)} to ${plainNumber(a)}, y from −${plainNumber(b)} to ${plainNumber(b)}` : `x and y are in metres and run from −${plainNumber(Math.max(a, b))} to ${plainNumber(Math.max(a, b))} across the body`) : 'x and y are in metres';
   return {
     label, help: `${span}${body?.kind === 'rectangle' ? ', in metres' : ''}; r and theta are the polar coordinates.`,
     example: `A disc of ${withUnit('2', valueUnit)}: hypot(x - 0.03, y) < 0.02 ? 2 : ${form.family === 'electrical-impedance' ? '1' : '0'}`,
@@ -46,7 +46,7 @@ export function ExpressionEditor({ form, change, issueAt, truth, backgroundField
     <div className="sheet gt">
       <div>
         <BodyImage label="Ground truth by the expression" picture={truth.picture} body={formBody(form) ?? undefined} low={low} high={high} electrodes={formElectrodes(form)} />
-        {line ? null : <div style={{ marginTop: 10 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, withUnit(formatNumber(high, 2), unit)]} /></div>}
+        {line ? null : <div style={{ marginTop: 10 }}><ColourBar labels={scaleTexts(low, high, background, unit)} /></div>}
       </div>
       <div className="gt-form">
         <Textarea

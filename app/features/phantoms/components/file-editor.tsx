@@ -1,4 +1,4 @@
-import { ColourBar } from '../../../components/images/colour-bar';
+import { ColourBar, scaleTexts } from '../../../components/images/colour-bar';
 import { BodyImage } from '../../../components/images/body-image';
 import { Field } from '../../../components/ui/field';
 import { StateShape } from '../../../components/ui/state-mark';
@@ -64,7 +64,7 @@ export function FileEditor({ form, change, issueAt, truth, backgroundField }: Fo
         <div className="sheet gt" style={{ marginTop: 14 }}>
           <div>
             <BodyImage label="The file in its place on the body" picture={truth.picture} body={body ?? undefined} low={low} high={high} electrodes={formElectrodes(form)} />
-            <div style={{ marginTop: 10 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(parseDecimal(form.background), 2)} background`, withUnit(formatNumber(high, 2), unit)]} /></div>
+            <div style={{ marginTop: 10 }}><ColourBar labels={scaleTexts(low, high, parseDecimal(form.background), unit)} /></div>
           </div>
           <div className="gt-form">
             <div className="g2">

@@ -1,7 +1,7 @@
 import { useEffect, useRef } from 'react';
 import { colourMap } from '../../../components/images/colour-maps';
 import { Formula } from '../../../components/ui/formula';
-import { formatNumber } from '../../../lib/format';
+import { plainNumber } from '../../../lib/problem-words';
 import { useTheme } from '../../../lib/theme';
 import type { IntegralEquationGeometry } from '../../../../shared/domain/geometry/integral-equation';
 import { equationOf } from '../../../../solvers/problems/integral-equation/equations';
@@ -29,8 +29,8 @@ export function KernelFigure({ geometry }: { geometry: IntegralEquationGeometry 
   return (
     <div className="kernel">
       <div role="img" aria-label={`Kernel of ${equation.name} as a picture`}><canvas ref={canvas} aria-hidden="true" /></div>
-      <p className="sm centre">t from {formatNumber(equation.from, 3)} to {formatNumber(equation.to, 3)} to the right, s from {formatNumber(equation.dataFrom, 3)} to {formatNumber(equation.dataTo, 3)} upwards; dark is low</p>
-      <div className="formula"><Formula tex={equation.kernelFormula} /></div>
+      <p className="sm centre">t from {plainNumber(equation.from)} to {plainNumber(equation.to)} to the right, s from {plainNumber(equation.dataFrom)} to {plainNumber(equation.dataTo)} upwards; dark is low</p>
+      <div className="fbox" tabIndex={0} role="region" aria-label="Formula of the kernel"><Formula tex={equation.kernelFormula} /></div>
     </div>
   );
 }

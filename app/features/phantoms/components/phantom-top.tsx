@@ -1,6 +1,6 @@
 import { useMemo, useState } from 'react';
 import { Link } from 'react-router-dom';
-import { ColourBar } from '../../../components/images/colour-bar';
+import { ColourBar, scaleTexts } from '../../../components/images/colour-bar';
 import { BodyImage } from '../../../components/images/body-image';
 import { problemElectrodes } from '../../../components/images/electrode-layout';
 import { toPicture } from '../../../components/images/pixels';
@@ -49,7 +49,7 @@ export function PhantomTop({ detail, simulation }: { detail: PhantomDetail; simu
                 label={`Ground truth of ${version.name}, from ${withUnit(`${formatNumber(simulation?.truthRange?.[0], 3)} to ${formatNumber(simulation?.truthRange?.[1], 3)}`, valueUnit)}`}
                 picture={picture} body={simulation?.grid.body} low={low} high={high} numbered={electrodes !== null && electrodes.arcs.length <= 16} electrodes={electrodes}
               />
-              {line ? null : <div style={{ marginTop: 8 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, withUnit(formatNumber(high, 2), valueUnit)]} /></div>}
+              {line ? null : <div style={{ marginTop: 8 }}><ColourBar labels={scaleTexts(low, high, background, valueUnit)} /></div>}
             </>
           )}
         </div>

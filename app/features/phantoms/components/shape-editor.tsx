@@ -1,6 +1,6 @@
 import { useRef, type KeyboardEvent, type PointerEvent } from 'react';
 import { z } from 'zod';
-import { ColourBar } from '../../../components/images/colour-bar';
+import { ColourBar, scaleTexts } from '../../../components/images/colour-bar';
 import { bodyHalfSize } from '../../../components/images/body-outline';
 import { BodyImage } from '../../../components/images/body-image';
 import type { ElectrodeLayout } from '../../../components/images/electrode-layout';
@@ -125,7 +125,7 @@ export function ShapeEditor({ shapes, onShapes, selected, onSelect, body, unit, 
             <ShapeOverlay shapes={shapes} selected={selected} scale={100 / halfMm} />
           </BodyImage>
         </div>
-        <div style={{ marginTop: 10 }}><ColourBar labels={[formatNumber(low, 2), `${formatNumber(background, 2)} background`, withUnit(formatNumber(high, 2), unit)]} /></div>
+        <div style={{ marginTop: 10 }}><ColourBar labels={scaleTexts(low, high, background, unit)} /></div>
       </div>
       <div className="gt-side">
         <ShapeTable shapes={shapes} selected={selected} range={truth.scale} unit={unit} onSelect={onSelect} onChange={change} onRemove={remove} issueAt={issueAt} />

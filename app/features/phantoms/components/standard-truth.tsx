@@ -2,6 +2,7 @@ import { BodyImage } from '../../../components/images/body-image';
 import { Formula } from '../../../components/ui/formula';
 import { FactList } from '../../../components/ui/layout';
 import { formatNumber } from '../../../lib/format';
+import { plainNumber } from '../../../lib/problem-words';
 import { equationOf } from '../../../../solvers/problems/integral-equation/equations';
 import { equationSetting } from '../model/geometry/integral-equation';
 import type { FormPart } from './form-part';
@@ -15,12 +16,12 @@ export function StandardTruth({ form, truth, backgroundField }: FormPart & { tru
     <div className="sheet gt">
       <div><BodyImage label={`Published solution of ${equation.name}`} picture={truth.picture} low={low} high={high} /></div>
       <div className="gt-form">
-        <div className="formula"><Formula tex={equation.solutionFormula} /></div>
+        <div className="fbox" tabIndex={0} role="region" aria-label="Formula of the solution"><Formula tex={equation.solutionFormula} /></div>
         {backgroundField}
         <FactList
           facts={[
             ['Equation', equation.name],
-            ['Interval', `${formatNumber(equation.from, 3)} to ${formatNumber(equation.to, 3)}`],
+            ['Interval', `${plainNumber(equation.from)} to ${plainNumber(equation.to)}`],
             ['Range of the truth', truth.range ? `${formatNumber(truth.range[0], 3)} to ${formatNumber(truth.range[1], 3)}` : '–'],
             ['Source', equation.sources.map((s) => s.short).join('; ')],
           ]}

@@ -1,6 +1,7 @@
 import { Field, Select } from '../../../components/ui/field';
 import { parseDecimal } from '../../../lib/decimal';
 import { formatNumber } from '../../../lib/format';
+import { plainNumber } from '../../../lib/problem-words';
 import { fieldId } from '../model/field-id';
 import type { XrayDraft } from '../model/form-drafts';
 import { geometryPath } from '../model/form-issue';
@@ -15,7 +16,7 @@ function arcHelp(draft: XrayDraft): string {
   const step = arc / parseDecimal(draft.views);
   if (!Number.isFinite(step)) return 'From the first view on.';
   const full = draft.beam === 'parallel' ? 180 : 360;
-  return `One view every ${formatNumber(step, 3)}°${arc < full ? `; ${formatNumber(full - arc, 3)}° are missing` : ''}.`;
+  return `One view every ${plainNumber(step)}°${arc < full ? `; ${plainNumber(full - arc)}° are missing` : ''}.`;
 }
 
 export function XrayFields({ form, change, issueAt }: FormPart) {

@@ -1,6 +1,6 @@
 import type { XrayGeometry } from '../../../../shared/domain/geometry/x-ray';
 import type { TruthDefinition } from '../../../../shared/domain/truth-definition';
-import { formatNumber } from '../../../lib/format';
+import { plainNumber } from '../../../lib/problem-words';
 import { ShapeOutline } from './shape-outline';
 
 /** Body, rays of the first view with the detector, and where the views stand. To scale; of the rays at most 17 are drawn. */
@@ -26,7 +26,7 @@ export function XrayFigure({ geometry, truth }: { geometry: XrayGeometry; truth:
   const ring = (fan ? source : 1.18 * radius) * unit;
   const marks = Array.from({ length: Math.min(views, 180) }, (_, k) => firstAngleDeg + (k * arcDeg * Math.ceil(views / 180)) / views).filter((deg) => deg < firstAngleDeg + arcDeg);
   return (
-    <svg className="geofig" viewBox="-106 -106 212 224" role="img" aria-label={`Disc with the rays of the first of ${views} ${beam} views over ${formatNumber(arcDeg, 3)} degrees${shapes.length ? `, outlines of ${shapes.length} shapes` : ''}`}>
+    <svg className="geofig" viewBox="-106 -106 212 224" role="img" aria-label={`Disc with the rays of the first of ${views} ${beam} views over ${plainNumber(arcDeg)} degrees${shapes.length ? `, outlines of ${shapes.length} shapes` : ''}`}>
       <circle r={radius * unit} fill="var(--inset)" />
       <g stroke="var(--petrol)" strokeWidth=".8" opacity=".8">
         {cells.map((i) => {
@@ -45,7 +45,7 @@ export function XrayFigure({ geometry, truth }: { geometry: XrayGeometry; truth:
           return <line key={deg} x1={Math.cos(t) * (ring - 2)} y1={-Math.sin(t) * (ring - 2)} x2={Math.cos(t) * (ring + 2)} y2={-Math.sin(t) * (ring + 2)} />;
         })}
       </g>
-      <text y="115" textAnchor="middle" fontSize="7.6" fill="var(--ink-2)">diameter {formatNumber(2000 * radius, 3)} mm</text>
+      <text y="115" textAnchor="middle" fontSize="7.6" fill="var(--ink-2)">diameter {plainNumber(2000 * radius)} mm</text>
     </svg>
   );
 }

@@ -1,5 +1,5 @@
 import { formatCount, formatNumber, formatPercent, formatQuantity } from '../../../lib/format';
-import { noiseReferenceWords, withUnit } from '../../../lib/problem-words';
+import { noiseReferenceWords, plainNumber, withUnit } from '../../../lib/problem-words';
 import type { PhantomDetail } from '../../../../shared/contracts/phantoms';
 import type { Simulation } from '../../../../shared/contracts/simulations';
 import { familyNames, type FamilyKey } from '../../../../shared/domain/families';
@@ -16,7 +16,7 @@ import { electrodeWidth, frameFacts, measurementNames, patternWords } from './ge
 
 type Facts = [string, string][];
 const mm = (metres: number): string => formatNumber(metres * 1000, 3);
-const degrees = (value: number): string => `${formatNumber(value, 4)}°`;
+const degrees = (value: number): string => `${plainNumber(value)}°`;
 
 /** Value and size of a shape: '2.00 S/m, 81 × 60 mm'. */
 export function shapeFact(shape: Shape, family: FamilyKey): string {
@@ -60,11 +60,11 @@ function equationFacts(g: IntegralEquationGeometry): Facts {
   return [
     ['Equation', equation.name],
     ['Models', equation.line],
-    ['Interval', `${formatNumber(equation.from, 3)} to ${formatNumber(equation.to, 3)}`],
+    ['Interval', `${plainNumber(equation.from)} to ${plainNumber(equation.to)}`],
     ['Unknowns', `${g.cells} cells`],
     ['Data', `${g.points} points`],
-    ...(g.depth === undefined ? [] : [['Depth', formatNumber(g.depth, 3)] as [string, string]]),
-    ...(g.diffusivity === undefined ? [] : [['Stiffness', formatNumber(g.diffusivity, 3)] as [string, string]]),
+    ...(g.depth === undefined ? [] : [['Depth', plainNumber(g.depth)] as [string, string]]),
+    ...(g.diffusivity === undefined ? [] : [['Stiffness', plainNumber(g.diffusivity)] as [string, string]]),
     ['Source', equation.sources.map((s) => s.short).join('; ')],
   ];
 }
@@ -112,7 +112,7 @@ export function phantomFacts(detail: PhantomDetail, simulation: Simulation | und
   const { definition } = version;
   const impedance = definition.family === 'electrical-impedance';
   const facts = geometryFacts(definition);
-  if (simulation) facts.push(impedance ? ['Data mesh', `${formatCount(simulation.simulation.elements)} elements, ${simulation.simulation.kind}`] : ['Simulated by', simulation.simulation.kind]);
+  if (simulation) facts.push(['Simulated by', impedance ? `${simulation.simulation.kind}, ${formatCount(simulation.simulation.unknowns)} unknowns` : simulation.simulation.kind]);
   if (version.modelErrorFloor !== null) facts.push(['Model-error floor', `${formatPercent(version.modelErrorFloor)}${simulation ? `, against ${formatCount(simulation.inversion.cells)} cells` : ''}`]);
   if (impedance) facts.push(['Data', definition.dataKind === 'difference' ? 'difference to the background' : 'absolute']);
   facts.push(['Noise is relative to', noiseReferenceWords[definition.noiseReference]], ...truthFacts(definition));

@@ -1,6 +1,6 @@
 import type { ReactNode } from 'react';
 import type { RunDetail, TrialWire } from '../../../../shared/contracts/runs';
-import { ColourBar } from '../../../components/images/colour-bar';
+import { ColourBar, scaleTexts } from '../../../components/images/colour-bar';
 import { BodyImage } from '../../../components/images/body-image';
 import { problemElectrodes } from '../../../components/images/electrode-layout';
 import { SealedDisc } from '../../../components/ui/notices';
@@ -49,7 +49,7 @@ export function Triptych({ run, trial, drawWords, pictures, cutAngle, cut }: Tri
         {pictures && !pictures.truth ? <SealedTruth run={run} /> : (
           <>
             <BodyImage label={`Truth of ${run.phantom.name}`} picture={pictures?.truth ?? null} cutAngle={pictures ? cutAngle : null} {...shared} />
-            {pictures && !line ? <ColourBar labels={scaleLabels(run, pictures, `background ${formatNumber(run.background, 2)}`)} /> : null}
+            {pictures && !line ? <ColourBar labels={scaleTexts(pictures.low, pictures.high, run.background, run.unit)} /> : null}
           </>
         )}
       </div>
