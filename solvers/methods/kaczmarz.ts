@@ -101,6 +101,8 @@ const method: Method<ParametersOf<typeof specs>> = {
   capabilities: { linear: false, nonlinear: false, direct: false, statistical: false, families: familyKeys, dataKinds: ['difference', 'absolute'], rules: stoppingRules },
   defaultRule: { key: 'discrepancy', safetyFactor: 1.05 },
   fixedValue: defineField('value', { kind: 'integer', label: 'Sweeps', symbol: 'k', default: 20, minimum: 1, maximum: 20000, help: 'Number of sweeps over all data.' }),
+  unfit: ({ family, dataSize, unknowns }) =>
+    family === 'x-ray' || dataSize * unknowns <= largestMatrix ? null : `it needs the rows of a ${dataSize} x ${unknowns} matrix one by one (at most ${largestMatrix / 1e6} million entries). SIRT does not.`,
   prepare(problem, parameters, rule) {
     const { penalty, constraint, relaxation, largestIteration } = readParameters(method.name, schema, parameters);
     const setting = readRule(method, rule);

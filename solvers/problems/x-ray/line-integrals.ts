@@ -6,9 +6,9 @@ import { rayBreaks } from './ray-breaks';
 import { detectorCentre, viewAngles, viewRays, type Ray } from './rays';
 import { halfChord } from './siddon';
 
-/** Lines over the width of a detector cell: where a piece of the ray is exact, and where it takes quadrature. */
-const exactLines = 8;
-const quadratureLines = 4;
+/** Lines over the width of a detector cell: where a ray has few pieces, and where it has many. */
+const linesOfShapes = 8;
+const linesOfFields = 4;
 /** Pieces of the rule for expressions to a cell of the inversion, and its points. */
 export const piecesPerCell = 4;
 const expressionPoints = 3;
@@ -39,7 +39,7 @@ export function rayIntegrals(truth: TruthField, definition: TruthDefinition, { b
   let count = 0;
   return {
     exact,
-    lines: exact ? exactLines : quadratureLines,
+    lines: definition.kind === 'shapes' ? linesOfShapes : linesOfFields,
     kind: definition.kind === 'expression' ? 'Gauss-Legendre quadrature along each ray' : definition.kind === 'array' ? 'exact integrals of the bilinear image along each ray' : 'closed form along each ray',
     integral(ray) {
       const end = halfChord(body.radius, ray);

@@ -15,8 +15,8 @@ function gap(a: Float64Array, b: Float64Array): number {
 }
 
 /**
- * Line integrals of the truth, averaged over the width of each detector cell (eight lines where they are exact, four where an expression is
- * integrated by quadrature; the model that inverts has two), and the gap to that model.
+ * Line integrals of the truth, averaged over the width of each detector cell (eight lines through shapes, four through an image or an
+ * expression; the model that inverts has two), and the gap to that model.
  * @throws RangeError (TruthError where a field of the truth is at fault) for what cannot be simulated
  */
 export function simulateXrayPhantom(definition: DefinitionOf<'x-ray'>, arrayValues: Float64Array | undefined, problem: InversionProblem): SimulatedData {

@@ -108,4 +108,11 @@ describe('Methods that need singular vectors', () => {
       expect(method.unfit?.({ ...facts, dataSize: 20000, unknowns: 1200 })).toMatch(/8 million/);
     }
   });
+
+  it('as does Kaczmarz where rows must be made one by one', () => {
+    const { unfit } = getMethod('kaczmarz');
+    const facts = { dataKind: 'absolute' as const, geometry, dataSize: 9216, unknowns: 9216 };
+    expect(unfit?.({ ...facts, family: 'deblurring' })).toMatch(/rows of a 9216 x 9216 matrix/);
+    expect(unfit?.({ ...facts, family: 'x-ray' })).toBeNull();
+  });
 });

@@ -179,6 +179,17 @@ describe('The projection matrix', () => {
   });
 });
 
+describe('An X-ray geometry', () => {
+  it('is refused with a source in the body, distances of the other beam, or more rays than a matrix holds', () => {
+    const faultOf = (changes: Partial<XrayGeometry>): string | undefined => xrayGeometrySchema.safeParse({ ...parallel(), ...changes }).error?.issues[0].message;
+    expect(faultOf({ beam: 'fan', sourceDistance: 1, detectorDistance: 1 })).toMatch(/outside the body/);
+    expect(faultOf({ beam: 'fan', sourceDistance: 3 })).toMatch(/distance of the detector/);
+    expect(faultOf({ sourceDistance: 3 })).toMatch(/no source distance/);
+    expect(faultOf({ views: 720, detectors: 1000 })).toMatch(/At most 65536 rays/);
+    expect(faultOf({ views: 64, detectors: 1024 })).toBeUndefined();
+  });
+});
+
 describe('An X-ray phantom', () => {
   const definition = phantomDefinitionSchema.parse({
     family: 'x-ray', geometry: parallel({ views: 10, detectors: 24, detectorSpacing: 2 / 24 }),
