@@ -73,7 +73,7 @@ const method: Method<ParametersOf<typeof specs>> = {
       const y = data.map((value, i) => value - offset[i]);
       const target = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : null;
       const weight = setting.key === 'fixed' ? setting.value * unit : unit;
-      const { z: x, weight: last, iterations, stop, residualNorm } = acceleratedGradient(proximal, y, { weight, target, decay, smallestWeight: 1e-9 * unit, limit: largestIteration }, context?.aborted);
+      const { z: x, weight: last, iterations, stop, residualNorm } = acceleratedGradient(proximal, y, { weight, target, decay, smallestWeight: 1e-7 * unit, limit: largestIteration }, context?.aborted);
       for (let j = 0; j < n; j++) x[j] += background[j];
       return { x, parameter: iterations > 0 ? last / unit : null, iterations, forwardSolves: 0, stop, residualNorm };
     });

@@ -98,7 +98,7 @@ const method: Method<ParametersOf<typeof specs>> = {
       const target = setting.key === 'discrepancy' ? setting.safetyFactor * noise.norm : null;
       const weight = setting.key === 'fixed' ? setting.value * largest : 0.5 * largest;
       const { z, weight: last, iterations, stop, residualNorm } = acceleratedGradient(
-        { operator, normSquare, prox }, y, { weight, target, decay, smallestWeight: 1e-10 * largest, limit: largestIteration }, context?.aborted,
+        { operator, normSquare, prox }, y, { weight, target, decay, smallestWeight: 1e-7 * largest, limit: largestIteration }, context?.aborted,
       );
       const x = new Float64Array(problem.unknowns);
       if (iterations > 0) operator.toUnknowns(z, x);

@@ -36,8 +36,6 @@ export interface ProximalGoal {
 
 /** A stage ends when a step changes z by less than this share of it. */
 const changeShare = 2e-5;
-/** Four stages in a row that lower the residual by less than this share of it, once half of the data is fitted: no weight reaches the target. */
-const stalledShare = 0.01;
 
 /**
  * min over z of ||A z - y||^2 / 2 + weight (smooth penalty + R(z)), from z = 0, with the restart of O'Donoghue and Candes 2015 where the momentum
@@ -57,11 +55,9 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
     for (let i = 0; i < m; i++) residual[i] -= y[i];
     return norm2(residual);
   };
-  const dataSize = norm2(y);
-  let size = dataSize;
+  let size = norm2(y);
   let weight = goal.weight;
   let iterations = 0;
-  let stalled = 0;
   if (size === 0 || (goal.target !== null && size <= goal.target))
     return { z, weight, iterations, stop: goal.target !== null && goal.target > 0 ? 'discrepancy' : 'converged', residualNorm: size };
   for (;;) {
@@ -93,12 +89,10 @@ export function acceleratedGradient(problem: ProximalProblem, y: Float64Array, g
       converged = change <= changeShare * changeShare * whole;
       if (aborted?.()) return { z, weight, iterations, stop: 'maxIterations', residualNorm: residualOf(z) };
     }
-    const before = size;
     size = residualOf(z);
-    stalled = size < 0.5 * dataSize && size > (1 - stalledShare) * before ? stalled + 1 : 0;
     if (goal.target === null) return { z, weight, iterations, stop: converged ? 'converged' : 'maxIterations', residualNorm: size };
     if (size <= goal.target) return { z, weight, iterations, stop: 'discrepancy', residualNorm: size };
-    if (weight <= goal.smallestWeight || stalled === 4) return { z, weight, iterations, stop: 'converged', residualNorm: size };
+    if (weight <= goal.smallestWeight) return { z, weight, iterations, stop: 'converged', residualNorm: size };
     weight = Math.max(goal.smallestWeight, goal.decay * weight);
   }
 }
