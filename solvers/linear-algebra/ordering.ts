@@ -11,7 +11,9 @@ import { SeparatorFinder } from './vertex-separator';
 
 /** Nodes in a leaf: below this, minimum degree fills less than a further cut. */
 const leafSize = 96;
-const sampleSize = 511;
+const sampleSize = 255;
+/** Pieces above this try all directions and count the nodes at each cut; below, the axis along which the piece is longer is cut. */
+const carefulSize = 2000;
 const halfRoot = 0.7071067811865476;
 const directions = [1, 0, 0, 1, halfRoot, halfRoot, halfRoot, -halfRoot];
 
@@ -81,18 +83,20 @@ function medianOfSample(key: Float64Array, nodes: Int32Array, low: number, high:
   return sample[size >> 1];
 }
 
-/** Sets `side` to 0 or 1 by the best of the directions; the count of boundary nodes, weighted by balance, decides. */
+/**
+ * Sets `side` to 0 or 1 by the best of the directions: in a large piece the count of boundary nodes, weighted by balance, decides, in
+ * a small one its length.
+ */
 function splitByDirection(
   graph: Graph, nodes: Int32Array, low: number, high: number, mark: number,
   coordinates: Float64Array, piece: Int32Array, side: Uint8Array, key: Float64Array,
 ): void {
+  if (high - low <= carefulSize && splitAcross(nodes, low, high, coordinates, side, key)) return;
   const { start, neighbours } = graph;
   let bestScore = Infinity;
   let bestDirection = 0;
   let bestMedian = 0;
-  // Diagonal cuts save fill near the root; below, they only cost time.
-  const tried = high - low > 2000 ? directions.length : 4;
-  for (let d = 0; d < tried; d += 2) {
+  for (let d = 0; d < directions.length; d += 2) {
     const cx = directions[d];
     const cy = directions[d + 1];
     for (let k = low; k < high; k++) {
@@ -136,6 +140,29 @@ function splitByDirection(
     const node = nodes[k];
     side[node] = cx * coordinates[2 * node] + cy * coordinates[2 * node + 1] < bestMedian ? 0 : 1;
   }
+}
+
+/** Cuts the longer side of the rectangle around a piece at the median; false where that leaves one side nearly empty. */
+function splitAcross(nodes: Int32Array, low: number, high: number, coordinates: Float64Array, side: Uint8Array, key: Float64Array): boolean {
+  let left = Infinity, right = -Infinity, bottom = Infinity, top = -Infinity;
+  for (let k = low; k < high; k++) {
+    const x = coordinates[2 * nodes[k]];
+    const y = coordinates[2 * nodes[k] + 1];
+    if (x < left) left = x;
+    if (x > right) right = x;
+    if (y < bottom) bottom = y;
+    if (y > top) top = y;
+  }
+  const axis = right - left >= top - bottom ? 0 : 1;
+  for (let k = low; k < high; k++) key[nodes[k]] = coordinates[2 * nodes[k] + axis];
+  const median = medianOfSample(key, nodes, low, high);
+  let below = 0;
+  for (let k = low; k < high; k++) {
+    const isLeft = key[nodes[k]] < median;
+    side[nodes[k]] = isLeft ? 0 : 1;
+    if (isLeft) below++;
+  }
+  return Math.min(below, high - low - below) >= 0.2 * (high - low);
 }
 
 /** Sets `side` by the median level of a breadth-first search from a node at the rim of the piece. */
