@@ -26,7 +26,7 @@ export interface OperatorSystem {
 }
 
 /** Entries of the derivative from which iterations go by its action, where the problem does not hold it as an explicit matrix. */
-const smallestSparse = 100_000;
+const smallestSparse = 20_000;
 
 /** Whether iterations on this problem use the action of the derivative rather than its singular vectors. */
 export function goesByAction(problem: ForwardProblem): boolean {
