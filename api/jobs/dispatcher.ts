@@ -147,7 +147,7 @@ export function makeDispatcher(options: DispatcherOptions): Dispatcher {
     const { job } = entry;
     if (error instanceof WorkerFailure) {
       logger.warn({ job: job.id, kind: error.kind, reason: error.message }, 'a job failed');
-      await job.fail(failureReason(error, job.input.ladder, slice));
+      await job.fail(failureReason(error, job.input.ladder, slice, job.input.axis));
     } else {
       logger.error({ err: error, job: job.id }, 'a job failed');
       await job.fail('The server failed while it worked on this. The fault was written down; queue it again, and tell an administrator if it comes back.');

@@ -1,3 +1,4 @@
+import { axisWords, type AxisSetting } from '../../shared/domain/axes.ts';
 import type { SliceSchedule } from './slice-schedule.ts';
 import type { RunInput, SliceOutput } from './tasks.ts';
 import type { WorkerPool } from './worker-pool.ts';
@@ -17,9 +18,9 @@ export interface Job {
 }
 
 /** Words for the developer: what happened, where, and what to do about it. */
-export function failureReason(failure: WorkerFailure, ladder: readonly number[], at?: { readonly level: number; readonly draws: readonly number[] }): string {
+export function failureReason(failure: WorkerFailure, ladder: readonly number[], at?: { readonly level: number; readonly draws: readonly number[] }, axis: AxisSetting = { key: 'noise' }): string {
   const level = at === undefined ? undefined : ladder[at.level];
-  const place = at === undefined || level === undefined ? 'In the checks' : `At noise level ${percent(level)}, ${drawWords(at.draws)}`;
+  const place = at === undefined || level === undefined ? 'In the checks' : `At ${levelWords(axis, level)}, ${drawWords(at.draws)}`;
   switch (failure.kind) {
     case 'memory':
       return `${place}: ${failure.message} Choose parameters that need less memory, then queue it again.`;
@@ -30,6 +31,11 @@ export function failureReason(failure: WorkerFailure, ladder: readonly number[],
   }
 }
 
+function levelWords({ key }: AxisSetting, level: number): string {
+  if (key === 'noise') return `noise level ${percent(level)}`;
+  const { name, print } = axisWords[key];
+  return `level ${print === 'share' ? percent(level) : String(level)} of the axis '${name.toLowerCase()}'`;
+}
 const percent = (level: number): string => `${Number((100 * level).toPrecision(3))} %`;
 function drawWords(draws: readonly number[]): string {
   const first = draws[0] ?? 0;

@@ -6,7 +6,7 @@ import { familyNames } from '../../shared/domain/families';
 import { StabilityChart } from '../components/charts/stability-chart';
 import { toPicture, valueScale } from '../components/images/pixels';
 import { Page } from '../components/layout/page';
-import { nearestLevel, ruleScale } from '../components/noise-rule/scale';
+import { clampNoise, nearestLevel, ruleScale } from '../components/noise-rule/scale';
 import { useNoise, useParam } from '../components/noise-rule/use-noise';
 import { ButtonLink } from '../components/ui/button';
 import { InlineSelect } from '../components/ui/chooser';
@@ -30,7 +30,8 @@ import type { RankingRow } from '../features/benches/model/ranking-groups';
 import { getPhantomSimulationQueryOptions } from '../features/phantoms/api/get-phantom';
 import { getRunImageQueryOptions } from '../features/runs/api/get-run-image';
 import { isApiError } from '../lib/api-client';
-import { formatPercent, numberWord, plural } from '../lib/format';
+import { axisFact, axisView } from '../lib/axis-words';
+import { numberWord, plural } from '../lib/format';
 import { paths } from '../lib/paths';
 import { useNarrow } from '../lib/use-media';
 import { useSettled } from '../lib/use-settled';
@@ -51,7 +52,10 @@ export default function BenchRoute() {
 }
 
 function BenchPage({ bench }: { bench: BenchDetail }) {
-  const { noise } = useNoise();
+  const axis = axisView(bench.axis);
+  const { noise: read } = useNoise();
+  // A noise carried here from another page may have no place on another axis.
+  const noise = axis.isNoise ? read : clampNoise(ruleScale(bench.ladder), read);
   const settled = Number(useSettled(noise).toPrecision(4));
   const [metric, setMetric] = useParam('metric', bench.rankingMetric);
   const [focus, setFocus] = useParam('focus');
@@ -80,7 +84,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
 
   return (
     <Page
-      title={`${bench.id} ${bench.title}`} className="page-bench"
+      title={`${bench.id} ${bench.title}`} className="page-bench" axis={bench.axis}
       rule={{
         levels: bench.ladder, draws: bench.draws, floor: bench.modelErrorFloor, floorOf: bench.phantoms.length > 1 ? bench.floorPhantom : null,
         focus: focused ? { glyph: focused.glyph, breakdown: focused.breakdown } : null,
@@ -91,6 +95,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
           <div className="crumb">
             <span>Bench <span className="mono">{bench.id}</span>, revision {bench.revision}</span>
             <span>{familyNames[bench.family].line}</span>
+            {axisFact(bench.axis) ? <span>{axisFact(bench.axis)}</span> : null}
             <StateMark state={bench.state} />
             {sealed ? <Tag>{sealed} of {plural(bench.phantoms.length, 'phantom')} sealed</Tag> : null}
           </div>
@@ -125,7 +130,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
               <div className="chart">
                 {series.data ? (
                   <StabilityChart
-                    label={`${view.name} against relative noise, one curve per solver, both axes logarithmic`} curves={curves.filter((c) => picked.has(c.id))} levels={series.data.ladder}
+                    label={`${view.name} against ${axis.label}, one curve per solver, both axes logarithmic`} curves={curves.filter((c) => picked.has(c.id))} levels={series.data.ladder}
                     noise={noise} focusId={focus || null} floor={series.data.modelErrorFloor} trivial={series.data.trivial} yLabel={view.words}
                     height={narrow ? 380 : 446} labelRoom={narrow ? 140 : 152} terse
                   />
@@ -142,12 +147,12 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
       <section className="sec notes">
         <div>
           <h3>How the table is made</h3>
-          <p>Every solver configuration runs on every phantom at {numberWord(bench.ladder.length)} noise levels, {plural(bench.draws, 'seeded draw')} each (seed {bench.seed}). Parameters stay fixed across the ladder unless the configuration's own rule changes them. Ranks compare phantoms, not draws: a phantom counts once, with its median over draws.</p>
+          <p>Every solver configuration runs on every phantom at {numberWord(bench.ladder.length)} {axis.levels}, {plural(bench.draws, 'seeded draw')} each (seed {bench.seed}).{axis.isNoise ? '' : ` ${axis.fixed}. ${axis.line}`} Parameters stay fixed across the ladder unless the configuration's own rule changes them. Ranks compare phantoms, not draws: a phantom counts once, with its median over draws.</p>
           {bench.description ? <Markdown source={bench.description} /> : null}
         </div>
         <div>
           <h3>What breakdown means</h3>
-          <p>The noise at which the median error, once below that of answering with the plain background, rises to it again. A method that is worse at less noise, because it fits the error of its model, is not counted as broken down there: read its curve. At the other end, noise below the model-error floor (dotted) is smaller than the gap between the simulating and the inverting model.</p>
+          <p>The {axis.isNoise ? 'noise' : 'level'} at which the median error, once below that of answering with the plain background, rises to it again. A method that is worse at {axis.isNoise ? 'less noise, because it fits the error of its model,' : 'lower levels'} is not counted as broken down there: read its curve.{axis.isNoise ? ' At the other end, noise below the model-error floor (dotted) is smaller than the gap between the simulating and the inverting model.' : ''}</p>
         </div>
         <CiteBench
           slug={bench.slug} noise={settled} metric={metric} citation={citation.data}
@@ -198,7 +203,7 @@ function SeenAt({ bench, ranking, noise, pictures }: { bench: BenchDetail; ranki
   ];
   return (
     <Section
-      title={<>Seen at {formatPercent(bench.ladder[level] ?? noise)} noise</>}
+      title={<>Seen at {axisView(bench.axis).at(bench.ladder[level] ?? noise)}</>}
       note={
         <>
           Median draw each on{' '}

@@ -5,7 +5,7 @@ import type { RunDetail } from '../../shared/contracts/runs';
 import { distinctGlyphs } from '../../shared/domain/glyphs';
 import { fewestPairs } from '../../solvers/statistics/wilcoxon';
 import { StabilityChart } from '../components/charts/stability-chart';
-import { ColourBar } from '../components/images/colour-bar';
+import { ColourBar, scaleTexts } from '../components/images/colour-bar';
 import { CropImage } from '../components/images/crop-image';
 import { problemElectrodes } from '../components/images/electrode-layout';
 import { difference, differenceLimit, insidePixels, largest, rangeOf, toPicture, valueScale } from '../components/images/pixels';
@@ -27,6 +27,7 @@ import { PairedDraws } from '../features/compare/components/paired-draws';
 import { disagreement, l2Key, letters, middleDraw, pairs, sharedDraws, spokenVerdict, type Contender } from '../features/compare/model/comparison';
 import { getRunQueryOptions } from '../features/runs/api/get-run';
 import { getRunImageQueryOptions, listTrialsQueryOptions } from '../features/runs/api/get-run-image';
+import { axisFact, axisView } from '../lib/axis-words';
 import { formatError, formatNumber, formatPercent, numberWord, plural } from '../lib/format';
 import { placeWords, withUnit } from '../lib/problem-words';
 import { paths } from '../lib/paths';
@@ -60,11 +61,12 @@ function ComparePage({ runs, setIds }: { runs: readonly RunDetail[]; setIds: (id
   const same = runs.every((r) => r.phantom.slug === first.phantom.slug && r.phantom.version === first.phantom.version && r.bench.slug === first.bench.slug);
   const count = numberWord(runs.length);
   return (
-    <Page title={`Compare ${count} runs`} className="page-compare" rule={{ levels: first.ladder, draws: first.draws, floor: first.modelErrorFloor }}>
+    <Page title={`Compare ${count} runs`} className="page-compare" axis={first.axis} rule={{ levels: first.ladder, draws: first.draws, floor: first.modelErrorFloor }}>
       <div className="head">
         <div>
           <div className="crumb">
             <span>Compare</span>
+            {axisFact(first.axis) ? <span>{axisFact(first.axis)}</span> : null}
             <span>Bench <Link to={paths.bench(first.bench.slug)}>{first.bench.id}</Link></span>
             <span>Phantom <Link to={paths.phantomVersion(first.phantom.slug, first.phantom.version)}>{first.phantom.id}</Link></span>
           </div>
@@ -120,6 +122,7 @@ function AddRun({ open, onClose, bench, phantom, taken, onAdd }: { open: boolean
 }
 
 function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDetail }) {
+  const axis = axisView(first.axis);
   const { noise } = useNoise();
   const narrow = useNarrow();
   const [drawText, setDraw] = useParam('draw');
@@ -141,7 +144,7 @@ function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDet
       <section className="sheet lead2" aria-label="Verdict in words">
         <div>
           {failed ? <ErrorPanel error={failed.error} what="The draws" onRetry={() => void failed.refetch()} /> : ready ? (
-            <p className="say">At <b>{formatPercent(levelNoise)}</b> noise, {spokenVerdict(contenders, levelNoise, first.modelErrorFloor, first.unit).map((s, i) => `${i ? ' ' : ''}${s}`).join('')}</p>
+            <p className="say">At <b>{axis.at(levelNoise)}</b>, {spokenVerdict(contenders, axis.noiseAt(levelNoise), first.modelErrorFloor, first.unit).map((s, i) => `${i ? ' ' : ''}${s}`).join('')}</p>
           ) : <p className="sm" role="status">Fetching {first.draws} draws of each run</p>}
         </div>
         <div>
@@ -164,7 +167,7 @@ function Comparison({ runs, first }: { runs: readonly RunDetail[]; first: RunDet
           <div className="sh cap"><h2 style={{ fontSize: 18 }}>Over the whole ladder</h2><p>median relative L2 on this phantom</p></div>
           <div style={{ padding: '6px 14px 8px 6px' }}>
             <StabilityChart
-              label="Relative L2 error against noise, one curve for each run" levels={first.ladder} noise={noise} floor={first.modelErrorFloor} trivial={first.trivial[l2Key] ?? 1} height={narrow ? 300 : 316} labelRoom={narrow ? 140 : 152} terse
+              label={`Relative L2 error against ${axis.isNoise ? 'noise' : axis.label}, one curve for each run`} levels={first.ladder} noise={noise} floor={first.modelErrorFloor} trivial={first.trivial[l2Key] ?? 1} height={narrow ? 300 : 316} labelRoom={narrow ? 140 : 152} terse
               curves={runs.map((r, i) => ({
                 id: r.id, glyph: glyphs[i] ?? 0, name: r.solver.name, short: short(r.solver.name), breakdown: r.sheets[l2Key]?.breakdown?.value ?? null,
                 points: (r.table[l2Key] ?? []).map((row) => ({ level: row.level, median: row.median, low: row.p05, high: row.p95 })),
@@ -206,12 +209,12 @@ function Pictures({ runs, first, contenders, level, draw }: { runs: readonly Run
         <h2 className="vh" id="images-title">Images</h2>
         <Matrix phantom={first.phantom} truth={truth} columns={columns} draw={draw} low={low} high={high} limit={limit} unit={first.unit} electrodes={problemElectrodes(first.problem)} grid={first.grid} start={far?.difference ? largest(far.difference) : { x: 0, y: 0 }} />
         <div className="bars">
-          <ColourBar width={280} labels={[formatNumber(low, 2), `${formatNumber(first.background, 2)} background`, withUnit(formatNumber(high, 2), first.unit)]} label="Scale of truth and reconstructions" />
+          <ColourBar width={280} labels={scaleTexts(low, high, first.background, first.unit)} label="Scale of truth and reconstructions" />
           {truth ? <ColourBar map="diverging" width={280} labels={[`\u2212${limit}`, '0', withUnit(`+${limit}`, first.unit)]} label="Scale of the differences" /> : null}
         </div>
       </section>
       {pair && near && far ? (
-        <Section title={Math.abs(Math.log(pair.l2Ratio)) < 0.15 && pair.supRatio > 1.4 ? 'Close in L2, far in L∞' : 'Where the two norms differ'} note={`${pair.near.letter} and ${pair.far.letter}, draw ${draw + 1}, at ${formatPercent(first.ladder[level] ?? 0)}`}>
+        <Section title={Math.abs(Math.log(pair.l2Ratio)) < 0.15 && pair.supRatio > 1.4 ? 'Close in L2, far in L∞' : 'Where the two norms differ'} note={`${pair.near.letter} and ${pair.far.letter}, draw ${draw + 1}, at ${axisView(first.axis).isNoise ? formatPercent(first.ladder[level] ?? 0) : axisView(first.axis).at(first.ladder[level] ?? 0)}`}>
           <div className="sheet dis">
             <div><NormScatter contenders={contenders} readings={readings} pair={pair} unit={first.unit} /></div>
             <div><Spot pairWords={spotWords(pair, far, first)} near={near} far={far} low={low} high={high} limit={limit} radius={first.grid.bodyRadius} /></div>

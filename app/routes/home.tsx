@@ -30,10 +30,12 @@ export default function Home() {
   const narrow = useNarrow();
   const benches = useQuery(listBenchesQueryOptions({ state: 'open' }));
   const open = benches.data?.items ?? [];
+  // The sentence asks for a noise: benches on another axis have none to read at.
+  const asked = open.filter((b) => b.axis.key === 'noise');
   const [chosen, setChosen] = useParam('bench');
   // The bench that has the most to say, until the reader chooses.
-  const fullest = open.reduce<BenchSummary | undefined>((best, b) => (best === undefined || b.runsFinished > best.runsFinished ? b : best), undefined);
-  const bench = open.find((b) => b.slug === chosen) ?? fullest;
+  const fullest = asked.reduce<BenchSummary | undefined>((best, b) => (best === undefined || b.runsFinished > best.runsFinished ? b : best), undefined);
+  const bench = asked.find((b) => b.slug === chosen) ?? fullest;
   const series = useQuery({ ...getSeriesQueryOptions(bench?.slug ?? '', 'relative-l2-error'), enabled: bench !== undefined });
   return (
     <Page title="Hadamark" className="page-home" rule={{ levels: series.data?.ladder ?? defaultLadder, floor: series.data?.modelErrorFloor ?? null }}>
@@ -46,7 +48,7 @@ export default function Home() {
       ) : benches.isError ? (
         <ErrorPanel error={benches.error} what="The benches" onRetry={() => void benches.refetch()} />
       ) : bench ? (
-        <FindAMethod bench={bench} open={open} onBench={setChosen} />
+        <FindAMethod bench={bench} open={asked} onBench={setChosen} />
       ) : (
         <Empty title="No bench is open yet">A curator opens one from published phantoms; its first runs then show here. <Link to={paths.phantoms()}>See the phantoms</Link></Empty>
       )}

@@ -11,6 +11,7 @@ import { useRunProgress } from '../features/runs/api/use-run-progress';
 import { RunProgress } from '../features/runs/components/run-progress';
 import { RunResult } from '../features/runs/components/run-result';
 import { isApiError, apiUrl } from '../lib/api-client';
+import { axisFact } from '../lib/axis-words';
 import { formatDate } from '../lib/format';
 import { keepNoise, paths } from '../lib/paths';
 import NotFound from './not-found';
@@ -37,7 +38,7 @@ function RunPage({ run }: { run: RunDetail }) {
   return (
     <Page
       title={`${run.id} ${run.solver.name} on ${run.phantom.name}`}
-      className="page-run"
+      className="page-run" axis={run.axis}
       rule={{ levels: run.ladder, draws: run.draws, floor: run.modelErrorFloor, focus: !finished ? null : { glyph: run.glyph, breakdown } }}
     >
       <PageHead
@@ -45,10 +46,11 @@ function RunPage({ run }: { run: RunDetail }) {
           <>
             <span>Run <span className="mono">{run.id}</span></span>
             <span>Bench <Link to={keepNoise(paths.bench(run.bench.slug), params)}>{run.bench.title}</Link></span>
+            {axisFact(run.axis) ? <span>{axisFact(run.axis)}</span> : null}
             <span>Submitted {formatDate(run.createdAt)} by {run.submittedBy.handle}, <Link to={paths.group(run.group.slug)}>{run.group.name}</Link></span>
           </>
         }
-        title={<><Link className="plain" to={keepNoise(paths.solver(run.solver.slug), params)}>{run.solver.name}</Link> on <Link className="plain" to={keepNoise(paths.phantomVersion(run.phantom.slug, run.phantom.version), params)}><i style={{ fontWeight: 400 }}>{run.phantom.name}</i></Link></>}
+        title={<><Link className="plain" to={run.axis.key === 'noise' ? keepNoise(paths.solver(run.solver.slug), params) : paths.solver(run.solver.slug)}>{run.solver.name}</Link> on <Link className="plain" to={run.axis.key === 'noise' ? keepNoise(paths.phantomVersion(run.phantom.slug, run.phantom.version), params) : paths.phantomVersion(run.phantom.slug, run.phantom.version)}><i style={{ fontWeight: 400 }}>{run.phantom.name}</i></Link></>}
       >
         <StateMark state={finished ? run.review : progress.state} word={finished && run.review === 'in-review' && run.reviewer ? `In review by ${run.reviewer.handle}` : undefined} />
         {finished ? (

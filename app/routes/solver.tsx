@@ -19,6 +19,7 @@ import { StabilitySection } from '../features/solvers/components/stability-secti
 import { TryHere } from '../features/solvers/components/try-here';
 import { nearestIndex } from '../features/solvers/model/preview-data';
 import { isApiError } from '../lib/api-client';
+import { axisView } from '../lib/axis-words';
 import { plural } from '../lib/format';
 import { paths } from '../lib/paths';
 import { useSettled } from '../lib/use-settled';
@@ -49,13 +50,14 @@ function SolverPage({ solver }: { solver: SolverDetail }) {
   const version = solver.versions.find((x) => String(x.n) === v) ?? solver.versions.find((x) => x.n === solver.current.n) ?? solver.current;
   const stability = useStability(solver.slug, version.n);
   const items = stability.data?.items ?? [];
-  const chosen = items.find((i) => i.phantom.slug === phantomSlug) ?? items[0];
+  // One phantom may be in several benches: the address names the run, or the phantom.
+  const chosen = items.find((i) => i.run === phantomSlug) ?? items.find((i) => i.phantom.slug === phantomSlug) ?? items[0];
   const levels = chosen?.levels.map((l) => l.level) ?? [];
   const level = nearestIndex(levels, settled);
   const state = version.state === 'registered' ? <StateMark state={version.signedOff ? 'signed-off' : 'registered'} word={`Registered, ${version.signedOff ? `${plural(version.signedOff, 'run')} signed off` : plural(version.runs, 'run')}`} /> : <StateMark state={version.state} />;
   return (
     <Page
-      title={`${solver.id} ${solver.name}`} className="page-solver"
+      title={`${solver.id} ${solver.name}`} className="page-solver" axis={chosen?.axis}
       rule={{ levels: levels.length ? levels : undefined, floor: chosen?.modelErrorFloor ?? null, focus: chosen?.sheet.breakdown ? { glyph: solver.glyph, breakdown: chosen.sheet.breakdown.value } : null }}
     >
       <PageHead crumbs={<><span>Solver configuration <span className="mono">{solver.id}</span>, version {version.n}</span><span>{solver.group.name}</span>{state}</>} title={solver.name}>
@@ -64,7 +66,7 @@ function SolverPage({ solver }: { solver: SolverDetail }) {
       {version.state === 'withdrawn' ? <Box tone="plain" state="withdrawn" title="This version is withdrawn" className="notice"><p>{version.withdrawnReason ?? 'No reason is kept.'} What was ranked stays ranked.</p></Box> : null}
       {version.state === 'draft' ? <Box tone="plain" state="draft" title="This is a draft; only the group sees it" className="notice"><p>Register it to enter it in benches. A registered version never changes.</p></Box> : null}
       <SolverTop solver={solver} version={version} stability={stability.data} />
-      {trying ? <TryHere items={items} configuration={version.configuration} noise={settled} onClose={() => setTrying(false)} /> : null}
+      {trying ? <TryHere items={items.filter((i) => i.axis.key === 'noise')} configuration={version.configuration} noise={axisView(chosen?.axis).noiseAt(settled)} onClose={() => setTrying(false)} /> : null}
       <Section title="Stability sheet" note={`relative L2, medians of ${chosen?.levels[0]?.count ?? 24} draws; intervals are 90 % over draws`}>
         {stability.isPending ? <Loading label="Fetching the finished runs" /> : stability.isError ? <ErrorPanel error={stability.error} onRetry={() => void stability.refetch()} /> : chosen ? (
           <StabilitySection items={items} chosen={chosen} onChoose={setPhantom} noise={noise} glyph={solver.glyph} />
@@ -73,8 +75,8 @@ function SolverPage({ solver }: { solver: SolverDetail }) {
       {chosen ? <SensitivitySection item={chosen} level={level} levelNoise={levels[level] ?? settled} /> : null}
       {items.length ? <FailedSection items={items} configuration={version.configuration} /> : null}
       <div className="sec sv-low">
-        <SolverVersions solver={solver} chosen={version.n} noise={settled} onChoose={(n) => { setV(n === solver.current.n ? null : String(n)); window.scrollTo(0, 0); }} />
-        <SolverEntries solver={solver} noise={settled} />
+        <SolverVersions solver={solver} chosen={version.n} noise={axisView(chosen?.axis).noiseAt(settled)} onChoose={(n) => { setV(n === solver.current.n ? null : String(n)); window.scrollTo(0, 0); }} />
+        <SolverEntries solver={solver} noise={axisView(chosen?.axis).noiseAt(settled)} />
       </div>
     </Page>
   );

@@ -45,7 +45,7 @@ export const costEstimateSchema = z.object({
 });
 
 export const benchSummarySchema = z.object({
-  id: idSchema, slug: slugSchema, title: z.string(), question: z.string(), family: familyKeySchema, state: benchStateSchema, group: groupRefSchema,
+  id: idSchema, slug: slugSchema, title: z.string(), question: z.string(), family: familyKeySchema, axis: axisSettingSchema, state: benchStateSchema, group: groupRefSchema,
   phantomCount: z.int(), entryCount: z.int(), runsFinished: z.int(), runsTotal: z.int(), createdAt: dateTimeSchema, closedAt: dateTimeSchema.nullable(),
 });
 export type BenchSummary = z.infer<typeof benchSummarySchema>;
@@ -62,7 +62,7 @@ export const benchEntrySchema = z.object({
   runs: z.array(z.object({ run: idSchema, phantom: slugSchema, state: z.enum(runStates), review: z.enum(reviewStates), done: z.int(), total: z.int(), failure: z.string().nullable() })),
 });
 export const benchDetailSchema = benchSummarySchema.extend({
-  description: z.string(), noiseModel: z.string(), axis: axisSettingSchema, ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: metricKeySchema, revision: z.int(), contentHash: hashSchema,
+  description: z.string(), noiseModel: z.string(), ladder: z.array(z.number()), draws: z.int(), seed: z.int(), rankingMetric: metricKeySchema, revision: z.int(), contentHash: hashSchema,
   phantoms: z.array(benchPhantomSchema), entries: z.array(benchEntrySchema),
   /** Largest model-error floor of the phantoms, and whose it is. */
   modelErrorFloor: z.number(), floorPhantom: z.string().nullable(),

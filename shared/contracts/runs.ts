@@ -131,7 +131,7 @@ export const verdictCreateSchema = z.strictObject({
 /** GET /review: runs and phantom versions that wait, oldest first. */
 export const reviewQueueSchema = z.object({
   runs: z.array(runSummarySchema.extend({
-    checks: z.array(checkResultSchema), modelErrorFloor: z.number(),
+    axis: axisSettingSchema, checks: z.array(checkResultSchema), modelErrorFloor: z.number(),
     /** The ranking metric over the draws of each ladder level, its trivial value, and how many draws lie beyond 3 sd at each level. */
     metric: z.string(), levels: z.array(z.object({ level: z.number(), median: z.number().nullable(), p05: z.number().nullable(), p95: z.number().nullable(), outliers: z.int() })), trivial: z.number().nullable(),
     /** Best median of the same bench and phantom at each level, for 'to best on bench'. */

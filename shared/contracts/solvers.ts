@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { axisSettingSchema } from '../domain/axes';
 import { accountRefSchema, dateTimeSchema, familyKeySchema, groupRefSchema, hashSchema, idSchema, levelStatisticsSchema, markdownSchema, reasonSchema, slugSchema, stabilitySheetSchema } from './common';
 import { reviewStates, runStates, solverStates } from '../domain/states';
 
@@ -53,7 +54,7 @@ export const solverListSchema = z.object({ items: z.array(solverSummarySchema), 
 export const solverDetailSchema = solverSummarySchema.extend({
   description: z.string(), versions: z.array(solverVersionSchema),
   entries: z.array(z.object({
-    bench: z.object({ slug: slugSchema, id: idSchema, title: z.string(), state: z.string() }), version: z.int(),
+    bench: z.object({ slug: slugSchema, id: idSchema, title: z.string(), state: z.string(), axis: axisSettingSchema }), version: z.int(),
     runs: z.array(z.object({ run: idSchema, phantom: z.string(), state: z.enum(runStates), review: z.enum(reviewStates) })),
   })),
   may: z.object({ edit: z.boolean(), withdraw: z.boolean(), newVersion: z.boolean(), enter: z.boolean() }),
@@ -66,7 +67,7 @@ export const solverStabilitySchema = z.object({
   metric: z.string(),
   items: z.array(z.object({
     run: idSchema, phantom: z.object({ slug: slugSchema, id: idSchema, name: z.string(), version: z.int(), sealed: z.boolean(), sealedUntil: z.iso.date().nullable() }),
-    sheet: stabilitySheetSchema, levels: z.array(levelStatisticsSchema), trivial: z.number().nullable(), modelErrorFloor: z.number(),
+    axis: axisSettingSchema, sheet: stabilitySheetSchema, levels: z.array(levelStatisticsSchema), trivial: z.number().nullable(), modelErrorFloor: z.number(),
     secondsPerReconstruction: z.number().nullable(), timeRatio: z.number().nullable(),
   })),
 });

@@ -39,6 +39,7 @@ export function toBenchSummary(bench: Omit<Bench, 'group' | 'phantoms' | 'entrie
     title: bench.title,
     question: bench.question,
     family: bench.family,
+    axis: bench.axis,
     state: bench.state,
     group: { slug: group.slug, name: group.name },
     phantomCount: counts?.phantoms ?? 0,
@@ -83,7 +84,6 @@ export async function showBench(em: EntityManager, input: { readonly bench: Load
   return {
     ...toBenchSummary(bench, bench.group.$, counts.get(bench.id)),
     description: bench.description,
-    axis: bench.axis,
     noiseModel: bench.noiseModel,
     ladder: bench.ladder,
     draws: bench.draws,

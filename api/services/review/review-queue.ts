@@ -13,6 +13,7 @@ import { floorsOf } from '../benches/show-bench.ts';
 import { loadRunFigures } from '../figures/load-run-figures.ts';
 import { levelTable } from '../figures/run-tables.ts';
 import { runGroup, runParts, runSubject, type LoadedRun } from '../runs/find-run.ts';
+import { axisOf } from '../runs/axis-of.ts';
 import { toRunSummary } from '../runs/run-summary.ts';
 
 type Queue = z.input<typeof reviewQueueSchema>;
@@ -42,6 +43,7 @@ export async function readReviewQueue(em: EntityManager, input: { readonly actor
       // A reviewer's question that nobody answered puts the run on the developer's side.
       waitsFor: notes.some((note) => note.question && !note.answered && !own.has(note.by.id)) ? 'developer' : 'reviewer',
       lastNote: last ? { by: { handle: last.by.$.handle }, at: last.createdAt.toISOString(), text: last.text } : null,
+      axis: axisOf(run),
       checks: run.checks ?? [],
       modelErrorFloor: floors.get(run.phantomVersion.$.definitionHash) ?? 0,
       best: best.get(`${run.entry.$.bench.id}/${run.phantomVersion.id}`) ?? run.ladder.map(() => null),

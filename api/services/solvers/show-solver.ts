@@ -88,7 +88,7 @@ export async function showSolver(em: EntityManager, solver: LoadedSolver, actor:
     description: solver.description,
     versions: versions.map((version) => toVersion(version, counts)),
     entries: entries.map((entry) => ({
-      bench: { slug: entry.bench.$.slug, id: entry.bench.id, title: entry.bench.$.title, state: entry.bench.$.state },
+      bench: { slug: entry.bench.$.slug, id: entry.bench.id, title: entry.bench.$.title, state: entry.bench.$.state, axis: entry.bench.$.axis },
       version: entry.solverVersion.$.n,
       runs: runs
         .filter((run) => run.entry.id === entry.id)

@@ -1,9 +1,10 @@
-import { formatError, formatPercent } from '../../lib/format';
+import { formatError } from '../../lib/format';
 import { usePhone } from '../../lib/use-media';
+import { useAxis } from '../noise-rule/axis-context';
 import { Marker, solverLook } from '../ui/solver-glyph';
 import { bandPath, linePath, Plot, type PlotArea } from './plot';
 import { clamp, tickText } from './scales';
-import { valueRange, type Curve } from './stability-chart';
+import { levelTicks, valueRange, type Curve } from './stability-chart';
 
 export interface Interval {
   value: number;
@@ -34,19 +35,21 @@ const span = (i: Interval, text: (v: number) => string): string => `${text(i.low
 
 /** A stability curve with its floor, exponent and breakdown drawn on it, each with name, value and interval. */
 export function AnnotatedStability(props: AnnotatedStabilityProps) {
-  const { label = 'Stability curve with fitted exponent, floor and breakdown', curve, others = [], levels, noise, modelFloor, trivial, exponent, errorFloor, breakdown, height } = props;
+  const { label = 'Stability curve with fitted exponent, floor and breakdown', curve, others = [], levels, noise, modelFloor: modelErrorFloor, trivial, exponent, errorFloor, breakdown, height } = props;
+  const axis = useAxis();
+  const modelFloor = axis.isNoise ? modelErrorFloor : null;
   const phone = usePhone();
   const [y0, y1] = valueRange([curve, ...others], trivial);
   const xMin = levels[0] ?? 1e-4;
   const xMax = levels[levels.length - 1] ?? 0.3;
-  const ticks = levels.filter((l) => Math.abs(Math.log10(l) - Math.round(Math.log10(l))) < 1e-9).map((l) => [l, formatPercent(l)] as const);
+  const ticks = levelTicks(levels, axis.isNoise).map((l) => [l, axis.format(l)] as const);
   return (
     <Plot
       label={label} height={height ?? (phone ? 372 : 412)} margin={{ left: 42, right: phone ? 8 : 18, top: 16, bottom: phone ? 52 : 38 }}
       x={{ low: xMin, high: xMax, log: true, ticks }} y={{ low: y0, high: y1, log: true }}
       table={{
-        caption: label, columns: ['Noise', 'Median', '5 %', '95 %'],
-        rows: curve.points.map((p) => [formatPercent(p.level), formatError(p.median), formatError(p.low), formatError(p.high)]),
+        caption: label, columns: [axis.head, 'Median', '5 %', '95 %'],
+        rows: curve.points.map((p) => [axis.format(p.level), formatError(p.median), formatError(p.low), formatError(p.high)]),
       }}
     >
       {(a) => {
@@ -89,11 +92,11 @@ export function AnnotatedStability(props: AnnotatedStabilityProps) {
               <g>
                 <rect x={a.left + 0.5} y={a.height - 11.5} width="12" height="9" fill="var(--sheet)" stroke="var(--hair-2)" />
                 <rect x={a.left + 0.5} y={a.height - 11.5} width="12" height="9" fill={a.dots} />
-                <text className="ax" x={a.left + 18} y={a.height - 3}>below the model-error floor, {formatPercent(modelFloor ?? 0)}</text>
+                <text className="ax" x={a.left + 18} y={a.height - 3}>below the model-error floor, {axis.format(modelFloor ?? 0)}</text>
               </g>
             )}
             {others.length && !phone ? <text className="ax" x={a.left + 260} y={a.height - 3}>grey: the other {others.length === 1 ? 'phantom' : `${others.length} phantoms`}</text> : null}
-            <text className="ax" x={a.right} y={phone ? a.height - 19 : a.height - 3} textAnchor="end">relative noise</text>
+            <text className="ax" x={a.right} y={phone ? a.height - 19 : a.height - 3} textAnchor="end">{axis.label}</text>
           </>
         );
       }}
@@ -148,6 +151,7 @@ function SlopeNote({ area: a, exponent, curve, y, errorFloor, breakdown, levels 
 }
 
 function BreakdownNote({ area: a, trivial, breakdown, note, xMin, xMax, phone }: NoteProps & { trivial: number; breakdown: Interval | null; note: 'beyond' | 'throughout' | null; xMin: number; xMax: number }) {
+  const axis = useAxis();
   const y = a.y(trivial);
   const words = (
     <text className="ax brick" x={a.left + 9} y={y + 16} style={{ paintOrder: 'stroke', stroke: 'var(--sheet)', strokeWidth: 5 }}>{phone ? 'worse than trivial' : 'worse than the trivial reconstruction'}</text>
@@ -157,7 +161,7 @@ function BreakdownNote({ area: a, trivial, breakdown, note, xMin, xMax, phone }:
       <g>
         {words}
         <text className="dl" textAnchor="end" x={a.right - 8} y={y - 20} style={{ fill: 'var(--brick)', fontWeight: 600, paintOrder: 'stroke', stroke: 'var(--sheet)', strokeWidth: 5 }}>
-          {note === 'throughout' ? 'worse than trivial throughout' : `no breakdown up to ${formatPercent(xMax)}`}
+          {note === 'throughout' ? 'worse than trivial throughout' : `no breakdown up to ${axis.format(xMax)}`}
         </text>
       </g>
     );
@@ -169,7 +173,7 @@ function BreakdownNote({ area: a, trivial, breakdown, note, xMin, xMax, phone }:
       <path d={`M${at(breakdown.low)} ${y}H${at(breakdown.high)}M${at(breakdown.low)} ${y - 6}v12M${at(breakdown.high)} ${y - 6}v12`} stroke="var(--brick)" strokeWidth="2.4" />
       <circle cx={at(breakdown.value)} cy={y} r="4.6" fill="var(--sheet)" stroke="var(--brick)" strokeWidth="1.8" />
       {words}
-      <Words x={at(breakdown.value) - 26} y={y - 20} anchor="end" colour="var(--brick)" name={`breakdown ${formatPercent(breakdown.value)}`} rest={span(breakdown, formatPercent)} />
+      <Words x={at(breakdown.value) - 26} y={y - 20} anchor="end" colour="var(--brick)" name={`breakdown ${axis.format(breakdown.value)}`} rest={span(breakdown, axis.format)} />
     </g>
   );
 }

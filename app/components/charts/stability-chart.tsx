@@ -1,6 +1,7 @@
 import { useCallback, useId, useState, type ReactNode } from 'react';
-import { formatError, formatPercent, thinSpace } from '../../lib/format';
+import { formatError } from '../../lib/format';
 import { useWidth } from '../../lib/use-size';
+import { useAxis } from '../noise-rule/axis-context';
 import { ruleInset } from '../noise-rule/rule-drawing';
 import { Marker, solverLook } from '../ui/solver-glyph';
 import { ChartTable } from './chart-table';
@@ -48,7 +49,9 @@ export interface StabilityChartProps {
 
 /** Log-log error against noise: bands for the focused solver and the best at the cursor, direct labels, no legend. */
 export function StabilityChart(props: StabilityChartProps) {
-  const { label, curves, levels, noise, focusId = null, floor = null, trivial = 1, yLabel = 'relative L2 error', height = 400, align = false, labelRoom = 128, terse = false, tableHidden = false } = props;
+  const axis = useAxis();
+  const { label, curves, levels, noise, focusId = null, floor: modelErrorFloor = null, trivial = 1, yLabel = 'relative L2 error', height = 400, align = false, labelRoom = 128, terse = false, tableHidden = false } = props;
+  const floor = axis.isNoise ? modelErrorFloor : null;
   const [ref, width] = useWidth(640);
   const [axisRef, ruleAxis] = useRuleAxis();
   const shared = align && width > 700 ? ruleAxis : null;
@@ -118,7 +121,7 @@ export function StabilityChart(props: StabilityChartProps) {
         ) : labelRoom > 40 ? (
           <Labels curves={curves} y={y} side="right" edge={right} top={top} bottom={bottom} focusId={focusId} gap={19} />
         ) : null}
-        <text className="ax" x={floorX === null && !shared ? (left + right) / 2 : right} y={narrow && floor ? height - 17 : height - 3} textAnchor={floorX === null && !shared ? 'middle' : 'end'}>relative noise</text>
+        <text className="ax" x={floorX === null && !shared ? (left + right) / 2 : right} y={narrow && floor ? height - 17 : height - 3} textAnchor={floorX === null && !shared ? 'middle' : 'end'}>{axis.label}</text>
         {floorX === null ? null : (
           <g>
             <rect x={left + 0.5} y={height - 11.5} width="12" height="9" fill="var(--sheet)" stroke="var(--hair-2)" />
@@ -130,8 +133,8 @@ export function StabilityChart(props: StabilityChartProps) {
       <ChartTable
         hidden={tableHidden}
         data={{
-          caption: `${label}: median by noise level`,
-          columns: ['Solver', ...levels.map((l) => formatPercent(l))],
+          caption: `${label}: median by ${axis.isNoise ? 'noise level' : `level of ${axis.label}`}`,
+          columns: ['Solver', ...levels.map((l) => axis.format(l))],
           rows: curves.map((c) => [c.name, ...levels.map((l) => formatError(c.points.find((p) => p.level === l)?.median))]),
         }}
       />
@@ -157,6 +160,15 @@ function useRuleAxis(): [(node: HTMLElement | null) => (() => void) | undefined,
     return () => observer.disconnect();
   }, []);
   return [ref, axis];
+}
+
+/** Decades where the levels span any; on another axis whose levels lie close together its first, middle and last. */
+export function levelTicks(levels: readonly number[], decadesOnly: boolean): number[] {
+  const first = levels[0] ?? 1e-4;
+  const last = levels[levels.length - 1] ?? 0.3;
+  const decades = logTicks(first, last, 24).filter((v) => v >= first * 0.99 && v <= last * 1.01 && Math.abs(Math.log10(v) - Math.round(Math.log10(v))) < 1e-9);
+  if (decadesOnly || decades.length > 2) return decades;
+  return [...new Set([first, levels[Math.floor(levels.length / 2)] ?? first, last])];
 }
 
 /** Nice bounds around the medians; the top stays within twice the trivial value, beyond which nothing is worth reading. */
@@ -278,7 +290,8 @@ function StabilityGround({ id, area, x, y, y0, y1, levels, trivial, floorX, axis
   const { left, right, top, bottom } = area;
   const xMin = levels[0] ?? 1e-4;
   const xMax = levels[levels.length - 1] ?? 0.3;
-  const decades = logTicks(xMin, xMax, 24).filter((v) => Math.abs(Math.log10(v) - Math.round(Math.log10(v))) < 1e-9);
+  const axis = useAxis();
+  const decades = levelTicks(levels, axis.isNoise);
   const sparse = right - left <= 200;
   return (
     <g>
@@ -291,7 +304,7 @@ function StabilityGround({ id, area, x, y, y0, y1, levels, trivial, floorX, axis
       {decades.map((v, i) => (
         <g key={v}>
           <line x1={x(v)} x2={x(v)} y1={top} y2={bottom} stroke="var(--hair)" />
-          {sparse && i % 2 === 1 ? null : <text className="ax" x={x(v)} y={bottom + 15} textAnchor={i === 0 && x(v) - left < 10 ? 'start' : 'middle'}>{tickText(v * 100)}{thinSpace}%</text>}
+          {sparse && i % 2 === 1 ? null : <text className="ax" x={x(v)} y={bottom + 15} textAnchor={i === 0 && x(v) - left < 10 ? 'start' : 'middle'}>{axis.format(v)}</text>}
         </g>
       ))}
       {levels.map((l) => <line key={l} x1={x(l)} x2={x(l)} y1={bottom} y2={bottom - 4} stroke="var(--ink-3)" />)}
@@ -324,7 +337,9 @@ interface SmallProps {
 }
 
 /** The bench tile's chart: curves without labels, the best at the cursor marked. */
-export function SmallStability({ label, curves, levels, noise, floor = null, height = 126, range = [0.02, 2] }: SmallProps) {
+export function SmallStability({ label, curves, levels, noise, floor: modelErrorFloor = null, height = 126, range = [0.02, 2] }: SmallProps) {
+  const axis = useAxis();
+  const floor = axis.isNoise ? modelErrorFloor : null;
   const [ref, width] = useWidth(290);
   const id = useId().replace(/[^\w-]/g, '');
   const area = { left: 28, right: width - 8, top: 8, bottom: height - 20 };
@@ -349,10 +364,10 @@ export function SmallStability({ label, curves, levels, noise, floor = null, hei
             <text className="ax" x={area.left - 6} y={raw(v) + 4} textAnchor="end">{v}</text>
           </g>
         ))}
-        {[1e-4, 1e-3, 1e-2, 0.1].filter((v) => v >= xMin * 0.99 && v <= xMax).map((v, i) => (
+        {levelTicks(levels, axis.isNoise).map((v, i) => (
           <g key={v}>
             <line x1={x(v)} x2={x(v)} y1={area.top} y2={area.bottom} stroke="var(--hair)" />
-            {width < 220 && i % 2 === 1 ? null : <text className="ax" x={x(v)} y={area.bottom + 15} textAnchor={i === 0 ? 'start' : 'middle'}>{tickText(v * 100)}{thinSpace}%</text>}
+            {width < 220 && i % 2 === 1 ? null : <text className="ax" x={x(v)} y={area.bottom + 15} textAnchor={i === 0 ? 'start' : 'middle'}>{axis.format(v)}</text>}
           </g>
         ))}
         <rect x={area.left} y={area.top} width={Math.max(0, area.right - area.left)} height={raw(1) - area.top} fill={`url(#${id}h)`} />
@@ -366,7 +381,7 @@ export function SmallStability({ label, curves, levels, noise, floor = null, hei
         <line x1={cursor} x2={cursor} y1={area.top - 6} y2={area.bottom + 2} stroke="var(--petrol)" strokeWidth="1.4" />
         {look && value !== null ? <Marker shape={look.shape} x={cursor} y={clamp(y(value), area.top, area.bottom)} r={4.6} fill={look.colour} stroke="var(--sheet)" strokeWidth={1.2} /> : null}
       </svg>
-      <ChartTable hidden data={{ caption: label, columns: ['Solver', ...levels.map((l) => formatPercent(l))], rows: curves.map((c) => [c.name, ...c.points.map((p) => formatError(p.median))]) }} />
+      <ChartTable hidden data={{ caption: label, columns: ['Solver', ...levels.map((l) => axis.format(l))], rows: curves.map((c) => [c.name, ...c.points.map((p) => formatError(p.median))]) }} />
     </div>
   );
 }

@@ -1,8 +1,9 @@
 import { useMemo, useRef, type KeyboardEvent, type PointerEvent } from 'react';
-import { formatDecibel, formatPercent, percentDigits, thinSpace } from '../../lib/format';
+import { formatDecibel, thinSpace } from '../../lib/format';
 import { useNarrow } from '../../lib/use-media';
 import { useWidth } from '../../lib/use-size';
 import { IconButton } from '../ui/button';
+import { useAxis } from './axis-context';
 import { RuleDrawing, ruleInset, type RuleFocus } from './rule-drawing';
 import { clampNoise, fromShare, nearestLevel, ruleScale, snap, stepLevel } from './scale';
 import { useNoise } from './use-noise';
@@ -20,7 +21,10 @@ export interface NoiseRuleProps {
 }
 
 /** A slide rule for the noise: slider with arrow keys (ladder steps), Home, End, drag with snapping, two step buttons. */
-export function NoiseRule({ levels, draws = 24, floor = null, floorOf = null, focus = null }: NoiseRuleProps) {
+export function NoiseRule({ levels, draws = 24, floor: modelErrorFloor = null, floorOf = null, focus = null }: NoiseRuleProps) {
+  const axis = useAxis();
+  // The floor is a noise: it has no place on another axis.
+  const floor = axis.isNoise ? modelErrorFloor : null;
   const { noise, setNoise } = useNoise();
   const scale = useMemo(() => ruleScale(levels), [levels]);
   const [ref, width] = useWidth(800);
@@ -30,6 +34,7 @@ export function NoiseRule({ levels, draws = 24, floor = null, floorOf = null, fo
   const near = nearestLevel(scale, value);
   const below = floor !== null && value < floor;
   const small = width < 500;
+  const factor = axis.unit ? 100 : 1;
 
   const set = (next: number) => setNoise(clampNoise(scale, next));
   const follow = (e: PointerEvent<HTMLElement>) => {
@@ -52,19 +57,18 @@ export function NoiseRule({ levels, draws = 24, floor = null, floorOf = null, fo
   return (
     <div className="nr">
       <div className="nr-lab">
-        <b>Noise rule</b>
-        <span>relative noise over<br />signal-to-noise ratio</span>
+        {axis.isNoise ? <><b>Noise rule</b><span>relative noise over<br />signal-to-noise ratio</span></> : <><b>{axis.head}</b><span>{axis.fixed}</span></>}
       </div>
       <div
         className="nr-track"
         ref={ref}
         tabIndex={0}
         role="slider"
-        aria-label="Relative noise level"
-        aria-valuemin={scale.min * 100}
-        aria-valuemax={scale.max * 100}
-        aria-valuenow={Number((value * 100).toPrecision(4))}
-        aria-valuetext={`${formatPercent(value)} relative noise, ${formatDecibel(value)}, ${standing}${below ? ', below the model-error floor' : ''}`}
+        aria-label={axis.isNoise ? 'Relative noise level' : axis.head}
+        aria-valuemin={scale.min * factor}
+        aria-valuemax={scale.max * factor}
+        aria-valuenow={Number((value * factor).toPrecision(4))}
+        aria-valuetext={`${axis.isNoise ? `${axis.format(value)} relative noise, ${formatDecibel(value)}` : axis.at(value)}, ${standing}${below ? ', below the model-error floor' : ''}`}
         onKeyDown={onKeyDown}
         onPointerDown={(e) => {
           dragging.current = true;
@@ -84,13 +88,13 @@ export function NoiseRule({ levels, draws = 24, floor = null, floorOf = null, fo
         <RuleDrawing width={width} scale={scale} noise={value} floor={floor} focus={focus} />
       </div>
       <div className="nr-read">
-        <div className="nr-big">{percentDigits(value)}<small>{thinSpace}%</small></div>
+        <div className="nr-big">{axis.digits(value)}{axis.unit ? <small>{thinSpace}{axis.unit}</small> : null}</div>
         <div className="nr-sub">
-          {formatDecibel(value)}
+          {axis.isNoise ? formatDecibel(value) : axis.label}
           {small && focus?.breakdown ? (
-            <>, <span style={{ color: 'var(--brick)' }}>breakdown {formatPercent(focus.breakdown)}</span></>
+            <>, <span style={{ color: 'var(--brick)' }}>breakdown {axis.format(focus.breakdown)}</span></>
           ) : small && floor ? (
-            `, ${narrow ? 'model-error ' : ''}floor ${formatPercent(floor)}`
+            `, ${narrow ? 'model-error ' : ''}floor ${axis.format(floor)}`
           ) : floorOf && floor && !below ? (
             `, floor of ${floorOf}`
           ) : null}
@@ -108,8 +112,9 @@ export function NoiseRule({ levels, draws = 24, floor = null, floorOf = null, fo
 
 /** The rule in its band under the masthead. */
 export function NoiseRuleBand(props: NoiseRuleProps) {
+  const axis = useAxis();
   return (
-    <section className="nr-band" aria-label="Noise rule">
+    <section className="nr-band" aria-label={axis.isNoise ? 'Noise rule' : `Rule of ${axis.label}`}>
       <div className="wrap"><NoiseRule {...props} /></div>
     </section>
   );

@@ -1,6 +1,6 @@
 import { useId, type ReactNode } from 'react';
-import { formatPercent, percentDigits, thinSpace } from '../../lib/format';
 import { Marker, solverLook } from '../ui/solver-glyph';
+import { useAxis } from './axis-context';
 import { nearestLevel, toShare, type RuleScale } from './scale';
 
 export interface RuleFocus {
@@ -26,6 +26,7 @@ interface DrawingProps {
 
 export function RuleDrawing({ width, scale, noise, floor, focus }: DrawingProps) {
   const id = useId().replace(/[^\w-]/g, '');
+  const axis = useAxis();
   const small = width < 500;
   const inset = ruleInset(width);
   const x = (v: number): number => inset + toShare(scale, v) * (width - 2 * inset);
@@ -61,14 +62,14 @@ export function RuleDrawing({ width, scale, noise, floor, focus }: DrawingProps)
       )}
       <line x1="1" x2={width - 1} y1={mid} y2={mid} stroke="var(--ink)" />
       <PercentTicks scale={scale} x={x} small={small} />
-      <DecibelTicks scale={scale} x={x} small={small} cursor={cursor} />
+      {axis.isNoise ? <DecibelTicks scale={scale} x={x} small={small} cursor={cursor} /> : null}
       {scale.levels.map((level) => {
         const current = near.on && level === near.level;
         const at = x(level);
         return (
           <g key={level}>
             {Math.abs(at - cursor) < (small ? 26 : 30) ? null : (
-              <text className="nr-t1" x={at} y="10" textAnchor="middle">{small ? percentDigits(level).replace(/^0/, '') : `${percentDigits(level)}${thinSpace}%`}</text>
+              <text className="nr-t1" x={at} y="10" textAnchor="middle">{small ? axis.digits(level).replace(/^0(?=.)/, '') : axis.format(level)}</text>
             )}
             <circle
               cx={at} cy={mid} r={current ? 4.5 : 3.4}
@@ -130,22 +131,24 @@ function BreakdownName({ x, cursor, width, glyph, noise }: { x: number; cursor: 
   const hidden = (left: number): boolean => cursor > left - 26 && cursor < left + w + 26;
   const left = [x + 4, cursor + 27, x - w - 4, cursor - 27 - w].find((l) => !hidden(l) && l + w < width - 2 && l > 2) ?? x + 4;
   const look = solverLook(glyph);
+  const axis = useAxis();
   return (
     <g>
       <rect x={left} y="41.5" width={w} height="14.5" fill={left >= x ? 'var(--brick-wash)' : 'var(--sheet)'} />
       <Marker shape={look.shape} x={left + 9} y={49} r={4.2} fill={look.colour} />
-      <text className="nr-b" x={left + 18} y="53">breakdown {formatPercent(noise)}</text>
+      <text className="nr-b" x={left + 18} y="53">breakdown {axis.format(noise)}</text>
     </g>
   );
 }
 
 function Cursor({ at, width, noise }: { at: number; width: number; noise: number }) {
+  const axis = useAxis();
   return (
     <g className="nr-cur">
       <rect x={at - width / 2} y="12" width={width} height="48" rx="3" fill="var(--glass)" stroke="var(--petrol)" strokeWidth="1.2" />
       <line x1={at} x2={at} y1="14" y2="66" stroke="var(--petrol)" strokeWidth="1.6" />
       <rect x={at - width / 2} y="-.5" width={width} height="15" rx="2.5" fill="var(--petrol)" />
-      <text className="nr-flag" x={at} y="10.6" textAnchor="middle">{formatPercent(noise)}</text>
+      <text className="nr-flag" x={at} y="10.6" textAnchor="middle">{axis.format(noise)}</text>
     </g>
   );
 }

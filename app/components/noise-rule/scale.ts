@@ -11,7 +11,7 @@ export interface RuleScale {
 export function ruleScale(levels: readonly number[] = defaultLadder): RuleScale {
   const first = levels[0] ?? 1e-4;
   const last = levels[levels.length - 1] ?? 0.3;
-  return levels.length > 1 ? { min: first, max: last, levels } : { min: first / 10, max: Math.min(1, last * 10), levels };
+  return levels.length > 1 ? { min: first, max: last, levels } : { min: first / 10, max: last <= 1 ? Math.min(1, last * 10) : last * 10, levels };
 }
 
 export const clampNoise = (scale: RuleScale, noise: number): number => Math.min(scale.max, Math.max(scale.min, noise));

@@ -3,10 +3,10 @@ import { useSearchParams } from 'react-router-dom';
 
 export const defaultNoise = 0.01;
 
-/** The address's noise (a fraction): a number in (0, 1], else the default of 1 %. */
+/** The address's level: a number in (0, 10] (a noise is at most 1, a contrast 10), else the default of 1 %. */
 export function parseNoise(text: string | null): number {
   const value = text === null || text.trim() === '' ? NaN : Number(text);
-  return Number.isFinite(value) && value > 0 && value <= 1 ? value : defaultNoise;
+  return Number.isFinite(value) && value > 0 && value <= 10 ? value : defaultNoise;
 }
 
 /** Four significant digits are finer than the rule can be read. */

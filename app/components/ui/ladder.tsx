@@ -1,4 +1,4 @@
-import { percentDigits } from '../../lib/format';
+import { useAxis } from '../noise-rule/axis-context';
 
 interface LadderProps {
   /** Ladder levels, fractions. */
@@ -29,6 +29,7 @@ export function Ladder({ big = false, ...props }: LadderProps & { big?: boolean 
 
 /** The large form with the level under each box; used while a run works or a page loads. */
 export function LoadingLadder(props: LadderProps) {
+  const axis = useAxis();
   const { levels, done, partial = 0, stopped, waiting } = props;
   return (
     <div className="lv" role="img" aria-label={describe(props)} style={{ gridTemplateColumns: `repeat(${levels.length}, 1fr)` }}>
@@ -38,7 +39,7 @@ export function LoadingLadder(props: LadderProps) {
             className={i < done ? 'd' : i === done && !waiting ? (stopped ? 'x' : 'r') : undefined}
             style={i === done && !stopped && !waiting ? { '--done': `${Math.round(partial * 100)}%` } : undefined}
           />
-          {percentDigits(level).replace(/^0/, '')}
+          {axis.digits(level).replace(/^0(?=.)/, '')}
         </div>
       ))}
     </div>

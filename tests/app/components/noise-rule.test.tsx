@@ -102,7 +102,7 @@ describe('scale of the rule', () => {
   it('works for a ladder of one level', () => {
     expect(ruleScale([0.01])).toMatchObject({ min: 0.001, max: 0.1 });
   });
-  it.each([['0.01', 0.01], ['', 0.01], [null, 0.01], ['abc', 0.01], ['-1', 0.01], ['2', 0.01], ['0.3', 0.3]])('reads %s from an address as %f', (text, value) => {
+  it.each([['0.01', 0.01], ['', 0.01], [null, 0.01], ['abc', 0.01], ['-1', 0.01], ['20', 0.01], ['2', 2], ['0.3', 0.3]])('reads %s from an address as %f', (text, value) => {
     expect(parseNoise(text)).toBe(value);
   });
 });

@@ -38,7 +38,7 @@ describe('words of the solver page', () => {
   it('the change between versions is the geometric mean over common phantoms', () => {
     const sheet = (medians: Record<string, number>) => ({
       metric: 'm', items: Object.entries(medians).map(([id, median]) => ({
-        run: id, phantom: { slug: id, id, name: id, version: 1, sealed: false, sealedUntil: null }, trivial: 1, modelErrorFloor: 0, secondsPerReconstruction: null, timeRatio: null,
+        run: id, axis: { key: 'noise' as const }, phantom: { slug: id, id, name: id, version: 1, sealed: false, sealedUntil: null }, trivial: 1, modelErrorFloor: 0, secondsPerReconstruction: null, timeRatio: null,
         sheet: { metric: 'm', model: 'none' as const, exponent: null, floor: null, constant: null, breakdown: null, breakdownNote: null, reason: null },
         levels: [{ level: 0.01, count: 1, median, mean: median, sd: 0, p05: median, p95: median, worst: median, medianDraw: 0, worstDraw: 0, draws: [median], reason: null }],
       })),

@@ -1,11 +1,12 @@
 import type { Citation } from '../../../../shared/contracts/benches';
 import { Button, ButtonAnchor, ButtonLink } from '../../../components/ui/button';
+import { useAxis } from '../../../components/noise-rule/axis-context';
 import { useToast } from '../../../components/ui/toast';
 import { apiUrl } from '../../../lib/api-client';
-import { formatPercent } from '../../../lib/format';
 
 /** How to cite the reading, and the ways to take it along. */
 export function CiteBench({ slug, noise, metric, citation, comparePath, compareLabel }: { slug: string; noise: number; metric: string; citation: Citation | undefined; comparePath: string | null; compareLabel: string }) {
+  const axis = useAxis();
   const toast = useToast();
   const copy = (text: string, what: string) => {
     navigator.clipboard.writeText(text).then(
@@ -13,7 +14,7 @@ export function CiteBench({ slug, noise, metric, citation, comparePath, compareL
       () => toast('The browser did not allow copying. Select the text instead.'),
     );
   };
-  const words = citation ? `${citation.plain}, read at ${formatPercent(noise)}.` : '';
+  const words = citation ? `${citation.plain}, read at ${axis.isNoise ? axis.format(noise) : axis.at(noise)}.` : '';
   return (
     <div>
       <h3>Cite this bench</h3>

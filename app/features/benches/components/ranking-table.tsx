@@ -3,6 +3,7 @@ import type { ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import type { Ranking } from '../../../../shared/contracts/benches';
 import { BarAxisTicks, IntervalBar, type BarAxis } from '../../../components/charts/interval-bar';
+import { useAxis } from '../../../components/noise-rule/axis-context';
 import { SolverGlyph } from '../../../components/ui/solver-glyph';
 import { StateMark } from '../../../components/ui/state-mark';
 import { formatPercent, formatSeconds, plural } from '../../../lib/format';
@@ -32,9 +33,9 @@ export interface RankingProps {
   rowPath: (row: RankingRow) => string;
 }
 
-export const breakdownWords = (row: Pick<RankingRow, 'breakdown' | 'breakdownNote'>, ladderEnd: number): string => {
-  if (row.breakdown !== null) return formatPercent(row.breakdown);
-  if (row.breakdownNote === 'beyond') return `> ${formatPercent(ladderEnd)}`;
+export const breakdownWords = (row: Pick<RankingRow, 'breakdown' | 'breakdownNote'>, ladderEnd: number, print: (level: number) => string = formatPercent): string => {
+  if (row.breakdown !== null) return print(row.breakdown);
+  if (row.breakdownNote === 'beyond') return `> ${print(ladderEnd)}`;
   return row.breakdownNote === 'throughout' ? 'at every level' : '\u2013';
 };
 
@@ -52,7 +53,7 @@ export function RowState({ row }: { row: RankingRow }) {
   );
 }
 
-export function rankingColumns(metric: string, ladderEnd: number, ranking: Ranking): RankingColumn[] {
+export function rankingColumns(metric: string, ladderEnd: number, ranking: Ranking, print: (level: number) => string = formatPercent): RankingColumn[] {
   const figures = ['relative-l2-error', 'sup-error', 'position-error', 'resolution', 'amplitude-response', 'relative-l1-error', 'data-residual-ratio']
     .filter((key) => key !== metric)
     .map((key): RankingColumn => {
@@ -63,7 +64,7 @@ export function rankingColumns(metric: string, ladderEnd: number, ranking: Ranki
     ...figures,
     { key: 'exponent', name: 'Stability exponent', head: 'Stability', unit: 'exponent', numeric: true, cell: (row) => (row.exponent === null ? '\u2013' : row.exponent.toFixed(2)) },
     {
-      key: 'breakdown', name: 'Breakdown', head: 'Break-', unit: 'down', numeric: true, cell: (row) => breakdownWords(row, ladderEnd),
+      key: 'breakdown', name: 'Breakdown', head: 'Break-', unit: 'down', numeric: true, cell: (row) => breakdownWords(row, ladderEnd, print),
       alarm: (row) => ranking.trivial !== null && row.median !== null && row.median >= ranking.trivial,
     },
     {
@@ -97,11 +98,12 @@ function Name({ row, focused, rowPath, onFocus }: { row: RankingRow; focused: bo
 /** One rank a tie group with its bracket; the trivial reconstruction is always the last row, hatched. */
 export function RankingTable({ columns, ...props }: RankingProps & { columns: readonly RankingColumn[] }) {
   const { ranking, axis, focus, onFocus } = props;
+  const levelAxis = useAxis();
   const view = metricView(ranking.metric);
   const [first, ...rest] = view.head.split(' ');
   return (
     <table className="rk">
-      <caption className="vh">Ranking at {formatPercent(ranking.noise)} noise by {view.words}</caption>
+      <caption className="vh">Ranking at {levelAxis.at(ranking.noise)} by {view.words}</caption>
       <thead>
         <tr>
           <th scope="col" style={{ paddingLeft: 14 }}>Rank</th>
@@ -145,6 +147,7 @@ export function RankingTable({ columns, ...props }: RankingProps & { columns: re
 /** The same ranking on a phone: one card a solver. */
 export function RankingCards(props: RankingProps) {
   const { ranking, axis, ladderEnd, focus } = props;
+  const levelAxis = useAxis();
   const view = metricView(ranking.metric);
   const second = ranking.metric === 'sup-error' ? 'relative-l2-error' : 'sup-error';
   const other = metricView(second);
@@ -164,7 +167,7 @@ export function RankingCards(props: RankingProps) {
               <IntervalBar glyph={row.glyph} low={row.p05} median={row.median} high={row.p95} axis={axis} trivial={ranking.trivial} />
               <div className="sub">
                 <span>{other.head} {other.format(row.medians[second])}</span>
-                <span>breakdown {breakdownWords(row, ladderEnd)}</span>
+                <span>breakdown {breakdownWords(row, ladderEnd, levelAxis.format)}</span>
                 <span>{formatSeconds(row.secondsPerReconstruction)}</span>
                 <RowState row={row} />
               </div>

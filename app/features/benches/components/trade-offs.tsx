@@ -1,11 +1,11 @@
 import { useQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
 import type { BenchDetail, Ranking } from '../../../../shared/contracts/benches';
+import { useAxis } from '../../../components/noise-rule/axis-context';
 import { ParetoChart } from '../../../components/charts/pareto-chart';
 import { ProfileChart } from '../../../components/charts/profile-chart';
 import { Section } from '../../../components/ui/layout';
 import { BelowFloor, Empty, ErrorPanel, Loading } from '../../../components/ui/notices';
-import { formatPercent } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
 import { useNarrow } from '../../../lib/use-media';
 import { getComparisonQueryOptions } from '../api/get-bench';
@@ -23,6 +23,7 @@ interface Props {
 
 /** Error against time at the noise, and how often each solver is near the best over all problems. */
 export function TradeOffs({ bench, ranking, noise, focus, onFocus }: Props) {
+  const axis = useAxis();
   const narrow = useNarrow();
   const height = narrow ? 280 : 320;
   const view = metricView(ranking.metric);
@@ -37,8 +38,8 @@ export function TradeOffs({ bench, ranking, noise, focus, onFocus }: Props) {
     <Section title="What an answer costs, and how often it is near the best">
       <div className="cmp even">
         <div className="sheet pad">
-          <div className="sh"><h3>Error and time at {formatPercent(noise)} noise</h3><p><Link to={paths.referenceEntry('statistics', 'error-time-front')}>front: nothing beats these in both</Link></p></div>
-          {noise < bench.modelErrorFloor ? <BelowFloor noise={noise} floor={bench.modelErrorFloor} /> : (
+          <div className="sh"><h3>Error and time at {axis.at(noise)}</h3><p><Link to={paths.referenceEntry('statistics', 'error-time-front')}>front: nothing beats these in both</Link></p></div>
+          {axis.noiseAt(noise) < bench.modelErrorFloor ? <BelowFloor noise={axis.noiseAt(noise)} floor={bench.modelErrorFloor} /> : (
             <ParetoChart
               label={`${view.name} against seconds per reconstruction, both axes logarithmic, with the front of what no solver beats in both`} errorName={view.name} height={height}
               trivial={ranking.trivial} focusId={focusRow ? entryId(focusRow.solver) : null}

@@ -4,12 +4,13 @@ import { Link } from 'react-router-dom';
 import type { BenchComparison, BenchDetail, Ranking } from '../../../../shared/contracts/benches';
 import { MeanRankStrip } from '../../../components/charts/mean-rank-strip';
 import { PairMatrix } from '../../../components/charts/pair-matrix';
+import { useAxis } from '../../../components/noise-rule/axis-context';
 import { useParam } from '../../../components/noise-rule/use-noise';
 import { InlineSelect } from '../../../components/ui/chooser';
 import { Section } from '../../../components/ui/layout';
 import { BelowFloor, Empty, ErrorPanel, Loading } from '../../../components/ui/notices';
 import { Segmented } from '../../../components/ui/segmented';
-import { formatPercent, numberWord } from '../../../lib/format';
+import { numberWord } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
 import { getComparisonQueryOptions } from '../api/get-bench';
 import { blockWords, entryId, overWords, ratioCell, testWords, wonCell } from '../model/comparison-view';
@@ -22,8 +23,9 @@ export function WhoBeatsWhom({ bench, ranking, noise }: { bench: BenchDetail; ra
   const [within, setWithin] = useParam('within');
   const phantom = bench.phantoms.find((p) => p.slug === within);
   const comparison = useQuery(getComparisonQueryOptions(bench.slug, { noise: ranking.noise, metric: ranking.metric, over: ranking.over, phantom: phantom?.slug }));
-  const title = <>Who beats whom {ranking.belowFloor && ranking.over === 'level' ? `at ${formatPercent(noise)} noise` : overWords(ranking)}</>;
-  if (ranking.belowFloor) return <Section title={title}><BelowFloor noise={noise} floor={bench.modelErrorFloor} /></Section>;
+  const axis = useAxis();
+  const title = <>Who beats whom {ranking.belowFloor && ranking.over === 'level' ? `at ${axis.at(noise)}` : overWords(ranking, axis)}</>;
+  if (ranking.belowFloor) return <Section title={title}><BelowFloor noise={axis.noiseAt(noise)} floor={bench.modelErrorFloor} /></Section>;
   const choose = (
     <InlineSelect label="Compared over" value={phantom?.slug ?? ''} onChange={(slug) => setWithin(slug || null)}>
       <option value="">over {bench.phantoms.length === 1 ? 'the phantom' : `${numberWord(bench.phantoms.length)} phantoms`}</option>
@@ -38,6 +40,7 @@ export function WhoBeatsWhom({ bench, ranking, noise }: { bench: BenchDetail; ra
 }
 
 export function Compared({ comparison, ranking }: { comparison: BenchComparison; ranking: Ranking }) {
+  const axis = useAxis();
   const [view, setView] = useState<'ratio' | 'won'>('ratio');
   const { test, solvers } = comparison;
   const short = shortNames(solvers.map((s) => s.solver.name));
@@ -47,7 +50,7 @@ export function Compared({ comparison, ranking }: { comparison: BenchComparison;
   return (
     <>
       <p className="say cmp-say">{test.words}</p>
-      <p className="sm cmp-how">{blockWords(comparison)} {testWords(comparison)} <Link to={paths.referenceEntry('statistics', 'friedman')}>How it is tested</Link></p>
+      <p className="sm cmp-how">{blockWords(comparison, axis)} {testWords(comparison)} <Link to={paths.referenceEntry('statistics', 'friedman')}>How it is tested</Link></p>
       <div className="cmp">
         <div className="sheet pad">
           <div className="sh"><h3>Mean rank</h3><p>{test.criticalDifference === null ? 'no bars: no test is possible here' : `bar width is the critical difference, ${test.criticalDifference.toFixed(2)}`}</p></div>

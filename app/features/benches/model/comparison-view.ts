@@ -1,6 +1,7 @@
 import type { BenchComparison, Ranking } from '../../../../shared/contracts/benches';
 import type { MatrixCell } from '../../../components/charts/pair-matrix';
-import { formatError, formatPercent, numberWord, plural } from '../../../lib/format';
+import { axisView, type AxisView } from '../../../lib/axis-words';
+import { formatError, numberWord, plural } from '../../../lib/format';
 
 type Solver = Ranking['rows'][number]['solver'];
 
@@ -8,15 +9,15 @@ type Solver = Ranking['rows'][number]['solver'];
 export const entryId = (solver: Pick<Solver, 'slug' | 'version'>): string => `${solver.slug}@${solver.version}`;
 
 /** What the ranks are of: 'at 1 % noise', or the mean over so many levels. */
-export const overWords = ({ over, level, levels }: Pick<Ranking, 'over' | 'level' | 'levels'>): string =>
-  over === 'ladder' ? `over ${numberWord(levels.length)} noise levels` : `at ${formatPercent(level)} noise`;
+export const overWords = ({ over, level, levels }: Pick<Ranking, 'over' | 'level' | 'levels'>, axis: AxisView = axisView()): string =>
+  over === 'ladder' ? `over ${numberWord(levels.length)} ${axis.levels}` : `at ${axis.at(level)}`;
 
 /** What one block of the test is. */
-export function blockWords({ over, levels, level, blocks, phantom }: BenchComparison): string {
-  if (blocks === 'draws') return over === 'ladder' ? `A block is a draw of ${phantom?.name ?? 'the phantom'}: the mean of its errors from ${formatPercent(levels[0] ?? level)} to ${formatPercent(levels[levels.length - 1] ?? level)}.` : `A block is a draw of ${phantom?.name ?? 'the phantom'}. The result holds for this phantom, not for others.`;
+export function blockWords({ over, levels, level, blocks, phantom }: BenchComparison, axis: AxisView = axisView()): string {
+  if (blocks === 'draws') return over === 'ladder' ? `A block is a draw of ${phantom?.name ?? 'the phantom'}: the mean of its errors from ${axis.format(levels[0] ?? level)} to ${axis.format(levels[levels.length - 1] ?? level)}.` : `A block is a draw of ${phantom?.name ?? 'the phantom'}. The result holds for this phantom, not for others.`;
   return over === 'ladder'
-    ? `A block is a phantom: the mean, over ${numberWord(levels.length)} levels from ${formatPercent(levels[0] ?? level)} to ${formatPercent(levels[levels.length - 1] ?? level)}, of its median over draws.`
-    : `A block is a phantom: its median over draws at ${formatPercent(level)}.`;
+    ? `A block is a phantom: the mean, over ${numberWord(levels.length)} levels from ${axis.format(levels[0] ?? level)} to ${axis.format(levels[levels.length - 1] ?? level)}, of its median over draws.`
+    : `A block is a phantom: its median over draws at ${axis.format(level)}.`;
 }
 
 /** How the level of the test was found. */

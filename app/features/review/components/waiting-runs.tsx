@@ -3,6 +3,7 @@ import { Link } from 'react-router-dom';
 import { barAxis, BarAxisTicks, IntervalBar } from '../../../components/charts/interval-bar';
 import { SolverGlyph } from '../../../components/ui/solver-glyph';
 import { StateMark } from '../../../components/ui/state-mark';
+import { axisView } from '../../../lib/axis-words';
 import { formatError, formatPercent } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
 import type { WaitingRun } from '../api/review';
@@ -51,19 +52,19 @@ export function WaitingRuns({ runs, noise, selected, onSelect }: WaitingRunsProp
         <thead>
           <tr>
             <th scope="col" className="first">Waiting</th><th scope="col">Solver and phantom</th><th scope="col">Run</th><th scope="col">Checks<span>in the certificate&apos;s order</span></th>
-            <th scope="col" className="num">Relative L2<span>at {formatPercent(rows[0]?.level ?? noise)}</span></th>
+            <th scope="col" className="num">Relative L2<span>at {formatPercent(rows.find(({ run }) => run.axis.key === 'noise')?.level ?? noise)}</span></th>
             <th scope="col" style={{ width: 130 }}>90 % interval<BarAxisTicks axis={axis} /></th>
             <th scope="col" className="num">To best<span>on bench</span></th><th scope="col" style={{ minWidth: 104 }}>Flags</th><th scope="col" className="last">Reviewer</th>
           </tr>
         </thead>
         <tbody>
-          {rows.map(({ run, row, ratio }) => (
+          {rows.map(({ run, level, row, ratio }) => (
             <tr key={run.id} className={clsx(run.id === selected && 'sel')} onClick={() => onSelect(run.id)}>
               <td className="wait first"><Waited of={run} /></td>
               <td className="sv"><span className="n"><SolverGlyph index={run.glyph} size={16} /><span><Link to={paths.run(run.id)} title={run.solver.name}>{run.solver.name}</Link><em title={run.phantom.name}>{run.phantom.name}</em></span></span></td>
               <td><button type="button" className="lnk mono" aria-pressed={run.id === selected} onClick={(event) => { event.stopPropagation(); onSelect(run.id); }}>{run.id}</button></td>
               <td><CheckDots run={run} /></td>
-              <td className="num"><b>{formatError(row?.median)}</b></td>
+              <td className="num"><b>{formatError(row?.median)}</b>{run.axis.key === 'noise' ? null : <span className="sm" style={{ display: 'block' }}>at {axisView(run.axis).at(level)}</span>}</td>
               <td><IntervalBar glyph={run.glyph} low={row?.p05 ?? null} median={row?.median ?? null} high={row?.p95 ?? null} axis={axis} trivial={run.trivial} /></td>
               <td className="num">{ratio === null ? '–' : `× ${ratio.toFixed(2)}`}</td>
               <td><Flags run={run} /></td>

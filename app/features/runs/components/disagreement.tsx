@@ -1,12 +1,14 @@
 import type { LevelStatistics } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { CropImage } from '../../../components/images/crop-image';
-import { formatError, formatPercent } from '../../../lib/format';
+import { useAxis } from '../../../components/noise-rule/axis-context';
+import { formatError } from '../../../lib/format';
 import { withUnit } from '../../../lib/problem-words';
 import type { RunPictures } from '../model/pictures';
 
 /** L2 against L-infinity: what they say of the same draws, and the picture at the spot where the largest error sits. */
 export function Disagreement({ run, level, pictures }: { run: RunDetail; level: number; pictures: RunPictures }) {
+  const axis = useAxis();
   const l2 = run.table['relative-l2-error']?.[level];
   const sup = run.table['sup-error']?.[level];
   const trivial = run.trivial['sup-error'] ?? null;
@@ -18,7 +20,7 @@ export function Disagreement({ run, level, pictures }: { run: RunDetail; level: 
   return (
     <div className="sheet spot">
       <p className="say">
-        At {formatPercent(l2.level)} the median error is <b>{formatError(l2.median)}</b> of the contrast in L2 and <b>{formatError(relative)}</b> of the trivial reconstruction's in L∞
+        At {axis.isNoise ? axis.format(l2.level) : axis.at(l2.level)} the median error is <b>{formatError(l2.median)}</b> of the contrast in L2 and <b>{formatError(relative)}</b> of the trivial reconstruction's in L∞
         {' '}({withUnit(formatError(sup.median), run.unit)}). {worse} of {sup.count} draws have a spot at least as wrong as the background alone.
       </p>
       <div className="crops">

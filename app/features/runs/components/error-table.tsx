@@ -1,8 +1,10 @@
 import clsx from 'clsx';
 import type { LevelStatistics } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
+import type { AxisView } from '../../../lib/axis-words';
+import { useAxis } from '../../../components/noise-rule/axis-context';
 import { solverLook } from '../../../components/ui/solver-glyph';
-import { formatError, formatNumber, formatPercent } from '../../../lib/format';
+import { formatError, formatNumber } from '../../../lib/format';
 import { fixedGroup, isMoment, outlier, shade, tableGroups, type TableGroup } from '../model/error-table';
 import { DrawDots } from './draw-dots';
 
@@ -42,8 +44,11 @@ export function dotRange(rows: readonly LevelStatistics[], trivial: number | nul
 const print = (value: number | null, group: TableGroup): string =>
   value === null ? '–' : group.digits === 'one' ? (value * group.scale).toFixed(1) : group.digits === 'three' ? formatNumber(value) : formatError(value * group.scale);
 
-/** Errors by noise level: petrol shade by log error, brick hatch past the trivial reconstruction, corner for an outlier. */
+const belowFloor = (axis: AxisView, run: TableRun, level: number): boolean => axis.isNoise && level < run.modelErrorFloor;
+
+/** Errors by level of the axis: petrol shade by log error, brick hatch past the trivial reconstruction, corner for an outlier. */
 export function ErrorTable({ run, shown, current, onCell, onLevel }: ErrorTableProps) {
+  const axis = useAxis();
   const groups = tableGroups(run).filter((group) => group.key === fixedGroup || shown.has(group.key));
   const colour = solverLook(run.glyph).colour;
   return (
@@ -57,7 +62,7 @@ export function ErrorTable({ run, shown, current, onCell, onLevel }: ErrorTableP
             ))}
           </tr>
           <tr>
-            <th scope="col" className="first">Noise</th>
+            <th scope="col" className="first">{axis.head}</th>
             {groups.flatMap((group) => [
               ...group.columns.map((column, i) => <th key={`${group.key}-${column}`} scope="col" className={clsx('num', i === 0 && 'sep')}>{columnNames[column]}</th>),
               ...(group.draws ? [<DotsHead key={`${group.key}-draws`} {...dotRange(run.table[group.key]!, run.trivial[group.key] ?? null)} />] : []),
@@ -69,11 +74,11 @@ export function ErrorTable({ run, shown, current, onCell, onLevel }: ErrorTableP
             <tr key={level} className={i === current ? 'cur' : undefined} aria-current={i === current ? 'true' : undefined}>
               <th scope="row" className="first tn">
                 <button type="button" className="lnk quiet" onClick={() => onLevel(i)}>
-                  <span className={level < run.modelErrorFloor ? 'bf' : undefined}>{formatPercent(level)}</span>
-                  {level < run.modelErrorFloor ? <span className="vh">, below the model-error floor</span> : null}
+                  <span className={belowFloor(axis, run, level) ? 'bf' : undefined}>{axis.format(level)}</span>
+                  {belowFloor(axis, run, level) ? <span className="vh">, below the model-error floor</span> : null}
                 </button>
               </th>
-              {groups.flatMap((group) => levelCells({ run, group, i, colour, onCell }))}
+              {groups.flatMap((group) => levelCells({ axis, run, group, i, colour, onCell }))}
             </tr>
           ))}
         </tbody>
@@ -86,7 +91,7 @@ function DotsHead({ low, high }: { low: number; high: number }) {
   return <th scope="col" className="dots">all draws<span className="ends"><i>{formatError(low)}</i><i>dashed: trivial</i><i>{formatError(high)}</i></span></th>;
 }
 
-function levelCells({ run, group, i, colour, onCell }: { run: TableRun; group: TableGroup; i: number; colour: string; onCell?: (anchor: string) => void }) {
+function levelCells({ axis, run, group, i, colour, onCell }: { axis: AxisView; run: TableRun; group: TableGroup; i: number; colour: string; onCell?: (anchor: string) => void }) {
   const row = run.table[group.key]?.[i];
   const trivial = run.trivial[group.key] ?? null;
   const flagged = row ? outlier(row) : null;
@@ -95,7 +100,7 @@ function levelCells({ run, group, i, colour, onCell }: { run: TableRun; group: T
     const { value, reason } = cellValue(run, group, column, i);
     const past = trivial !== null && value !== null && column !== 'sd' && trivial > 0 && value >= trivial && group.key.endsWith('-error');
     const flag = shaded && column === 'worst' && flagged;
-    const anchor = `${formatPercent(run.ladder[i] ?? 0)}, ${group.name}, ${columnNames[column]}`;
+    const anchor = `${axis.format(run.ladder[i] ?? 0)}, ${group.name}, ${columnNames[column]}`;
     return (
       <td
         key={`${group.key}-${column}`}
@@ -119,6 +124,7 @@ function levelCells({ run, group, i, colour, onCell }: { run: TableRun; group: T
 
 /** The phone's form: one disclosure a level, the rule's level open. */
 export function ErrorLevels({ run, shown, current, onLevel }: ErrorTableProps) {
+  const axis = useAxis();
   const groups = tableGroups(run).filter((group) => group.key === fixedGroup || shown.has(group.key));
   const rows = run.table[fixedGroup] ?? [];
   const trivial = run.trivial[fixedGroup] ?? null;
@@ -132,7 +138,7 @@ export function ErrorLevels({ run, shown, current, onLevel }: ErrorTableProps) {
         return (
           <details key={row.level} className={clsx('lvl', i === current && 'cur')} open={i === current || undefined}>
             <summary onClick={() => onLevel(i)}>
-              <b className={clsx('tn', row.level < run.modelErrorFloor && 'bf')}>{formatPercent(row.level)}</b>
+              <b className={clsx('tn', belowFloor(axis, run, row.level) && 'bf')}>{axis.format(row.level)}</b>
               <DrawDots draws={row.draws} median={row.median} trivial={trivial} colour={colour} ring={flagged?.draw ?? null} width={150} {...range} />
               <span className={clsx('v tn', past && 'text-brick')}>{formatError(row.mean)}</span>
               <span className="ar" aria-hidden="true">›</span>

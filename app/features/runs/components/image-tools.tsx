@@ -1,7 +1,8 @@
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { Checkbox } from '../../../components/ui/field';
 import { Segmented } from '../../../components/ui/segmented';
-import { formatNumber, formatPercent } from '../../../lib/format';
+import { useAxis } from '../../../components/noise-rule/axis-context';
+import { formatNumber } from '../../../lib/format';
 import { withUnit } from '../../../lib/problem-words';
 import type { DrawChoice } from '../api/get-run-image';
 
@@ -20,6 +21,8 @@ interface ImageToolsProps {
 /** Which draw is shown, and whether the difference scale stays across noise levels. */
 export function ImageTools({ run, level, draw, onDraw, locked, onLock, limit, stored }: ImageToolsProps) {
   const kind = typeof draw === 'number' ? 'one' : draw;
+  const axis = useAxis();
+  const at = axis.isNoise ? axis.format(run.ladder[level] ?? 0) : axis.at(run.ladder[level] ?? 0);
   const median = run.table['relative-l2-error']?.[level]?.medianDraw ?? 0;
   return (
     <div className="run-tools">
@@ -38,7 +41,7 @@ export function ImageTools({ run, level, draw, onDraw, locked, onLock, limit, st
         </label>
       ) : null}
       <span className="check-line"><Checkbox checked={locked !== null} disabled={limit === null} onChange={(event) => onLock(event.target.checked ? limit : null)}>Keep the difference scale at ±{withUnit(formatNumber(locked ?? limit, 2), run.unit)}</Checkbox></span>
-      <span className="sm">{stored ? `Stored with the run, at ${formatPercent(run.ladder[level] ?? 0)}.` : `Recomputed just now from its seed, at ${formatPercent(run.ladder[level] ?? 0)}.`}</span>
+      <span className="sm">{stored ? `Stored with the run, at ${at}.` : `Recomputed just now from its seed, at ${at}.`}</span>
     </div>
   );
 }

@@ -2,7 +2,8 @@ import type { RunDetail } from '../../../../shared/contracts/runs';
 import { Button } from '../../../components/ui/button';
 import { Seal } from '../../../components/ui/seal';
 import { StateMark } from '../../../components/ui/state-mark';
-import { formatHash, formatPercent } from '../../../lib/format';
+import { useAxis } from '../../../components/noise-rule/axis-context';
+import { formatHash } from '../../../lib/format';
 import { useRecomputation, useRequestRecomputation } from '../api/run-actions';
 import { useBrowserRecomputation } from '../api/use-browser-recomputation';
 
@@ -38,6 +39,7 @@ export function RecomputePanel({ run }: { run: RunDetail }) {
 }
 
 function Outcome({ where, stored, computed, equal, ladder, first }: { where: string; stored: string; computed: string; equal: boolean; ladder: readonly number[]; first: { level: number; draw: number } | null }) {
+  const axis = useAxis();
   return (
     <div className="two-seals" role="status">
       <Seal hash={stored} size={64} />
@@ -46,7 +48,7 @@ function Outcome({ where, stored, computed, equal, ladder, first }: { where: str
       <div>
         <StateMark state={equal ? 'pass' : 'fail'} word={equal ? `Same bits ${where}` : `Differs ${where}`} />
         <p className="mono" style={{ fontSize: 12 }}>{formatHash(stored, 4)}<br />{formatHash(computed, 4)}</p>
-        {first ? <p className="sm">First difference at {formatPercent(ladder[first.level] ?? 0)}, draw {first.draw + 1}.</p> : null}
+        {first ? <p className="sm">First difference at {axis.format(ladder[first.level] ?? 0)}, draw {first.draw + 1}.</p> : null}
       </div>
     </div>
   );

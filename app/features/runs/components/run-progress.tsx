@@ -3,13 +3,15 @@ import { Box } from '../../../components/ui/box';
 import { Button } from '../../../components/ui/button';
 import { LoadingLadder } from '../../../components/ui/ladder';
 import { StateMark } from '../../../components/ui/state-mark';
-import { formatError, formatPercent, formatSeconds } from '../../../lib/format';
+import { useAxis } from '../../../components/noise-rule/axis-context';
+import { formatError, formatSeconds } from '../../../lib/format';
 import { useCancelRun, useRequeueRun } from '../api/run-actions';
 
 /** A run that has no result yet, or will have none: ladder, trials done, time left, errors so far, and what can be done. */
 export function RunProgress({ run, progress }: { run: RunDetail; progress: Progress }) {
   const cancel = useCancelRun(run.id);
   const requeue = useRequeueRun(run.id);
+  const axis = useAxis();
   const stopped = progress.state === 'failed' || progress.state === 'cancelled';
   const perLevel = run.draws;
   const partial = progress.total ? (progress.done - progress.levelsDone * perLevel) / perLevel : 0;
@@ -22,11 +24,11 @@ export function RunProgress({ run, progress }: { run: RunDetail; progress: Progr
       <LoadingLadder levels={run.ladder} done={progress.levelsDone} partial={partial} stopped={stopped} waiting={progress.state === 'queued'} />
       <p style={{ marginTop: 10 }}>
         <b className="tn">{progress.done} of {progress.total}</b> trials done
-        {progress.currentLevel !== null && !stopped ? `, at ${formatPercent(run.ladder[progress.currentLevel] ?? 0)}` : ''}
+        {progress.currentLevel !== null && !stopped ? `, at ${axis.format(run.ladder[progress.currentLevel] ?? 0)}` : ''}
         {progress.secondsLeft !== null && !stopped ? `, about ${formatSeconds(progress.secondsLeft)} left` : ''}.
       </p>
       {progress.medians.some((m) => m !== null) ? (
-        <p className="sm">Medians so far: {progress.medians.map((m, i) => (m === null ? null : `${formatPercent(run.ladder[i] ?? 0)} ${formatError(m)}`)).filter(Boolean).join(', ')}</p>
+        <p className="sm">Medians so far: {progress.medians.map((m, i) => (m === null ? null : `${axis.format(run.ladder[i] ?? 0)} ${formatError(m)}`)).filter(Boolean).join(', ')}</p>
       ) : null}
       {progress.failure ? <Box tone="failure" title="Why it stopped" alert className="mt-x3"><p>{progress.failure}</p></Box> : null}
       <div className="run-tools">

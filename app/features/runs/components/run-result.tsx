@@ -7,13 +7,14 @@ import { problemElectrodes } from '../../../components/images/electrode-layout';
 import { cutThrough, isLine } from '../../../components/images/pixels';
 import { CutChart } from '../../../components/charts/cut-chart';
 import { useParam } from '../../../components/noise-rule/use-noise';
+import { axisView } from '../../../lib/axis-words';
 import { ButtonLink } from '../../../components/ui/button';
 import { ColumnChooser } from '../../../components/ui/column-chooser';
 import { Dock, Section } from '../../../components/ui/layout';
 import { ErrorPanel, Loading } from '../../../components/ui/notices';
 import { Segmented } from '../../../components/ui/segmented';
 import { solverLook } from '../../../components/ui/solver-glyph';
-import { formatError, formatPercent } from '../../../lib/format';
+import { formatError } from '../../../lib/format';
 import { noiseReferenceWord, unitAfter } from '../../../lib/problem-words';
 import { paths } from '../../../lib/paths';
 import { usePhone } from '../../../lib/use-media';
@@ -54,6 +55,7 @@ const drawFromAddress = (text: string): DrawChoice => (text === 'worst' ? 'worst
 export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; me: string }) {
   const phone = usePhone();
   const line = isLine(run.grid);
+  const axis = axisView(run.axis);
   const level = nearestLevel(run.ladder, noise);
   const [drawText, setDraw] = useParam('draw', 'median');
   const [lockText, setLock] = useParam('scale');
@@ -92,13 +94,13 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
           <div className="sh">
             <h2>Error table</h2>
             <div className="et-head">
-              <p className="only-d">{run.draws} draws a level. Corner mark: worst draw beyond 3 sd. <span className="kd" />below the model-error floor.</p>
+              <p className="only-d">{run.draws} draws a level. Corner mark: worst draw beyond 3 sd. {axis.isNoise ? <><span className="kd" />below the model-error floor.</> : `${axis.fixed}.`}</p>
               <ColumnChooser columns={tableGroups(run).filter((group) => group.key !== fixedGroup).map((group) => ({ key: group.key, name: group.name }))} shown={shown} onChange={setShown} />
             </div>
           </div>
           {phone ? <ErrorLevels {...table} /> : <ErrorTable {...table} />}
           <p className="sm" style={{ marginTop: 7 }}>
-            Relative errors are over the norm of truth minus background, so the trivial reconstruction has 1. Bias and variance are of the image over the draws of a level, squared over the same norm; their sum is the mean squared relative L2 (<Link to={paths.referenceEntry('statistics', 'bias-variance')}>definition</Link>). Noise relative to {noiseReferenceWord(run.noiseReference)}{run.problem.family === 'electrical-impedance' ? `; ${run.dataKind} data` : ''}.
+            Relative errors are over the norm of truth minus background, so the trivial reconstruction has 1. Bias and variance are of the image over the draws of a level, squared over the same norm; their sum is the mean squared relative L2 (<Link to={paths.referenceEntry('statistics', 'bias-variance')}>definition</Link>). Noise relative to {noiseReferenceWord(run.noiseReference)}{run.problem.family === 'electrical-impedance' ? `; ${run.dataKind} data` : ''}.{axis.isNoise ? '' : ` ${axis.line}`}
           </p>
         </section>
         {run.may.review ? (
@@ -109,7 +111,7 @@ export function RunResult({ run, noise, me }: { run: RunDetail; noise: number; m
         ) : null}
       </div>
       <Section title="Stability sheet" note="relative L2, medians over draws; intervals are 90 % bootstrap over draws"><StabilityFacts run={run} /></Section>
-      {pictures?.truth ? <Section title="Two norms, two stories" note={`draws at ${formatPercent(run.ladder[level] ?? noise)}`}><Disagreement run={run} level={level} pictures={pictures} /></Section> : null}
+      {pictures?.truth ? <Section title="Two norms, two stories" note={`draws at ${axis.isNoise ? axis.format(run.ladder[level] ?? noise) : axis.at(run.ladder[level] ?? noise)}`}><Disagreement run={run} level={level} pictures={pictures} /></Section> : null}
       <div className="sec run-pair">
         <Section title="Provenance" note="everything needed to repeat the run"><Provenance run={run} /><RecomputePanel run={run} /></Section>
         <Section title="Review thread" note={run.openQuestions ? `${run.openQuestions} open` : undefined}><ReviewThread run={run} anchor={anchor} onAnchor={setAnchor} /></Section>

@@ -1,19 +1,21 @@
 import type { StabilitySheetWire } from '../../../../shared/contracts/common';
 import type { RunDetail } from '../../../../shared/contracts/runs';
 import { metrics } from '../../../../solvers/metrics/registry';
-import { formatError, formatPercent, formatSeconds } from '../../../lib/format';
+import { formatError, formatSeconds } from '../../../lib/format';
+import { axisView, type AxisView } from '../../../lib/axis-words';
 import { unitAfter } from '../../../lib/problem-words';
 
 const interval = (v: { low: number; high: number } | null, print: (x: number) => string): string => (v ? `${print(v.low)} to ${print(v.high)}` : '');
 
-function breakdownWords(sheet: StabilitySheetWire): string {
-  if (sheet.breakdown) return formatPercent(sheet.breakdown.value);
+function breakdownWords(sheet: StabilitySheetWire, axis: AxisView): string {
+  if (sheet.breakdown) return axis.format(sheet.breakdown.value);
   if (sheet.breakdownNote === 'beyond') return 'beyond the ladder';
   return sheet.breakdownNote === 'throughout' ? 'worse at every level' : '–';
 }
 
 /** Exponent, floor and breakdown of every metric where smaller is better. */
 export function StabilityFacts({ run }: { run: RunDetail }) {
+  const axis = axisView(run.axis);
   const rows = metrics.flatMap((metric) => {
     const sheet = run.sheets[metric.key];
     return sheet ? [{ metric, sheet }] : [];
@@ -25,9 +27,9 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
           <tr>
             <th scope="col" style={{ paddingLeft: 16 }}>Metric</th>
             <th scope="col">Model</th>
-            <th scope="col" className="num">Exponent ν<span>90 % interval</span></th>
+            <th scope="col" className="num">Exponent ν<span>{axis.isNoise ? '' : 'against δ, '}90 % interval</span></th>
             <th scope="col" className="num">Floor b<span>90 % interval</span></th>
-            <th scope="col" className="num">Breakdown noise<span>90 % interval</span></th>
+            <th scope="col" className="num">{axis.isNoise ? 'Breakdown noise' : `Breakdown, ${axis.label}`}<span>90 % interval</span></th>
             <th scope="col" style={{ paddingRight: 16, minWidth: 250 }}>Note</th>
           </tr>
         </thead>
@@ -38,7 +40,7 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
               <td>{sheet.model === 'power' ? <>b + C δ<sup>ν</sup></> : sheet.model === 'logarithmic' ? <>C |ln δ|<sup>−κ</sup></> : '–'}</td>
               <td className="num">{formatError(sheet.exponent?.value)}<span className="iv">{interval(sheet.exponent, formatError)}</span></td>
               <td className="num">{formatError(sheet.floor?.value)}<span className="iv">{interval(sheet.floor, formatError)}</span></td>
-              <td className="num">{breakdownWords(sheet)}<span className="iv">{interval(sheet.breakdown, formatPercent)}</span></td>
+              <td className="num">{breakdownWords(sheet, axis)}<span className="iv">{interval(sheet.breakdown, axis.format)}</span></td>
               <td className="sm" style={{ paddingRight: 16 }}>{sheet.reason ?? ''}</td>
             </tr>
           ))}
@@ -48,6 +50,7 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
           </tr>
         </tbody>
       </table>
+      {axis.isNoise ? null : <p className="sm" style={{ padding: '6px 16px 10px' }}>δ is the level: {axis.label}. {axis.fixed}.</p>}
     </div>
   );
 }

@@ -21,7 +21,7 @@ export function FailedSection({ items, configuration }: { items: readonly Stabil
   const smallest = configuration.parameters.smallestAlpha;
   const runs = items.flatMap((item, i): RunTrials[] => {
     const data = trials[i]?.data;
-    return data ? [{ run: item.run, phantom: item.phantom, ladder: item.levels.map((l) => l.level), trials: data, trivial: item.trivial, smallestParameter: typeof smallest === 'number' ? smallest : null }] : [];
+    return data ? [{ run: item.run, phantom: item.phantom, axis: item.axis, ladder: item.levels.map((l) => l.level), trials: data, trivial: item.trivial, smallestParameter: typeof smallest === 'number' ? smallest : null }] : [];
   });
   const pending = trials.some((t) => t.isPending);
   const { failures, trials: count } = findFailures(runs);

@@ -2,13 +2,16 @@ import { useQuery } from '@tanstack/react-query';
 import { ParameterChart } from '../../../components/charts/parameter-chart';
 import { PicardChart } from '../../../components/charts/picard-chart';
 import { ErrorPanel, Loading } from '../../../components/ui/notices';
-import { formatNumber, formatPercent } from '../../../lib/format';
+import { axisView } from '../../../lib/axis-words';
+import { formatNumber } from '../../../lib/format';
 import type { Sensitivity } from '../../../../shared/contracts/runs';
 import { sensitivityQueryOptions } from '../api/run-data';
 import type { StabilityItem } from './stability-section';
 
 /** Where the rule lands, and where the noise takes over, at the ladder level nearest to the rule's noise. */
 export function SensitivitySection({ item, level, levelNoise }: { item: StabilityItem; level: number; levelNoise: number }) {
+  const axis = axisView(item.axis);
+  const at = axis.isNoise ? axis.format(levelNoise) : axis.at(levelNoise);
   const sensitivity = useQuery(sensitivityQueryOptions(item.run, level));
   if (sensitivity.isPending) return <section className="sec"><Loading label="Fetching the error against the parameter" /></section>;
   if (sensitivity.isError) return <section className="sec"><ErrorPanel error={sensitivity.error} what="Error against the parameter" onRetry={() => void sensitivity.refetch()} /></section>;
@@ -17,7 +20,7 @@ export function SensitivitySection({ item, level, levelNoise }: { item: Stabilit
   return (
     <section className="sec sv-two">
       <div className="sheet">
-        <div className="sh cap"><h2>Error against the parameter</h2><p>on {item.phantom.name} at {formatPercent(levelNoise)}</p></div>
+        <div className="sh cap"><h2>Error against the parameter</h2><p>on {item.phantom.name} at {at}</p></div>
         <div style={{ padding: '6px 14px 4px 6px' }}>
           <ParameterChart label={`Relative L2 error against the parameter, with the ${data.choices.length} choices of the rule`} parameterName={plainName(data.parameterName)} curve={data.parameters.map((parameter, i) => ({ parameter, error: data.errors[i] ?? null }))} choices={data.choices} oracle={data.oracle} trivial={item.trivial} />
         </div>
@@ -25,7 +28,7 @@ export function SensitivitySection({ item, level, levelNoise }: { item: Stabilit
       </div>
       {data.picard ? (
         <div className="sheet">
-          <div className="sh cap"><h2>Discrete Picard view</h2><p>{data.picard.singularValues.length} independent data at {formatPercent(levelNoise)}</p></div>
+          <div className="sh cap"><h2>Discrete Picard view</h2><p>{data.picard.singularValues.length} independent data at {at}</p></div>
           <div style={{ padding: '6px 14px 4px 6px' }}><PicardChart {...data.picard} /></div>
           <p className="sm foot-note">{data.picard.crossing === null ? 'The data stay above the noise throughout.' : <>Up to number <b>{data.picard.crossing}</b> the data stand above the noise, so the solution is determined. Beyond it the ratio grows with the noise, and only the penalty holds it.</>}</p>
         </div>

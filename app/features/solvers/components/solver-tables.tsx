@@ -5,6 +5,7 @@ import { Tag } from '../../../components/ui/layout';
 import { Empty } from '../../../components/ui/notices';
 import { Seal } from '../../../components/ui/seal';
 import { StateMark, type MarkState } from '../../../components/ui/state-mark';
+import { axisFact, axisView } from '../../../lib/axis-words';
 import { formatError, formatPercent, formatSigned, formatShortDate } from '../../../lib/format';
 import { paths } from '../../../lib/paths';
 import type { Ranking } from '../../../../shared/contracts/benches';
@@ -19,7 +20,8 @@ const compared = 6;
 /** Geometric mean, over the phantoms both have run on, of the ratio of median errors at a noise. */
 export function medianChange(newer: SolverStability | undefined, older: SolverStability | undefined, noise: number): number | null {
   const logs = (newer?.items ?? []).flatMap((item) => {
-    const before = older?.items.find((o) => o.phantom.id === item.phantom.id && o.phantom.version === item.phantom.version);
+    if (item.axis.key !== 'noise') return [];
+    const before = older?.items.find((o) => o.phantom.id === item.phantom.id && o.phantom.version === item.phantom.version && o.axis.key === item.axis.key);
     const at = (i: typeof item): number | null => interpolate(i.levels.map((l) => ({ level: l.level, value: l.median })), noise);
     const now = at(item);
     const then = before ? at(before) : null;
@@ -91,10 +93,10 @@ export function SolverEntries({ solver, noise }: { solver: SolverDetail; noise: 
                 const state: MarkState = failed ? 'failed' : busy ? 'running' : entryReview(entry.runs.map((r) => r.review));
                 return (
                   <tr key={`${entry.bench.id}-${entry.version}`}>
-                    <td><Link to={paths.bench(entry.bench.slug)}>{entry.bench.title}</Link> <span className="mono sm">{entry.bench.id}</span> <span className="sm">v{entry.version}{entry.bench.state === 'closed' ? ', closed' : ''}</span></td>
+                    <td><Link to={paths.bench(entry.bench.slug)}>{entry.bench.title}</Link> <span className="mono sm">{entry.bench.id}</span> <span className="sm">v{entry.version}{entry.bench.state === 'closed' ? ', closed' : ''}{axisFact(entry.bench.axis) ? `, ${axisFact(entry.bench.axis)?.toLowerCase()}, read at ${axisView(entry.bench.axis).format(ranking?.level ?? 0)}` : ''}</span></td>
                     <td className="num">{ranking && row ? rankWords(ranking, row) : '–'}</td>
                     <td className="num"><b>{formatError(row?.median ?? null)}</b></td>
-                    <td className="num">{row?.breakdown ? formatPercent(row.breakdown) : row?.breakdownNote === 'beyond' ? 'beyond' : row?.breakdownNote ?? '–'}</td>
+                    <td className="num">{row?.breakdown ? axisView(entry.bench.axis).format(row.breakdown) : row?.breakdownNote === 'beyond' ? 'beyond' : row?.breakdownNote ?? '–'}</td>
                     <td><Link className="quiet" to={paths.run(failed?.run ?? entry.runs[0]?.run ?? '')}><StateMark state={state} word={state === 'signed-off-with-reservation' ? 'With a reservation' : undefined} /></Link></td>
                   </tr>
                 );

@@ -1,9 +1,13 @@
 import type { TrialWire } from '../../../../shared/contracts/runs';
-import { formatError, formatPercent } from '../../../lib/format';
+import type { AxisSetting } from '../../../../shared/domain/axes';
+import { axisView } from '../../../lib/axis-words';
+import { formatError } from '../../../lib/format';
 
 export interface RunTrials {
   readonly run: string;
   readonly phantom: { readonly name: string; readonly slug: string; readonly version: number; readonly sealed: boolean };
+  /** What the levels vary; the noise where absent. */
+  readonly axis?: AxisSetting;
   readonly ladder: readonly number[];
   readonly trials: readonly TrialWire[];
   /** Relative L2 of the trivial reconstruction. */
@@ -41,7 +45,8 @@ function ofLevel(run: RunTrials, level: number): Failure[] {
   const trials = run.trials.filter((t) => t.level === level);
   if (trials.length === 0) return [];
   const noise = run.ladder[level] ?? 0;
-  const at = `${run.phantom.name} at ${formatPercent(noise)}`;
+  const axis = axisView(run.axis);
+  const at = `${run.phantom.name} at ${axis.isNoise ? axis.format(noise) : axis.at(noise)}`;
   const count = (some: readonly TrialWire[]): string => `${some.length} of ${trials.length} draws`;
   const found: Failure[] = [];
   const add = (kind: Failure['kind'], title: string, state: Failure['state'], some: readonly TrialWire[], text: string, weight: number): void => {
