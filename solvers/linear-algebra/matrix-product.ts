@@ -64,16 +64,38 @@ function multiplyPlain(a: Float64Array, b: Float64Array, rows: number, inner: nu
 function multiplyCompiled(
   a: Float64Array, rowA: number, stepA: number, b: Float64Array, stepB: number, colB: number, rows: number, inner: number, cols: number, out: Float64Array,
 ): boolean {
+  const product = productInMemory(a, rowA, stepA, b, stepB, colB, rows, inner, cols);
+  if (product) out.set(product);
+  return product !== null;
+}
+
+/** A view of the product in the memory of the kernels: good until they are used again. */
+function productInMemory(
+  a: Float64Array, rowA: number, stepA: number, b: Float64Array, stepB: number, colB: number, rows: number, inner: number, cols: number,
+): Float64Array | null {
   // With one row or column the product only reads its matrix once.
-  if (rows < 3 || cols < 3 || inner < 3 || rows * inner * cols < worthCompiled) return false;
-  const scratch = scratchOf(8 * a.length, 8 * b.length, 8 * out.length, kernels()?.packedBytes(cols) ?? 0);
-  if (!scratch) return false;
+  if (rows < 3 || cols < 3 || inner < 3 || rows * inner * cols < worthCompiled) return null;
+  const scratch = scratchOf(8 * a.length, 8 * b.length, 8 * rows * cols, kernels()?.packedBytes(cols) ?? 0);
+  if (!scratch) return null;
   const [atA, atB, atC, pack] = scratch.addresses;
   new Float64Array(scratch.buffer, atA, a.length).set(a);
   new Float64Array(scratch.buffer, atB, b.length).set(b);
   scratch.kernels.multiply(atA, 8 * rowA, 8 * stepA, atB, 8 * stepB, 8 * colB, atC, 8 * cols, rows, inner, cols, pack, 0);
-  out.set(new Float64Array(scratch.buffer, atC, out.length));
-  return true;
+  return new Float64Array(scratch.buffer, atC, rows * cols);
+}
+
+/**
+ * Hands A B to `use` without copying it: the product is only good during that call, which must not multiply or factorise.
+ * @param a rows x inner
+ * @param b inner x cols
+ * @throws RangeError when a length does not fit
+ */
+export function withProduct<T>(a: Float64Array, b: Float64Array, rows: number, inner: number, cols: number, use: (product: Float64Array) => T): T {
+  if (a.length === rows * inner && b.length === inner * cols) {
+    const product = productInMemory(a, inner, 1, b, cols, 1, rows, inner, cols);
+    if (product) return use(product);
+  }
+  return use(matmul(a, b, rows, inner, cols));
 }
 
 /** The transpose of a rows x cols matrix, in tiles. */

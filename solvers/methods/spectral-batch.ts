@@ -1,5 +1,5 @@
 import type { NoiseInfo, ReconstructContext, Reconstruction, Reconstructor } from '../core/types';
-import { matmul, matmulTransposed } from '../linear-algebra/matrix-product';
+import { matmul, matmulTransposed, withProduct } from '../linear-algebra/matrix-product';
 import type { SpectralData } from '../parameter-choice/spectral-data';
 import { requireNoise } from './reconstructor';
 import { expandCoefficients, frameSpectrum, outsideOf, requireFrame, type SpectralSystem } from './spectral-system';
@@ -78,10 +78,9 @@ function expandMany(system: SpectralSystem, choices: readonly SpectralChoice[]):
   // Zeros past the end of a shorter choice add nothing to its sums.
   const d = new Float64Array(choices.length * used);
   choices.forEach((choice, f) => d.set(choice.d.subarray(0, choice.count), f * used));
-  const all = matmul(d, basis.subarray(0, used * unknowns), choices.length, used, unknowns);
-  return choices.map((_, f) => {
+  return withProduct(d, basis.subarray(0, used * unknowns), choices.length, used, unknowns, (all) => choices.map((_, f) => {
     const x = new Float64Array(unknowns);
     for (let j = 0, from = f * unknowns; j < unknowns; j++, from++) x[j] = all[from] + background[j];
     return x;
-  });
+  }));
 }
