@@ -8,7 +8,7 @@ import { StabilityChart } from '../components/charts/stability-chart';
 import { ColourBar, scaleTexts } from '../components/images/colour-bar';
 import { CropImage } from '../components/images/crop-image';
 import { problemElectrodes } from '../components/images/electrode-layout';
-import { difference, differenceLimit, insidePixels, largest, rangeOf, toPicture, valueScale } from '../components/images/pixels';
+import { difference, differenceLimit, insidePixels, isLine, largest, rangeOf, toPicture, valueScale } from '../components/images/pixels';
 import { Page } from '../components/layout/page';
 import { nearestLevel, ruleScale } from '../components/noise-rule/scale';
 import { useNoise, useParam } from '../components/noise-rule/use-noise';
@@ -28,7 +28,7 @@ import { disagreement, l2Key, letters, middleDraw, pairs, sharedDraws, spokenVer
 import { getRunQueryOptions } from '../features/runs/api/get-run';
 import { getRunImageQueryOptions, listTrialsQueryOptions } from '../features/runs/api/get-run-image';
 import { axisFact, axisView } from '../lib/axis-words';
-import { formatError, formatNumber, formatPercent, numberWord, plural } from '../lib/format';
+import { formatError, formatPercent, numberWord, plural } from '../lib/format';
 import { placeWords, withUnit } from '../lib/problem-words';
 import { paths } from '../lib/paths';
 import { useNarrow } from '../lib/use-media';
@@ -208,10 +208,10 @@ function Pictures({ runs, first, contenders, level, draw }: { runs: readonly Run
       <section className="sec" style={{ marginTop: 24 }} aria-labelledby="images-title">
         <h2 className="vh" id="images-title">Images</h2>
         <Matrix phantom={first.phantom} truth={truth} columns={columns} draw={draw} low={low} high={high} limit={limit} unit={first.unit} electrodes={problemElectrodes(first.problem)} grid={first.grid} start={far?.difference ? largest(far.difference) : { x: 0, y: 0 }} />
-        <div className="bars">
+        {isLine(first.grid) ? null : <div className="bars">
           <ColourBar width={280} labels={scaleTexts(low, high, first.background, first.unit)} label="Scale of truth and reconstructions" />
           {truth ? <ColourBar map="diverging" width={280} labels={[`\u2212${limit}`, '0', withUnit(`+${limit}`, first.unit)]} label="Scale of the differences" /> : null}
-        </div>
+        </div>}
       </section>
       {pair && near && far ? (
         <Section title={Math.abs(Math.log(pair.l2Ratio)) < 0.15 && pair.supRatio > 1.4 ? 'Close in L2, far in L∞' : 'Where the two norms differ'} note={`${pair.near.letter} and ${pair.far.letter}, draw ${draw + 1}, at ${axisView(first.axis).isNoise ? formatPercent(first.ladder[level] ?? 0) : axisView(first.axis).at(first.ladder[level] ?? 0)}`}>
@@ -241,8 +241,9 @@ function Spot({ pairWords, near, far, low, high, limit, radius }: { pairWords: R
   if (!far.difference || !far.image || !near.image || !near.difference) return <>{pairWords}</>;
   const spot = largest(far.difference);
   const half = 0.34 * radius;
-  const hold = (v: number): number => Math.min(radius - half, Math.max(half - radius, v));
-  const crop = { centre: { x: hold(spot.x), y: hold(spot.y) }, halfWidth: half, mark: spot };
+  const { body } = far.image.grid;
+  const hold = (v: number, middle = 0): number => Math.min(middle + radius - half, Math.max(middle + half - radius, v));
+  const crop = { centre: { x: hold(spot.x, body?.kind === 'interval' ? (body.from + body.to) / 2 : 0), y: hold(spot.y) }, halfWidth: half, mark: spot };
   const name = (c: MatrixColumn): string => `${c.contender.letter} ${c.contender.short}`;
   return (
     <>

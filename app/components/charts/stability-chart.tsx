@@ -288,8 +288,6 @@ interface GroundProps extends Drawn {
 /** Grid, ladder ticks, hatching above the trivial line, dotted ground below the floor. */
 function StabilityGround({ id, area, x, y, y0, y1, levels, trivial, floorX, axisRight }: GroundProps) {
   const { left, right, top, bottom } = area;
-  const xMin = levels[0] ?? 1e-4;
-  const xMax = levels[levels.length - 1] ?? 0.3;
   const axis = useAxis();
   const decades = levelTicks(levels, axis.isNoise);
   const sparse = right - left <= 200;
