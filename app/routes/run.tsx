@@ -63,7 +63,7 @@ function RunPage({ run }: { run: RunDetail }) {
       </PageHead>
       {run.reservation ? <p className="reservation"><StateMark state="signed-off-with-reservation" word="Reservation" /> {run.reservation}</p> : null}
       {finished ? <RunResult run={run} noise={noise} me={session.account?.handle ?? ''} /> : <RunProgress run={run} progress={progress} />}
-      <p className="sm caution-line">Results are about methods, not about patients or plant: not for diagnosis, not a safety case. Current injection into people or animals is bound by the applicable electrical-safety standard (IEC 60601-1 and local rules) and the judgement of licensed practitioners.</p>
+      <p className="sm caution-line">Results are about methods, not about patients or plant: not for diagnosis, not a safety case.{run.problem.family === 'electrical-impedance' ? ' Current injection into people or animals is bound by the applicable electrical-safety standard (IEC 60601-1 and local rules) and the judgement of licensed practitioners.' : ''}</p>
     </Page>
   );
 }

@@ -32,7 +32,7 @@ export function versionReadme(input: PhantomAt & { readonly simulation: Simulati
     `${familyNames[definition.family].name}: ${phantomLine(version)}.`,
     ...geometryWords(definition),
     `Background ${[summary.background, summary.unit].join(' ').trim()}.`,
-    `Simulated by ${summary.simulation.kind} with ${summary.simulation.unknowns} unknowns; code ${simulation.codeVersion}.`,
+    `Simulated by ${summary.simulation.kind}${summary.simulation.unknowns > 0 ? ` with ${summary.simulation.unknowns} unknowns` : ''}; code ${simulation.codeVersion}.`,
     `Model-error floor ${Number((100 * simulation.modelErrorFloor).toPrecision(3))} %: the gap between the simulating and the inverting model. Noise below it is not what limits a result.`,
     '',
     'Files',

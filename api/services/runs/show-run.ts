@@ -84,10 +84,10 @@ function provenanceOf(run: LoadedRun, simulation: Simulation): RunDetail['proven
     { what: 'Phantom', detail: `${phantom.phantom.id}, ${phantom.name}, version ${phantom.n}`, hash: phantom.contentHash },
     {
       what: 'Simulation',
-      detail: `${summary.simulation.kind}, ${summary.simulation.unknowns} unknowns, by this registry, code ${simulation.codeVersion}; it never inverts`,
+      detail: `${[summary.simulation.kind, ...(summary.simulation.unknowns > 0 ? [`${summary.simulation.unknowns} unknowns`] : [])].join(', ')}, by this registry, code ${simulation.codeVersion}; it never inverts`,
       hash: simulation.contentHash,
     },
-    { what: 'Inversion model', detail: `${summary.inversion.cells} cells, ${summary.inversion.nodes} nodes, another mesh than the simulation`, hash: null },
+    { what: 'Inversion model', detail: phantom.definition.family === 'electrical-impedance' ? `${summary.inversion.cells} cells, ${summary.inversion.nodes} nodes, another mesh than the simulation` : `${summary.inversion.cells} unknowns, another model than the simulation`, hash: null },
     { what: 'Solver', detail: `${solver.solver.$.id}, ${solver.solver.$.name}, version ${solver.n}`, hash: solver.contentHash },
     { what: 'Bench', detail: `${bench.id}, ${bench.title}, revision ${bench.revision}`, hash: bench.contentHash },
     { what: 'Noise', detail: `${noiseModelName(run.noiseModel)}, relative to the ${phantom.definition.noiseReference}; ${levelsWords(run)}, ${run.draws} draws each, seed ${run.seed}`, hash: null },

@@ -50,7 +50,7 @@ export function LineImage({ label, picture, body, low, high, map = 'sequential',
   const crossAt = cross ? place(cross) : null;
   return (
     <div className="line-image" role="img" aria-label={onCross ? `${label}. Arrow keys move the linked mark.` : label} style={{ width: size, cursor: onCross ? 'crosshair' : undefined, touchAction: onCross ? 'pan-y' : undefined }} {...interactive}>
-      <div ref={ref}>
+      <div ref={ref} style={{ position: 'relative', height }}>
         <svg width={width} height={height} aria-hidden="true">
           {room ? linearTicks(low, high, 4).map((v) => (
             <g key={v}><line x1={left} x2={right} y1={Y(v)} y2={Y(v)} stroke="var(--hair)" /><text className="ax" x={left - 5} y={Y(v) + 4} textAnchor="end">{tickText(v)}</text></g>

@@ -77,7 +77,7 @@ export function Matrix({ phantom, truth, columns, draw, low, high, limit, grid, 
             })}
           </tbody>
         </table>
-        <p className="sm mu only-d" style={{ marginTop: 8 }}>Point at any image, or move the mark with the arrow keys.</p>
+        <p className="sm mu only-d" style={{ marginTop: 8 }}>Point at any {body?.kind === 'interval' ? 'curve' : 'image'}, or move the mark with the arrow keys.</p>
       </div>
       {columns.map((c, i) => (
         <div key={c.contender.id}>

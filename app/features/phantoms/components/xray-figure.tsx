@@ -45,7 +45,7 @@ export function XrayFigure({ geometry, truth }: { geometry: XrayGeometry; truth:
           return <line key={deg} x1={Math.cos(t) * (ring - 2)} y1={-Math.sin(t) * (ring - 2)} x2={Math.cos(t) * (ring + 2)} y2={-Math.sin(t) * (ring + 2)} />;
         })}
       </g>
-      <text y="115" textAnchor="middle" fontSize="7.6" fill="var(--ink-2)">diameter {plainNumber(2000 * radius)} mm</text>
+      <text y="115" textAnchor="middle" fontSize="6.6" fill="var(--ink-2)">diameter {plainNumber(2000 * radius)} mm</text>
     </svg>
   );
 }

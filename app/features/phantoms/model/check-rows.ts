@@ -25,18 +25,43 @@ export function checkLine(check: Pick<CheckResultWire, 'meaning' | 'bound' | 'co
 const shape = { name: 'Data finite and of the right shape', how: 'every value of both frames' };
 const gap = { name: 'Discretisations differ', how: 'simulation against inversion' };
 
+const model = [{ name: 'Adjoint', how: 'derivative against its adjoint' }, { name: 'Derivative', how: 'slope of the Taylor remainder' }];
+
 /** Checks of a phantom in the order in which they settle, for the rows shown while they are waited for. */
 export const phantomCheckNames: Record<FamilyKey, readonly { name: string; how: string }[]> = {
   'electrical-impedance': [
     shape,
     { name: 'Reciprocity', how: 'swap drive and measurement' },
-    { name: 'Convergence of the simulation', how: 'a coarser simulation of the same truth' },
-    { name: 'Two simulators agree', how: 'boundary integrals against finite elements' },
+    { name: 'Mesh convergence', how: 'a finer mesh of the same truth' },
+    { name: 'Two simulators agree', how: 'elements against boundary integrals' },
     { name: 'Closed form of the concentric disc', how: 'where the eigenvalues are known' },
     gap,
     { name: 'Shapes clear of the electrodes', how: 'distance of an outline to the edge' },
+    ...model,
   ],
-  'x-ray': [shape, gap],
-  'integral-equation': [shape, gap],
-  deblurring: [shape, gap],
+  'x-ray': [
+    shape,
+    { name: 'Closed form of ellipses', how: 'where every shape is one' },
+    { name: 'Every view has the mass of the body', how: 'sum of its line integrals' },
+    { name: 'Views agree with one another', how: 'moments of all views' },
+    gap,
+    ...model,
+  ],
+  'integral-equation': [
+    shape,
+    { name: 'Closed form of the right-hand side', how: 'where the equation has one' },
+    { name: 'Quadrature converged', how: 'panels half as wide' },
+    gap,
+    { name: 'Singular values add up', how: 'against the size of the kernel' },
+    { name: 'Singular values decay as they should', how: 'where they have a closed form' },
+    ...model,
+  ],
+  deblurring: [
+    shape,
+    { name: 'Point-spread function of unit sum', how: 'a constant stays a constant' },
+    { name: 'Closed form of a blurred edge', how: 'where the function has one' },
+    { name: 'Samples of the field fine enough', how: 'samples half as far apart' },
+    gap,
+    ...model,
+  ],
 };

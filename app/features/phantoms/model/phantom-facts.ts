@@ -15,7 +15,7 @@ import { edgeNames, pointSpreadNames, spreadNames } from './deblurring-words';
 import { electrodeWidth, frameFacts, measurementNames, patternWords } from './geometry-facts';
 
 type Facts = [string, string][];
-const mm = (metres: number): string => formatNumber(metres * 1000, 3);
+const mm = (metres: number): string => plainNumber(metres * 1000);
 const degrees = (value: number): string => `${plainNumber(value)}°`;
 
 /** Value and size of a shape: '2.00 S/m, 81 × 60 mm'. */

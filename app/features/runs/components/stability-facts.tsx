@@ -18,7 +18,8 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
   const axis = axisView(run.axis);
   const rows = metrics.flatMap((metric) => {
     const sheet = run.sheets[metric.key];
-    return sheet ? [{ metric, sheet }] : [];
+    // What the family has no value of (a position on a line without targets) says nothing of stability.
+    return sheet && run.table[metric.key]?.some((row) => row.median !== null) ? [{ metric, sheet }] : [];
   });
   return (
     <div className="sheet" style={{ overflowX: 'auto' }} tabIndex={0} role="region" aria-label="Stability sheet, scrolls sideways">
