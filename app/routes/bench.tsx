@@ -184,9 +184,11 @@ function SeenAt({ bench, ranking, noise, pictures }: { bench: BenchDetail; ranki
   const runs = ranking.rows.map((row) => row.runs.find((r) => r.phantom === phantom?.slug && r.state === 'finished')?.run ?? null);
   const images = useQueries({ queries: runs.map((run) => ({ ...getRunImageQueryOptions(run ?? '', level, 'median'), enabled: run !== null })) });
   if (!phantom) return null;
-  const truth = pictures.get(phantom.slug)?.picture ?? null;
   const data = simulation.data;
-  const [low, high] = valueScale(data?.truthRange ?? [0, 1], data?.background ?? 0.5);
+  // On another axis each level may have a ground truth of its own; it comes with the images.
+  const ofLevel = bench.axis.key === 'noise' ? null : (images.find((image) => image.data?.truth)?.data?.truth ?? null);
+  const truth = ofLevel && data ? toPicture(ofLevel, data.grid) : (pictures.get(phantom.slug)?.picture ?? null);
+  const [low, high] = valueScale(ofLevel ? [ofLevel.reduce((a, b) => Math.min(a, b)), ofLevel.reduce((a, b) => Math.max(a, b))] : (data?.truthRange ?? [0, 1]), data?.background ?? 0.5);
   const view = metricView('relative-l2-error');
   const shortName = shortNames(ranking.rows.map((r) => r.solver.name));
   const items: GalleryItem[] = [

@@ -56,7 +56,7 @@ export default function Benches() {
 
 const columns: readonly DataColumn<BenchSummary>[] = [
   { key: 'title', head: 'Bench', unit: 'and its question', sortBy: (b) => b.title, className: 'first', cell: (b) => <><Link to={paths.bench(b.slug)}>{b.title}</Link> <span className="mono sm">{b.id}</span><em>{b.question}</em></> },
-  { key: 'family', head: 'Problem family', sortBy: (b) => familyNames[b.family].name, cell: (b) => <>{familyNames[b.family].name}{axisFact(b.axis) ? <em>{axisFact(b.axis)}</em> : null}</> },
+  { key: 'family', head: 'Problem family', sortBy: (b) => familyNames[b.family].name, cell: (b) => <>{familyNames[b.family].name}{axisFact(b.axis) ? <span className="sm" style={{ display: 'block' }}>{axisFact(b.axis)}</span> : null}</> },
   { key: 'group', head: 'Group', sortBy: (b) => b.group.name, cell: (b) => <Link to={paths.group(b.group.slug)}>{b.group.name}</Link> },
   { key: 'phantoms', head: 'Phantoms', numeric: true, sortBy: (b) => b.phantomCount, cell: (b) => b.phantomCount },
   { key: 'entries', head: 'Solvers', unit: 'entered', numeric: true, sortBy: (b) => b.entryCount, cell: (b) => b.entryCount },

@@ -79,7 +79,7 @@ function profileOf(bench: LoadedBench, set: RankedSet, results: BenchResults, me
 function profileWords(profile: PerformanceProfiles | null, within: boolean, set: RankedSet, bench: LoadedBench, results: BenchResults): string {
   if (within) return 'Profiles are over all phantoms.';
   const levels = levelsAbove(bench, results).length;
-  if (profile) return `${profile.problems} problems: ${set.ranked[0]?.values.length ?? 0} ${set.ranked[0]?.values.length === 1 ? 'phantom' : 'phantoms'} at ${levels} noise levels${levels < bench.ladder.length ? ` from the model-error floor of ${percent(results.floor)} up` : ''}, median over draws.`;
+  if (profile) return `${profile.problems} problems: ${set.ranked[0]?.values.length ?? 0} ${set.ranked[0]?.values.length === 1 ? 'phantom' : 'phantoms'} at ${levels} ${bench.axis.key === 'noise' ? 'noise levels' : 'levels'}${levels < bench.ladder.length ? ` from the model-error floor of ${percent(results.floor)} up` : ''}, median over draws.`;
   if (levels === 0) return `Every level lies below the model-error floor of ${percent(results.floor)}.`;
   return set.better === 'higher' ? 'A ratio of scores means nothing: profiles are of errors.' : 'No solver has finished on every phantom.';
 }

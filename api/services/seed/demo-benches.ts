@@ -21,7 +21,7 @@ Data are the difference of two frames, and the noise level $\\delta$ is relative
 
 A configuration must not be tuned on these phantoms.`,
     phantoms: ['two-lobes', 'deep-core', 'rim-pair-and-bar', 'warm-and-cold-spots', 'crescent-and-hook'],
-    ladder: defaultLadder, draws: 10, seed: 20261130,
+    ladder: defaultLadder, draws: 8, seed: 20261130,
     entries: [
       ...enter('tikhonov-gradient', 'tikhonov-identity', 'tikhonov-laplacian', 'truncated-svd', 'cgls', 'calderon'),
       // Its weight falls below what rounding bears, and the first matrix after that cannot be factorised: the run fails at once.
@@ -46,7 +46,7 @@ Data are the closed forms (or sums of closed forms), never the matrix that inver
 
 The cells cannot follow the outlines of the shapes, which alone moves the data by up to some per cent: noise below that is marked as lying below the model-error floor, and ranks begin above it.`,
     phantoms: ['shepp-logan', 'shepp-logan-raised-contrast', 'slabs-over-a-third-of-a-turn', 'cased-core-in-a-fan', 'soft-hills-few-views'],
-    ladder: [0.003, 0.01, 0.03, 0.06, 0.1, 0.2, 0.4], draws: 6, seed: 1917,
+    ladder: [0.01, 0.03, 0.07, 0.1, 0.15, 0.2, 0.4], draws: 6, seed: 1917,
     entries: [...enter('filtered-back-projection', 'back-projection', 'sart', 'cgls-gradient'), ...last('sirt', 'total-variation')],
   },
   {

@@ -362,10 +362,10 @@ export function SmallStability({ label, curves, levels, noise, floor: modelError
             <text className="ax" x={area.left - 6} y={raw(v) + 4} textAnchor="end">{v}</text>
           </g>
         ))}
-        {levelTicks(levels, axis.isNoise).map((v, i) => (
+        {levelTicks(levels, axis.isNoise).map((v, i, all) => (
           <g key={v}>
             <line x1={x(v)} x2={x(v)} y1={area.top} y2={area.bottom} stroke="var(--hair)" />
-            {width < 220 && i % 2 === 1 ? null : <text className="ax" x={x(v)} y={area.bottom + 15} textAnchor={i === 0 ? 'start' : 'middle'}>{axis.format(v)}</text>}
+            {width < 220 && i % 2 === 1 ? null : <text className="ax" x={x(v)} y={area.bottom + 15} textAnchor={i === 0 ? 'start' : i === all.length - 1 && area.right - x(v) < 10 ? 'end' : 'middle'}>{axis.format(v)}</text>}
           </g>
         ))}
         <rect x={area.left} y={area.top} width={Math.max(0, area.right - area.left)} height={raw(1) - area.top} fill={`url(#${id}h)`} />

@@ -51,7 +51,7 @@ export function StabilityFacts({ run }: { run: RunDetail }) {
           </tr>
         </tbody>
       </table>
-      {axis.isNoise ? null : <p className="sm" style={{ padding: '6px 16px 10px' }}>δ is the level: {axis.label}. {axis.fixed}.</p>}
+      {axis.isNoise ? null : <p className="sm" style={{ padding: '6px 16px 10px' }}>δ is the level: {axis.label}.</p>}
     </div>
   );
 }
