@@ -8,6 +8,8 @@ export function restrictedProblem(problem: ForwardProblem, rows: Int32Array): Fo
   return {
     ...problem,
     dataSize: rows.length,
+    // What is reciprocal in the whole frame need not be among the rows that are left.
+    dataBasis: undefined,
     evaluate: (x) => pick(problem.evaluate(x), rows),
     linearise: (x) => restrictedDerivative(problem.linearise(x), rows),
   };
