@@ -58,7 +58,7 @@ function SolverPage({ solver }: { solver: SolverDetail }) {
   return (
     <Page
       title={`${solver.id} ${solver.name}`} className="page-solver" axis={chosen?.axis}
-      rule={{ levels: levels.length ? levels : undefined, floor: chosen?.modelErrorFloor ?? null, focus: chosen?.sheet.breakdown ? { glyph: solver.glyph, breakdown: chosen.sheet.breakdown.value } : null }}
+      rule={{ levels: levels.length ? levels : undefined, draws: chosen?.levels[0]?.draws.length, floor: chosen?.modelErrorFloor ?? null, focus: chosen?.sheet.breakdown ? { glyph: solver.glyph, breakdown: chosen.sheet.breakdown.value } : null }}
     >
       <PageHead crumbs={<><span>Solver configuration <span className="mono">{solver.id}</span>, version {version.n}</span><span>{solver.group.name}</span>{state}</>} title={solver.name}>
         <SolverActions solver={solver} version={version} runs={items.map((i) => i.run)} onTry={() => setTrying(!trying)} />
@@ -67,7 +67,7 @@ function SolverPage({ solver }: { solver: SolverDetail }) {
       {version.state === 'draft' ? <Box tone="plain" state="draft" title="This is a draft; only the group sees it" className="notice"><p>Register it to enter it in benches. A registered version never changes.</p></Box> : null}
       <SolverTop solver={solver} version={version} stability={stability.data} />
       {trying ? <TryHere items={items.filter((i) => i.axis.key === 'noise')} configuration={version.configuration} noise={axisView(chosen?.axis).noiseAt(settled)} onClose={() => setTrying(false)} /> : null}
-      <Section title="Stability sheet" note={`relative L2, medians of ${chosen?.levels[0]?.count ?? 24} draws; intervals are 90 % over draws`}>
+      <Section title="Stability sheet" note={`relative L2, medians ${chosen ? `of ${chosen.levels[0]?.draws.length ?? 0} draws` : 'over draws'}; intervals are 90 % over draws`}>
         {stability.isPending ? <Loading label="Fetching the finished runs" /> : stability.isError ? <ErrorPanel error={stability.error} onRetry={() => void stability.refetch()} /> : chosen ? (
           <StabilitySection items={items} chosen={chosen} onChoose={setPhantom} noise={noise} glyph={solver.glyph} />
         ) : <Empty title="No finished run yet">The sheet appears when a run of this version ends.{solver.may.enter ? ' Enter it in a bench to start.' : ''}</Empty>}

@@ -11,6 +11,7 @@ import { useNoise } from './use-noise';
 export interface NoiseRuleProps {
   /** Ladder levels, fractions; the default ladder when absent. */
   levels?: readonly number[];
+  /** Draws at a level, where the page is about one bench. */
   draws?: number;
   /** Model-error floor of the phantom in focus, or the largest of several; a fraction. */
   floor?: number | null;
@@ -21,7 +22,7 @@ export interface NoiseRuleProps {
 }
 
 /** A slide rule for the noise: slider with arrow keys (ladder steps), Home, End, drag with snapping, two step buttons. */
-export function NoiseRule({ levels, draws = 24, floor: modelErrorFloor = null, floorOf = null, focus = null }: NoiseRuleProps) {
+export function NoiseRule({ levels, draws, floor: modelErrorFloor = null, floorOf = null, focus = null }: NoiseRuleProps) {
   const axis = useAxis();
   // The floor is a noise: it has no place on another axis.
   const floor = axis.isNoise ? modelErrorFloor : null;
@@ -99,7 +100,7 @@ export function NoiseRule({ levels, draws = 24, floor: modelErrorFloor = null, f
             `, floor of ${floorOf}`
           ) : null}
           <br />
-          {below ? 'below the model-error floor' : near.on ? `level ${near.index + 1} of ${scale.levels.length}, ${draws} draws` : 'between levels, interpolated'}
+          {below ? 'below the model-error floor' : near.on ? `level ${near.index + 1} of ${scale.levels.length}${draws === undefined ? '' : `, ${draws} draws`}` : 'between levels, interpolated'}
         </div>
         <div className="nr-step">
           <IconButton label="Previous ladder level" onClick={() => set(stepLevel(scale, value, -1))}>{'\u2039'}</IconButton>

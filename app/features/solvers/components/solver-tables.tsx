@@ -93,7 +93,7 @@ export function SolverEntries({ solver, noise }: { solver: SolverDetail; noise: 
                 const state: MarkState = failed ? 'failed' : busy ? 'running' : entryReview(entry.runs.map((r) => r.review));
                 return (
                   <tr key={`${entry.bench.id}-${entry.version}`}>
-                    <td><Link to={paths.bench(entry.bench.slug)}>{entry.bench.title}</Link> <span className="mono sm">{entry.bench.id}</span> <span className="sm">v{entry.version}{entry.bench.state === 'closed' ? ', closed' : ''}{axisFact(entry.bench.axis) ? `, ${axisFact(entry.bench.axis)?.toLowerCase()}, read at ${axisView(entry.bench.axis).format(ranking?.level ?? 0)}` : ''}</span></td>
+                    <td><Link to={paths.bench(entry.bench.slug)}>{entry.bench.title}</Link> <span className="mono sm">{entry.bench.id}</span> <span className="sm">v{entry.version}{entry.bench.state === 'closed' ? ', closed' : ''}{axisFact(entry.bench.axis) ? `, ${axisFact(entry.bench.axis)?.toLowerCase()}${ranking ? `, read at ${axisView(entry.bench.axis).format(ranking.level)}` : ''}` : ''}</span></td>
                     <td className="num">{ranking && row ? rankWords(ranking, row) : '–'}</td>
                     <td className="num"><b>{formatError(row?.median ?? null)}</b></td>
                     <td className="num">{row?.breakdown ? axisView(entry.bench.axis).format(row.breakdown) : row?.breakdownNote === 'beyond' ? 'beyond' : row?.breakdownNote ?? '–'}</td>
