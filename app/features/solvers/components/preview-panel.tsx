@@ -2,7 +2,7 @@ import { useMemo } from 'react';
 import { ColourBar } from '../../../components/images/colour-bar';
 import { BodyImage } from '../../../components/images/body-image';
 import { problemElectrodes } from '../../../components/images/electrode-layout';
-import { difference, differenceLimit, largest, toPicture, type Picture } from '../../../components/images/pixels';
+import { difference, differenceLimit, isLine, largest, toPicture, type Picture } from '../../../components/images/pixels';
 import { Box } from '../../../components/ui/box';
 import { formatCount, formatError, formatNumber, formatPercent, formatSeconds } from '../../../lib/format';
 import type { costEstimateSchema } from '../../../../shared/contracts/benches';
@@ -47,10 +47,12 @@ export function PreviewPanel({ phantom, preview, noise, levels, others, stale }:
         <figure><figcaption><b>Yours</b><span className="tn" aria-live="polite">{l2 === undefined ? (busy ? 'computing' : '') : `L2 ${formatError(l2)}`}</span></figcaption><BodyImage label={`Your reconstruction at ${formatPercent(noise)} noise`} picture={yours} under={phantom.truth} low={low} high={high} {...shared} /></figure>
         <figure><figcaption><b>Difference</b></figcaption><BodyImage label="Reconstruction minus truth" picture={error} map="diverging" low={-limit} high={limit} {...shared} /></figure>
       </div>
-      <div className="bars">
-        <ColourBar labels={[formatNumber(low, 2), phantom.unit, formatNumber(high, 2)]} />
-        <ColourBar map="diverging" labels={[`−${limit}`, `+${limit}`]} />
-      </div>
+      {isLine(phantom.grid) ? null : (
+        <div className="bars">
+          <ColourBar labels={[formatNumber(low, 2), phantom.unit, formatNumber(high, 2)]} />
+          <ColourBar map="diverging" labels={[`−${limit}`, `+${limit}`]} />
+        </div>
+      )}
       <div className="pl">
         <div>
           <h3>Error against noise</h3>
