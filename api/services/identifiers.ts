@@ -21,6 +21,8 @@ export async function nextId(em: EntityManager, noun: keyof typeof idPrefixes): 
 export function slugify(name: string): string {
   const slug = name
     .normalize('NFKD')
+    // The accent that the normal form has split off is no gap in a word.
+    .replace(/\p{M}+/gu, '')
     .toLowerCase()
     .replace(/[^a-z0-9]+/g, '-')
     .slice(0, 70)

@@ -102,5 +102,6 @@ describe('the demonstration plan', () => {
     expect(new Set(demoPlan.reviews.flatMap((review) => review.verdict?.verdict ?? []))).toEqual(new Set(['signed-off', 'signed-off-with-reservation', 'returned']));
     const names = [...demoPlan.solvers.map((solver) => slugify(solver.name)), ...demoPlan.benches.map((bench) => slugify(bench.title))];
     expect(new Set(names).size).toBe(names.length);
+    expect(names, 'an accent is no gap').toContain('calderon-s-linearisation');
   });
 });
