@@ -90,7 +90,7 @@ describe('a run', () => {
 
   it('can be replayed elsewhere, without the sealed truth', async () => {
     const replay = replaySchema.parse((await app.visitor.get(`/api/v1/runs/${run}/replay`)).body);
-    expect(replay).toMatchObject({ run, truth: null, targets: null, seed: 1, noiseScale: 1, dataKind: 'difference' });
+    expect(replay).toMatchObject({ run, truth: null, targets: null, seed: 1, noiseScale: 1, problem: { family: 'electrical-impedance', dataKind: 'difference' } });
     expect(replay.trials).toHaveLength(ladder.length * draws);
     expect(decodeArray(replay.clean)).toEqual(Float64Array.of(0, 1));
   });
