@@ -7,7 +7,7 @@ import { FormSection, PageHead } from '../components/ui/layout';
 import { Empty, ErrorPanel, Loading } from '../components/ui/notices';
 import { useCreateBench } from '../features/benches/api/create-bench';
 import { axisWords, type AxisKey } from '../../shared/domain/axes';
-import { axesFor, emptyBenchForm, offeredLevels, parseLadder, toBenchRequest, type BenchForm } from '../features/benches/model/bench-form';
+import { axesFor, emptyBenchForm, noiseModelsFor, offeredLevels, parseLadder, toBenchRequest, type BenchForm } from '../features/benches/model/bench-form';
 import { metricViews } from '../features/benches/model/metric-view';
 import { usePhantoms } from '../features/phantoms/api/list-phantoms';
 import { useSession } from '../features/session/api/session';
@@ -16,7 +16,7 @@ import { formatCount, plural } from '../lib/format';
 import { paths } from '../lib/paths';
 
 const fieldNames: Readonly<Record<string, string>> = {
-  group: 'group', title: 'short name', question: 'question', phantoms: 'phantoms', axis: 'what varies', axisNoise: 'noise', ladder: 'levels', draws: 'draws', seed: 'seed', description: 'description', rankingMetric: 'ranking metric',
+  group: 'group', title: 'short name', question: 'question', phantoms: 'phantoms', noiseModel: 'kind of noise', axis: 'what varies', axisNoise: 'noise', ladder: 'levels', draws: 'draws', seed: 'seed', description: 'description', rankingMetric: 'ranking metric',
 };
 
 export default function BenchNew() {
@@ -47,6 +47,8 @@ function NewBenchForm({ groups }: { groups: readonly { slug: string; name: strin
   const families = [...new Set((phantoms.data?.items ?? []).filter((p) => form.phantoms.includes(`${p.slug}@${p.current.n}`)).map((p) => p.family))];
   const served = axesFor(families);
   const axis = axisWords[form.axis];
+  const noises = noiseModelsFor(families);
+  const noise = noises.find((model) => model.key === form.noiseModel);
   const set = (part: Partial<BenchForm>) => setForm({ ...form, ...part });
   const submit = (e: FormEvent) => {
     e.preventDefault();
@@ -55,7 +57,7 @@ function NewBenchForm({ groups }: { groups: readonly { slug: string; name: strin
     if (request) create.mutate(request, { onSuccess: (bench) => void navigate(paths.bench(bench.slug)) });
   };
   const server = create.error;
-  const at = (field: string): string | undefined => errors.get(field) ?? (form.axis !== 'noise' && field === 'axis' && !served.includes(form.axis) ? `${axis.name} does not serve the chosen phantoms.` : undefined) ?? (isApiError(server) ? server.issues.find((i) => (i.path[0] === 'axis' && i.path[1] === 'noise' ? 'axisNoise' : i.path[0]) === field)?.message : undefined);
+  const at = (field: string): string | undefined => errors.get(field) ?? (field === 'noiseModel' && !noise ? 'This noise does not occur in the family of the chosen phantoms.' : undefined) ?? (form.axis !== 'noise' && field === 'axis' && !served.includes(form.axis) ? `${axis.name} does not serve the chosen phantoms.` : undefined) ?? (isApiError(server) ? server.issues.find((i) => (i.path[0] === 'axis' && i.path[1] === 'noise' ? 'axisNoise' : i.path[0]) === field)?.message : undefined);
   const faulty = Object.keys(fieldNames).filter((f) => at(f) !== undefined);
   const levels = parseLadder(form.ladder, form.axis).filter((v) => Number.isFinite(v)).length;
   const each = form.phantoms.length * levels * (Number(form.draws) || 0);
@@ -93,6 +95,10 @@ function NewBenchForm({ groups }: { groups: readonly { slug: string; name: strin
         <div className="grid gap-x4">
           <Select id="bench-axis" label="What varies" value={form.axis} error={at('axis')} help={axis.line} onChange={(e) => { const key = e.target.value as AxisKey; set({ axis: key, ladder: offeredLevels(key) }); }}>
             {[...served, ...(served.includes(form.axis) ? [] : [form.axis])].map((key) => <option key={key} value={key}>{axisWords[key].name}</option>)}
+          </Select>
+          <Select id="bench-noiseModel" label="Kind of noise" value={form.noiseModel} error={at('noiseModel')} help={noise?.summary} onChange={(e) => set({ noiseModel: e.target.value })}>
+            {noises.map((model) => <option key={model.key} value={model.key}>{model.name}</option>)}
+            {noise ? null : <option value={form.noiseModel}>{form.noiseModel}</option>}
           </Select>
           {form.axis === 'noise' ? null : <Field id="bench-axisNoise" label="Noise" unit="%" inputMode="decimal" value={form.axisNoise} error={at('axisNoise')} help="Relative level, the same at every level of the axis." onChange={(e) => set({ axisNoise: e.target.value })} />}
           <Field id="bench-ladder" label={form.axis === 'noise' ? 'Noise levels' : `Levels of ${axis.name.toLowerCase()}`} unit={axis.print === 'share' ? '%' : 'none'} value={form.ladder} error={at('ladder')} help={form.axis === 'noise' ? 'Relative L2 levels, increasing. The same for every solver.' : 'Increasing. The same for every solver.'} onChange={(e) => set({ ladder: e.target.value })} />

@@ -39,6 +39,7 @@ import '../styles/pages/bench.css';
 import '../styles/pages/bench-comparison.css';
 import '../styles/pages/bench-ranking.css';
 import NotFound from './not-found';
+import { noiseModels } from '../../solvers/noise/registry';
 
 export default function BenchRoute() {
   const { slug = '' } = useParams();
@@ -147,7 +148,7 @@ function BenchPage({ bench }: { bench: BenchDetail }) {
       <section className="sec notes">
         <div>
           <h3>How the table is made</h3>
-          <p>Every solver configuration runs on every phantom at {numberWord(bench.ladder.length)} {axis.levels}, {plural(bench.draws, 'seeded draw')} each (seed {bench.seed}).{axis.isNoise ? '' : ` ${axis.fixed}. ${axis.line}`} Parameters stay fixed across the ladder unless the configuration's own rule changes them. Ranks compare phantoms, not draws: a phantom counts once, with its median over draws.</p>
+          <p>Every solver configuration runs on every phantom at {numberWord(bench.ladder.length)} {axis.levels}, {plural(bench.draws, 'seeded draw')} each (seed {bench.seed}).{axis.isNoise ? '' : ` ${axis.fixed}. ${axis.line}`}{bench.noiseModel === 'gaussian' ? '' : ` Noise: ${noiseModels.find((model) => model.key === bench.noiseModel)?.name ?? bench.noiseModel}.`} Parameters stay fixed across the ladder unless the configuration's own rule changes them. Ranks compare phantoms, not draws: a phantom counts once, with its median over draws.</p>
           {bench.description ? <Markdown source={bench.description} /> : null}
         </div>
         <div>

@@ -4,7 +4,7 @@ import { afterEach, describe, expect, it, vi } from 'vitest';
 import { AxisContext } from '../../../app/components/noise-rule/axis-context';
 import { NoiseRule } from '../../../app/components/noise-rule/noise-rule';
 import { NoiseProvider } from '../../../app/components/noise-rule/use-noise';
-import { axesFor, emptyBenchForm, offeredLevels, parseLadder, toBenchRequest } from '../../../app/features/benches/model/bench-form';
+import { axesFor, emptyBenchForm, offeredLevels, parseLadder, toBenchRequest, noiseModelsFor } from '../../../app/features/benches/model/bench-form';
 import { ErrorLevels, ErrorTable, type TableRun } from '../../../app/features/runs/components/error-table';
 import { axisFact, axisView } from '../../../app/lib/axis-words';
 import { SmallStability, StabilityChart } from '../../../app/components/charts/stability-chart';
@@ -74,5 +74,14 @@ describe('figures over another axis', () => {
     expect(rule.getAttribute('aria-valuemax')).toBe('2');
     expect(screen.getAllByText(/0.5.% noise throughout/)).toHaveLength(1);
     expect(document.body.textContent).not.toContain('dB');
+  });
+});
+
+describe('the kinds of noise that a bench offers', () => {
+  it('are those that occur in the family of every chosen phantom: photon counts in X-ray tomography only', () => {
+    expect(noiseModelsFor(['x-ray']).map((model) => model.key)).toContain('poisson');
+    expect(noiseModelsFor(['electrical-impedance']).map((model) => model.key)).toEqual(['gaussian', 'gaussian-expected', 'gain', 'outliers']);
+    expect(noiseModelsFor(['electrical-impedance', 'x-ray']).map((model) => model.key)).not.toContain('poisson');
+    expect(toBenchRequest({ ...emptyBenchForm('group', 1), noiseModel: 'gain', title: 'Gain noise', question: 'Which one stands it?', phantoms: ['two-lobes@1'] }).request).toMatchObject({ noiseModel: 'gain' });
   });
 });

@@ -2,6 +2,8 @@ import { benchCreateSchema, type BenchCreate } from '../../../../shared/contract
 import { axisKeys, axisWords, type AxisKey } from '../../../../shared/domain/axes';
 import type { FamilyKey } from '../../../../shared/domain/families';
 import { defaultDraws, defaultLadder } from '../../../../shared/domain/ladder';
+import type { NoiseModel } from '../../../../solvers/noise/noise-model';
+import { noiseModels } from '../../../../solvers/noise/registry';
 
 /** What the form holds: texts as typed. */
 export interface BenchForm {
@@ -11,6 +13,8 @@ export interface BenchForm {
   description: string;
   /** `slug@version`. */
   phantoms: readonly string[];
+  /** Key of a noise model. */
+  noiseModel: string;
   axis: AxisKey;
   /** Per cent, the same at every level; used where the axis is not the noise. */
   axisNoise: string;
@@ -24,7 +28,7 @@ export interface BenchForm {
 const percentText = (fraction: number): string => String(Number((fraction * 100).toPrecision(6)));
 
 export const emptyBenchForm = (group: string, seed: number): BenchForm => ({
-  group, title: '', question: '', description: '', phantoms: [], axis: 'noise', axisNoise: '0.5', ladder: defaultLadder.map(percentText).join(', '), draws: String(defaultDraws), seed: String(seed), rankingMetric: 'relative-l2-error',
+  group, title: '', question: '', description: '', phantoms: [], noiseModel: 'gaussian', axis: 'noise', axisNoise: '0.5', ladder: defaultLadder.map(percentText).join(', '), draws: String(defaultDraws), seed: String(seed), rankingMetric: 'relative-l2-error',
 });
 
 const number = (text: string): number => (text.trim() === '' ? NaN : Number(text));
@@ -40,6 +44,9 @@ export const offeredLevels = (axis: AxisKey): string => (axis === 'noise' ? defa
 
 /** Axes that serve every family among the chosen phantoms; all of them while none is chosen. */
 export const axesFor = (families: readonly FamilyKey[]): AxisKey[] => axisKeys.filter((key) => families.every((family) => axisWords[key].families.includes(family)));
+
+/** Noise models that occur in every family among the chosen phantoms. */
+export const noiseModelsFor = (families: readonly FamilyKey[]): NoiseModel[] => noiseModels.filter((model) => families.every((family) => model.families.includes(family)));
 
 /** The request, or the first message of every faulty field by its dotted path. */
 export function toBenchRequest(form: BenchForm): { request: BenchCreate; errors: null } | { request: null; errors: ReadonlyMap<string, string> } {
