@@ -57,7 +57,7 @@ export function RankingPanel({ bench, ranking, noise, stale, onMetric, onOver, .
 export function rankingWords(bench: Pick<BenchDetail, 'draws' | 'floorPhantom'> & { readonly axis?: BenchDetail['axis'] }, ranking: Ranking): string {
   const { test } = ranking;
   const axis = axisView(bench.axis);
-  if (ranking.belowFloor && ranking.over === 'level') return `${formatPercent(axis.noiseAt(ranking.noise))}${axis.isNoise ? '' : ' noise'} is below the model-error floor${bench.floorPhantom ? ` of ${bench.floorPhantom}` : ''}: the gap between the two meshes is larger than this noise, so no ranks are given.`;
+  if (ranking.belowFloor && ranking.over === 'level') return `${formatPercent(axis.noiseAt(ranking.noise))}${axis.isNoise ? '' : ' noise'} is below the model-error floor${bench.floorPhantom ? ` of ${bench.floorPhantom}` : ''}: the gap between the two models is larger than this noise, so no ranks are given.`;
   const figures = `Median of ${plural(test.blocks, 'phantom')} × ${plural(bench.draws, 'draw')}${ranking.interpolated ? ', interpolated' : ''}.`;
   const ranks = ranking.over === 'ladder' ? ` Ranks are of the mean over ${numberWord(ranking.levels.length)} levels.` : ranking.interpolated ? ` Ranks are of ${axis.isNoise ? axis.format(ranking.level) : axis.at(ranking.level)}.` : '';
   const outcome = test.enough ? ' Brackets mark statistical ties over phantoms.' : ` ${test.words}`;
