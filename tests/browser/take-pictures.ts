@@ -54,4 +54,8 @@ await take('review', '/review?noise=0.05', { handle: 'reviewer-demo' });
 await take('compare', `/compare?runs=${beside.join(',')}&noise=0.05`);
 await take('run-dark', `/runs/${run.id}?noise=0.05`, { dark: true });
 await take('bench-phone', `/benches/${bench['slug']}?noise=0.05`, { width: 390, height: 844 });
+const views = (await list('/runs?bench=few-views-few-angles&limit=100')).find((r) => r['state'] === 'finished' && /variation/i.test(JSON.stringify(r['solver'])) && /contrast/i.test(JSON.stringify(r['phantom'])));
+if (views) await take('run-x-ray', `/runs/${views['id']}?noise=0.07`);
+const contrast = (await list('/benches?state=open')).find((b) => b['slug'] === 'how-strong-a-contrast');
+if (contrast) await take('bench-contrast', `/benches/${contrast['slug']}?noise=1.5`);
 await browser.close();
