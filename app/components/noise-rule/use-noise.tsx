@@ -42,14 +42,20 @@ export function NoiseProvider({ children }: { children: ReactNode }) {
   useEffect(() => () => window.clearTimeout(timer.current), []);
   // The address on screen lags behind what was asked for (navigation is a transition), so changes are made to the newest
   // one: two quick changes would otherwise write over each other.
-  const newest = useRef({ params, write: setParams });
+  // Addresses asked for and not on screen yet: an earlier one that comes on screen late must not take back a later change.
+  const newest = useRef<{ params: URLSearchParams; write: typeof setParams; asked: string[] }>({ params, write: setParams, asked: [] });
   useEffect(() => {
-    newest.current = { params, write: setParams };
+    const { current } = newest;
+    current.write = setParams;
+    const at = current.asked.indexOf(params.toString());
+    current.asked = at < 0 ? [] : current.asked.slice(at + 1);
+    if (current.asked.length === 0) current.params = params;
   }, [params, setParams]);
   const update = useCallback((change: (params: URLSearchParams) => void) => {
     const next = new URLSearchParams(newest.current.params);
     change(next);
     newest.current.params = next;
+    newest.current.asked.push(next.toString());
     newest.current.write(next, { replace: true, preventScrollReset: true });
   }, []);
   // A held value ends when the address has caught up with it, or moved to a value that did not come from here.
