@@ -8,9 +8,6 @@ export const queryInteger = (minimum: number, maximum: number) =>
     .transform(Number)
     .pipe(z.int().min(minimum).max(maximum));
 
-/** A yes or no written in a query string. */
-export const queryBoolean = z.enum(['true', 'false']).transform((text) => text === 'true');
-
 export const defaultPageSize = 50;
 
 /** Spread into a resource's query: `z.strictObject({ ...pageQuery, state: ... })`. */

@@ -5,6 +5,7 @@ import { requireVector, norm2 } from '../core/vector';
 import { denseCholesky } from '../linear-algebra/dense-cholesky';
 import { matmulTransposed, transpose, matmul } from '../linear-algebra/matrix-product';
 import { unknownPlaces } from './cell-image';
+import { largestSingularValue } from './nonlinear/linearisation';
 import { defineField, defineMethod, defineParameters, readParameters, readRule, type ParametersOf } from './parameters';
 import { makeReconstructor } from './reconstructor';
 import { methodStream } from './statistical/prior';
@@ -87,7 +88,8 @@ const method: Method<ParametersOf<typeof specs>> = {
     }
     const data = transpose(matmulTransposed(shapes, jacobian, targets, n, m), targets, m);
     const gram = matmulTransposed(data, data, m, targets, m);
-    const largest = largestEigenvalue(gram, m);
+    const top = largestSingularValue(gram, m);
+    const largest = top * top;
     if (!(largest > 0)) throw new RangeError('The derivative at the background is zero: these data do not depend on the unknowns.');
     for (let i = 0; i < m; i++) gram[i * m + i] += weight * weight * largest;
     // matrix^T = (Y Y^T + ...)^{-1} Y D^T: the columns of Y D^T are right-hand sides.
@@ -114,25 +116,5 @@ const method: Method<ParametersOf<typeof specs>> = {
     });
   },
 };
-
-/** Largest eigenvalue of a positive semidefinite matrix, by 60 power steps from a fixed start; a lower bound, close. */
-function largestEigenvalue(a: Float64Array, m: number): number {
-  let v = new Float64Array(m);
-  for (let i = 0; i < m; i++) v[i] = 1 + (i % 7) / 7 - (i % 3) / 3;
-  let value = 0;
-  for (let step = 0; step < 60; step++) {
-    const size = norm2(v);
-    if (size === 0) return 0;
-    const w = new Float64Array(m);
-    for (let i = 0; i < m; i++) {
-      let sum = 0;
-      for (let j = 0; j < m; j++) sum += a[i * m + j] * (v[j] / size);
-      w[i] = sum;
-    }
-    value = norm2(w);
-    v = w;
-  }
-  return value;
-}
 
 export const trainedLinearMethod = defineMethod(method);

@@ -1,7 +1,7 @@
-import { readFile } from 'node:fs/promises';
-import type { Browser, Download, Locator, Page } from 'playwright-core';
+import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { csvOf, discPicture, doublesOf, mean, minus, norm, pointElectrodeFrame, printedError, quantile, recordsOf, relativeError, supError } from '../support/outside-figures';
+import { csvOf, discPicture, doublesOf, mean, minus, norm, pointElectrodeFrame, printedError, quantile, recordsOf } from '../support/outside-figures';
+import { button, figuresFromArrays, heading, pathOf, read, savedText, type RunFigures } from '../support/page-steps';
 import { launchBrowser, openViewer, startSite, type Site, type Viewer } from '../support/site';
 
 /*
@@ -55,61 +55,11 @@ async function as(handle: string): Promise<Page> {
   return viewer.page;
 }
 
-interface Answer {
-  readonly status: number;
-  readonly body: unknown;
-}
-/** What the API gives this person. */
-async function read(page: Page, path: string): Promise<Answer> {
-  const answer = await page.request.get(`/api/v1${path}`);
-  return { status: answer.status(), body: await answer.json() };
-}
-const button = (within: Page | Locator, name: string | RegExp) => within.getByRole('button', { name, exact: typeof name === 'string' });
-const heading = (page: Page, name: string | RegExp) => page.getByRole('heading', { name }).first().waitFor();
-const pathOf = (page: Page): string => new URL(page.url()).pathname;
-async function savedText(page: Page, press: Locator): Promise<string> {
-  const [download]: [Download, void] = await Promise.all([page.waitForEvent('download'), press.click()]);
-  return readFile(await download.path(), 'utf8');
-}
-
-interface Trial {
-  readonly level: number;
-  readonly draw: number;
-  readonly noiseNorm: number;
-  readonly metrics: Record<string, number | null>;
-}
-interface RunImage {
-  readonly image: { readonly data: string };
-  readonly truth: { readonly data: string };
-  readonly trial: Trial;
-}
-/** Relative L2 and largest error of every draw of a run, from its arrays, by level. */
-const computed = new Map<string, { readonly l2: number[][]; readonly sup: number[][]; readonly trials: Trial[][] }>();
-async function figuresOf(page: Page, name: string) {
-  const known = computed.get(name);
-  if (known) return known;
-  const l2: number[][] = [];
-  const sup: number[][] = [];
-  const trials: Trial[][] = [];
-  for (const [level] of levels.entries()) {
-    l2.push([]);
-    sup.push([]);
-    trials.push([]);
-    for (let draw = 0; draw < draws; draw++) {
-      const { status, body } = await read(page, `${runs[name]}/images?level=${level}&draw=${draw}`);
-      expect(status).toBe(200);
-      const { image, truth, trial } = body as RunImage;
-      expect([trial.level, trial.draw]).toEqual([level, draw]);
-      const x = doublesOf(image);
-      const t = doublesOf(truth);
-      l2[level]!.push(relativeError(x, t, background));
-      sup[level]!.push(supError(x, t));
-      trials[level]!.push(trial);
-    }
-  }
-  const found = { l2, sup, trials };
-  computed.set(name, found);
-  return found;
+const computed = new Map<string, RunFigures>();
+async function figuresOf(page: Page, name: string): Promise<RunFigures> {
+  const known = computed.get(name) ?? (await figuresFromArrays(page, { address: runs[name]!, levels: levels.length, draws, background }));
+  computed.set(name, known);
+  return known;
 }
 
 describe.sequential('the main job', () => {

@@ -64,18 +64,6 @@ export function ErrorPanel({ error, what, onRetry }: { error: unknown; what?: st
   );
 }
 
-/** No connection: what still works. */
-export function Offline({ since, children }: { since: string; children: ReactNode }) {
-  return (
-    <div className="off" role="status">
-      <svg width="20" height="16" viewBox="0 0 20 16" aria-hidden="true" style={{ flex: 'none' }}>
-        <path d="M2 8H7M13 8H18M7 4V12M13 4V12" stroke="var(--ink)" strokeWidth="1.6" fill="none" />
-      </svg>
-      <span><b>No connection since {since}.</b> {children}</span>
-    </div>
-  );
-}
-
 /** Beside a reading under the gap between the simulating and the inverting model. */
 export function BelowFloor({ noise, floor }: { noise: number; floor: number }) {
   return (

@@ -19,10 +19,3 @@ export function rankingGroups(rows: readonly RankingRow[]): RankingGroup[] {
   }
   return groups.map(({ rank, rows: members }) => ({ rank, rows: members }));
 }
-
-const order = ['declined', 'returned', 'unreviewed', 'in-review', 'signed-off-with-reservation', 'signed-off'] as const;
-
-/** The least settled review of a row's runs: what the whole row may claim. */
-export function leastReview(row: Pick<RankingRow, 'runs' | 'review'>): RankingRow['review'] {
-  return order.find((state) => row.runs.some((run) => run.review === state)) ?? row.review;
-}

@@ -29,16 +29,3 @@ export function runPictures(imageValues: ArrayLike<number>, truthValues: ArrayLi
     limit: lockedLimit ?? differenceLimit(spot?.value ?? 1), spot,
   };
 }
-
-/** Relative L2 against the contrast: ||image - truth|| / ||truth - background||; null for a truth that is all background. */
-export function relativeL2(image: Picture, truth: Picture, background: number): number | null {
-  let error = 0;
-  let contrast = 0;
-  image.values.forEach((value, i) => {
-    const t = truth.values[i] ?? NaN;
-    if (Number.isNaN(value) || Number.isNaN(t)) return;
-    error += (value - t) * (value - t);
-    contrast += (t - background) * (t - background);
-  });
-  return contrast > 0 ? Math.sqrt(error / contrast) : null;
-}

@@ -1,6 +1,6 @@
 import { formatNumber } from '../../../lib/format';
 import type { Configuration } from '../../../../shared/contracts/solvers';
-import type { Method, ParameterField, RuleSetting } from '../../../../solvers/core/types';
+import type { ParameterField, RuleSetting } from '../../../../solvers/core/types';
 import { parameterRules } from '../../../../solvers/parameter-choice/registry';
 
 const short = (value: number): string => (Number.isInteger(value) && Math.abs(value) < 1e5 ? String(value) : formatNumber(value, Math.abs(value) < 1e-3 ? 1 : 2));
@@ -37,5 +37,3 @@ export function ruleWords(rule: RuleSetting | Configuration['rule']): string {
 
 export const noiseWords = (rule: Configuration['rule']): string =>
   !rule ? 'not asked by a rule' : parameterRules.find((r) => r.key === rule.key)?.usesNoiseLevel ? 'told, not estimated' : 'not used by the rule';
-
-export const parameterSymbol = (method: Method | undefined): string => method?.fixedValue?.symbol ?? '\\alpha';
